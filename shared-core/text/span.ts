@@ -29,4 +29,5 @@ export const cover = (a: Span, b: Span): Span => ({
   end: Math.max(a.end, b.end),
 });
 
-export const contains = (outer: Span, offset: number): boolean => outer.start <= offset && offset <= outer.end;
+export const contains = (outer: Span, offset: number): boolean =>
+  outer.start <= offset && offset <= outer.end;
