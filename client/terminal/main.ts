@@ -1,0 +1,4 @@
+#!/usr/bin/env node
+import { version } from "../../package.json";
+
+console.log(`thrum ${version}`);

@@ -1,0 +1,35 @@
+/** Builds everything that ships into dist/. */
+import { rmSync } from "node:fs";
+import { join } from "node:path";
+import { fileURLToPath } from "node:url";
+import { ensureInstalled } from "./install.mjs";
+import { root } from "./root.mjs";
+
+/** What ships: one entry a program. Chunks that a program loads only when needed lie beside it. */
+const PROGRAMS = [
+  {
+    entryPoints: { thrum: "client/terminal/main.ts" },
+    outdir: "dist/terminal",
+    platform: "node",
+    target: "node20",
+    format: "esm",
+    splitting: true,
+    chunkNames: "chunks/[name]-[hash]",
+  },
+];
+
+const COMMON = { bundle: true, minify: true, legalComments: "none", logLevel: "warning" };
+
+/** Builds all programs; throws when one does not build. */
+export async function build() {
+  ensureInstalled();
+  const esbuild = await import("esbuild");
+  for (const program of PROGRAMS) {
+    rmSync(join(root, program.outdir), { recursive: true, force: true });
+    await esbuild.build({ absWorkingDir: root, ...COMMON, ...program });
+  }
+}
+
+if (process.argv[1] === fileURLToPath(import.meta.url)) {
+  await build().catch(() => process.exit(1));
+}
