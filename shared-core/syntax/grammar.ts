@@ -35,7 +35,8 @@ export interface StatementGrammar {
   readonly keyword: string;
   readonly head: readonly HeadPart[];
   readonly value: HeadValue;
-  /** What the head's value is read as: items (default), names, or one comparison. */
+  /** The detail that `= VALUE` sets; given both ways it is an error. */
+  readonly principal?: string;
   readonly details: readonly DetailGrammar[];
   /** Details not in the list are taken too (a case names lets, a kit holds statements). */
   readonly openDetails?: boolean;

@@ -153,6 +153,8 @@ export interface NoteNode extends Node {
   readonly kind: "note";
   readonly text: string;
   readonly tag?: { readonly key: string; readonly keySpan: Span; readonly text: string };
+  /** `> accept CODE: reason`. */
+  readonly accept?: { readonly code: string; readonly codeSpan: Span; readonly reason: string };
 }
 
 export interface DetailNode extends Node {
@@ -208,4 +210,62 @@ export interface Tree {
   readonly statements: readonly StatementNode[];
   /** Notes that stand before nothing. */
   readonly looseNotes: readonly NoteNode[];
+  /** Every line of the text, in order; at least one. */
+  readonly lines: readonly TreeLine[];
+  /** What each token turned out to be, one `ROLE` a token. */
+  readonly roles: Uint8Array;
 }
+
+/** What a line is. `lost` is text that belongs to nothing that could be read. */
+export type LineRole =
+  | "blank"
+  | "comment"
+  | "note"
+  | "version"
+  | "statement"
+  | "detail"
+  | "row"
+  | "conflict"
+  | "lost";
+
+export interface TreeLine {
+  /** Its tokens, `first` to `last` (exclusive), without the newline. */
+  readonly first: number;
+  readonly last: number;
+  /** Offset of its first character and of its end, without the newline. */
+  readonly span: Span;
+  /** Column of its first character that is not blank; a tab goes on to the next multiple of 4. */
+  readonly indent: number;
+  role: LineRole;
+  /** How many steps it is indented in the canonical layout. */
+  level: number;
+  /** False where a syntax error was said; such a line is shown as it is and never reformatted. */
+  readable: boolean;
+}
+
+/** What a token is in its place. Tokens that speak for themselves (comments, strings ...) have none. */
+export const ROLE = {
+  none: 0,
+  /** The word that starts a statement. */
+  keyword: 1,
+  /** A fixed word: `between`, `to`, `as`, `within`, `normal`, `and` ... */
+  word: 2,
+  /** A name where it is defined. */
+  definition: 3,
+  /** The key of a detail. */
+  key: 4,
+  /** Any part of a unit. */
+  unit: 5,
+  /** An operator between two operands. */
+  infix: 6,
+  /** A sign or `not` in front of an operand. */
+  prefix: 7,
+  /** What is called: `sqrt`, `peak`, a kit. */
+  callee: 8,
+  /** The name of a named argument. */
+  argument: 9,
+  /** A name that refers to something. */
+  reference: 10,
+  /** A word of a closed list: the kind of an ask, the key of an assumption. */
+  choice: 11,
+} as const;
