@@ -1,6 +1,15 @@
 import type { Diagnostic } from "../diagnostics/diagnostic.ts";
 import type { Assembly, QuantityRef } from "../mechanics/assembly.ts";
-import type { BinaryNode, Expression, NoteNode, StatementNode, Tree, UnitNode } from "../syntax/tree.ts";
+import type { Outcome } from "../numerics/outcome.ts";
+import type {
+  BinaryNode,
+  CallNode,
+  Expression,
+  NoteNode,
+  StatementNode,
+  Tree,
+  UnitNode,
+} from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
 import type { Kind, Quantity } from "../units/dimension.ts";
 import type { StatementDescription } from "../vocabulary/description.ts";
@@ -121,6 +130,58 @@ export interface CaseInfo {
   /** "as written" for the first. */
   readonly name: string;
   readonly node?: StatementNode;
+}
+
+/** An argument of an answer function, resolved for one instance. */
+export type AnswerArgument =
+  /** A number of any kind: a mode number, a rate, a time, a share. */
+  | { readonly is: "number"; readonly quantity: Quantity }
+  /** `600 rpm to 1500 rpm`, or the name of a drive whose speed is a range. SI, rates in Hz. */
+  | { readonly is: "range"; readonly from: Quantity; readonly to: Quantity }
+  /** `orders: (1, 2)`. */
+  | { readonly is: "list"; readonly values: readonly number[] }
+  | { readonly is: "ask"; readonly ask: Ask }
+  | { readonly is: "series"; readonly quantity: QuantityRef }
+  /** A joining element or a group: what it pulls with, and the indices of its elements. */
+  | {
+      readonly is: "element";
+      readonly name: string;
+      readonly elements: readonly number[];
+      readonly force: QuantityRef;
+    }
+  | { readonly is: "let"; readonly name: string }
+  | { readonly is: "limit"; readonly limit: LimitCurve }
+  /** A word of a closed list, as the direction of an effective mass. */
+  | { readonly is: "word"; readonly word: string }
+  /** An expression that is to be evaluated again with other numbers (the quantity of a sensitivity). */
+  | { readonly is: "expression"; readonly expression: Expression };
+
+/** Arguments by the parameter names of vocabulary/functions.ts; optional ones may be missing. */
+export type AnswerArguments = Readonly<Record<string, AnswerArgument | undefined>>;
+
+/** Computes a call such as `natural_frequency(1)` from the answers. SI, rates in Hz. */
+export type AnswerFunction = (call: CallNode, args: AnswerArguments) => Outcome<Quantity>;
+
+/**
+ * How the numbers of an instance move with one `let`: derivatives by its SI value (a rate: by its Hz), in the
+ * order of `assembly.inertias` and `assembly.elements`.
+ */
+export interface Derivatives {
+  readonly name: string;
+  readonly inertia: Float64Array;
+  readonly stiffness: Float64Array;
+  readonly damping: Float64Array;
+  readonly inertance: Float64Array;
+  readonly lossFactor: Float64Array;
+  readonly preload: Float64Array;
+  readonly gravity: number;
+  readonly modalDamping: number;
+  readonly massDamping: number;
+  readonly stiffnessDamping: number;
+  /** True when a bind moves with it: the forms change too, which the rows above do not hold. */
+  readonly movesForms: boolean;
+  /** True when a drive moves with it. */
+  readonly movesDrives: boolean;
 }
 
 /** The model with numbers put in: one case, one set of overrides. */
