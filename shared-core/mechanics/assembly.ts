@@ -41,6 +41,20 @@ export interface InertiaInfo {
   readonly value: number;
   /** True for inerters: no weight, not part of the moving mass. */
   readonly relative: boolean;
+  /** Value of the form when every coordinate that moves moves by one; left out: 1, and 0 for a relative one. */
+  readonly rigid?: number;
+}
+
+/**
+ * A term that is no sum of squares: `value * row column^T` is added to a matrix. Feeds, gyroscopic terms,
+ * transducers; a coordinate's own equation is the row.
+ */
+export interface ExtraTerm {
+  readonly owner: string;
+  readonly matrix: "mass" | "damping" | "stiffness";
+  readonly row: LinearForm;
+  readonly column: LinearForm;
+  readonly value: number;
 }
 
 /** A joining element, already multiplied by its count. Travel = form; a positive force pulls the ends together. */
@@ -60,6 +74,7 @@ export interface ElementInfo {
   /** Force at zero travel. */
   readonly preload: number;
   readonly ratedTravel?: number;
+  /** For one of the `count`: compare with the force divided by the count. */
   readonly ratedForce?: number;
 }
 
@@ -163,6 +178,8 @@ export interface Assembly {
   readonly inertias: readonly InertiaInfo[];
   readonly elements: readonly ElementInfo[];
   readonly drives: readonly DriveInfo[];
+  /** Terms beside the sums of squares, in a fixed order. */
+  readonly extras?: readonly ExtraTerm[];
   /** m/s^2. */
   readonly gravity: number;
   /** Damping ratio added to every mode. */

@@ -1,0 +1,195 @@
+/**
+ * The matrices of M q'' + C q' + K q = F - M_s u'' - C_s u' - K_s u, as sums over the terms of an assembly.
+ *
+ * C holds dampers, `mass_damping` and `stiffness_damping`; modal damping and loss factors are not in it (the
+ * former needs the modes, the latter is `hysteretic`: K + i H in a steady response). Terms are added in the
+ * order of the assembly, so the same model gives the same bits.
+ */
+import type { Assembly, LinearForm } from "./assembly.ts";
+
+/** Compressed rows: row i holds entries `starts[i]` to `starts[i + 1]`, columns ascending, no column twice. */
+export interface SparseMatrix {
+  readonly rows: number;
+  readonly columns: number;
+  readonly starts: Int32Array;
+  readonly indices: Int32Array;
+  readonly values: Float64Array;
+}
+
+/** `value * row column^T`. */
+export interface Term {
+  readonly row: LinearForm;
+  readonly column: LinearForm;
+  readonly value: number;
+}
+
+/** Square ones are free x free, the others free x supports. SI. */
+export interface SystemMatrices {
+  readonly free: number;
+  readonly mass: SparseMatrix;
+  readonly damping: SparseMatrix;
+  readonly stiffness: SparseMatrix;
+  /** Sum of loss factor times stiffness. */
+  readonly hysteretic: SparseMatrix;
+  readonly massSupport: SparseMatrix;
+  readonly dampingSupport: SparseMatrix;
+  readonly stiffnessSupport: SparseMatrix;
+  readonly hystereticSupport: SparseMatrix;
+}
+
+/** Terms of the four matrices, supports included in their forms. */
+export interface SystemTerms {
+  readonly mass: readonly Term[];
+  readonly damping: readonly Term[];
+  readonly stiffness: readonly Term[];
+  readonly hysteretic: readonly Term[];
+}
+
+/** All terms of an assembly that are not zero, in its order. */
+export function systemTerms(assembly: Assembly): SystemTerms {
+  const { massDamping, stiffnessDamping } = assembly;
+  const mass: Term[] = [];
+  const damping: Term[] = [];
+  const stiffness: Term[] = [];
+  const hysteretic: Term[] = [];
+  const add = (to: Term[], form: LinearForm, value: number) => {
+    if (value !== 0) to.push({ row: form, column: form, value });
+  };
+  for (const { form, value } of assembly.inertias) {
+    add(mass, form, value);
+    add(damping, form, massDamping * value);
+  }
+  for (const element of assembly.elements) {
+    add(stiffness, element.form, element.stiffness);
+    add(damping, element.form, element.damping);
+    add(damping, element.form, stiffnessDamping * element.stiffness);
+    add(hysteretic, element.form, element.lossFactor * element.stiffness);
+  }
+  const lists = { mass, damping, stiffness };
+  for (const { matrix, row, column, value } of assembly.extras ?? []) {
+    if (value !== 0) lists[matrix].push({ row, column, value });
+  }
+  return { mass, damping, stiffness, hysteretic };
+}
+
+/** Sums the terms of an assembly into its matrices. */
+export function systemMatrices(assembly: Assembly): SystemMatrices {
+  const { free } = assembly;
+  const supports = assembly.supports.length;
+  const { mass, damping, stiffness, hysteretic } = systemTerms(assembly);
+  return {
+    free,
+    mass: sumTerms(mass, free),
+    damping: sumTerms(damping, free),
+    stiffness: sumTerms(stiffness, free),
+    hysteretic: sumTerms(hysteretic, free),
+    massSupport: sumSupportTerms(mass, free, supports),
+    dampingSupport: sumSupportTerms(damping, free, supports),
+    stiffnessSupport: sumSupportTerms(stiffness, free, supports),
+    hystereticSupport: sumSupportTerms(hysteretic, free, supports),
+  };
+}
+
+/** free x free part of a sum of terms. */
+export function sumTerms(terms: readonly Term[], free: number): SparseMatrix {
+  const entries = new Triplets();
+  for (const { row, column, value } of terms) {
+    for (let i = 0; i < row.coordinates.length; i++) {
+      const scaled = value * row.factors[i];
+      for (let j = 0; j < column.coordinates.length; j++) {
+        entries.add(row.coordinates[i], column.coordinates[j], scaled * column.factors[j]);
+      }
+    }
+  }
+  return entries.compress(free, free);
+}
+
+/** free x supports part of a sum of terms. */
+export function sumSupportTerms(terms: readonly Term[], free: number, supports: number): SparseMatrix {
+  const entries = new Triplets();
+  for (const { row, column, value } of terms) {
+    for (let i = 0; i < row.coordinates.length; i++) {
+      const scaled = value * row.factors[i];
+      for (let j = 0; j < column.supports.length; j++) {
+        entries.add(row.coordinates[i], column.supports[j], scaled * column.supportFactors[j]);
+      }
+    }
+  }
+  return entries.compress(free, supports);
+}
+
+/** Row-major copy, rows x columns. */
+export function toDense(matrix: SparseMatrix): Float64Array {
+  const { rows, columns, starts, indices, values } = matrix;
+  const out = new Float64Array(rows * columns);
+  for (let i = 0; i < rows; i++) {
+    for (let p = starts[i]; p < starts[i + 1]; p++) out[i * columns + indices[p]] = values[p];
+  }
+  return out;
+}
+
+/** y = A x; `out` (rows) may not be x. */
+export function multiplySparse(
+  matrix: SparseMatrix,
+  x: ArrayLike<number>,
+  out: Float64Array = new Float64Array(matrix.rows),
+): Float64Array {
+  const { rows, starts, indices, values } = matrix;
+  for (let i = 0; i < rows; i++) {
+    let sum = 0;
+    for (let p = starts[i]; p < starts[i + 1]; p++) sum += values[p] * x[indices[p]];
+    out[i] = sum;
+  }
+  return out;
+}
+
+/** Collected entries; equal places are summed in the order in which they came. */
+class Triplets {
+  readonly #row: number[] = [];
+  readonly #column: number[] = [];
+  readonly #value: number[] = [];
+
+  add(row: number, column: number, value: number): void {
+    this.#row.push(row);
+    this.#column.push(column);
+    this.#value.push(value);
+  }
+
+  compress(rows: number, columns: number): SparseMatrix {
+    const row = this.#row;
+    const column = this.#column;
+    // Two stable counting sorts, by column and then by row, leave rows in order and columns ascending in each.
+    const byColumn = stableOrder(column, columns, undefined);
+    const order = stableOrder(row, rows, byColumn);
+    const starts = new Int32Array(rows + 1);
+    const indices = new Int32Array(row.length);
+    const values = new Float64Array(row.length);
+    let count = 0;
+    let next = 0;
+    for (let i = 0; i < rows; i++) {
+      const first = count;
+      while (next < order.length && row[order[next]] === i) {
+        const at = order[next++];
+        if (first < count && indices[count - 1] === column[at]) values[count - 1] += this.#value[at];
+        else {
+          indices[count] = column[at];
+          values[count++] = this.#value[at];
+        }
+      }
+      starts[i + 1] = count;
+    }
+    return { rows, columns, starts, indices: indices.slice(0, count), values: values.slice(0, count) };
+  }
+}
+
+function stableOrder(keys: readonly number[], size: number, before: Int32Array | undefined): Int32Array {
+  const places = new Int32Array(size + 1);
+  for (const key of keys) places[key + 1]++;
+  for (let i = 0; i < size; i++) places[i + 1] += places[i];
+  const order = new Int32Array(keys.length);
+  for (let k = 0; k < keys.length; k++) {
+    const at = before === undefined ? k : before[k];
+    order[places[keys[at]]++] = at;
+  }
+  return order;
+}
