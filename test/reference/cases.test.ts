@@ -23,7 +23,10 @@ function answersOf(reference: ReferenceCase): Map<string, Found> {
   const found = new Map<string, Found>();
   for (const { part, path, text } of modelsOf(reference.id)) {
     const report = judge(understand(path, text, nothing));
-    expect(report.diagnostics.filter((d) => d.severity === "error" && !EXPECTED_ERRORS.has(d.code)), path).toEqual([]);
+    expect(
+      report.diagnostics.filter((d) => d.severity === "error" && !EXPECTED_ERRORS.has(d.code)),
+      path,
+    ).toEqual([]);
     readTags(report, path, found);
     for (const [key, read] of Object.entries(FROM_MODES[reference.id] ?? {})) {
       const [of, quantity] = [key.slice(0, key.indexOf(":")), key.slice(key.indexOf(":") + 2)];
@@ -41,7 +44,10 @@ function readTags(report: FileReport, path: string, found: Map<string, Found>): 
     for (const { tag } of verdict.expectation.node.notes) {
       const value = tag?.key === "reference-worst" ? verdict.tolerance?.worst : verdict.value;
       if (tag?.key.startsWith("reference")) {
-        found.set(tag.text, { value: value ?? Number.NaN, where: `${path}, ${verdict.name} ${verdict.reason ?? ""}` });
+        found.set(tag.text, {
+          value: value ?? Number.NaN,
+          where: `${path}, ${verdict.name} ${verdict.reason ?? ""}`,
+        });
       }
     }
   }
@@ -50,10 +56,14 @@ function readTags(report: FileReport, path: string, found: Map<string, Found>): 
 function errorOf(wanted: ExpectedNumber, found: Found): { readonly error: number; readonly allowed: number } {
   const si = wanted.value * UNITS[wanted.unit];
   const relative = wanted.value === 0 ? 0 : wanted.rel_tol * Math.abs(si);
-  return { error: Math.abs(found.value - si), allowed: Math.max(relative, (wanted.abs_tol ?? 0) * UNITS[wanted.unit]) };
+  return {
+    error: Math.abs(found.value - si),
+    allowed: Math.max(relative, (wanted.abs_tol ?? 0) * UNITS[wanted.unit]),
+  };
 }
 
-const whole = (table: Readonly<Record<string, Readonly<Record<string, string>>>>, id: string) => table[id]?.["*"];
+const whole = (table: Readonly<Record<string, Readonly<Record<string, string>>>>, id: string) =>
+  table[id]?.["*"];
 
 describe("check cases with sources", () => {
   const covered = referenceCases.filter((c) => !whole(WAITING, c.id) && !whole(NOT_EXPRESSIBLE, c.id));
@@ -63,7 +73,9 @@ describe("check cases with sources", () => {
     for (const wanted of reference.expected) {
       const found = answers.get(wanted.quantity);
       const excused = WAITING[id]?.[wanted.quantity] ?? NOT_EXPRESSIBLE[id]?.[wanted.quantity];
-      expect(found === undefined, `${wanted.quantity}: covered, or excused, and not both`).toBe(excused !== undefined);
+      expect(found === undefined, `${wanted.quantity}: covered, or excused, and not both`).toBe(
+        excused !== undefined,
+      );
       if (!found) continue;
       const { error, allowed } = errorOf(wanted, found);
       const said = `${wanted.quantity} = ${wanted.value} ${wanted.unit} (${reference.source.citation}); ${found.where}: ${found.value}`;
@@ -83,14 +95,16 @@ describe("check cases with sources", () => {
       expect(modelsOf(id).length > 0 || whole_ !== undefined, id).toBe(true);
     }
     const ids = new Set(referenceCases.map((c) => c.id));
-    for (const id of [...Object.keys(WAITING), ...Object.keys(NOT_EXPRESSIBLE)]) expect(ids.has(id), id).toBe(true);
+    for (const id of [...Object.keys(WAITING), ...Object.keys(NOT_EXPRESSIBLE)])
+      expect(ids.has(id), id).toBe(true);
     process.stdout.write(
       `check cases: ${count.covered} numbers covered, ${count.waiting} waiting, ${count.inexpressible} not expressible\n`,
     );
   });
 
   test("what waits says so: a model of it would give not-yet-computed", () => {
-    const said = (text: string) => judge(understand("waiting.thrum", `thrum 1\n${text}`, nothing)).diagnostics;
+    const said = (text: string) =>
+      judge(understand("waiting.thrum", `thrum 1\n${text}`, nothing)).diagnostics;
     for (const text of ["body block = 3 kg\n", "pendulum bob = 1 kg\n    length = 1 m\n", "loop coil\n"]) {
       expect(said(text).map((d) => d.code)).toContain("not-yet-computed");
     }

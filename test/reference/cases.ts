@@ -21,10 +21,14 @@ export interface ReferenceCase {
 
 const here = (path: string): string => fileURLToPath(new URL(path, import.meta.url));
 
-export const referenceCases: readonly ReferenceCase[] = JSON.parse(readFileSync(here("data/cases.json"), "utf8"));
+export const referenceCases: readonly ReferenceCase[] = JSON.parse(
+  readFileSync(here("data/cases.json"), "utf8"),
+);
 
 /** The models of a case: `ID.thrum`, or `ID.a.thrum`, `ID.b.thrum` for its parts. */
-export function modelsOf(id: string): { readonly part: string; readonly path: string; readonly text: string }[] {
+export function modelsOf(
+  id: string,
+): { readonly part: string; readonly path: string; readonly text: string }[] {
   return readdirSync(here("cases"))
     .filter((file) => file.split(".")[0] === id && file.endsWith(".thrum"))
     .sort()
@@ -139,8 +143,8 @@ export const FROM_MODES: Readonly<Record<string, Readonly<Record<string, Reader>
     "a: |s| of the other pair": (r) => Math.max(...roots(r).map((z) => Math.hypot(...z))) / (2 * Math.PI),
     "a: sum of the other two eigenvalues": (r) => roots(r).reduce((sum, z) => sum + z[0], 0),
     "a: damping ratio of the pair": (r) => {
-      const z = roots(r).reduce((a, b) => (Math.hypot(...b) > Math.hypot(...a) ? b : a));
-      return -z[0] / Math.hypot(...z);
+      const [re, im] = [...roots(r)].sort((a, b) => Math.hypot(b[0], b[1]) - Math.hypot(a[0], a[1]))[0];
+      return -re / Math.hypot(re, im);
     },
   },
   "p31-two-disc-imperial": {

@@ -4,7 +4,13 @@
  */
 import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
-import { type CaseReport, type HistoryAsk, judge, type SweepAsk, understand } from "../../shared-core/index.ts";
+import {
+  type CaseReport,
+  type HistoryAsk,
+  judge,
+  type SweepAsk,
+  understand,
+} from "../../shared-core/index.ts";
 
 interface RandomModel {
   readonly group: string;
@@ -14,7 +20,10 @@ interface RandomModel {
   readonly frequencyHz: readonly number[];
   readonly roots?: readonly (readonly [number, number])[];
   readonly rootScale?: number;
-  readonly sweep?: { readonly frequencyHz: readonly number[]; readonly response: readonly (readonly (readonly [number, number])[])[] };
+  readonly sweep?: {
+    readonly frequencyHz: readonly number[];
+    readonly response: readonly (readonly (readonly [number, number])[])[];
+  };
   readonly history?: { readonly timeS: readonly number[]; readonly values: readonly (readonly number[])[] };
 }
 
@@ -34,7 +43,9 @@ interface Worst {
 
 function compareFrequencies(model: RandomModel, report: CaseReport, worst: Worst): void {
   if (!report.modes.ok) throw new Error(report.modes.reason);
-  const ours = report.modes.table.modes.flatMap((m) => (m.number === null || m.frequencyHz === null ? [] : [m.frequencyHz]));
+  const ours = report.modes.table.modes.flatMap((m) =>
+    m.number === null || m.frequencyHz === null ? [] : [m.frequencyHz],
+  );
   ours.sort((a, b) => a - b);
   expect(ours.length).toBe(model.frequencyHz.length);
   model.frequencyHz.forEach((wanted, i) => {
@@ -49,7 +60,9 @@ function compareFrequencies(model: RandomModel, report: CaseReport, worst: Worst
 function rootsOf(report: CaseReport): (readonly [number, number])[] {
   if (!report.modes.ok) throw new Error(report.modes.reason);
   return report.modes.table.modes.flatMap((m) =>
-    m.realRoots ? m.realRoots.map((r) => [r, 0] as const) : [[m.eigenvalue[0], Math.abs(m.eigenvalue[1])] as const],
+    m.realRoots
+      ? m.realRoots.map((r) => [r, 0] as const)
+      : [[m.eigenvalue[0], Math.abs(m.eigenvalue[1])] as const],
   );
 }
 
@@ -76,7 +89,10 @@ function compareSweep(model: RandomModel, report: CaseReport, worst: Worst): voi
     ask.of.forEach((quantity, j) => {
       const found = response.value.at(quantity, hz);
       if (!found.ok) throw new Error(found.reason);
-      worst.sweep = Math.max(worst.sweep, Math.hypot(found.value[0] - wanted[j][0], found.value[1] - wanted[j][1]) / scale);
+      worst.sweep = Math.max(
+        worst.sweep,
+        Math.hypot(found.value[0] - wanted[j][0], found.value[1] - wanted[j][1]) / scale,
+      );
     });
   });
 }
@@ -85,7 +101,8 @@ function compareHistory(model: RandomModel, report: CaseReport, worst: Worst): v
   if (!model.history) return;
   const ask = report.instance.asks.find((a): a is HistoryAsk => a.kind === "history");
   const response = ask && report.analysis.timeResponse(ask);
-  if (!ask || !response?.ok) throw new Error(`no history: ${response && !response.ok ? response.reason : "no ask"}`);
+  if (!ask || !response?.ok)
+    throw new Error(`no history: ${response && !response.ok ? response.reason : "no ask"}`);
   ask.of.forEach((quantity, j) => {
     const wanted = model.history?.values.map((row) => row[j]) ?? [];
     const scale = Math.max(...wanted.map(Math.abs));
@@ -122,7 +139,8 @@ describe("random models against SciPy", () => {
       compareHistory(model, report.cases[0], worst);
       for (const key of Object.keys(worst) as (keyof Worst)[]) {
         const allowed = (ALLOWED[group] ?? USUAL)[key];
-        if (worst[key] !== before[key]) expect(worst[key], `${group} ${model.index}: ${key}`).toBeLessThan(allowed);
+        if (worst[key] !== before[key])
+          expect(worst[key], `${group} ${model.index}: ${key}`).toBeLessThan(allowed);
       }
     }
     const line = Object.entries(worst).map(([key, value]) => `${key} ${value.toExponential(1)}`);
