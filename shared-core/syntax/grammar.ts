@@ -3,7 +3,7 @@
  * filled from vocabulary/, so that a new statement is one new file there.
  */
 export type HeadPart =
-  /** A fixed word: `between`, `and`, `on`, `at`, `in`, `from`, `to`, `of`. */
+  /** A fixed word: `between`, `and`, `on`, `at`, `in`, `from`, `to`, `of`; also the `=` of `part NAME = KIT(…) between …`. */
   | { readonly kind: "word"; readonly word: string }
   /** A defining name (may be optional, as in `ask KIND [NAME]`). */
   | { readonly kind: "name"; readonly slot: string; readonly optional?: boolean }
@@ -14,7 +14,7 @@ export type HeadPart =
   /** A string in quotes. */
   | { readonly kind: "text"; readonly slot: string }
   /** `(p, q)` behind a kit's name. */
-  | { readonly kind: "parameters"; readonly slot: string }
+  | { readonly kind: "parameters"; readonly slot: string; readonly optional?: boolean }
   /** `KIT(values)` of a part: a call. */
   | { readonly kind: "call"; readonly slot: string }
   /** `(x, y, z)` of a point or mount. */

@@ -36,6 +36,12 @@ export type Measure =
   | "voltage"
   | "force_factor"
   | "decay"
+  | "pressure"
+  | "area"
+  | "volume"
+  | "second_moment"
+  | "power"
+  | "energy"
   /** Any dimension: its unit says what it is (a motion's amplitude, a limit). */
   | "any";
 
@@ -49,6 +55,8 @@ export type DetailContent =
     }
   | { readonly is: "tuple"; readonly measure: Measure; readonly components: readonly string[] }
   | { readonly is: "word"; readonly words: readonly string[] }
+  /** Several of a closed list: `moves = z, rx, ry`. */
+  | { readonly is: "words"; readonly words: readonly string[] }
   | { readonly is: "text"; readonly file?: boolean }
   | { readonly is: "at"; readonly measure: Measure }
   | {
@@ -78,6 +86,10 @@ export interface DetailDescription {
   readonly example: string;
   /** Shown where the detail is left out. */
   readonly standard?: string;
+  /** Missing, it is a missing-detail. A principal detail counts as given when the head sets it. */
+  readonly required?: boolean;
+  /** Only for ends or coordinates that move so; absent: for all. */
+  readonly whenMotion?: readonly Motion[];
   /** Parsed and checked, but what it does to the mechanics is not computed by this version. */
   readonly notYet?: boolean;
 }
@@ -87,6 +99,8 @@ export interface QuantityDescription {
   readonly name: string;
   readonly measure: Measure;
   readonly says: string;
+  /** Only where the statement moves so; absent: always. */
+  readonly whenMotion?: readonly Motion[];
 }
 
 /** Numbers of one statement, evaluated to SI (rates in Hz), as its equations need them. */
@@ -99,6 +113,7 @@ export interface StatementValues {
   /** SI value and the rate behind `at`, in Hz. */
   at(key: string): { readonly value: number; readonly atHz: number } | undefined;
   word(key: string): string | undefined;
+  /** A slot of the head; `end("name")` of what moves is the form of its own coordinate. */
   end(slot: string): End;
   readonly count: number;
 }
@@ -106,11 +121,17 @@ export interface StatementValues {
 /** Everything Thrum knows of a statement kind, said once. */
 export interface StatementDescription {
   readonly keyword: string;
+  /** The KIND of an ask; each kind has a description of its own. */
+  readonly variant?: string;
   readonly family: Family;
   readonly grammar: StatementGrammar;
   /** The detail that `= VALUE` sets. */
   readonly principal?: string;
   readonly details: readonly DetailDescription[];
+  /** What `= VALUE` holds for each word of the head's closed list (`assume KEY = VALUE`). */
+  readonly keys?: readonly DetailDescription[];
+  /** Directions behind its name: `genset.z`, `mount_a.force.x`. */
+  readonly components?: readonly string[];
   readonly quantities: readonly QuantityDescription[];
   /** One sentence for hover and completion. */
   readonly says: string;
