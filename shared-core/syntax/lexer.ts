@@ -55,18 +55,23 @@ class Lexer {
 
   #next(): void {
     const code = this.#text.charCodeAt(this.#at);
-    if (isNewline(code)) return this.#newline(code);
-    if (this.#inConflict()) return this.#conflictLine();
-    if (isBlank(code)) return this.#push("blank", this.#run(isBlank));
+    if (isNewline(code)) this.#newline(code);
+    else if (this.#inConflict()) this.#push("conflict", this.#lineLength());
+    else if (isBlank(code)) this.#push("blank", this.#run(isBlank));
+    else this.#solid(code);
+  }
+
+  /** A token that is neither blank nor newline. */
+  #solid(code: number): void {
     const first = this.#lineStart;
     this.#lineStart = false;
-    if (first && code === GREATER) return this.#toLineEnd("note");
-    if (code === HASH) return this.#toLineEnd("comment");
-    if (code === QUOTE) return this.#string();
-    if (isDigit(code) || (code === DOT && this.#startsFraction())) return this.#number();
     const letter = letterLength(this.#text, this.#at);
-    if (letter > 0) return this.#name(letter);
-    this.#operator();
+    if (letter > 0) this.#name(letter);
+    else if (isDigit(code) || (code === DOT && this.#startsFraction())) this.#number();
+    else if (first && code === GREATER) this.#toLineEnd("note");
+    else if (code === HASH) this.#toLineEnd("comment");
+    else if (code === QUOTE) this.#string();
+    else this.#operator();
   }
 
   #push(kind: TokenKind, length: number): void {
@@ -84,10 +89,6 @@ class Lexer {
     const skipped = this.#skipped;
     while (this.#skip < skipped.length && skipped[this.#skip].end <= this.#at) this.#skip++;
     return this.#skip < skipped.length && skipped[this.#skip].start <= this.#at;
-  }
-
-  #conflictLine(): void {
-    this.#push("conflict", this.#lineLength());
   }
 
   #run(accepts: (code: number) => boolean): number {
@@ -142,11 +143,9 @@ class Lexer {
   #operator(): void {
     const text = this.#text;
     const sign = text[this.#at];
-    for (const long of LONG_OPERATORS[sign] ?? []) {
-      if (text.startsWith(long, this.#at)) return this.#push("operator", long.length);
-    }
-    if (SHORT_OPERATORS.has(sign)) return this.#push("operator", 1);
-    const point = text.codePointAt(this.#at) ?? 0;
-    this.#push("unknown", point > 0xffff ? 2 : 1);
+    const long = LONG_OPERATORS[sign]?.find((operator) => text.startsWith(operator, this.#at));
+    if (long) this.#push("operator", long.length);
+    else if (SHORT_OPERATORS.has(sign)) this.#push("operator", 1);
+    else this.#push("unknown", (text.codePointAt(this.#at) ?? 0) > 0xffff ? 2 : 1);
   }
 }
