@@ -5,16 +5,10 @@
  * former needs the modes, the latter is `hysteretic`: K + i H in a steady response). Terms are added in the
  * order of the assembly, so the same model gives the same bits.
  */
+import { type SparseMatrix, sparseFromTriplets } from "../numerics/sparse.ts";
 import type { Assembly, LinearForm } from "./assembly.ts";
 
-/** Compressed rows: row i holds entries `starts[i]` to `starts[i + 1]`, columns ascending, no column twice. */
-export interface SparseMatrix {
-  readonly rows: number;
-  readonly columns: number;
-  readonly starts: Int32Array;
-  readonly indices: Int32Array;
-  readonly values: Float64Array;
-}
+export { type SparseMatrix, sparseToDense as toDense } from "../numerics/sparse.ts";
 
 /** `value * row column^T`. */
 export interface Term {
@@ -92,7 +86,7 @@ export function systemMatrices(assembly: Assembly): SystemMatrices {
 
 /** free x free part of a sum of terms. */
 export function sumTerms(terms: readonly Term[], free: number): SparseMatrix {
-  const entries = new Triplets();
+  const entries = new Entries();
   for (const { row, column, value } of terms) {
     for (let i = 0; i < row.coordinates.length; i++) {
       const scaled = value * row.factors[i];
@@ -101,12 +95,12 @@ export function sumTerms(terms: readonly Term[], free: number): SparseMatrix {
       }
     }
   }
-  return entries.compress(free, free);
+  return sparseFromTriplets(free, free, entries);
 }
 
 /** free x supports part of a sum of terms. */
 export function sumSupportTerms(terms: readonly Term[], free: number, supports: number): SparseMatrix {
-  const entries = new Triplets();
+  const entries = new Entries();
   for (const { row, column, value } of terms) {
     for (let i = 0; i < row.coordinates.length; i++) {
       const scaled = value * row.factors[i];
@@ -115,81 +109,18 @@ export function sumSupportTerms(terms: readonly Term[], free: number, supports: 
       }
     }
   }
-  return entries.compress(free, supports);
+  return sparseFromTriplets(free, supports, entries);
 }
 
-/** Row-major copy, rows x columns. */
-export function toDense(matrix: SparseMatrix): Float64Array {
-  const { rows, columns, starts, indices, values } = matrix;
-  const out = new Float64Array(rows * columns);
-  for (let i = 0; i < rows; i++) {
-    for (let p = starts[i]; p < starts[i + 1]; p++) out[i * columns + indices[p]] = values[p];
-  }
-  return out;
-}
-
-/** y = A x; `out` (rows) may not be x. */
-export function multiplySparse(
-  matrix: SparseMatrix,
-  x: ArrayLike<number>,
-  out: Float64Array = new Float64Array(matrix.rows),
-): Float64Array {
-  const { rows, starts, indices, values } = matrix;
-  for (let i = 0; i < rows; i++) {
-    let sum = 0;
-    for (let p = starts[i]; p < starts[i + 1]; p++) sum += values[p] * x[indices[p]];
-    out[i] = sum;
-  }
-  return out;
-}
-
-/** Collected entries; equal places are summed in the order in which they came. */
-class Triplets {
-  readonly #row: number[] = [];
-  readonly #column: number[] = [];
-  readonly #value: number[] = [];
+/** Entries in the order in which they came. */
+class Entries {
+  readonly row: number[] = [];
+  readonly column: number[] = [];
+  readonly value: number[] = [];
 
   add(row: number, column: number, value: number): void {
-    this.#row.push(row);
-    this.#column.push(column);
-    this.#value.push(value);
+    this.row.push(row);
+    this.column.push(column);
+    this.value.push(value);
   }
-
-  compress(rows: number, columns: number): SparseMatrix {
-    const row = this.#row;
-    const column = this.#column;
-    // Two stable counting sorts, by column and then by row, leave rows in order and columns ascending in each.
-    const byColumn = stableOrder(column, columns, undefined);
-    const order = stableOrder(row, rows, byColumn);
-    const starts = new Int32Array(rows + 1);
-    const indices = new Int32Array(row.length);
-    const values = new Float64Array(row.length);
-    let count = 0;
-    let next = 0;
-    for (let i = 0; i < rows; i++) {
-      const first = count;
-      while (next < order.length && row[order[next]] === i) {
-        const at = order[next++];
-        if (first < count && indices[count - 1] === column[at]) values[count - 1] += this.#value[at];
-        else {
-          indices[count] = column[at];
-          values[count++] = this.#value[at];
-        }
-      }
-      starts[i + 1] = count;
-    }
-    return { rows, columns, starts, indices: indices.slice(0, count), values: values.slice(0, count) };
-  }
-}
-
-function stableOrder(keys: readonly number[], size: number, before: Int32Array | undefined): Int32Array {
-  const places = new Int32Array(size + 1);
-  for (const key of keys) places[key + 1]++;
-  for (let i = 0; i < size; i++) places[i + 1] += places[i];
-  const order = new Int32Array(keys.length);
-  for (let k = 0; k < keys.length; k++) {
-    const at = before === undefined ? k : before[k];
-    order[places[keys[at]]++] = at;
-  }
-  return order;
 }

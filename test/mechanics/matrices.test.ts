@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { coordinateForm, supportForm } from "../../shared-core/mechanics/forms.ts";
-import { multiplySparse, systemMatrices, toDense } from "../../shared-core/mechanics/matrices.ts";
+import { systemMatrices } from "../../shared-core/mechanics/matrices.ts";
+import { sparseTimesVector, sparseToDense as toDense } from "../../shared-core/numerics/sparse.ts";
 import { sketch } from "./helpers.ts";
 
 describe("matrices of an assembly", () => {
@@ -24,7 +25,7 @@ describe("matrices of an assembly", () => {
     expect([...toDense(m.stiffnessSupport)]).toEqual([-100, 0]);
     expect([...toDense(m.dampingSupport)]).toEqual([-8, 0]);
     expect([...toDense(m.hystereticSupport)]).toEqual([-10, 0]);
-    expect([...multiplySparse(m.stiffness, [1, 1])]).toEqual([100, 0]);
+    expect([...sparseTimesVector(m.stiffness, Float64Array.of(1, 1))]).toEqual([100, 0]);
   });
 
   it("shares a spring's own mass as m/6 [2 1; 1 2] and inertance as b [1 -1; -1 1]", () => {
