@@ -29,7 +29,14 @@ export async function launchWorkbench(options) {
   const folders = ["--extensions-dir", extensions, "--user-data-dir", userData];
   for (const vsix of options.vsix) install(vsix, folders);
   const port = options.port ?? (await freePort());
-  const args = ["--auth", "none", "--bind-addr", `127.0.0.1:${port}`, "--disable-telemetry", "--disable-update-check"];
+  const args = [
+    "--auth",
+    "none",
+    "--bind-addr",
+    `127.0.0.1:${port}`,
+    "--disable-telemetry",
+    "--disable-update-check",
+  ];
   if (options.trust !== false) args.push("--disable-workspace-trust");
   // A process group of its own: the launcher alone would leave its children running.
   const child = spawn(process.execPath, [workbenchProgram, ...folders, ...args, options.folder], {

@@ -1,0 +1,207 @@
+/**
+ * Speed beside a NumPy and SciPy script, in one interleaved run: `npm run bench [-- PART OF A ROW'S NAME]`.
+ * Prints a table with our time, the peer's (best of one and two threads), the ratio, the aim, the largest
+ * difference of the answers and the peak memory of both. Only ratios of one run mean anything.
+ */
+import { spawn, spawnSync } from "node:child_process";
+import { mkdirSync, writeFileSync } from "node:fs";
+import { cpus } from "node:os";
+import { join } from "node:path";
+import { createInterface } from "node:readline";
+import { benchModel, generator, modelText } from "./bench/model.mjs";
+import { ROWS } from "./bench/rows.mjs";
+import { build } from "./build.mjs";
+import { root } from "./root.mjs";
+
+const RUNS = 7;
+const cache = join(root, ".cache", "bench");
+
+/** The peer runs on the kernels of its own choice. */
+const peerEnvironment = (threads) => {
+  const { OPENBLAS_CORETYPE: _, OPENBLAS_L2_SIZE: __, ...rest } = process.env;
+  return { ...rest, OPENBLAS_NUM_THREADS: String(threads), OMP_NUM_THREADS: String(threads) };
+};
+
+const chosen = process.argv[2] ?? "";
+await build();
+mkdirSync(cache, { recursive: true });
+await bundleOurs();
+if (spawnSync("python3", ["-c", "import scipy"]).status !== 0) {
+  console.error("The peer needs SciPy: apt-get install -y python3-scipy");
+  process.exit(2);
+}
+console.log(
+  `${cpus()[0].model}, ${cpus().length} cores, Node ${process.version}; medians of ${RUNS} interleaved runs\n`,
+);
+console.log("| work | n | ours | peer | ratio | aim | difference | memory ours / peer |");
+console.log("|---|---|---|---|---|---|---|---|");
+for (const row of ROWS.filter((r) => `${r.name} ${r.n}`.includes(chosen))) {
+  await (row.kind === "process" ? processRow(row) : row.kind === "alone" ? aloneRow(row) : sideBySide(row));
+}
+
+async function bundleOurs() {
+  const esbuild = await import("esbuild");
+  await esbuild.build({
+    absWorkingDir: root,
+    entryPoints: ["tools/bench/ours.ts"],
+    outfile: join(cache, "ours.mjs"),
+    bundle: true,
+    platform: "node",
+    target: "node20",
+    format: "esm",
+    logLevel: "warning",
+  });
+}
+
+/** One long-lived process that answers a line with a line. */
+function talker(command, args, env) {
+  const child = spawn(command, args, { env, stdio: ["pipe", "pipe", "inherit"] });
+  const lines = createInterface({ input: child.stdout })[Symbol.asyncIterator]();
+  return {
+    async say(message) {
+      child.stdin.write(`${JSON.stringify(message)}\n`);
+      const { value, done } = await lines.next();
+      if (done) throw new Error("the process ended");
+      return JSON.parse(value);
+    },
+    end: () => child.kill(),
+  };
+}
+
+const ourTalker = () => talker(process.execPath, [join(cache, "ours.mjs")], process.env);
+
+async function sideBySide(row) {
+  const model = benchModel(row.shape, row.n);
+  const extra = extras(row, model);
+  const ours = ourTalker();
+  const peers = [1, 2].map((threads) =>
+    talker("python3", [join(root, "tools/bench/peer.py")], peerEnvironment(threads)),
+  );
+  const talkers = [ours, ...peers];
+  try {
+    await ours.say({ do: "load", row: row.row, ...extra.ours });
+    for (const peer of peers) await peer.say({ do: "load", row: row.row, ...model, ...extra.peer });
+    for (const t of talkers) await t.say({ do: "run" });
+    const times = talkers.map(() => []);
+    let last = [];
+    for (let i = 0; i < RUNS; i++) {
+      last = [];
+      for (const [j, t] of talkers.entries()) {
+        const answer = await t.say({ do: "run" });
+        times[j].push(answer.seconds);
+        last.push(answer);
+      }
+    }
+    const [mine, ...theirs] = times.map(median);
+    const best = theirs[1] < theirs[0] ? 1 : 0;
+    line(row, mine, theirs[best], difference(last[0].values, last[1 + best].values), [
+      last[0].maxRssMb,
+      last[1 + best].maxRssMb,
+    ]);
+  } catch (error) {
+    console.log(`| ${row.name} | ${row.n} | failed: ${error.message} | | | ${row.aim} | | |`);
+  } finally {
+    for (const t of talkers) t.end();
+  }
+}
+
+/** What a sweep or a history needs beside the matrices. */
+function extras(row, model) {
+  const plain = { damped: row.row !== "undamped-general" && row.row !== "undamped-chain" };
+  const all = model.mass.map((_, i) => `m${i + 1}.displacement`).join(", ");
+  const last = `m${model.watch + 1}.displacement`;
+  if (row.row.startsWith("sweep")) {
+    const band = [0.5, 60];
+    const ask = `force shake on m1\nask sweep run\n    of = ${all}\n    by = shake\n    from = 0.5 Hz\n    to = 60 Hz\n    points = 2000\n`;
+    return { ours: { text: modelText(model, { ask }) }, peer: { band } };
+  }
+  if (row.row.startsWith("history")) {
+    const dt = 1e-3;
+    const random = generator(11);
+    const forceTable = Array.from({ length: 1000 }, () => random() - 0.5);
+    const csv = Array.from({ length: 100_001 }, (_, i) => `${(i * dt).toFixed(3)},${forceTable[i % 1000]}`);
+    const of = row.row === "history-all" ? all : last;
+    const ask = `force shake on m1\n    record = "shake.csv"\n    column = "force"\n    time_column = "time"\n    unit = N\nask history run\n    of = ${of}\n    by = shake\n    lasting = 100 s\n    step = 1 ms\n`;
+    return {
+      ours: { text: modelText(model, { ask }), csv: `time,force\n${csv.join("\n")}\n` },
+      peer: { dt, forceTable },
+    };
+  }
+  return { ours: { text: modelText(model, plain) }, peer: {} };
+}
+
+/** Whole processes: ours reads the model text, the peer a JSON file of the same numbers. */
+async function processRow(row) {
+  const model = benchModel("general", row.n);
+  const [textFile, jsonFile] = [join(cache, "process.thrum"), join(cache, "process.json")];
+  writeFileSync(textFile, modelText(model, { damped: false, ask: "ask modes\n" }));
+  writeFileSync(jsonFile, JSON.stringify(model));
+  const ours = () =>
+    timed(process.execPath, [join(root, "dist/terminal/thrum.js"), "answer", textFile, "modes"]);
+  const peer = (threads) => () =>
+    timed("python3", [join(root, "tools/bench/peer-process.py"), jsonFile], peerEnvironment(threads));
+  const all = [ours, peer(1), peer(2)];
+  const times = all.map(() => []);
+  for (let i = 0; i <= RUNS; i++) all.forEach((run, j) => times[j].push(run()));
+  const [mine, one, two] = times.map((t) => median(t.slice(1)));
+  line(row, mine, Math.min(one, two), Number.NaN, []);
+}
+
+function timed(command, args, env = process.env) {
+  const start = performance.now();
+  const run = spawnSync(command, args, { env, encoding: "utf8" });
+  if (run.status !== 0) throw new Error(`${command} ${args.join(" ")}\n${run.stderr}`);
+  return (performance.now() - start) / 1e3;
+}
+
+/** Rows without a peer: the aim is a time. */
+async function aloneRow(row) {
+  const ours = ourTalker();
+  try {
+    await ours.say({ do: "load", row: row.row, text: row.text() });
+    await ours.say({ do: "run" });
+    const times = [];
+    let memory = 0;
+    for (let i = 0; i < RUNS; i++) {
+      const answer = await ours.say({ do: "run" });
+      times.push(answer.seconds);
+      memory = answer.maxRssMb;
+    }
+    const mine = median(times);
+    const met = mine <= row.aimSeconds ? "met" : "MISSED";
+    console.log(
+      `| ${row.name} | ${row.n} | ${show(mine)} | – | – | ${show(row.aimSeconds)} ${met} | – | ${memory.toFixed(0)} MB |`,
+    );
+  } catch (error) {
+    console.log(`| ${row.name} | ${row.n} | failed: ${error.message} | | | | | |`);
+  } finally {
+    ours.end();
+  }
+}
+
+function line(row, mine, theirs, off, memory) {
+  const ratio = mine / theirs;
+  const verdict = ratio <= row.aim ? "met" : "MISSED";
+  const cells = [row.name, row.n, show(mine), show(theirs), ratio.toFixed(2), `${row.aim} ${verdict}`];
+  cells.push(Number.isNaN(off) ? "–" : off.toExponential(1));
+  cells.push(memory.length ? `${memory.map((mb) => mb.toFixed(0)).join(" / ")} MB` : "–");
+  console.log(`| ${cells.join(" | ")} |`);
+}
+
+function difference(a, b) {
+  if (a.length !== b.length) return Number.POSITIVE_INFINITY;
+  const scale = Math.max(...b.map(Math.abs));
+  return a.reduce(
+    (worst, x, i) => Math.max(worst, Math.abs(x - b[i]) / Math.max(Math.abs(b[i]), 1e-6 * scale)),
+    0,
+  );
+}
+
+function median(values) {
+  const sorted = [...values].sort((a, b) => a - b);
+  return sorted[Math.floor(sorted.length / 2)];
+}
+
+function show(seconds) {
+  return seconds < 1 ? `${(seconds * 1e3).toPrecision(3)} ms` : `${seconds.toPrecision(3)} s`;
+}

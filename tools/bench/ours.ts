@@ -1,0 +1,100 @@
+/** Our side of the benchmark: the same protocol as peer.py, bundled and started by tools/bench.mjs. */
+import { createInterface } from "node:readline";
+import {
+  analyse,
+  type FileReader,
+  type HistoryAsk,
+  type Instance,
+  instantiate,
+  judge,
+  type SweepAsk,
+  understand,
+} from "../../shared-core/index.ts";
+
+type Command =
+  | { readonly do: "load"; readonly row: string; readonly text: string; readonly csv?: string }
+  | { readonly do: "run" };
+
+let row = "";
+let text = "";
+let reader: FileReader = { read: () => ({ ok: false, why: "missing", detail: "" }) };
+let instance: Instance | undefined;
+
+const need = <T>(outcome: { ok: true; value: T } | { ok: false; reason: string }): T => {
+  if (!outcome.ok) throw new Error(outcome.reason);
+  return outcome.value;
+};
+
+const undamped = (i: Instance): number[] =>
+  need(analyse(i).modes()).modes.flatMap((m) => (m.frequencyHz === null ? [] : [m.frequencyHz]));
+const damped = (i: Instance): number[] =>
+  need(analyse(i).modes())
+    .modes.map((m) => m.dampedFrequencyHz)
+    .filter((f) => f > 0)
+    .sort((a, b) => a - b);
+
+function sweep(i: Instance): number[] {
+  const ask = i.asks.find((a): a is SweepAsk => a.kind === "sweep");
+  if (!ask) throw new Error("no sweep");
+  const answer = need(analyse(i).sweep(ask));
+  const name = ask.of[ask.of.length - 1].text;
+  const series = answer.series.get(name);
+  if (!series) throw new Error(name);
+  const wanted = Array.from(
+    { length: 10 },
+    (_, k) => ask.fromHz * (ask.toHz / ask.fromHz) ** ((200 * k) / 1999),
+  );
+  return wanted.map((hz) => {
+    let best = 0;
+    answer.frequencyHz.forEach((f, j) => {
+      if (Math.abs(f - hz) < Math.abs(answer.frequencyHz[best] - hz)) best = j;
+    });
+    return Math.hypot(series.re[best], series.im[best]);
+  });
+}
+
+function history(i: Instance): number[] {
+  const ask = i.asks.find((a): a is HistoryAsk => a.kind === "history");
+  if (!ask) throw new Error("no history");
+  const answer = need(analyse(i).history(ask));
+  const series = answer.series.get(ask.of[ask.of.length - 1].text);
+  return Array.from({ length: 11 }, (_, k) => series?.values[10_000 * k] ?? Number.NaN);
+}
+
+const ROWS: Readonly<Record<string, (i: Instance) => number[]>> = {
+  "undamped-general": undamped,
+  "undamped-chain": undamped,
+  "damped-general": damped,
+  "damped-chain": damped,
+  "sweep-chain": sweep,
+  "sweep-general": sweep,
+  "history-one": history,
+  "history-all": history,
+};
+
+function run(): { seconds: number; values: number[] } {
+  const start = process.hrtime.bigint();
+  let values: number[] = [];
+  if (row === "text") values = [understand("bench.thrum", text, reader).diagnostics.length];
+  else if (row === "check") values = [judge(understand("bench.thrum", text, reader)).diagnostics.length];
+  else if (instance) values = ROWS[row](instance);
+  return { seconds: Number(process.hrtime.bigint() - start) / 1e9, values };
+}
+
+for await (const line of createInterface({ input: process.stdin })) {
+  const command: Command = JSON.parse(line);
+  if (command.do === "load") {
+    ({ row, text } = command);
+    const { csv } = command;
+    if (csv !== undefined) reader = { read: () => ({ ok: true, text: csv }) };
+    const model = understand("bench.thrum", text, reader);
+    const faults = model.diagnostics.filter((d) => d.severity === "error");
+    if (faults.length > 0) throw new Error(faults[0].message);
+    instance = instantiate(model, 0);
+    process.stdout.write('{"loaded":true}\n');
+  } else {
+    const { seconds, values } = run();
+    const maxRssMb = process.resourceUsage().maxRSS / 1024;
+    process.stdout.write(`${JSON.stringify({ seconds, values, maxRssMb })}\n`);
+  }
+}
