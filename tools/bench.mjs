@@ -142,7 +142,9 @@ async function processRow(row) {
     timed("python3", [join(root, "tools/bench/peer-process.py"), jsonFile], peerEnvironment(threads));
   const all = [ours, peer(1), peer(2)];
   const times = all.map(() => []);
-  for (let i = 0; i <= RUNS; i++) all.forEach((run, j) => times[j].push(run()));
+  for (let i = 0; i <= RUNS; i++) {
+    for (const [j, run] of all.entries()) times[j].push(run());
+  }
   const [mine, one, two] = times.map((t) => median(t.slice(1)));
   line(row, mine, Math.min(one, two), Number.NaN, []);
 }
