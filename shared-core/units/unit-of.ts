@@ -110,7 +110,7 @@ function hertzFault(text: string, unit: Unit, factorIndex: number): UnitFault {
 }
 
 function unknownUnit(name: string, factorIndex: number): UnitFault {
-  const replace = suggestions(name);
+  const replace = nearestUnits(name);
   const hint = replace.length > 0 ? `${replace.join(" or ")}?` : undefined;
   return { code: "unknown-unit", message: `there is no unit ${name}`, hint, replace, factorIndex };
 }
@@ -134,13 +134,14 @@ const MEANT: ReadonlyMap<string, readonly string[]> = new Map([
   ["pli", ["lbf/in"]],
 ]);
 
-function suggestions(name: string): readonly string[] {
+/** Units that a name which is none may have meant, the likeliest first; possibly none. */
+export function nearestUnits(name: string): readonly string[] {
   const meant = MEANT.get(name);
   if (meant !== undefined) return meant;
-  const split = twoUnits(name);
-  if (split !== undefined) return [split];
   const otherCase = caseVariant(name);
   if (otherCase !== undefined) return [otherCase];
+  const split = twoUnits(name);
+  if (split !== undefined) return [split];
   const near = nearest(name, UNIT_NAMES);
   return near === undefined ? [] : [near];
 }
