@@ -22,6 +22,7 @@ export interface Reduction {
   readonly relaxing: number;
   /** Forms over the reduced coordinates: inertial ones first, then relaxing ones; supports as in the assembly. */
   readonly mass: readonly SquareTerm[];
+  /** Without `mass_damping`, which is that number times the mass terms. */
   readonly damping: readonly SquareTerm[];
   readonly stiffness: readonly SquareTerm[];
   /** Each free coordinate of the assembly as a form over the reduced ones and the supports, without loads. */
@@ -61,12 +62,20 @@ export function reduceSystem(assembly: Assembly, options: ReductionOptions = {})
   if ((assembly.extras ?? []).length > 0) return fail("one-way and gyroscopic terms are not reduced yet");
   const negative = assembly.inertias.find(({ value }) => value < 0);
   if (negative) return fail(`the inertia of ${negative.owner} is negative`);
-  return new Reducer(assembly, systemTerms(assembly)).run(options);
+  return new Reducer(assembly, systemTerms({ ...assembly, massDamping: 0 })).run(options);
+}
+
+/** A reduction without relaxing coordinates. */
+export interface Condensation extends Reduction {
+  /** Each coordinate of the reduction it comes from, relaxing ones included, as a form over the inertial ones. */
+  readonly inner: readonly LinearForm[];
 }
 
 /** Eliminates the relaxing coordinates through their springs: the undamped problem, all coordinates inertial. */
-export function condense(reduction: Reduction): Outcome<Reduction> {
-  if (reduction.relaxing === 0) return succeed(reduction);
+export function condense(reduction: Reduction): Outcome<Condensation> {
+  if (reduction.relaxing === 0) {
+    return succeed({ ...reduction, inner: indices(reduction.inertial).map(coordinateForm) });
+  }
   const steps: Step[] = [];
   let stiffness = [...reduction.stiffness];
   const waiting = new Set(indices(reduction.relaxing).map((i) => reduction.inertial + i));
@@ -82,6 +91,7 @@ export function condense(reduction: Reduction): Outcome<Reduction> {
   return succeed({
     ...reduction,
     relaxing: 0,
+    inner,
     damping: [],
     stiffness,
     recovery: reduction.recovery.map((form) => substitute(form, inner)),
