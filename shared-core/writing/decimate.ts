@@ -1,6 +1,7 @@
 /**
  * Indices of the samples worth drawing when `columns` columns of a picture share them: of each column the first,
- * lowest, highest and last. No peak is lost, however narrow. Samples without a finite value are left out.
+ * lowest, highest and last. No peak is lost, however narrow. Of a run of samples without a finite value one is kept,
+ * where the curve has its gap.
  *
  * @param column ascending place of sample i in columns from 0, not whole; outside [0, columns] it is not drawn
  * @param values sample values in the picture's own scale (a log scale: logarithms)
@@ -15,7 +16,13 @@ export function keepExtremes(
   let run: Run | undefined;
   for (let i = 0; i < values.length; i++) {
     const place = column(i);
-    if (!Number.isFinite(values[i]) || !(0 <= place && place <= columns)) continue;
+    if (!(0 <= place && place <= columns)) continue;
+    if (!Number.isFinite(values[i])) {
+      if (run) keep(run, kept);
+      if (run) kept.push(i);
+      run = undefined;
+      continue;
+    }
     const cell = Math.min(columns - 1, Math.floor(place));
     if (run === undefined || cell !== current) {
       if (run) keep(run, kept);

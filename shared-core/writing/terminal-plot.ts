@@ -48,7 +48,7 @@ const BITS = [
 
 function rowLabels({ y, height }: PlotFrame): Map<number, string> {
   const labels = new Map<number, string>();
-  for (const tick of y.ticks(Math.max(2, Math.floor(height / 2)))) {
+  for (const tick of y.ticks(Math.max(3, Math.floor(height * 0.6)))) {
     const row = Math.min(height - 1, Math.floor((1 - y.place(tick.value)) * height));
     if (row >= 0 && !labels.has(row)) labels.set(row, tick.label);
   }
@@ -67,6 +67,10 @@ function drawCurve(curve: PlotCurve, { x, y, height }: PlotFrame, columns: numbe
   const dot = (share: number, size: number) => Math.max(0, Math.min(size - 1, Math.floor(share * size)));
   let before: readonly [number, number] | undefined;
   for (const i of keepExtremes((index) => x.place(curve.x[index]) * width, heights, width)) {
+    if (!Number.isFinite(heights[i])) {
+      before = undefined;
+      continue;
+    }
     const column = dot(x.place(curve.x[i]), width);
     const row = dot(1 - heights[i], tall);
     join(before ?? [column, row], [column, row], mark);

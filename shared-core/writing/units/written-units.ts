@@ -8,7 +8,7 @@ import type { ShownUnit } from "./unit-view.ts";
 /**
  * The units that a file uses, by SI text: the first one of each kind, limits of expectations before all others,
  * since they say how its author thinks of an answer. Bare numbers are left out: a percent sign belongs to the
- * number it stands behind.
+ * number it stands behind. So are rates: a frequency is read in Hz, whatever unit a speed was written in.
  */
 export function writtenUnits(model: Model): ReadonlyMap<string, ShownUnit> {
   const found = new Map<string, ShownUnit>();
@@ -16,7 +16,8 @@ export function writtenUnits(model: Model): ReadonlyMap<string, ShownUnit> {
   const { statements } = model.tree;
   for (const unit of [...statements.filter(judged), ...statements].flatMap(unitsIn)) {
     const shown = meaningOf(unit);
-    if (shown && !found.has(shown.si) && shown.si !== "1") found.set(shown.si, shown.unit);
+    if (shown && !found.has(shown.si) && shown.si !== "1" && shown.si !== "Hz")
+      found.set(shown.si, shown.unit);
   }
   return found;
 }

@@ -1,0 +1,71 @@
+import type { Mode, ModeTable } from "../answers/answer.ts";
+import { number, percent } from "../judgement/wording.ts";
+import { tableLines } from "./table.ts";
+import { inUnit, type UnitView } from "./units/unit-view.ts";
+
+/** Coordinates that move at least this much of the largest are named, up to `NAMED` of them. */
+const WORTH_NAMING = 0.05;
+const NAMED = 3;
+
+/** The mode table: number, frequency, damping, what moves most, which element strains most. */
+export function modeLines(table: ModeTable, coordinates: readonly string[], units: UnitView): string[] {
+  const rows = table.modes.map((mode) => [
+    mode.number === null ? "–" : String(mode.number),
+    frequencyText(mode, units),
+    dampingText(mode, units),
+    movesMost(mode, coordinates),
+    strainsMost(mode),
+  ]);
+  return tableLines(
+    [
+      { head: "mode", align: "right" },
+      { head: "frequency", align: "right" },
+      { head: "damping", align: "right" },
+      { head: "moves most", align: "left" },
+      { head: "strains most", align: "left" },
+    ],
+    rows,
+  );
+}
+
+function frequencyText(mode: Mode, units: UnitView): string {
+  if (mode.number === 0) return "free";
+  const hertz = mode.frequencyHz ?? mode.dampedFrequencyHz;
+  return inUnit(hertz, units.unitFor("Hz", hertz));
+}
+
+/** The ratio; a growing mode and a root without a ratio say how fast they grow or decay. */
+function dampingText(mode: Mode, units: UnitView): string {
+  const [growth] = mode.eigenvalue;
+  const rate = () => inUnit(Math.abs(growth), units.unitFor("1/s", Math.abs(growth)));
+  if (mode.dampingRatio !== null && mode.dampingRatio < 0) return `grows ${rate()}`;
+  if (mode.dampingRatio !== null) return percent(mode.dampingRatio);
+  if (mode.number === 0 && growth === 0) return "";
+  return growth > 0 ? `grows ${rate()}` : `decays ${rate()}`;
+}
+
+/** `slab 1, unit −0.4`: the undamped shape's largest coordinates, with signs, the largest 1. */
+export function movesMost(mode: Mode, coordinates: readonly string[]): string {
+  const sizes = coordinates.map((name, i) => ({
+    name,
+    size: Math.hypot(mode.shape.re[i], mode.shape.im[i]),
+    signed: mode.shape.re[i],
+  }));
+  const top = Math.max(0, ...sizes.map(({ size }) => size));
+  const worth = sizes
+    .filter(({ size }) => size > 0 && size >= WORTH_NAMING * top)
+    .sort((a, b) => b.size - a.size);
+  const named = worth.slice(0, NAMED).map(({ name, size, signed }) => {
+    const share = number(Number((size / top).toPrecision(2)));
+    return `${name} ${signed < 0 ? "−" : ""}${share}`;
+  });
+  const more = worth.length - named.length;
+  return more > 0 ? `${named.join(", ")}, ${more} more` : named.join(", ");
+}
+
+function strainsMost(mode: Mode): string {
+  const [most] = Object.entries(mode.energyShare)
+    .filter(([, share]) => Number.isFinite(share) && share > 0)
+    .sort(([, a], [, b]) => b - a);
+  return most === undefined ? "" : `${most[0]} ${number(Number((most[1] * 100).toPrecision(2)))} %`;
+}

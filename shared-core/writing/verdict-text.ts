@@ -1,0 +1,122 @@
+import type { Diagnostic } from "../diagnostics/diagnostic.ts";
+import type { CaseReport, FileReport, Verdict } from "../judgement/report.ts";
+import { number } from "../judgement/wording.ts";
+import { siUnit } from "../units/si-text.ts";
+import { type FileOutcome, holds } from "./file-outcome.ts";
+import type { Ink } from "./ink.ts";
+import { diagnosticLines, oneLine } from "./places-text.ts";
+import { type Column, tableLines } from "./table.ts";
+import { inUnit, largest, type ShownUnit, type UnitSystem, unitView } from "./units/unit-view.ts";
+import { unitWrittenIn, writtenUnits } from "./units/written-units.ts";
+
+export interface TextOptions {
+  readonly ink: Ink;
+  readonly units: UnitSystem;
+}
+
+/** What `thrum check` says of one file: expectations by case, then diagnostics, then one line with the verdict. */
+export function verdictText(file: FileOutcome, options: TextOptions): string {
+  const { ink } = options;
+  if (!file.readable)
+    return `${file.path}:1:1: ${ink.bad("error")} file-unreadable ${oneLine(file.reason)}\n`;
+  const { report, path } = file;
+  const title = report.model.title === undefined ? [] : [ink.strong(oneLine(report.model.title)), ""];
+  const cases = report.cases.flatMap((each, index) => caseLines(report, each, index === 0, options));
+  const places = diagnosticLines(path, report, ink);
+  const lines = [...title, ...cases, ...places, ...(places.length ? [""] : []), verdictLine(file, ink)];
+  return `${lines.join("\n")}\n`;
+}
+
+/** `3 files: 2 hold, 1 fails`, for more than one file. */
+export function summaryLine(files: readonly FileOutcome[]): string {
+  const good = files.filter(holds).length;
+  const bad = files.length - good;
+  const parts = [
+    ...(good ? [`${good} ${good === 1 ? "holds" : "hold"}`] : []),
+    ...(bad ? [`${bad} ${bad === 1 ? "fails" : "fail"}`] : []),
+  ];
+  return `${files.length} files: ${parts.join(", ")}\n`;
+}
+
+function caseLines(report: FileReport, each: CaseReport, first: boolean, options: TextOptions): string[] {
+  if (each.verdicts.length === 0) return [];
+  const rows = each.verdicts.map((verdict) => verdictCells(report, verdict, options));
+  const paint = (text: string, row: number, column: number): string => {
+    if (column === 0) return verdictInk(each.verdicts[row], options.ink)(text);
+    return column >= MARGIN_COLUMN ? options.ink.quiet(text) : text;
+  };
+  const head = first ? [] : [`case ${options.ink.strong(each.name)}`];
+  return [...head, ...tableLines(VERDICT_COLUMNS, rows, paint).map((line) => `  ${line}`), ""];
+}
+
+const VERDICT_COLUMNS: readonly Column[] = [
+  { head: "", align: "left" },
+  { head: "", align: "left" },
+  { head: "", align: "right" },
+  { head: "", align: "left" },
+  { head: "", align: "right" },
+  { head: "", align: "left" },
+];
+const MARGIN_COLUMN = 4;
+
+function verdictCells(report: FileReport, verdict: Verdict, { units }: TextOptions): string[] {
+  const word = verdict.holds === null ? "open" : verdict.holds ? "holds" : "fails";
+  if (verdict.value === null) return [word, verdict.name, "", `${oneLine(verdict.reason ?? "not computed")}`];
+  const unit = verdictUnit(report, verdict, units);
+  const limit =
+    verdict.limit === null ? "" : `${SIGNS[verdict.expectation.operator]} ${inUnit(verdict.limit, unit)}`;
+  return [word, verdict.name, inUnit(verdict.value, unit), limit, marginText(verdict), notes(verdict, unit)];
+}
+
+const SIGNS = { "<=": "≤", ">=": "≥", "<": "<", ">": ">" } as const;
+
+/** Value and limit stand in the unit in which the limit is written, else in that of the file. */
+export function verdictUnit(report: FileReport, verdict: Verdict, system: UnitSystem): ShownUnit {
+  const si = siUnit(verdict.kind);
+  const { right, left } = verdict.expectation;
+  const written = unitWrittenIn(right, left);
+  if (written?.si === si && (system === "as-written" || si === "1" || si === "Hz")) return written.unit;
+  return unitView(system, writtenUnits(report.model)).unitFor(si, largest([verdict.value, verdict.limit]));
+}
+
+function marginText({ margin }: Verdict): string {
+  if (margin === null || !Number.isFinite(margin)) return "";
+  const share = number(Number((Math.abs(margin) * 100).toPrecision(margin >= 0.1 ? 2 : 2)));
+  return `${share} % ${margin < 0 ? "beyond" : "left"}`;
+}
+
+function notes({ tolerance, mattersMost }: Verdict, unit: ShownUnit): string {
+  const parts: string[] = [];
+  if (tolerance?.kind === "worst_case" && tolerance.worst !== null)
+    parts.push(`worst ${inUnit(tolerance.worst, unit)} (${tolerance.how ?? "searched"})`);
+  if (tolerance?.kind === "share" && tolerance.worst !== null)
+    parts.push(`${number(tolerance.worst * 100)} % of draws`);
+  if (mattersMost) parts.push(`${mattersMost.name} +10 %: ${signed(mattersMost.sensitivity * 10)} %`);
+  return parts.join(", ");
+}
+
+const signed = (value: number): string =>
+  `${value < 0 ? "−" : "+"}${number(Number(Math.abs(value).toPrecision(2)))}`;
+
+function verdictInk(verdict: Verdict, ink: Ink): (text: string) => string {
+  if (verdict.holds === null) return ink.warn;
+  return verdict.holds ? ink.good : ink.bad;
+}
+
+function verdictLine(file: Extract<FileOutcome, { readable: true }>, ink: Ink): string {
+  const verdicts = file.report.cases.flatMap((each) => each.verdicts);
+  const held = verdicts.filter((verdict) => verdict.holds === true).length;
+  const parts = [
+    ...(verdicts.length ? [`holds ${held} of ${verdicts.length}`] : ["nothing expected"]),
+    ...counted(file.report.diagnostics),
+  ];
+  const paint = holds(file) ? ink.good : ink.bad;
+  return `${file.path}: ${paint(parts.join(", "))}`;
+}
+
+function counted(diagnostics: readonly Diagnostic[]): string[] {
+  return (["error", "warning", "hint"] as const).flatMap((severity) => {
+    const count = diagnostics.filter((diagnostic) => diagnostic.severity === severity).length;
+    return count === 0 ? [] : [`${count} ${severity}${count === 1 ? "" : "s"}`];
+  });
+}
