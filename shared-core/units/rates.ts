@@ -93,9 +93,8 @@ export function statedAs(value: Quantity, unit: UnitMeaning): Result {
   if (sameKind(value, unit.kind)) return value;
   if (isNumber(value)) return { ...unit.kind, value: value.value * unit.factor };
   if (unit.kind.rate && isPlainPerTime(value)) {
-    if (unit.text === "rad/s") return rate(value.value / (2 * Math.PI));
-    if (unit.text === "Hz") return rate(value.value);
-    return plainForRate(value);
+    const turning = unit.factor === RADIAN_PER_SECOND;
+    return turning || unit.factor === 1 ? rate(value.value * unit.factor) : plainForRate(value);
   }
   return fits(value, unit.kind) ?? { ...unit.kind, value: value.value };
 }
@@ -109,6 +108,9 @@ export function piWithoutTwo(of: Quantity): Fault {
     replace: [" as rad/s"],
   };
 }
+
+/** Cycles a second in 1 rad/s. */
+const RADIAN_PER_SECOND = 1 / (2 * Math.PI);
 
 const isZero = (a: Quantity): boolean => a.value === 0 && isNumber(a);
 
