@@ -1,4 +1,5 @@
 import type { Motion } from "../mechanics/builder.ts";
+import { likelyUnits } from "../units/describe.ts";
 import type { Kind } from "../units/dimension.ts";
 import { dimension, kindOf, NUMBER, RATE } from "../units/quantity.ts";
 import type { Measure } from "./description.ts";
@@ -18,7 +19,9 @@ export function wordsOf(measure: Measure, motion: Motion = "sliding"): string {
 
 /** Units worth offering for a measure, the likeliest first. */
 export function unitsOf(measure: Measure, motion: Motion = "sliding"): readonly string[] {
-  return UNITS_BY_MOTION[motion].get(measure) ?? UNITS.get(measure) ?? [];
+  const particular = UNITS_BY_MOTION[motion].get(measure) ?? UNITS.get(measure);
+  const kind = dimensionOf(measure, motion);
+  return particular ?? (kind ? likelyUnits(kind) : []);
 }
 
 const COMMON: ReadonlyMap<Measure, Kind> = new Map<Measure, Kind>([
@@ -129,65 +132,24 @@ const WORDS_BY_MOTION: Readonly<Record<Motion, ReadonlyMap<Measure, string>>> = 
   ]),
 };
 
+/** Where the measure says more than its kind: a share is no angle, a stiffness of a shaft no torque. */
 const UNITS: ReadonlyMap<Measure, readonly string[]> = new Map<Measure, readonly string[]>([
+  ["number", []],
   ["share", ["%", "ppm"]],
   ["angle", ["deg", "rad", "mrad"]],
-  ["rate", ["Hz", "rpm", "rad/s", "cpm", "rev/s", "deg/s", "kHz"]],
-  ["mass", ["kg", "t", "g", "lbm", "slug"]],
-  ["inertia", ["kg*m^2", "kg*mm^2", "lbm*in^2", "lbf*in*s^2", "slug*ft^2"]],
-  ["length", ["mm", "m", "um", "in", "ft"]],
-  ["time", ["s", "ms", "min", "h"]],
-  ["unbalance", ["kg*m", "g*mm", "kg*mm", "oz*in"]],
-  ["decay", ["1/s"]],
-  ["resistance", ["ohm", "kohm", "mohm"]],
-  ["inductance", ["mH", "H", "uH"]],
-  ["capacitance", ["uF", "nF", "pF", "F"]],
-  ["charge", ["C", "uC", "mC"]],
-  ["current", ["A", "mA"]],
-  ["voltage", ["V", "mV", "kV"]],
-  ["pressure", ["MPa", "bar", "kPa", "Pa", "GPa", "psi"]],
-  ["area", ["mm^2", "cm^2", "m^2", "in^2"]],
-  ["volume", ["l", "cm^3", "m^3", "in^3"]],
-  ["second_moment", ["mm^4", "cm^4", "m^4", "in^4"]],
-  ["power", ["W", "kW", "mW"]],
   ["energy", ["J", "kJ", "mJ"]],
 ]);
 
 const UNITS_BY_MOTION: Readonly<Record<Motion, ReadonlyMap<Measure, readonly string[]>>> = {
-  sliding: new Map<Measure, readonly string[]>([
-    ["stiffness", ["N/mm", "kN/m", "N/m", "MN/m", "lbf/in"]],
-    ["damping", ["N*s/m", "kN*s/m", "N*s/mm", "lbf*s/in"]],
-    ["inertance", ["kg", "t", "lbm"]],
-    ["force", ["N", "kN", "lbf", "kip"]],
-    ["travel", ["mm", "um", "m", "in", "mil"]],
-    ["speed", ["mm/s", "m/s", "in/s"]],
-    ["acceleration", ["m/s^2", "gn", "mm/s^2", "in/s^2"]],
-    ["momentum", ["N*s", "kN*s", "lbf*s"]],
-    ["cubic", ["N/m^3", "N/mm^3", "lbf/in^3"]],
-    ["quadratic", ["N*s^2/m^2"]],
-    ["force_factor", ["N/A", "V*s/m"]],
-  ]),
+  sliding: new Map(),
   turning: new Map<Measure, readonly string[]>([
     ["stiffness", ["N*m/rad", "kN*m/rad", "N*m/deg", "lbf*in/rad"]],
-    ["damping", ["N*m*s/rad", "N*m/rpm", "lbf*in*s/rad"]],
-    ["inertance", ["kg*m^2", "lbm*in^2"]],
     ["force", ["N*m", "kN*m", "lbf*in", "lbf*ft"]],
     ["travel", ["deg", "rad", "mrad"]],
     ["speed", ["rpm", "rad/s", "rev/s", "deg/s"]],
-    ["acceleration", ["rad/s^2", "rpm/s"]],
-    ["momentum", ["N*m*s"]],
     ["cubic", ["N*m/rad^3"]],
     ["quadratic", ["N*m*s^2/rad^2"]],
     ["force_factor", ["N*m/A"]],
   ]),
-  charge: new Map<Measure, readonly string[]>([
-    ["stiffness", ["1/uF", "V/C"]],
-    ["damping", ["ohm", "kohm"]],
-    ["inertance", ["mH", "H"]],
-    ["force", ["V", "mV", "kV"]],
-    ["travel", ["C", "uC", "mC"]],
-    ["speed", ["A", "mA"]],
-    ["acceleration", ["A/s"]],
-    ["momentum", ["V*s", "Wb"]],
-  ]),
+  charge: new Map(),
 };
