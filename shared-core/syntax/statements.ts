@@ -201,7 +201,6 @@ class StatementReader {
       `\`${shorten(c.word)} = …\` needs a keyword in front; \`let\` makes it a parameter`,
       [{ title: "Add `let`", edits: [{ span: at, text: "let " }], safe: true }],
     );
-    c.quiet = true;
     this.#head(c, { kind: "name", span: at, text: "let" }, grammar, level);
     return true;
   }
@@ -219,7 +218,6 @@ class StatementReader {
       ? [{ title: `Write \`${near}\``, edits: [{ span: keyword.span, text: near }], safe: false }]
       : [];
     this.#say(c, keyword.span, `\`${shorten(keyword.text)}\` is not a statement`, fixes);
-    c.quiet = true;
     const meant = near ? grammar.get(near) : undefined;
     if (meant && !meant.holdsStatements) this.#head(c, keyword, meant, level);
     else {
@@ -292,10 +290,11 @@ class StatementReader {
     this.#kitIndent = undefined;
   }
 
-  /** Says an error on a line that is read nevertheless. */
+  /** Says the one error of a line that is read nevertheless. */
   #say(c: Cursor, place: Span, message: string, fixes: Fix[]): void {
-    this.#state.say({ code: "syntax", severity: "error", message, span: place, fixes });
+    if (!c.failed) this.#state.say({ code: "syntax", severity: "error", message, span: place, fixes });
     c.line.readable = false;
+    c.quiet = true;
   }
 
   #moveUp(line: TreeLine): Fix[] {
