@@ -1,12 +1,12 @@
 import type { AnswerResult, CaseReport, FileReport } from "../judgement/report.ts";
-import { number } from "../judgement/wording.ts";
+import { formatNumber } from "../units/show.ts";
 import { type ShownSeries, shownSeries } from "./answer-series.ts";
 import { modeLines } from "./mode-text.ts";
 import { oneLine } from "./places-text.ts";
 import { scaleBetween, scaleOver } from "./scales.ts";
 import { tableLines } from "./table.ts";
 import { terminalPlot } from "./terminal-plot.ts";
-import { inUnit, shownUnit, type UnitView, unitView } from "./units/unit-view.ts";
+import { inUnit, type UnitView, unitView } from "./units/unit-view.ts";
 import { writtenUnits } from "./units/written-units.ts";
 import type { TextOptions } from "./verdict-text.ts";
 
@@ -68,7 +68,7 @@ function answerBlock(
 function span({ x }: ShownSeries, unit: string): string {
   return x.length === 0
     ? "no points"
-    : `${number(x[0])} to ${number(x[x.length - 1])} ${unit}, ${x.length} points`;
+    : `${formatNumber(x[0])} to ${formatNumber(x[x.length - 1])} ${unit}, ${x.length} points`;
 }
 
 function peakLines(series: readonly ShownSeries[], x: "Hz" | "s", units: UnitView): string[] {
@@ -103,7 +103,7 @@ function plotLines(series: ShownSeries, x: "Hz" | "s", { ink, width }: AnswerTex
       y: scaleOver(kind, series.values),
       width: Math.min(width, WIDEST_PLOT) - 2,
       height: PLOT_HEIGHT,
-      xUnit: shownUnit(x).text,
+      xUnit: x,
     },
   );
   const label = series.unit.text === "" ? series.quantity : `${series.quantity} in ${series.unit.text}`;

@@ -4,7 +4,7 @@ import type { AnswerResult, CaseReport, Verdict } from "../judgement/report.ts";
 import type { ParameterValue } from "../model/model.ts";
 import { LineIndex } from "../text/line-index.ts";
 import type { Span } from "../text/span.ts";
-import { siUnit } from "../units/si-text.ts";
+import { siUnit } from "../units/show.ts";
 import type { FileOutcome } from "./file-outcome.ts";
 import { holds } from "./file-outcome.ts";
 import type { Json } from "./json-text.ts";

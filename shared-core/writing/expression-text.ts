@@ -1,6 +1,6 @@
 import type { Expression, NumberNode, UnitNode } from "../syntax/tree.ts";
 import { isFault } from "../units/fault.ts";
-import { siUnit } from "../units/si-text.ts";
+import { siUnit } from "../units/show.ts";
 import { unitOf } from "../units/unit-of.ts";
 
 /** Digits that a canonical number keeps: enough for any input, few enough to hide the rounding of a unit. */

@@ -1,5 +1,6 @@
 import type { Mode, ModeTable } from "../answers/answer.ts";
-import { number, percent } from "../judgement/wording.ts";
+import { percent } from "../judgement/wording.ts";
+import { formatNumber } from "../units/show.ts";
 import { tableLines } from "./table.ts";
 import { inUnit, type UnitView } from "./units/unit-view.ts";
 
@@ -56,7 +57,7 @@ export function movesMost(mode: Mode, coordinates: readonly string[]): string {
     .filter(({ size }) => size > 0 && size >= WORTH_NAMING * top)
     .sort((a, b) => b.size - a.size);
   const named = worth.slice(0, NAMED).map(({ name, size, signed }) => {
-    const share = number(Number((size / top).toPrecision(2)));
+    const share = formatNumber(Number((size / top).toPrecision(2)));
     return `${name} ${signed < 0 ? "−" : ""}${share}`;
   });
   const more = worth.length - named.length;
@@ -67,5 +68,5 @@ function strainsMost(mode: Mode): string {
   const [most] = Object.entries(mode.energyShare)
     .filter(([, share]) => Number.isFinite(share) && share > 0)
     .sort(([, a], [, b]) => b - a);
-  return most === undefined ? "" : `${most[0]} ${number(Number((most[1] * 100).toPrecision(2)))} %`;
+  return most === undefined ? "" : `${most[0]} ${formatNumber(Number((most[1] * 100).toPrecision(2)))} %`;
 }

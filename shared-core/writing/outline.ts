@@ -2,7 +2,7 @@ import { freeCoordinates } from "../judgement/shapes.ts";
 import type { Assembly, DriveInfo, ElementInfo, LinearForm, Motion } from "../mechanics/assembly.ts";
 import type { Ask, Expectation, Instance, Model, ParameterValue } from "../model/model.ts";
 import type { StatementNode } from "../syntax/tree.ts";
-import { siUnit } from "../units/si-text.ts";
+import { siUnit } from "../units/show.ts";
 import { canonicalNumber, canonicalValue, expressionText } from "./expression-text.ts";
 
 /**

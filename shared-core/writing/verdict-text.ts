@@ -1,12 +1,11 @@
 import type { Diagnostic } from "../diagnostics/diagnostic.ts";
 import type { CaseReport, FileReport, Verdict } from "../judgement/report.ts";
-import { number } from "../judgement/wording.ts";
-import { siUnit } from "../units/si-text.ts";
+import { formatNumber, siUnit, type UnitSystem } from "../units/show.ts";
 import { type FileOutcome, holds } from "./file-outcome.ts";
 import type { Ink } from "./ink.ts";
 import { diagnosticLines, oneLine } from "./places-text.ts";
 import { type Column, tableLines } from "./table.ts";
-import { inUnit, largest, type ShownUnit, type UnitSystem, unitView } from "./units/unit-view.ts";
+import { inUnit, largest, type ShownUnit, unitView } from "./units/unit-view.ts";
 import { unitWrittenIn, writtenUnits } from "./units/written-units.ts";
 
 export interface TextOptions {
@@ -81,7 +80,7 @@ export function verdictUnit(report: FileReport, verdict: Verdict, system: UnitSy
 
 function marginText({ margin }: Verdict): string {
   if (margin === null || !Number.isFinite(margin)) return "";
-  const share = number(Number((Math.abs(margin) * 100).toPrecision(margin >= 0.1 ? 2 : 2)));
+  const share = formatNumber(Number((Math.abs(margin) * 100).toPrecision(margin >= 0.1 ? 2 : 2)));
   return `${share} % ${margin < 0 ? "beyond" : "left"}`;
 }
 
@@ -90,13 +89,13 @@ function notes({ tolerance, mattersMost }: Verdict, unit: ShownUnit): string {
   if (tolerance?.kind === "worst_case" && tolerance.worst !== null)
     parts.push(`worst ${inUnit(tolerance.worst, unit)} (${tolerance.how ?? "searched"})`);
   if (tolerance?.kind === "share" && tolerance.worst !== null)
-    parts.push(`${number(tolerance.worst * 100)} % of draws`);
+    parts.push(`${formatNumber(tolerance.worst * 100)} % of draws`);
   if (mattersMost) parts.push(`${mattersMost.name} +10 %: ${signed(mattersMost.sensitivity * 10)} %`);
   return parts.join(", ");
 }
 
 const signed = (value: number): string =>
-  `${value < 0 ? "−" : "+"}${number(Number(Math.abs(value).toPrecision(2)))}`;
+  `${value < 0 ? "−" : "+"}${formatNumber(Number(Math.abs(value).toPrecision(2)))}`;
 
 function verdictInk(verdict: Verdict, ink: Ink): (text: string) => string {
   if (verdict.holds === null) return ink.warn;

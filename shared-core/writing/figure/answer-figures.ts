@@ -1,5 +1,5 @@
 import type { HistoryAnswer, ModeTable, SweepAnswer } from "../../answers/answer.ts";
-import { number } from "../../judgement/wording.ts";
+import { formatNumber } from "../../units/show.ts";
 import { type ShownSeries, shownSeries } from "../answer-series.ts";
 import { inUnit, type UnitView } from "../units/unit-view.ts";
 import type { Axis, CurvePanel, Figure } from "./figure.ts";
@@ -76,7 +76,13 @@ function panelsByUnit(series: readonly ShownSeries[], x: Axis, scale: "linear" |
       marks: own.flatMap(({ peak, unit: { text } }) =>
         "reason" in peak || scale === "linear"
           ? []
-          : [{ x: peak.at, y: peak.value, label: `${number(peak.value)} ${text} at ${number(peak.at)} Hz` }],
+          : [
+              {
+                x: peak.at,
+                y: peak.value,
+                label: `${formatNumber(peak.value)} ${text} at ${formatNumber(peak.at)} Hz`,
+              },
+            ],
       ),
     };
   });

@@ -1,7 +1,7 @@
 import type { Model } from "../../model/model.ts";
 import type { NumberNode, StatementNode, UnitNode } from "../../syntax/tree.ts";
 import { isFault } from "../../units/fault.ts";
-import { siUnit } from "../../units/si-text.ts";
+import { siUnit } from "../../units/show.ts";
 import { unitOf } from "../../units/unit-of.ts";
 import type { ShownUnit } from "./unit-view.ts";
 
