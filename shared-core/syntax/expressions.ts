@@ -9,7 +9,7 @@ import {
   ROLE,
 } from "./tree.ts";
 import { isUnitHere, requiredUnit, unitBehind, unknownUnit } from "./unit-reader.ts";
-import { VALUE_WORDS } from "./words.ts";
+import { HEAD_WORDS, VALUE_WORDS } from "./words.ts";
 
 /** Deeper nesting is no formula anybody wrote; later stages may walk a tree this deep without running out of stack. */
 export const DEEPEST_EXPRESSION = 256;
@@ -183,7 +183,7 @@ function number(c: Cursor): Expression {
   const start = c.offset;
   const value = literal(c);
   const unit = unitBehind(c);
-  if (!unit && c.kind === "name" && !VALUE_WORDS.has(c.word)) notAUnit(c, start);
+  if (!unit && c.is("name") && !VALUE_WORDS.has(c.word) && !HEAD_WORDS.has(c.word)) notAUnit(c, start);
   return { kind: "number", span: c.from(start), value, unit };
 }
 

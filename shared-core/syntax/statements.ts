@@ -38,6 +38,9 @@ export function readStatements(state: ParseState, lines: readonly TreeLine[]): O
 /** What a step of indentation is in a fix. */
 const STEP = "    ";
 
+/** What stands behind the name in the head of a statement. */
+const AFTER_NAME: ReadonlySet<string> = new Set(["=", "between", "on", "of", "in", "from"]);
+
 class StatementReader {
   readonly #state: ParseState;
   readonly #lines: readonly TreeLine[];
@@ -63,13 +66,23 @@ class StatementReader {
   run(): Outline {
     for (const [index, line] of this.#lines.entries()) {
       if (line.role === "blank") this.#notes.drop();
-      else if (line.role === "note") this.#notes.add(line, index);
+      else if (line.role === "note") this.#note(line, index);
       else if (line.role === "lost") this.#content(line);
     }
     this.#notes.drop();
     this.#close();
     if (!this.#versionSeen) this.#sayVersionMissing();
     return { statements: this.#statements, looseNotes: this.#notes.loose, version: this.#version };
+  }
+
+  #note(line: TreeLine, index: number): void {
+    const owner = this.#inner ?? this.#top;
+    if (line.indent === 0 || !owner?.lost) {
+      this.#notes.add(line, index);
+      return;
+    }
+    line.level = owner.level + 1;
+    line.readable = false;
   }
 
   #content(line: TreeLine): void {
@@ -121,12 +134,16 @@ class StatementReader {
     );
   }
 
-  /** A keyword with a name or a text behind it, where the statement above does not take that word as a detail. */
+  /**
+   * A keyword with a name or a text behind it. Where the statement above takes that word as a detail, as `mass`
+   * does, more is wanted, since `mass b` may be a detail without its `=`.
+   */
   #looksLikeStatement(c: Cursor, owner: OpenStatement | undefined): boolean {
     if (c.kind !== "name" || !this.#state.options.grammar.has(c.word)) return false;
-    if (owner && this.#isDetailOf(owner, c.word)) return false;
-    const next = c.ahead(2)[1];
-    return next?.kind === "name" || next?.kind === "string";
+    const [, second, third] = c.ahead(3);
+    if (second?.kind !== "name" && second?.kind !== "string") return false;
+    if (!owner || !this.#isDetailOf(owner, c.word)) return true;
+    return third !== undefined && AFTER_NAME.has(this.#state.textOf(third));
   }
 
   #isDetailOf(owner: OpenStatement, key: string): boolean {

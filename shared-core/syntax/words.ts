@@ -26,3 +26,6 @@ export const RESERVED: ReadonlyMap<string, string> = new Map([
   ["if", "a choice between two values"],
   ...[...VALUE_WORDS].map((word) => [word, "a word of the language"] as const),
 ]);
+
+/** Words of a head that may stand behind a number; no unit is called like that. */
+export const HEAD_WORDS: ReadonlySet<string> = new Set(["between", "on", "of"]);
