@@ -1,4 +1,9 @@
 #!/usr/bin/env node
 import { version } from "../../package.json";
 
-console.log(`thrum ${version}`);
+const args = process.argv.slice(2);
+if (args.length === 1 && args[0] === "--version") console.log(`thrum ${version}`);
+else {
+  const [{ runCommand }, { processHost }] = await Promise.all([import("./run.ts"), import("./host.ts")]);
+  process.exitCode = await runCommand(args, processHost());
+}

@@ -9,10 +9,11 @@ import type { Quantity } from "../../units/dimension.ts";
 import { isNumber } from "../../units/quantity.ts";
 import type { Found } from "../found.ts";
 import type { Trial } from "../trial.ts";
+import { kindOfUnit } from "../unit-text.ts";
 import { inUnit, time } from "../wording.ts";
 import { inTime } from "./answer-values.ts";
 import { historyOf, numberOf, seriesOf } from "./arguments.ts";
-import { inSeriesUnit, kindOfUnit, seconds } from "./quantities.ts";
+import { inSeriesUnit, seconds } from "./quantities.ts";
 
 /** Last time the history leaves the band around its final equilibrium; 0 when it never does. */
 export function settlingTime(trial: Trial, args: AnswerArguments, call: CallNode): Found<Quantity> {

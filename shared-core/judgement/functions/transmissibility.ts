@@ -5,9 +5,9 @@ import type { Quantity } from "../../units/dimension.ts";
 import { number, sameDimension } from "../../units/quantity.ts";
 import type { Found } from "../found.ts";
 import type { Trial } from "../trial.ts";
+import { kindOfUnit } from "../unit-text.ts";
 import { phasorAt } from "./answer-values.ts";
 import { argument, numberOf, sweepOf } from "./arguments.ts";
-import { kindOfUnit } from "./quantities.ts";
 
 /**
  * Magnitude of the complex force in an element or group over the amplitude of the ask's one drive at that rate

@@ -3,15 +3,12 @@ import type { Assembly, ExtraTerm } from "../../mechanics/assembly.ts";
 import { systemMatrices, toDense } from "../../mechanics/matrices.ts";
 import { factorComplexLu, solveComplexLu } from "../../numerics/complex-lu.ts";
 import { span } from "../../text/span.ts";
+import { growingModes } from "../growth.ts";
 import { nameSpan, placeOf, statementOf } from "../places.ts";
 import type { Finding, Rule, RuleContext } from "../rule.ts";
 import { type FreeShape, freeCoordinates, freeShape, onShape, squareOnShape } from "../shapes.ts";
 import { number, rate, time } from "../wording.ts";
 import { staticInstabilityOf } from "./static-instability.ts";
-
-/** Rounding of the eigenvalue solve: growth below this part of the root, and of the largest root, is none. */
-const OWN_ROUNDING = 1e-9;
-const LARGEST_ROUNDING = 1e-12;
 
 /** A mode that grows: which, how fast, and the element that feeds it. */
 export const unstableMode: Rule = {
@@ -19,23 +16,11 @@ export const unstableMode: Rule = {
   cost: "modes",
   check(context) {
     const buckles = staticInstabilityOf(context.assembly) !== undefined;
-    return growingModes(context)
+    return growingModes(context.modes)
       .filter((mode) => !(buckles && mode.eigenvalue[1] === 0))
       .map((mode) => finding(context, mode));
   },
 };
-
-/** Modes whose root lies in the right half-plane beyond rounding; one of each complex pair. */
-export function growingModes({ modes }: Pick<RuleContext, "modes">): readonly Mode[] {
-  if (!modes.ok) return [];
-  const size = (mode: Mode): number => Math.hypot(...mode.eigenvalue);
-  const largest = Math.max(0, ...modes.value.modes.map(size));
-  return modes.value.modes.filter((mode) => {
-    const growth = Math.max(mode.eigenvalue[0], ...(mode.realRoots ?? []));
-    const rounding = mode.number === 0 ? 1e-6 * largest : LARGEST_ROUNDING * largest;
-    return growth > OWN_ROUNDING * size(mode) && growth > rounding;
-  });
-}
 
 function finding(context: RuleContext, mode: Mode): Finding {
   const growth = Math.max(mode.eigenvalue[0], ...(mode.realRoots ?? []));
