@@ -85,13 +85,22 @@ export function callArguments(c: Cursor, callee: NameNode): CallNode {
       c.take();
       named.push({ name: key, value: expression(c) });
     } else {
-      positional.push(expression(c));
+      positional.push(argument(c));
     }
     if (!c.accept(",")) break;
     if (c.word === ")") c.expected("another argument behind the comma");
   }
   closing(c, "an operator, `,` or `)`");
   return { kind: "call", span: c.from(callee.span.start), callee, positional, named };
+}
+
+/** An argument: an expression, or a range `A to B`. */
+function argument(c: Cursor): Expression {
+  const start = c.offset;
+  const from = expression(c);
+  if (!c.accept("to", ROLE.word)) return from;
+  const to = expression(c);
+  return { kind: "range", span: c.from(start), from, to };
 }
 
 /** `(x, y, z)` with a unit for all, or one on each; also `(x)`, which is a parenthesis. */

@@ -104,6 +104,7 @@ export type Expression =
   | BinaryNode
   | AsNode
   | GroupNode
+  | RangeNode
   | BrokenNode;
 
 export interface ToleranceNode extends Node {
@@ -120,7 +121,10 @@ export interface ValueNode extends Node {
   readonly within?: { readonly from: Expression; readonly to: Expression; readonly span: Span };
 }
 
-/** `[NAME] [from] A to B`: a range, a chirp (`from`), or a change (`NAME from A to B`). */
+/**
+ * `[NAME] [from] A to B`: a range, a chirp (`from`), or a change (`NAME from A to B`). Among expressions it stands
+ * as an argument of a call only.
+ */
 export interface RangeNode extends Node {
   readonly kind: "range";
   readonly name?: PathNode;

@@ -34,6 +34,8 @@ export function expressionText(node: Expression): string {
       return `${expressionText(node.operand)} as ${node.unit.text}`;
     case "parenthesis":
       return `(${expressionText(node.inner)})`;
+    case "range":
+      return `${expressionText(node.from)} to ${expressionText(node.to)}`;
     case "broken":
       return "?";
   }
