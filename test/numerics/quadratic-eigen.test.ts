@@ -1,0 +1,308 @@
+import { describe, expect, it } from "vitest";
+import { type DampedModes, quadraticEigen } from "../../shared-core/numerics/quadratic-eigen.ts";
+import { difference, EPS, largest, product, randomMatrix, seeded, transposed, unwrap } from "./helpers.ts";
+
+type System = { m: Float64Array; c: Float64Array; k: Float64Array; n: number };
+
+const full = (m: Float64Array, n: number) =>
+  m.length === n * n && n > 1
+    ? m
+    : Float64Array.from({ length: n * n }, (_, p) => (Math.floor(p / n) === p % n ? m[p % n] : 0));
+
+/** Backward error of each pair: |Q(λ)ψ| / ((|λ|²‖M‖ + |λ|‖C‖ + ‖K‖)‖ψ‖), Tisseur (2000), and ψᴴMψ − 1. */
+function check({ m, c, k, n }: System, modes: DampedModes, factor = 1) {
+  const { re, im, vectors: x } = modes;
+  const size = 2 * n;
+  expect(re.length).toBe(size);
+  const mass = full(m, n);
+  const times = (a: Float64Array) => [product(a, x.re, n, n, size), product(a, x.im, n, n, size)];
+  const [[mr, mi], [cr, ci], [kr, ki]] = [times(mass), times(c), times(k)];
+  const norm = (a: Float64Array) =>
+    Math.max(
+      ...Array.from({ length: n }, (_, i) =>
+        a.subarray(i * n, i * n + n).reduce((s, v) => s + Math.abs(v), 0),
+      ),
+    );
+  const [nm, nc, nk] = [norm(mass), norm(c), norm(k)];
+  let worst = 0;
+  for (let j = 0; j < size; j++) {
+    const [lr, li] = [re[j], im[j]];
+    const [sr, si] = [lr * lr - li * li, 2 * lr * li];
+    const length = Math.hypot(lr, li);
+    let residual = 0;
+    let top = 0;
+    let mNorm = 0;
+    for (let p = j; p < n * size; p += size) {
+      const a = sr * mr[p] - si * mi[p] + lr * cr[p] - li * ci[p] + kr[p];
+      const b = sr * mi[p] + si * mr[p] + lr * ci[p] + li * cr[p] + ki[p];
+      residual = Math.max(residual, Math.hypot(a, b));
+      top = Math.max(top, Math.hypot(x.re[p], x.im[p]));
+      mNorm += x.re[p] * mr[p] + x.im[p] * mi[p];
+    }
+    worst = Math.max(worst, residual / ((length * length * nm + length * nc + nk) * top));
+    expect(Math.abs(mNorm - 1)).toBeLessThan(100 * n * EPS);
+    if (li > 0) {
+      expect([re[j + 1], im[j + 1]]).toEqual([lr, -li]);
+      for (let i = 0; i < n; i++) {
+        expect(x.re[i * size + j + 1]).toBe(x.re[i * size + j]);
+        expect(x.im[i * size + j + 1]).toBe(-x.im[i * size + j]);
+      }
+    }
+    if (j > 0) expect(length).toBeGreaterThanOrEqual(Math.hypot(re[j - 1], im[j - 1]) * (1 - 8 * EPS));
+  }
+  expect(worst).toBeLessThan(factor * 20 * n * EPS);
+  // The sum of the values is −trace(M⁻¹C) when M is diagonal.
+  if (m.length === n) {
+    const trace = m.reduce((sum, v, i) => sum - c[i * n + i] / v, 0);
+    const top = Math.hypot(re[size - 1], im[size - 1]);
+    expect(Math.abs(re.reduce((sum, v) => sum + v, 0) - trace)).toBeLessThan(100 * size * n * EPS * top);
+  }
+}
+
+function chain(
+  n: number,
+  stiffness: (i: number) => number,
+  dashpot: (i: number) => number,
+  mass: (i: number) => number,
+  grounded = true,
+): System {
+  const assemble = (entry: (i: number) => number) => {
+    const a = new Float64Array(n * n);
+    const entries = Array.from({ length: n }, (_, i) => entry(i));
+    const value = (i: number) => entries[i];
+    for (let i = grounded ? 0 : 1; i < n; i++) {
+      a[i * n + i] += value(i);
+      if (i === 0) continue;
+      a[(i - 1) * n + i - 1] += value(i);
+      a[i * n + i - 1] -= value(i);
+      a[(i - 1) * n + i] -= value(i);
+    }
+    return a;
+  };
+  return {
+    n,
+    k: assemble(stiffness),
+    c: assemble(dashpot),
+    m: Float64Array.from({ length: n }, (_, i) => mass(i)),
+  };
+}
+
+const solve = ({ m, c, k, n }: System) => unwrap(quadraticEigen(m, c, k, n));
+
+describe("quadratic eigenproblem, dense", () => {
+  it.each([0, 0.02, 0.999, 1, 1.001, 3, -0.1])("meets the closed form of one mass, ζ = %d", (zeta) => {
+    const [m, w] = [2.5, 70];
+    const system = {
+      n: 1,
+      m: Float64Array.of(m),
+      c: Float64Array.of(2 * zeta * w * m),
+      k: Float64Array.of(w * w * m),
+    };
+    const modes = solve(system);
+    check(system, modes);
+    const inner = zeta * zeta - 1;
+    const root = w * Math.sqrt(Math.abs(inner));
+    const tolerance = zeta === 1 ? 1e-6 * w : 1e-12 * w;
+    for (let j = 0; j < 2; j++) {
+      const [er, ei] =
+        inner < 0
+          ? [-zeta * w, j === 0 ? root : -root]
+          : [-zeta * w + (zeta > 0 === (j === 0) ? root : -root), 0];
+      expect(Math.hypot(modes.re[j] - er, modes.im[j] - ei)).toBeLessThan(tolerance);
+    }
+  });
+
+  it.each([2, 10, 40])("decouples proportional damping exactly, %i masses", (n) => {
+    const base = chain(
+      n,
+      (i) => 1e5 * (1 + (i % 3)),
+      () => 0,
+      (i) => 1 + 0.1 * i,
+    );
+    const [alpha, beta] = [0.7, 2e-5];
+    const c = base.k.map((v, p) => beta * v + (p % (n + 1) === 0 ? alpha * base.m[p % n] : 0));
+    const system = { ...base, c };
+    const modes = solve(system);
+    check(system, modes);
+    const undamped = solve({ ...base, c: new Float64Array(n * n) });
+    for (let j = 0; j < 2 * n; j += 2) {
+      const w = undamped.im[j];
+      const zeta = alpha / (2 * w) + (beta * w) / 2;
+      expect(Math.abs(modes.re[j] / (zeta * w) + 1)).toBeLessThan(1e-10);
+      expect(Math.abs(modes.im[j] / (w * Math.sqrt(1 - zeta * zeta)) - 1)).toBeLessThan(1e-11);
+    }
+    expect(largest(undamped.re)).toBe(0);
+  });
+
+  it.each([1, 2, 5, 20, 55])("solves chains of %i with scattered dashpots", (n) => {
+    const system = chain(
+      n,
+      (i) => 1e5 * (1 + (i % 4)),
+      (i) => (i % 3 === 0 ? 40 + i : 0),
+      (i) => 1 + (i % 2),
+    );
+    check(system, solve(system));
+  });
+
+  it.each([
+    [
+      "overdamped in part",
+      chain(
+        8,
+        () => 100,
+        (i) => (i === 3 ? 5000 : 1),
+        () => 1,
+      ),
+    ],
+    [
+      "free-free",
+      chain(
+        9,
+        () => 100,
+        (i) => (i % 2 ? 3 : 0),
+        () => 2,
+        false,
+      ),
+    ],
+    [
+      "equal cells: repeating parameters",
+      chain(
+        24,
+        () => 100,
+        (i) => (i === 0 ? 2 : 0),
+        () => 1,
+      ),
+    ],
+    [
+      "masses and stiffnesses over 1e12",
+      chain(
+        6,
+        (i) => 10 ** (2 * i),
+        (i) => 10 ** i / 30,
+        (i) => 10 ** (-2 * i),
+      ),
+    ],
+  ] as const)("keeps residuals small: %s", (name, system) => {
+    // Heavy damping costs the low modes up to ‖C‖/√(‖M‖‖K‖), here 500, of the linear problem's accuracy
+    // (Tisseur, 2000); eight covers what is seen.
+    check(system, solve(system), name.startsWith("overdamped") ? 8 : 1);
+  });
+
+  it("solves a gyroscopic system: pure imaginary values in closed form", () => {
+    // Jeffcott rotor in a rotating frame: ẍ − 2Ωẏ + (w² − Ω²)x = 0 and its fellow; values ±i(w ± Ω).
+    const [w, spin] = [30, 12];
+    const k = w * w - spin * spin;
+    const system = {
+      n: 2,
+      m: Float64Array.of(1, 1),
+      c: Float64Array.of(0, -2 * spin, 2 * spin, 0),
+      k: Float64Array.of(k, 0, 0, k),
+    };
+    const modes = solve(system);
+    check(system, modes);
+    expect(difference(modes.im, [w - spin, spin - w, w + spin, -w - spin])).toBeLessThan(1e-12 * w);
+    expect(largest(modes.re)).toBeLessThan(1e-12 * w);
+  });
+
+  it("solves flutter and divergence: unsymmetric and negative stiffness", () => {
+    const one = Float64Array.of(1, 1);
+    const circulatory = { n: 2, m: one, c: new Float64Array(4), k: Float64Array.of(4, 3, -3, 4) };
+    const flutter = solve(circulatory);
+    check(circulatory, flutter);
+    // λ² = −(4 ± 3i): λ = ±(1 ∓ 2i)/√2 · …, checked by squaring.
+    for (let j = 0; j < 4; j++) {
+      expect(Math.abs(flutter.re[j] ** 2 - flutter.im[j] ** 2 + 4)).toBeLessThan(1e-13);
+      expect(Math.abs(Math.abs(2 * flutter.re[j] * flutter.im[j]) - 3)).toBeLessThan(1e-13);
+    }
+    const inverted = {
+      n: 2,
+      m: one,
+      c: Float64Array.of(0.1, 0.05, 0.05, 0.2),
+      k: Float64Array.of(-9, 1, 1, 16),
+    };
+    const modes = solve(inverted);
+    check(inverted, modes);
+    expect(modes.re.some((v) => v > 2)).toBe(true);
+  });
+
+  it.each([3, 12])("solves a seeded problem of %i with full mass", (n) => {
+    const gram = (seed: number) => {
+      const g = randomMatrix(n, n, seed);
+      return product(g, transposed(g, n, n), n, n, n);
+    };
+    const m = gram(1);
+    for (let i = 0; i < n; i++) m[i * n + i] += 1;
+    const system = { n, m, c: gram(2).map((v) => 0.1 * v), k: gram(3) };
+    check(system, solve(system));
+  });
+
+  it("keeps the response: superposition of its modes equals the direct solve", () => {
+    // H(iω) = Σ ψψᵀ / (a (iω − λ)), a = ψᵀ(2λM + C)ψ, for symmetric M, C, K (Tisseur & Meerbergen, 2001, §3.6).
+    const next = seeded(5);
+    const n = 5;
+    const system = chain(
+      n,
+      () => 50 + 20 * next(),
+      () => 0.4 + 0.3 * next(),
+      () => 1 + 0.2 * next(),
+    );
+    const { re, im, vectors } = solve(system);
+    const w = 4;
+    let [hr, hi] = [0, 0];
+    for (let j = 0; j < 2 * n; j++) {
+      let [ar, ai] = [0, 0];
+      for (let p = 0; p < n; p++) {
+        for (let q = 0; q < n; q++) {
+          const [xr, xi, yr, yi] = [
+            vectors.re[p * 2 * n + j],
+            vectors.im[p * 2 * n + j],
+            vectors.re[q * 2 * n + j],
+            vectors.im[q * 2 * n + j],
+          ];
+          const mass = p === q ? system.m[p] : 0;
+          const [gr, gi] = [2 * re[j] * mass + system.c[p * n + q], 2 * im[j] * mass];
+          const [zr, zi] = [xr * yr - xi * yi, xr * yi + xi * yr];
+          ar += gr * zr - gi * zi;
+          ai += gr * zi + gi * zr;
+        }
+      }
+      const [dr, di] = [-ar * re[j] - ai * (w - im[j]), ar * (w - im[j]) - ai * re[j]];
+      const [xr, xi] = [vectors.re[j], vectors.im[j]];
+      const [zr, zi] = [xr * xr - xi * xi, 2 * xr * xi];
+      const square = dr * dr + di * di;
+      hr += (zr * dr + zi * di) / square;
+      hi += (zi * dr - zr * di) / square;
+    }
+    // The same entry straight from the dynamic stiffness.
+    const direct = directReceptance(system, w);
+    expect(Math.hypot(hr - direct[0], hi - direct[1])).toBeLessThan(1e-12 * Math.hypot(...direct));
+  });
+
+  it("refuses what is not finite and a mass that is not positive", () => {
+    const one = Float64Array.of(1);
+    expect(quadraticEigen(one, Float64Array.of(Number.NaN), one, 1).ok).toBe(false);
+    expect(quadraticEigen(Float64Array.of(0), one, one, 1)).toMatchObject({
+      ok: false,
+      reason: expect.stringContaining("row 1"),
+    });
+    expect(quadraticEigen(one, one, Float64Array.of(Number.POSITIVE_INFINITY), 1).ok).toBe(false);
+  });
+});
+
+/** Entry (0, 0) of (K − ω²M + iωC)⁻¹ by plain complex elimination from the far end of a chain. */
+function directReceptance({ m, c, k, n }: System, w: number): [number, number] {
+  let [dr, di] = [0, 0];
+  for (let i = n - 1; i >= 0; i--) {
+    let [er, ei] = [k[i * n + i] - w * w * m[i], w * c[i * n + i]];
+    if (i < n - 1) {
+      const [br, bi] = [k[i * n + i + 1], w * c[i * n + i + 1]];
+      const [sr, si] = [br * br - bi * bi, 2 * br * bi];
+      const square = dr * dr + di * di;
+      er -= (sr * dr + si * di) / square;
+      ei -= (si * dr - sr * di) / square;
+    }
+    [dr, di] = [er, ei];
+  }
+  const square = dr * dr + di * di;
+  return [dr / square, -di / square];
+}
