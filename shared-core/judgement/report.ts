@@ -27,6 +27,11 @@ export interface Verdict {
     readonly at?: Readonly<Record<string, number>>;
     /** "proven" over all corners, or "searched". */
     readonly how?: "proven" | "searched";
+    /** Of a share: the part of the draws in which it holds, and how many were drawn. */
+    readonly share?: number;
+    readonly samples?: number;
+    /** Why `holds` is null. */
+    readonly reason?: string;
   };
   /** The parameter that matters most: relative change of the value per relative change of it. */
   readonly mattersMost?: { readonly name: string; readonly sensitivity: number };
@@ -56,9 +61,21 @@ export interface FileReport {
   readonly diagnostics: readonly Diagnostic[];
   readonly accepted: readonly { readonly diagnostic: Diagnostic; readonly reason: string }[];
   readonly cases: readonly CaseReport[];
+  /** Rules that broke: a defect of Thrum, to be shown and logged; what the other rules say stands. */
+  readonly faults: readonly InternalFault[];
+}
+
+/** An exception inside one rule or one piece of judging. */
+export interface InternalFault {
+  /** Code of the rule, or what was being judged. */
+  readonly where: string;
+  readonly case: string;
+  readonly error: unknown;
 }
 
 export interface JudgeOptions {
+  /** How far to go: `modes` leaves out answers and expectations, `text` modes as well. Default: everything. */
+  readonly upTo?: "text" | "modes" | "answers";
   /** Called between pieces of work; when it answers true the work ends with what is there. */
   readonly cancelled?: () => boolean;
 }

@@ -5,8 +5,12 @@ import type { Fix, RelatedPlace } from "../diagnostics/diagnostic.ts";
 import type { Assembly } from "../mechanics/assembly.ts";
 import type { Expectation, Instance, Model } from "../model/model.ts";
 import type { Outcome } from "../numerics/outcome.ts";
+import type { Expression } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
+import type { Quantity } from "../units/dimension.ts";
+import type { Found } from "./found.ts";
 import type { AnswerResult, Verdict } from "./report.ts";
+import type { Remark } from "./trial.ts";
 
 /**
  * What a rule costs: `text` reads the model only, `modes` needs the mode table (within a keystroke), `answers`
@@ -42,6 +46,8 @@ export interface RuleContext {
   readonly modes: Outcome<ModeTable>;
   readonly answers: ReadonlyMap<string, AnswerResult>;
   readonly judged: readonly Judged[];
+  /** The value of an expression with the numbers of the case. */
+  evaluate(expression: Expression): Found<Quantity>;
 }
 
 /** A verdict with what was learnt on the way to it. */
@@ -50,6 +56,8 @@ export interface Judged {
   readonly expectation: Expectation;
   /** The `let` and the value of it at which the expectation would hold, when one was found. */
   readonly cure?: Cure;
+  /** What its functions found out about the asks they read. */
+  readonly remarks: readonly Remark[];
   /** True when what kept it from being computed is said elsewhere as an error or a warning. */
   readonly explained: boolean;
 }

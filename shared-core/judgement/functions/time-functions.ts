@@ -43,7 +43,7 @@ export function settlingTime(trial: Trial, args: AnswerArguments, call: CallNode
   return last.ok ? succeed(seconds(last.value)) : last;
 }
 
-/** Mean time between upward crossings of the final equilibrium; where it has none, of the middle of its swing. */
+/** Mean time between upward crossings of the final equilibrium; where it has none, of zero or the middle of the swing. */
 export function periodOf(trial: Trial, args: AnswerArguments): Found<Quantity> {
   const read = readHistory(trial, args);
   if (!read.ok) return read;
@@ -132,5 +132,6 @@ function swingLevel(response: TimeResponse, quantity: QuantityRef): Found<number
   const low = response.lowest(quantity);
   if (!high.ok) return high;
   if (!low.ok) return low;
-  return succeed((high.value.value + low.value.value) / 2);
+  const straddles = low.value.value < 0 && high.value.value > 0;
+  return succeed(straddles ? 0 : (high.value.value + low.value.value) / 2);
 }

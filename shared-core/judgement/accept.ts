@@ -1,0 +1,79 @@
+import type { Diagnostic } from "../diagnostics/diagnostic.ts";
+import type { Model } from "../model/model.ts";
+import type { NoteNode } from "../syntax/tree.ts";
+import { span } from "../text/span.ts";
+import { statementAt } from "./places.ts";
+import { RULES } from "./registry.ts";
+import type { CostClass } from "./rule.ts";
+
+export interface Sorted {
+  readonly said: readonly Diagnostic[];
+  readonly accepted: readonly { readonly diagnostic: Diagnostic; readonly reason: string }[];
+}
+
+/**
+ * Takes out what `> accept CODE: reason` on the same statement silences, and hints at acceptances that silence
+ * nothing. An error cannot be accepted.
+ */
+export function sortAccepted(
+  model: Model,
+  diagnostics: readonly Diagnostic[],
+  done: ReadonlySet<CostClass>,
+): Sorted {
+  const said: Diagnostic[] = [];
+  const accepted: { diagnostic: Diagnostic; reason: string }[] = [];
+  const used = new Set<NoteNode>();
+  const refused = new Set<NoteNode>();
+  for (const diagnostic of diagnostics) {
+    const statement = statementAt(model, diagnostic.span);
+    const acceptance =
+      statement === undefined
+        ? undefined
+        : model.accepted.get(statement)?.find(({ code }) => code === diagnostic.code);
+    if (acceptance === undefined || diagnostic.severity === "error") {
+      said.push(diagnostic);
+      if (acceptance !== undefined) refused.add(acceptance.note);
+      continue;
+    }
+    used.add(acceptance.note);
+    accepted.push({ diagnostic, reason: acceptance.reason });
+  }
+  said.push(...unusedAccepts(model, used, refused, done));
+  return { said, accepted };
+}
+
+function unusedAccepts(
+  model: Model,
+  used: ReadonlySet<NoteNode>,
+  refused: ReadonlySet<NoteNode>,
+  done: ReadonlySet<CostClass>,
+): readonly Diagnostic[] {
+  return [...model.accepted.values()].flat().flatMap(({ code, note }) => {
+    const cost = RULES.find((rule) => rule.code === code)?.cost;
+    if (used.has(note) || (cost !== undefined && !done.has(cost))) return [];
+    return [unusedAccept(model, note, code, refused.has(note))];
+  });
+}
+
+function unusedAccept(model: Model, note: NoteNode, code: string, refused: boolean): Diagnostic {
+  return {
+    code: "unused-accept",
+    severity: "hint",
+    message: refused
+      ? `${code} is an error, and errors cannot be accepted`
+      : `nothing here says ${code}, so there is nothing to accept`,
+    hint: refused ? "mend what it says and take the acceptance out" : "take it out",
+    span: note.accept?.codeSpan ?? note.span,
+    tag: "unnecessary",
+    fixes: [
+      { title: "Take the acceptance out", edits: [{ span: wholeLine(model, note), text: "" }], safe: true },
+    ],
+  };
+}
+
+function wholeLine(model: Model, note: NoteNode): { readonly start: number; readonly end: number } {
+  const { text } = model.tree;
+  const start = text.lastIndexOf("\n", note.span.start - 1) + 1;
+  const newline = text.indexOf("\n", note.span.end);
+  return span(start, newline < 0 ? text.length : newline + 1);
+}

@@ -1,0 +1,117 @@
+/** Judging the expectations of one case: value, limit, margin, tolerance, what matters and what would cure it. */
+import type { Expectation, HistoryAsk, Instance } from "../model/model.ts";
+import type { Kind } from "../units/dimension.ts";
+import { NUMBER } from "../units/quantity.ts";
+import { siUnit } from "../units/show.ts";
+import { cureOf } from "./cure.ts";
+import { names } from "./expression-nodes.ts";
+import type { Found } from "./found.ts";
+import { type Influence, influences, readsHistory } from "./matters-most.ts";
+import type { Verdict } from "./report.ts";
+import type { Judged } from "./rule.ts";
+import { marginOf, type Sides, sidesOf } from "./sides.ts";
+import { judgeTolerances, type ToleranceFound } from "./tolerance/judge-tolerances.ts";
+import type { Remark, Trial } from "./trial.ts";
+
+/** `trial` is the case as it stands; `remarks` is where it writes what it finds out. */
+export function judgeExpectations(
+  trial: Trial,
+  remarks: Remark[],
+  expectations: readonly Expectation[],
+  cancelled: () => boolean,
+): readonly Judged[] {
+  const read = expectations.map((expectation) => {
+    remarks.length = 0;
+    const sides = sidesOf(trial, expectation);
+    return { expectation, sides, remarks: [...remarks] };
+  });
+  const computed = read.filter(({ sides }) => sides.ok).map(({ expectation }) => expectation);
+  const tolerances = judgeTolerances(trial, computed, cancelled);
+  const asked = read.filter(({ expectation, sides }) =>
+    wantsInfluences(trial, expectation, sides, tolerances),
+  );
+  const followed = influences(
+    trial,
+    asked.map(({ expectation }) => expectation),
+    cancelled,
+  );
+  return read.map(({ expectation, sides, remarks: found }) => {
+    const influence = followed.get(expectation) ?? [];
+    const fails = sides.ok && !sides.value.holds;
+    return {
+      verdict: verdictOf(expectation, sides, tolerances.get(expectation), influence[0]),
+      expectation,
+      cure: fails ? cureOf(trial, expectation, influence, cancelled) : undefined,
+      remarks: found,
+      explained: sides.ok || found.length > 0 || isExplained(trial, expectation, sides.reason),
+    };
+  });
+}
+
+/** What stands for an expectation that a fault of Thrum kept from being judged: it does not hold in silence. */
+export function unjudged(expectation: Expectation): Judged {
+  const sides = { ok: false, reason: "a fault of Thrum kept it from being judged" } as const;
+  const verdict = verdictOf(expectation, sides, undefined, undefined);
+  return { verdict, expectation, remarks: [], explained: false };
+}
+
+/** A history is integrated anew for every parameter: only where the expectation is in trouble. */
+function wantsInfluences(
+  trial: Trial,
+  expectation: Expectation,
+  sides: Found<Sides>,
+  tolerances: ReadonlyMap<Expectation, ToleranceFound>,
+): boolean {
+  if (!sides.ok) return false;
+  const histories = trial.instance.asks.filter((ask): ask is HistoryAsk => ask.kind === "history");
+  const thin = tolerances.get(expectation)?.holds === false;
+  return !sides.value.holds || thin || !readsHistory(expectation, histories);
+}
+
+function verdictOf(
+  expectation: Expectation,
+  sides: Found<Sides>,
+  tolerance: ToleranceFound | undefined,
+  mattersMost: Influence | undefined,
+): Verdict {
+  const { name } = expectation;
+  if (!sides.ok) {
+    const nothing = { value: null, limit: null, margin: null, holds: null } as const;
+    return {
+      name,
+      expectation,
+      ...nothing,
+      reason: sides.reason,
+      kind: NUMBER,
+      unit: siUnit(NUMBER),
+      tolerance,
+    };
+  }
+  const { value, limit, holds } = sides.value;
+  const kind: Kind = { dimension: value.dimension, rate: value.rate };
+  return {
+    name,
+    expectation,
+    holds,
+    value: value.value,
+    limit: limit.value,
+    kind,
+    unit: siUnit(kind),
+    margin: marginOf(sides.value),
+    tolerance,
+    mattersMost,
+  };
+}
+
+/** True when an error said elsewhere is why nothing came of it. */
+function isExplained(trial: Trial, { node, left, right }: Expectation, reason: string): boolean {
+  const { instance } = trial;
+  const error = ({ severity }: Instance["diagnostics"][number]): boolean => severity === "error";
+  const inside = instance.model.diagnostics.some(
+    (diagnostic) =>
+      error(diagnostic) && node.span.start <= diagnostic.span.start && diagnostic.span.end <= node.span.end,
+  );
+  const later = new Set(instance.asks.filter((ask) => ask.kind === "later").map((ask) => ask.name));
+  const readsLater = [left, right].some((side) => names(side, later));
+  return reason === trial.noSteadyAnswer || instance.diagnostics.some(error) || inside || readsLater;
+}

@@ -1,0 +1,81 @@
+import type { Analysis } from "../answers/analysis.ts";
+import type { ModeTable } from "../answers/answer.ts";
+import type { AnswerFunction, Instance, Model, Overrides } from "../model/model.ts";
+import { fail, type Outcome } from "../numerics/outcome.ts";
+import type { Expression } from "../syntax/tree.ts";
+import type { Quantity } from "../units/dimension.ts";
+import type { Found } from "./found.ts";
+import { readAnswer } from "./functions/registry.ts";
+import { growingModes } from "./growth.ts";
+import type { Remark, Trial } from "./trial.ts";
+import { rate } from "./wording.ts";
+
+/** What judging takes from the model and the answers; the real ones stand in judge.ts. */
+export interface Sources {
+  instantiate(model: Model, caseIndex: number, overrides?: Overrides): Instance;
+  analyse(instance: Instance): Analysis;
+  evaluate(instance: Instance, expression: Expression, answers: AnswerFunction): Outcome<Quantity>;
+}
+
+/** A trial of one case; `remark` hears what its functions find out. */
+export function trialOf(
+  sources: Sources,
+  model: Model,
+  caseIndex: number,
+  remark: (remark: Remark) => void = () => {},
+  overrides: Overrides = {},
+): Trial {
+  const instance = sources.instantiate(model, caseIndex, overrides);
+  const analysis = sources.analyse(instance);
+  return trialFrom(sources, instance, analysis, remark, overrides);
+}
+
+/** The same around an instance that is there already. */
+export function trialFrom(
+  sources: Sources,
+  instance: Instance,
+  analysis: Analysis,
+  remark: (remark: Remark) => void = () => {},
+  overrides: Overrides = {},
+): Trial {
+  let modes: Outcome<ModeTable> | undefined;
+  let growth: { readonly reason: string | undefined } | undefined;
+  const readModes = (): Outcome<ModeTable> => {
+    modes ??= analysis.modes();
+    return modes;
+  };
+  const trial: Trial = {
+    instance,
+    analysis,
+    modes: readModes,
+    get noSteadyAnswer() {
+      growth ??= { reason: whyNoSteadyAnswer(readModes()) };
+      return growth.reason;
+    },
+    evaluate: (expression): Found<Quantity> =>
+      sources.evaluate(instance, expression, (call, args) => {
+        const read = readAnswer(trial, call, args);
+        return read.ok ? read : fail(read.reason);
+      }),
+    with: (more) => trialOf(sources, instance.model, instance.caseIndex, undefined, joined(overrides, more)),
+    remark,
+  };
+  return trial;
+}
+
+function joined(a: Overrides, b: Overrides): Overrides {
+  return {
+    draws: new Map([...(a.draws ?? []), ...(b.draws ?? [])]),
+    parameters: new Map([...(a.parameters ?? []), ...(b.parameters ?? [])]),
+  };
+}
+
+/** A system with a growing mode has no steady response to speak of. */
+function whyNoSteadyAnswer(modes: Outcome<ModeTable>): string | undefined {
+  const growing = growingModes(modes)[0];
+  if (growing === undefined) return undefined;
+  const { number, frequencyHz } = growing;
+  return number === null || frequencyHz === null
+    ? "the system grows, so there is no steady response"
+    : `mode ${number} at ${rate(frequencyHz)} grows, so there is no steady response`;
+}
