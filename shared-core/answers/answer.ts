@@ -18,10 +18,14 @@ export interface Mode {
    * shape of the root, likewise scaled, in `complexShape`.
    */
   readonly shape: { readonly re: Float64Array; readonly im: Float64Array };
+  /** Shape of the complex root where dampers couple the modes; left out where it is the undamped one. */
+  readonly complexShape?: { readonly re: Float64Array; readonly im: Float64Array };
   /** Modal mass of the shape as scaled above; null without a partner. */
   readonly modalMass: number | null;
   /** Share of the moving mass per direction: `line` (sliding), `turn` (turning). */
   readonly effectiveMass: Readonly<Record<string, number>>;
+  /** Participation factor per direction for the shape as scaled above: load by unit base motion over modal mass. */
+  readonly participation: Readonly<Record<string, number>>;
   /** Share of the strain energy by element name. */
   readonly energyShare: Readonly<Record<string, number>>;
 }

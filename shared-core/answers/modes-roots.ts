@@ -1,0 +1,326 @@
+/**
+ * The complex roots of M root^2 + C root + K, with everything that damps: dampers, proportional damping, modal
+ * damping and loss factors as modal damping.
+ *
+ * The problem is put in the modal coordinates of the undamped one, where M is one and K diagonal; relaxing
+ * coordinates stand as their distance d from where springs alone would hold them, so that K has no coupling:
+ *
+ *   eta'' + (C_ee + modal) eta' + C_ed d' + lambda eta = 0
+ *           C_de eta' + C_dd d' + K_dd d = 0
+ *
+ * Free motions feel nothing and leave it; a motion held by dampers only leaves its position behind, which is a
+ * root of exactly zero. Where C is diagonal to rounding, roots are those of single oscillators; otherwise those
+ * of a dense state matrix, each improved by one Newton step on its own symmetric functional psi^T (...) psi = 0
+ * (error of second order in that of psi; Parlett, The Symmetric Eigenvalue Problem, 1998, section 1.4, carried
+ * over to the complex symmetric case).
+ */
+import { flatForms, formValues } from "../mechanics/flat-forms.ts";
+import { formValue } from "../mechanics/forms.ts";
+import { sumTerms } from "../mechanics/matrices.ts";
+import type { SquareTerm } from "../mechanics/star-mesh.ts";
+import { factorLu, multiply, solveLu } from "../numerics/dense.ts";
+import { generalEigen } from "../numerics/general-eigen.ts";
+import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
+import { sparseToDense } from "../numerics/sparse.ts";
+import type { UndampedModes } from "./modes-undamped.ts";
+
+/** A root, one of each complex pair, with its shape in modal and relaxing coordinates. 1/s. */
+export interface Root {
+  readonly re: number;
+  /** Not negative. */
+  readonly im: number;
+  /** count + relaxing entries: factors of the undamped modes, then distances d. */
+  readonly shapeRe: Float64Array;
+  readonly shapeIm: Float64Array;
+}
+
+/** Damping in the coordinates above. */
+export interface ModalSystem {
+  readonly count: number;
+  readonly relaxing: number;
+  /** (count + relaxing)^2, row-major, modal damping included. */
+  readonly damping: Float64Array;
+  /** relaxing^2. */
+  readonly relaxingStiffness: Float64Array;
+}
+
+/** Off-diagonal share of C below which it counts as diagonal: rounding of its own sums. */
+const DIAGONAL = 64 * Number.EPSILON;
+/** The same against the largest entry, for modes that no damper reaches. */
+const ROUNDING = 4 * Number.EPSILON;
+
+/**
+ * All roots but those of free motions. `added` is 2 zeta omega for each undamped mode: modal damping and loss
+ * factors. Real ones stand singly, both of an overdamped mode.
+ */
+export function complexRoots(
+  undamped: UndampedModes,
+  massDamping: number,
+  added: Float64Array,
+): Outcome<{ readonly roots: Root[]; readonly system: ModalSystem; readonly coupled: boolean }> {
+  const system = modalSystem(undamped, massDamping, added);
+  if (isDiagonal(system)) {
+    return succeed({ roots: singleRoots(undamped, system), system, coupled: false });
+  }
+  const found = coupledRoots(undamped, system);
+  if (!found.ok) return fail(found.reason);
+  return succeed({ roots: found.value, system, coupled: true });
+}
+
+/** Damping matrix in modal and relaxing coordinates. */
+export function modalSystem(undamped: UndampedModes, massDamping: number, added: Float64Array): ModalSystem {
+  const { reduction, count } = undamped;
+  const { relaxing } = reduction;
+  const size = count + relaxing;
+  const damping =
+    reduction.damping.length <= 2 * size ? dampingByForms(undamped, size) : dampingByProduct(undamped, size);
+  for (let r = 0; r < count; r++) damping[r * size + r] += massDamping + added[r];
+  const inner = reduction.stiffness.filter(({ form }) => form.coordinates.some((i) => i >= count));
+  const relaxingStiffness = new Float64Array(relaxing * relaxing);
+  for (const { form, value } of inner) {
+    form.coordinates.forEach((i, p) => {
+      form.coordinates.forEach((j, q) => {
+        if (i < count || j < count) return;
+        relaxingStiffness[(i - count) * relaxing + j - count] += value * form.factors[p] * form.factors[q];
+      });
+    });
+  }
+  return { count, relaxing, damping, relaxingStiffness };
+}
+
+/** Each row: the basis vector over the reduced coordinates; modes with their relaxing places, then distances. */
+function basisRows({ reduction, condensed, count, vectors }: UndampedModes, size: number): Float64Array {
+  const basis = new Float64Array(size * size);
+  for (let r = 0; r < count; r++) {
+    const row = vectors.subarray(r * count, (r + 1) * count);
+    basis.set(row, r * size);
+    for (let i = count; i < size; i++) basis[r * size + i] = formValue(condensed.inner[i], row);
+  }
+  for (let k = 0; k < reduction.relaxing; k++) basis[(count + k) * size + count + k] = 1;
+  return basis;
+}
+
+function dampingByForms(undamped: UndampedModes, size: number): Float64Array {
+  const basis = basisRows(undamped, size);
+  const dampers = flatForms(undamped.reduction.damping);
+  const rates = new Float64Array(size * dampers.count);
+  for (let r = 0; r < size; r++) {
+    formValues(dampers, basis, r * size, rates.subarray(r * dampers.count, (r + 1) * dampers.count));
+  }
+  const weighted = new Float64Array(dampers.count * size);
+  for (let e = 0; e < dampers.count; e++) {
+    for (let r = 0; r < size; r++) weighted[e * size + r] = dampers.value[e] * rates[r * dampers.count + e];
+  }
+  return symmetrised(multiply(rates, weighted, size, dampers.count, size), size);
+}
+
+function dampingByProduct(undamped: UndampedModes, size: number): Float64Array {
+  const basis = basisRows(undamped, size);
+  const terms = undamped.reduction.damping.map(({ form, value }: SquareTerm) => ({
+    row: form,
+    column: form,
+    value,
+  }));
+  const damping = sparseToDense(sumTerms(terms, size));
+  const half = multiply(basis, damping, size, size, size);
+  const columns = new Float64Array(size * size);
+  for (let i = 0; i < size; i++) for (let j = 0; j < size; j++) columns[j * size + i] = basis[i * size + j];
+  return symmetrised(multiply(half, columns, size, size, size), size);
+}
+
+function symmetrised(a: Float64Array, n: number): Float64Array {
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < i; j++) {
+      const mean = (a[i * n + j] + a[j * n + i]) / 2;
+      a[i * n + j] = mean;
+      a[j * n + i] = mean;
+    }
+  }
+  return a;
+}
+
+function isDiagonal({ damping, count, relaxing }: ModalSystem): boolean {
+  if (relaxing > 0) return false;
+  let largest = 0;
+  for (let i = 0; i < count; i++) largest = Math.max(largest, Math.abs(damping[i * count + i]));
+  for (let i = 0; i < count; i++) {
+    for (let j = 0; j < i; j++) {
+      const scale = Math.sqrt(Math.abs(damping[i * count + i] * damping[j * count + j]));
+      if (Math.abs(damping[i * count + j]) > Math.max(DIAGONAL * scale, ROUNDING * largest)) return false;
+    }
+  }
+  return true;
+}
+
+/** Roots of root^2 + c root + lambda: one complex with im > 0, or two real ones, the larger in size first. */
+export function oscillatorRoots(c: number, lambda: number): readonly { re: number; im: number }[] {
+  const half = c / 2;
+  const square = lambda - half * half;
+  if (square > 0) return [{ re: -half, im: Math.sqrt(square) }];
+  // The sum that does not cancel first, the other root from the product.
+  const far = -(half + (half < 0 ? -1 : 1) * Math.sqrt(-square));
+  const near = far === 0 ? 0 : lambda / far;
+  return [
+    { re: far, im: 0 },
+    { re: near, im: 0 },
+  ];
+}
+
+function singleRoots({ count, free, values }: UndampedModes, { damping }: ModalSystem): Root[] {
+  const roots: Root[] = [];
+  for (let r = free; r < count; r++) {
+    for (const { re, im } of oscillatorRoots(damping[r * count + r], values[r])) {
+      const shapeRe = new Float64Array(count);
+      shapeRe[r] = 1;
+      roots.push({ re: re + 0, im, shapeRe, shapeIm: new Float64Array(count) });
+    }
+  }
+  return roots;
+}
+
+/**
+ * State (s eta, eta', d) without the free motions and the positions of damper-held ones; s = sqrt |lambda| makes
+ * the matrix as nearly normal as the damping lets it be.
+ */
+function coupledRoots(undamped: UndampedModes, system: ModalSystem): Outcome<Root[]> {
+  const { free, held, count, values } = undamped;
+  const { relaxing } = system;
+  const elastic = count - free - held;
+  const moving = count - free;
+  const n = elastic + moving + relaxing;
+  const built = stateMatrix(undamped, system);
+  if (!built.ok) return fail(built.reason);
+  const solved = generalEigen(built.value, n);
+  if (!solved.ok) return fail(solved.reason);
+  const { re, im, right } = solved.value;
+  if (right === undefined) return fail("the eigenvalue routine gave no shapes");
+  const stretch = stretches(values, free + held);
+  const roots: Root[] = [];
+  for (let j = 0; j < n; j++) {
+    if (im[j] < 0) continue;
+    const shapeRe = new Float64Array(count + relaxing);
+    const shapeIm = new Float64Array(count + relaxing);
+    for (let r = 0; r < elastic; r++) {
+      shapeRe[free + held + r] = right.re[r * n + j] / stretch[r];
+      shapeIm[free + held + r] = right.im[r * n + j] / stretch[r];
+    }
+    const size = re[j] * re[j] + im[j] * im[j];
+    for (let r = 0; r < held && size > 0; r++) {
+      const at = (elastic + r) * n + j;
+      shapeRe[free + r] = (right.re[at] * re[j] + right.im[at] * im[j]) / size;
+      shapeIm[free + r] = (right.im[at] * re[j] - right.re[at] * im[j]) / size;
+    }
+    for (let k = 0; k < relaxing; k++) {
+      shapeRe[count + k] = right.re[(elastic + moving + k) * n + j];
+      shapeIm[count + k] = right.im[(elastic + moving + k) * n + j];
+    }
+    roots.push(improved({ re: re[j], im: im[j], shapeRe, shapeIm }, undamped, system));
+  }
+  for (let r = 0; r < held; r++) {
+    const shapeRe = new Float64Array(count + relaxing);
+    shapeRe[free + r] = 1;
+    roots.push({ re: 0, im: 0, shapeRe, shapeIm: new Float64Array(count + relaxing) });
+  }
+  return succeed(roots);
+}
+
+/** sqrt |lambda| of the elastic modes; a root of zero takes the largest one's, so that the matrix stays scaled. */
+function stretches(values: Float64Array, first: number): Float64Array {
+  const largest = values.reduce((most, v) => Math.max(most, Math.abs(v)), 0);
+  return values.slice(first).map((v) => Math.sqrt(Math.abs(v) || largest || 1));
+}
+
+function stateMatrix(undamped: UndampedModes, system: ModalSystem): Outcome<Float64Array> {
+  const { free, held, count, values } = undamped;
+  const { relaxing, damping, relaxingStiffness } = system;
+  const size = count + relaxing;
+  const elastic = count - free - held;
+  const moving = count - free;
+  const n = elastic + moving + relaxing;
+  const a = new Float64Array(n * n);
+  const stretch = stretches(values, free + held);
+  for (let r = 0; r < elastic; r++) {
+    a[r * n + elastic + held + r] = stretch[r];
+    a[(elastic + held + r) * n + r] = -values[free + held + r] / stretch[r];
+  }
+  for (let i = 0; i < moving; i++) {
+    for (let j = 0; j < moving; j++) {
+      a[(elastic + i) * n + elastic + j] = -damping[(free + i) * size + free + j];
+    }
+  }
+  if (relaxing === 0) return succeed(a);
+  // d' = -C_dd^-1 (C_de eta' + K_dd d), and what it puts back into the modes.
+  const width = moving + relaxing;
+  const right = new Float64Array(relaxing * width);
+  const inner = new Float64Array(relaxing * relaxing);
+  for (let k = 0; k < relaxing; k++) {
+    for (let j = 0; j < moving; j++) right[k * width + j] = -damping[(count + k) * size + free + j];
+    for (let l = 0; l < relaxing; l++) {
+      right[k * width + moving + l] = -relaxingStiffness[k * relaxing + l];
+      inner[k * relaxing + l] = damping[(count + k) * size + count + l];
+    }
+  }
+  const factor = factorLu(inner, relaxing);
+  if (!factor.ok) return fail("dampers cancel on a place without inertia");
+  const rates = solveLu(factor.value, right, width);
+  for (let k = 0; k < relaxing; k++) {
+    for (let j = 0; j < width; j++) {
+      const rate = rates[k * width + j];
+      a[(elastic + moving + k) * n + elastic + j] = rate;
+      for (let i = 0; i < moving; i++) {
+        a[(elastic + i) * n + elastic + j] -= damping[(free + i) * size + count + k] * rate;
+      }
+    }
+  }
+  return succeed(a);
+}
+
+/** Newton steps larger than this share of the root, or where the functional is flat, are not trusted. */
+const TRUSTED_STEP = 1e-5;
+const FLAT = 1e-5;
+
+/** One Newton step on a root^2 + b root + c = 0 with a, b, c = psi^T (M, C, K) psi. */
+function improved(root: Root, undamped: UndampedModes, system: ModalSystem): Root {
+  const { re, im, shapeRe: x, shapeIm: y } = root;
+  const { count, values } = undamped;
+  const { relaxing, damping, relaxingStiffness } = system;
+  const size = count + relaxing;
+  const a: [number, number] = [0, 0];
+  const b: [number, number] = [0, 0];
+  const c: [number, number] = [0, 0];
+  for (let r = 0; r < count; r++) addSquare(a, 1, x[r], y[r]);
+  for (let r = 0; r < count; r++) addSquare(c, values[r], x[r], y[r]);
+  for (let i = 0; i < size; i++) {
+    let sumRe = 0;
+    let sumIm = 0;
+    for (let j = 0; j < size; j++) {
+      sumRe += damping[i * size + j] * x[j];
+      sumIm += damping[i * size + j] * y[j];
+    }
+    b[0] += x[i] * sumRe - y[i] * sumIm;
+    b[1] += x[i] * sumIm + y[i] * sumRe;
+  }
+  for (let i = 0; i < relaxing; i++) {
+    for (let j = 0; j < relaxing; j++) {
+      const k = relaxingStiffness[i * relaxing + j];
+      c[0] += k * (x[count + i] * x[count + j] - y[count + i] * y[count + j]);
+      c[1] += k * (x[count + i] * y[count + j] + y[count + i] * x[count + j]);
+    }
+  }
+  // a root + b, then (a root + b) root + c and 2 a root + b.
+  const linear = [a[0] * re - a[1] * im + b[0], a[0] * im + a[1] * re + b[1]];
+  const value = [linear[0] * re - linear[1] * im + c[0], linear[0] * im + linear[1] * re + c[1]];
+  const slope = [linear[0] + a[0] * re - a[1] * im, linear[1] + a[0] * im + a[1] * re];
+  const square = slope[0] * slope[0] + slope[1] * slope[1];
+  const scale = Math.hypot(a[0], a[1]) * Math.hypot(re, im) + Math.hypot(b[0], b[1]);
+  if (!(Math.sqrt(square) > FLAT * scale)) return root;
+  const stepRe = (value[0] * slope[0] + value[1] * slope[1]) / square;
+  const stepIm = im === 0 ? 0 : (value[1] * slope[0] - value[0] * slope[1]) / square;
+  if (!(Math.hypot(stepRe, stepIm) <= TRUSTED_STEP * Math.hypot(re, im))) return root;
+  return { ...root, re: re - stepRe, im: im - stepIm };
+}
+
+function addSquare(sum: [number, number], factor: number, x: number, y: number): void {
+  sum[0] += factor * (x * x - y * y);
+  sum[1] += 2 * factor * x * y;
+}

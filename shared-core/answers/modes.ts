@@ -1,0 +1,228 @@
+/**
+ * The mode table: free modes (number 0), elastic ones from 1 with the complex roots matched to them, and the
+ * roots that no undamped mode stands behind.
+ */
+import { formValue } from "../mechanics/forms.ts";
+import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
+import type { Mode, ModeTable } from "./answer.ts";
+import { type ModalBasis, namedValues } from "./modes-basis.ts";
+import { matchRoots } from "./modes-match.ts";
+import { complexRoots, oscillatorRoots, type Root } from "./modes-roots.ts";
+
+type Shape = Mode["shape"];
+
+/** Entries within this share of the largest are taken for equally large: the first of them becomes 1. */
+const SAME_SIZE = 1e-9;
+
+/** Roots, damping, shapes, participation and energy shares of an assembly's modes. */
+export function modeTable(basis: ModalBasis): Outcome<ModeTable> {
+  const { assembly, undamped } = basis;
+  const found = complexRoots(undamped, assembly.massDamping, basis.modalRates(true));
+  if (!found.ok) return fail(found.reason);
+  const { roots, system, coupled } = found.value;
+  const { free, held, count, values } = undamped;
+  const { ofMode, left } = matchRoots(roots, values, free + held, count);
+  const modes: Mode[] = [];
+  for (let r = 0; r < free; r++) modes.push(freeMode(basis, r));
+  for (let r = free + held; r < count; r++) {
+    const own = ofMode[r].map((s) => roots[s]);
+    const rate = system.damping[r * (count + system.relaxing) + r];
+    modes.push(elasticMode(basis, r, own.length > 0 ? own : asRoots(rate, values[r]), coupled));
+  }
+  const others = left.map((s) => roots[s]).sort((a, b) => size(a) - size(b) || a.re - b.re);
+  for (const root of others) modes.push(looseMode(basis, root));
+  const stabilityMargin = roots.reduce((least, { re }) => Math.min(least, 0 - re), Number.POSITIVE_INFINITY);
+  return succeed({ modes, stabilityMargin });
+}
+
+const size = ({ re, im }: Root): number => Math.hypot(re, im);
+
+const asRoots = (rate: number, value: number): Root[] =>
+  oscillatorRoots(rate, value).map((root) => ({
+    ...root,
+    shapeRe: new Float64Array(0),
+    shapeIm: new Float64Array(0),
+  }));
+
+function freeMode(basis: ModalBasis, r: number): Mode {
+  const { massDamping } = basis.assembly;
+  return withParts(
+    {
+      number: 0,
+      frequencyHz: 0,
+      dampedFrequencyHz: 0,
+      dampingRatio: null,
+      eigenvalue: [0, 0],
+      ...(massDamping === 0 ? {} : { realRoots: [-massDamping, 0] }),
+    },
+    undampedParts(basis, r),
+  );
+}
+
+/** Both together; the getters of the parts stay getters. */
+const withParts = (roots: Omit<Mode, keyof UndampedParts>, parts: UndampedParts): Mode =>
+  Object.defineProperties(roots as Mode, Object.getOwnPropertyDescriptors(parts));
+
+function elasticMode(basis: ModalBasis, r: number, roots: readonly Root[], coupled: boolean): Mode {
+  const { free, held, values } = basis.undamped;
+  const slow = roots.reduce((best, root) => (Math.abs(root.re) < Math.abs(best.re) ? root : best));
+  const shape = lazy(() => complexShape(basis, slow));
+  const mode = withParts(
+    {
+      number: r - free - held + 1,
+      frequencyHz: Math.sqrt(Math.max(0, values[r])) / (2 * Math.PI),
+      dampedFrequencyHz: slow.im / (2 * Math.PI),
+      dampingRatio: dampingRatio(roots),
+      eigenvalue: [slow.re, slow.im],
+      ...(roots.length === 2 ? { realRoots: realRoots(roots) } : {}),
+    },
+    undampedParts(basis, r),
+  );
+  if (coupled) Object.defineProperty(mode, "complexShape", { get: shape, enumerable: true });
+  return mode;
+}
+
+/** A root that no undamped mode stands behind. */
+function looseMode(basis: ModalBasis, root: Root): Mode {
+  const shape = lazy(() => complexShape(basis, root));
+  const shares = lazy(() => strainShares(basis, root));
+  return {
+    number: null,
+    frequencyHz: null,
+    dampedFrequencyHz: root.im / (2 * Math.PI),
+    dampingRatio: root.im === 0 ? null : dampingRatio([root]),
+    eigenvalue: [root.re, root.im],
+    get shape() {
+      return shape();
+    },
+    modalMass: null,
+    effectiveMass: {},
+    participation: {},
+    get energyShare() {
+      return shares();
+    },
+  };
+}
+
+/** -Re/|root| of a pair; of two real roots that both decay or both grow, the ratio of the oscillator they make. */
+function dampingRatio(roots: readonly Root[]): number | null {
+  const [first, second] = roots;
+  if (second === undefined) return size(first) > 0 ? (0 - first.re) / size(first) : null;
+  const product = first.re * second.re;
+  return product > 0 ? (0 - first.re - second.re) / (2 * Math.sqrt(product)) : null;
+}
+
+function realRoots(roots: readonly Root[]): readonly [number, number] {
+  const [a, b] = roots.map(({ re }) => re);
+  return a <= b ? [a, b] : [b, a];
+}
+
+type UndampedParts = Pick<Mode, "shape" | "modalMass" | "effectiveMass" | "participation" | "energyShare">;
+
+/** What the undamped shape gives; computed when looked at, for a large model seldom is. */
+function undampedParts(basis: ModalBasis, r: number): UndampedParts {
+  const scaled = lazy(() => {
+    const named = namedValues(basis.assembly, basis.shape(r));
+    const largest = named[largestAt(named, new Float64Array(named.length))] || 1;
+    return { shape: { re: named.map((v) => v / largest), im: new Float64Array(named.length) }, largest };
+  });
+  const shares = lazy(() => byElement(basis, basis.energyShares(r)));
+  const effective = lazy(() => {
+    const entries = basis.participation(r).map(({ direction, factor, total }) => {
+      return [direction, (factor * factor) / total] as const;
+    });
+    return Object.fromEntries(entries);
+  });
+  const participation = lazy(() => {
+    const { largest } = scaled();
+    return Object.fromEntries(basis.participation(r).map((p) => [p.direction, p.factor * largest]));
+  });
+  return {
+    get shape() {
+      return scaled().shape;
+    },
+    get modalMass() {
+      return 1 / scaled().largest ** 2;
+    },
+    get effectiveMass() {
+      return effective();
+    },
+    get participation() {
+      return participation();
+    },
+    get energyShare() {
+      return shares();
+    },
+  };
+}
+
+function byElement(basis: ModalBasis, shares: Float64Array | undefined): Record<string, number> {
+  const out: Record<string, number> = {};
+  if (shares === undefined) return out;
+  basis.assembly.elements.forEach(({ name, stiffness }, e) => {
+    if (stiffness !== 0) out[name] = shares[e];
+  });
+  return out;
+}
+
+/** Shape of a root over the free coordinates. */
+export function freeShapeOf(basis: ModalBasis, root: Root): Shape {
+  const { reduction, condensed, count, vectors } = basis.undamped;
+  const part = (factors: Float64Array): Float64Array => {
+    const inertial = new Float64Array(count);
+    for (let r = 0; r < count; r++) {
+      const factor = factors[r];
+      if (factor === 0) continue;
+      for (let i = 0; i < count; i++) inertial[i] += factor * vectors[r * count + i];
+    }
+    const reduced = Float64Array.from(condensed.inner, (form, i) => {
+      return formValue(form, inertial) + (i < count ? 0 : factors[i]);
+    });
+    return Float64Array.from(reduction.recovery, (form) => formValue(form, reduced));
+  };
+  return { re: part(root.shapeRe), im: part(root.shapeIm) };
+}
+
+/** Shape of a root over the named coordinates, largest entry 1. */
+function complexShape(basis: ModalBasis, root: Root): Shape {
+  const free = freeShapeOf(basis, root);
+  const re = namedValues(basis.assembly, free.re);
+  const im = namedValues(basis.assembly, free.im);
+  const at = largestAt(re, im);
+  const square = re[at] * re[at] + im[at] * im[at];
+  if (!(square > 0)) return { re, im };
+  const [a, b] = [re[at] / square, -im[at] / square];
+  return { re: re.map((x, i) => x * a - im[i] * b), im: im.map((y, i) => y * a + re[i] * b) };
+}
+
+function strainShares(basis: ModalBasis, root: Root): Record<string, number> {
+  const { re, im } = freeShapeOf(basis, root);
+  const { elements } = basis.assembly;
+  const energies = Float64Array.from(
+    elements,
+    ({ form, stiffness }) => stiffness * (formValue(form, re) ** 2 + formValue(form, im) ** 2),
+  );
+  const sum = energies.reduce((a, b) => a + b, 0);
+  return byElement(basis, sum > 0 ? energies.map((energy) => energy / sum) : undefined);
+}
+
+function largestAt(re: Float64Array, im: Float64Array): number {
+  let at = 0;
+  let most = 0;
+  for (let i = 0; i < re.length; i++) {
+    const entry = Math.hypot(re[i], im[i]);
+    if (entry > most * (1 + SAME_SIZE)) {
+      most = entry;
+      at = i;
+    }
+  }
+  return at;
+}
+
+function lazy<T>(compute: () => T): () => T {
+  let known: { value: T } | undefined;
+  return () => {
+    known ??= { value: compute() };
+    return known.value;
+  };
+}
