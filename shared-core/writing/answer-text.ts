@@ -1,3 +1,4 @@
+import type { HistoryAnswer, SweepAnswer } from "../answers/answer.ts";
 import type { AnswerResult, CaseReport, FileReport } from "../judgement/report.ts";
 import { formatNumber } from "../units/show.ts";
 import { type ShownSeries, shownSeries } from "./answer-series.ts";
@@ -59,16 +60,16 @@ function answerBlock(
   const series = shownSeries(result.value, units);
   const x = result.value.kind === "sweep" ? "Hz" : "s";
   return [
-    `${ink.strong(name)}  ${result.value.kind}${series.length ? `, ${span(series[0], x)}` : ""}`,
+    `${ink.strong(name)}  ${result.value.kind}${series.length ? `, ${span(result.value, x)}` : ""}`,
     ...indent(peakLines(series, x, units)),
     ...series.flatMap((each) => plotLines(each, x, options)),
   ];
 }
 
-function span({ x }: ShownSeries, unit: string): string {
-  return x.length === 0
-    ? "no points"
-    : `${formatNumber(x[0])} to ${formatNumber(x[x.length - 1])} ${unit}, ${x.length} points`;
+function span(answer: SweepAnswer | HistoryAnswer, unit: string): string {
+  const x = answer.kind === "sweep" ? answer.frequencyHz : answer.timeS;
+  if (x.length === 0) return "no points";
+  return `${formatNumber(x[0])} to ${formatNumber(x[x.length - 1])} ${unit}, ${x.length} points`;
 }
 
 function peakLines(series: readonly ShownSeries[], x: "Hz" | "s", units: UnitView): string[] {
@@ -77,14 +78,14 @@ function peakLines(series: readonly ShownSeries[], x: "Hz" | "s", units: UnitVie
       ? [quantity, "", oneLine(peak.reason)]
       : [
           quantity,
-          inUnit(peak.value * unit.factor, unit),
+          `peak ${inUnit(peak.value * unit.factor, unit)}`,
           `at ${inUnit(peak.at, units.unitFor(x, peak.at))}`,
         ],
   );
   return tableLines(
     [
       { head: "", align: "left" },
-      { head: "peak", align: "right" },
+      { head: "", align: "right" },
       { head: "", align: "left" },
     ],
     rows,

@@ -163,6 +163,9 @@ function toleranceJson(tolerance: Verdict["tolerance"]): Json | undefined {
     worst: finite(tolerance.worst),
     at: tolerance.at && record(Object.entries(tolerance.at), finite),
     how: tolerance.how,
+    share: tolerance.share,
+    samples: tolerance.samples,
+    reason: tolerance.reason ?? (tolerance.holds === null ? "it could not be computed" : undefined),
   };
 }
 

@@ -32,6 +32,7 @@ export function modeLines(table: ModeTable, coordinates: readonly string[], unit
 function frequencyText(mode: Mode, units: UnitView): string {
   if (mode.number === 0) return "free";
   const hertz = mode.frequencyHz ?? mode.dampedFrequencyHz;
+  if (mode.number === null && hertz === 0) return "–";
   return inUnit(hertz, units.unitFor("Hz", hertz));
 }
 

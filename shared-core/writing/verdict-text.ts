@@ -45,7 +45,15 @@ function caseLines(report: FileReport, each: CaseReport, first: boolean, options
     return column >= MARGIN_COLUMN ? options.ink.quiet(text) : text;
   };
   const head = first ? [] : [`case ${options.ink.strong(each.name)}`];
-  return [...head, ...tableLines(VERDICT_COLUMNS, rows, paint).map((line) => `  ${line}`), ""];
+  const lines = tableLines(VERDICT_COLUMNS, rows, paint).map(
+    (line, i) => `  ${line}${whyOpen(each.verdicts[i])}`,
+  );
+  return [...head, ...lines, ""];
+}
+
+/** A reason is a sentence: it stands behind the row and takes no part in the widths of the columns. */
+function whyOpen({ value, holds, reason }: Verdict): string {
+  return holds === null || value === null ? `  ${oneLine(reason ?? "it could not be computed")}` : "";
 }
 
 const VERDICT_COLUMNS: readonly Column[] = [
@@ -60,7 +68,7 @@ const MARGIN_COLUMN = 4;
 
 function verdictCells(report: FileReport, verdict: Verdict, { units }: TextOptions): string[] {
   const word = verdict.holds === null ? "open" : verdict.holds ? "holds" : "fails";
-  if (verdict.value === null) return [word, verdict.name, "", `${oneLine(verdict.reason ?? "not computed")}`];
+  if (verdict.value === null) return [word, verdict.name];
   const unit = verdictUnit(report, verdict, units);
   const limit =
     verdict.limit === null ? "" : `${SIGNS[verdict.expectation.operator]} ${inUnit(verdict.limit, unit)}`;
@@ -80,7 +88,7 @@ export function verdictUnit(report: FileReport, verdict: Verdict, system: UnitSy
 
 function marginText({ margin }: Verdict): string {
   if (margin === null || !Number.isFinite(margin)) return "";
-  const share = formatNumber(Number((Math.abs(margin) * 100).toPrecision(margin >= 0.1 ? 2 : 2)));
+  const share = formatNumber(Number((Math.abs(margin) * 100).toPrecision(2)));
   return `${share} % ${margin < 0 ? "beyond" : "left"}`;
 }
 
@@ -88,8 +96,10 @@ function notes({ tolerance, mattersMost }: Verdict, unit: ShownUnit): string {
   const parts: string[] = [];
   if (tolerance?.kind === "worst_case" && tolerance.worst !== null)
     parts.push(`worst ${inUnit(tolerance.worst, unit)} (${tolerance.how ?? "searched"})`);
-  if (tolerance?.kind === "share" && tolerance.worst !== null)
-    parts.push(`${formatNumber(tolerance.worst * 100)} % of draws`);
+  if (tolerance?.share !== undefined)
+    parts.push(`${formatNumber(tolerance.share * 100)} % of ${tolerance.samples ?? "all"} draws hold`);
+  if (tolerance?.holds === null && tolerance.reason)
+    parts.push(`tolerance open: ${oneLine(tolerance.reason)}`);
   if (mattersMost) parts.push(`${mattersMost.name} +10 %: ${signed(mattersMost.sensitivity * 10)} %`);
   return parts.join(", ");
 }

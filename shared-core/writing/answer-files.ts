@@ -1,0 +1,60 @@
+import type { CaseReport, FileReport } from "../judgement/report.ts";
+import type { UnitSystem } from "../units/show.ts";
+import { answerCsv, modesCsv } from "./answer-csv.ts";
+import { historyFigure, modesFigure, sweepFigure } from "./figure/answer-figures.ts";
+import { figureSvg } from "./figure/svg.ts";
+import type { TextFile } from "./system-files.ts";
+import { type UnitView, unitView } from "./units/unit-view.ts";
+import { writtenUnits } from "./units/written-units.ts";
+
+export interface AnswerFilesOptions {
+  readonly asks: readonly string[];
+  readonly as: "csv" | "svg";
+  readonly units: UnitSystem;
+}
+
+const PICTURE = { width: 720, height: 460 };
+
+/** One file for each answered ask and case: `run_up.csv`, `run_up.winter.csv`. CSV is SI; pictures are in `units`. */
+export function answerFiles(report: FileReport, options: AnswerFilesOptions): TextFile[] {
+  const units = unitView(options.units, writtenUnits(report.model));
+  return report.cases.flatMap((each) => {
+    const suffix = each.name === report.model.cases[0].name ? "" : `.${each.name}`;
+    return [...contents(each, options, units)].map(([ask, text]) => ({
+      name: `${ask}${suffix}.${options.as}`,
+      text,
+    }));
+  });
+}
+
+function contents(each: CaseReport, { asks, as }: AnswerFilesOptions, units: UnitView): Map<string, string> {
+  const texts = new Map<string, string>();
+  const names = each.instance.assembly.coordinates.map((coordinate) => coordinate.name);
+  if (asks.includes("modes") && each.modes.ok) {
+    const { table } = each.modes;
+    texts.set(
+      "modes",
+      as === "csv" ? modesCsv(table, names) : figureSvg(modesFigure(table, names, units), PICTURE),
+    );
+  }
+  for (const [name, result] of each.answers) {
+    if (!result.ok || !asks.includes(name)) continue;
+    const answer = result.value;
+    if (as === "csv") texts.set(name, answerCsv(answer));
+    else {
+      const figure =
+        answer.kind === "sweep" ? sweepFigure(name, answer, units) : historyFigure(name, answer, units);
+      texts.set(name, figureSvg(figure, PICTURE));
+    }
+  }
+  return texts;
+}
+
+/** The report with only these answers in it. */
+export function withAsks(report: FileReport, asks: readonly string[]): FileReport {
+  const cases = report.cases.map((each) => ({
+    ...each,
+    answers: new Map([...each.answers].filter(([name]) => asks.includes(name))),
+  }));
+  return { ...report, cases };
+}
