@@ -27,7 +27,7 @@ export function showParameter(instance: Instance, name: string, value: number): 
 }
 
 /** The first unit that an expression, or a `let` it names, is written in. Units inside calls are of arguments. */
-function writtenUnit(instance: Instance, expression: Expression): UnitMeaning | undefined {
+export function writtenUnit(instance: Instance, expression: Expression): UnitMeaning | undefined {
   switch (expression.kind) {
     case "number":
       return meaningOf(expression.unit);

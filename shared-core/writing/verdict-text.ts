@@ -1,12 +1,15 @@
 import type { Diagnostic } from "../diagnostics/diagnostic.ts";
 import type { CaseReport, FileReport, Verdict } from "../judgement/report.ts";
+import { writtenUnit } from "../judgement/shown-unit.ts";
+import type { Instance } from "../model/model.ts";
+import { isNumber, sameKind } from "../units/quantity.ts";
 import { formatNumber, siUnit, type UnitSystem } from "../units/show.ts";
 import { type FileOutcome, holds } from "./file-outcome.ts";
 import type { Ink } from "./ink.ts";
 import { diagnosticLines, oneLine } from "./places-text.ts";
 import { type Column, tableLines } from "./table.ts";
 import { inUnit, largest, type ShownUnit, unitView } from "./units/unit-view.ts";
-import { unitWrittenIn, writtenUnits } from "./units/written-units.ts";
+import { writtenUnits } from "./units/written-units.ts";
 
 export interface TextOptions {
   readonly ink: Ink;
@@ -39,7 +42,7 @@ export function summaryLine(files: readonly FileOutcome[]): string {
 
 function caseLines(report: FileReport, each: CaseReport, first: boolean, options: TextOptions): string[] {
   if (each.verdicts.length === 0) return [];
-  const rows = each.verdicts.map((verdict) => verdictCells(report, verdict, options));
+  const rows = each.verdicts.map((verdict) => verdictCells(report, each, verdict, options));
   const paint = (text: string, row: number, column: number): string => {
     if (column === 0) return verdictInk(each.verdicts[row], options.ink)(text);
     return column >= MARGIN_COLUMN ? options.ink.quiet(text) : text;
@@ -66,10 +69,15 @@ const VERDICT_COLUMNS: readonly Column[] = [
 ];
 const MARGIN_COLUMN = 4;
 
-function verdictCells(report: FileReport, verdict: Verdict, { units }: TextOptions): string[] {
+function verdictCells(
+  report: FileReport,
+  each: CaseReport,
+  verdict: Verdict,
+  { units }: TextOptions,
+): string[] {
   const word = verdict.holds === null ? "open" : verdict.holds ? "holds" : "fails";
   if (verdict.value === null) return [word, verdict.name];
-  const unit = verdictUnit(report, verdict, units);
+  const unit = verdictUnit(report, each.instance, verdict, units);
   const limit =
     verdict.limit === null ? "" : `${SIGNS[verdict.expectation.operator]} ${inUnit(verdict.limit, unit)}`;
   return [word, verdict.name, inUnit(verdict.value, unit), limit, marginText(verdict), notes(verdict, unit)];
@@ -78,12 +86,19 @@ function verdictCells(report: FileReport, verdict: Verdict, { units }: TextOptio
 const SIGNS = { "<=": "≤", ">=": "≥", "<": "<", ">": ">" } as const;
 
 /** Value and limit stand in the unit in which the limit is written, else in that of the file. */
-export function verdictUnit(report: FileReport, verdict: Verdict, system: UnitSystem): ShownUnit {
-  const si = siUnit(verdict.kind);
-  const { right, left } = verdict.expectation;
-  const written = unitWrittenIn(right, left);
-  if (written?.si === si && (system === "as-written" || si === "1" || si === "Hz")) return written.unit;
-  return unitView(system, writtenUnits(report.model)).unitFor(si, largest([verdict.value, verdict.limit]));
+export function verdictUnit(
+  report: FileReport,
+  instance: Instance,
+  { kind, value, limit, expectation }: Verdict,
+  system: UnitSystem,
+): ShownUnit {
+  for (const side of [expectation.right, expectation.left]) {
+    const unit = writtenUnit(instance, side);
+    // A percent sign and the spelling of a rate are no question of SI or inch units.
+    const kept = system === "as-written" || isNumber(kind) || kind.rate;
+    if (unit !== undefined && kept && sameKind(unit.kind, kind)) return unit;
+  }
+  return unitView(system, writtenUnits(report.model)).unitFor(siUnit(kind), largest([value, limit]));
 }
 
 function marginText({ margin }: Verdict): string {

@@ -22,17 +22,6 @@ export function writtenUnits(model: Model): ReadonlyMap<string, ShownUnit> {
   return found;
 }
 
-/** The unit behind the first number with one in a tree, to show what is compared with it in the same unit. */
-export function unitWrittenIn(
-  ...nodes: readonly object[]
-): { readonly si: string; readonly unit: ShownUnit } | undefined {
-  for (const unit of nodes.flatMap(unitsIn)) {
-    const shown = meaningOf(unit);
-    if (shown) return shown;
-  }
-  return undefined;
-}
-
 function meaningOf(node: UnitNode): { readonly si: string; readonly unit: ShownUnit } | undefined {
   const meaning = unitOf(node);
   if (isFault(meaning)) return undefined;
