@@ -1,0 +1,210 @@
+/** Where a quantity comes to rest once every drive has ended or stands still. */
+import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
+import { SIGNAL_DERIVATIVES, signalDerivatives } from "./drive-signal.ts";
+import { type ModalOutput, type ModalSystem, modalDerivative } from "./time-modal.ts";
+import { type Motion, outputValue } from "./time-motion.ts";
+import type { ModalQuantity } from "./time-trace.ts";
+
+/** A root with less damping than this (share of its own size) never comes to rest. */
+const UNDAMPED = 1e-11;
+/** What makes up less than this of the motion at hand does not keep it from resting. */
+const UNSEEN = 1e-9;
+
+/**
+ * The value of the quantity in the final equilibrium. Fails where a drive goes on, or where the quantity sees a
+ * motion that never dies: an undamped mode that is in swing, a body that drifts.
+ */
+export function settledValue(motion: Motion, quantity: ModalQuantity): Outcome<number> {
+  const standing = standingInputs(motion);
+  if (!standing.ok) return fail(standing.reason);
+  const row = new Float64Array(motion.width);
+  const inputs = new Float64Array(motion.signals.length * SIGNAL_DERIVATIVES);
+  const end = motion.rowAt(motion.duration, "before", row, inputs);
+  if (!end.ok) return fail(end.reason);
+  const rest = equilibriumRow(motion.modal, standing.value, SIGNAL_DERIVATIVES, row);
+  if (!rest.ok) return fail(rest.reason);
+  const outputs = [quantity.linear, ...quantity.products.flatMap((p) => [p.a, p.b])];
+  for (const output of outputs) {
+    const trouble = unrest(motion, output, row, rest.value, standing.value);
+    if (trouble !== undefined) return fail(trouble);
+  }
+  let sum = outputValue(quantity.linear, rest.value, standing.value) + quantity.constant;
+  for (const { factor, a, aConstant, b } of quantity.products) {
+    sum +=
+      factor *
+      (outputValue(a, rest.value, standing.value) + aConstant) *
+      outputValue(b, rest.value, standing.value);
+  }
+  return succeed(sum);
+}
+
+/** Input derivatives once all signals stand; fails where one goes on for ever. */
+function standingInputs(motion: Motion): Outcome<Float64Array> {
+  const out = new Float64Array(motion.signals.length * SIGNAL_DERIVATIVES);
+  const values = new Float64Array(SIGNAL_DERIVATIVES);
+  for (let j = 0; j < motion.signals.length; j++) {
+    const signal = motion.signals[j];
+    const last = signal.starts.length - 1;
+    signalDerivatives(signal, last, Math.max(0, motion.duration - signal.starts[last]), values);
+    const moving =
+      (signal.omega !== 0 && (signal.sineRe[last] !== 0 || signal.sineIm[last] !== 0)) ||
+      signal.coefficients.subarray(last * signal.order + 1, (last + 1) * signal.order).some((c) => c !== 0);
+    if (moving) return fail("a drive goes on to the end, so nothing comes to rest");
+    if (signal.starts[last] > motion.duration) return fail("a drive has not ended when the history ends");
+    out[j * SIGNAL_DERIVATIVES] = values[0];
+  }
+  return succeed(out);
+}
+
+/**
+ * The modal row at which constant inputs (one value an input, `stride` apart in `loads`) hold the motion still.
+ * Where a free motion leaves the place open it is taken from `open`. Fails where a load meets nothing that holds.
+ */
+export function equilibriumRow(
+  modal: ModalSystem,
+  loads: Float64Array,
+  stride: number,
+  open: Float64Array,
+): Outcome<Float64Array> {
+  const { count, rest, inputs } = modal;
+  const out = new Float64Array(2 * count + rest);
+  for (let k = 0; k < count; k++) {
+    let br = 0;
+    let bi = 0;
+    let size = 0;
+    for (let j = 0; j < inputs; j++) {
+      const load = loads[j * stride];
+      br += modal.inputRe[j * count + k] * load;
+      bi += modal.inputIm[j * count + k] * load;
+      size += Math.hypot(modal.inputRe[j * count + k], modal.inputIm[j * count + k]) * Math.abs(load);
+    }
+    const lr = modal.lambdaRe[k];
+    const li = modal.lambdaIm[k];
+    const square = lr * lr + li * li;
+    if (square === 0) {
+      if (Math.abs(br) > UNSEEN * size) return fail(UNHELD);
+      out[k] = open[k];
+      continue;
+    }
+    out[k] = -(br * lr + bi * li) / square;
+    out[count + k] = -(bi * lr - br * li) / square;
+  }
+  if (rest === 0) return succeed(out);
+  const load = new Float64Array(rest);
+  for (let i = 0; i < rest; i++) {
+    for (let j = 0; j < inputs; j++) load[i] -= modal.blockInput[i * inputs + j] * loads[j * stride];
+  }
+  // What is open is taken relative to where it stands, so that only the rest of the place is solved for.
+  const stand = open.subarray(2 * count);
+  for (let i = 0; i < rest; i++)
+    for (let k = 0; k < rest; k++) load[i] -= modal.block[i * rest + k] * stand[k];
+  const moved = consistentSolution(modal.block, load, rest);
+  if (moved === undefined) return fail(UNHELD);
+  for (let i = 0; i < rest; i++) out[2 * count + i] = stand[i] + moved[i];
+  return succeed(out);
+}
+
+const UNHELD = "a steady load acts on a motion that nothing holds, so there is no equilibrium";
+/** Pivots below this share of the largest entry are none: the block's double roots are known to half the digits. */
+const NO_PIVOT = 1e-7;
+
+/** x with A x = b where one exists (free entries 0), by complete pivoting; otherwise undefined. */
+function consistentSolution(matrix: Float64Array, right: Float64Array, n: number): Float64Array | undefined {
+  const a = Float64Array.from(matrix);
+  const b = Float64Array.from(right);
+  const most = a.reduce((m, v) => Math.max(m, Math.abs(v)), 0);
+  const size = b.reduce((m, v) => Math.max(m, Math.abs(v)), 0);
+  const rows = Array.from({ length: n }, (_, i) => i);
+  const columns = Array.from({ length: n }, (_, i) => i);
+  let rank = 0;
+  for (; rank < n; rank++) {
+    let [pr, pc, best] = [rank, rank, 0];
+    for (let i = rank; i < n; i++) {
+      for (let j = rank; j < n; j++) {
+        const v = Math.abs(a[rows[i] * n + columns[j]]);
+        if (v > best) [pr, pc, best] = [i, j, v];
+      }
+    }
+    if (!(best > NO_PIVOT * most)) break;
+    [rows[rank], rows[pr]] = [rows[pr], rows[rank]];
+    [columns[rank], columns[pc]] = [columns[pc], columns[rank]];
+    const pivotRow = rows[rank] * n;
+    for (let i = rank + 1; i < n; i++) {
+      const factor = a[rows[i] * n + columns[rank]] / a[pivotRow + columns[rank]];
+      for (let j = rank; j < n; j++) a[rows[i] * n + columns[j]] -= factor * a[pivotRow + columns[j]];
+      b[rows[i]] -= factor * b[rows[rank]];
+    }
+  }
+  for (let i = rank; i < n; i++) if (Math.abs(b[rows[i]]) > UNSEEN * size) return undefined;
+  const x = new Float64Array(n);
+  for (let k = rank - 1; k >= 0; k--) {
+    let sum = b[rows[k]];
+    for (let j = k + 1; j < rank; j++) sum -= a[rows[k] * n + columns[j]] * x[columns[j]];
+    x[columns[k]] = sum / a[rows[k] * n + columns[k]];
+  }
+  return x;
+}
+
+/** Why the output does not come to the resting row, if so. */
+function unrest(
+  motion: Motion,
+  output: ModalOutput,
+  end: Float64Array,
+  rest: Float64Array,
+  standing: Float64Array,
+): string | undefined {
+  const { modal } = motion;
+  const { count } = modal;
+  let scale = Math.abs(outputValue(output, rest, standing));
+  for (let k = 0; k < count; k++) {
+    scale = Math.max(scale, Math.hypot(output.re[k], output.im[k]) * Math.hypot(end[k], end[count + k]));
+  }
+  for (let k = 0; k < count; k++) {
+    const lr = modal.lambdaRe[k];
+    const size = Math.hypot(lr, modal.lambdaIm[k]);
+    if (size === 0 || lr < -UNDAMPED * size) continue;
+    const away = Math.hypot(end[k] - rest[k], end[count + k] - rest[count + k]);
+    if (Math.hypot(output.re[k], output.im[k]) * away > UNSEEN * scale) {
+      return lr > UNDAMPED * size
+        ? "it grows for ever and never comes to rest"
+        : "it swings for ever: nothing damps it";
+    }
+  }
+  if (modal.rest === 0 || output.rest.every((v) => v === 0)) return undefined;
+  return blockUnrest(motion, output, end, standing, scale);
+}
+
+/** Within the block the output rests when no derivative of it is left, or when all roots of the block decay. */
+function blockUnrest(
+  motion: Motion,
+  output: ModalOutput,
+  end: Float64Array,
+  standing: Float64Array,
+  modes: number,
+): string | undefined {
+  const { modal } = motion;
+  const rate = Math.max(modal.blockRate, Number.MIN_VALUE);
+  if (modal.blockRoots.every(([re, im]) => re < -1e-6 * Math.hypot(re, im) && re < 0)) return undefined;
+  const { count, rest } = modal;
+  const alone: ModalOutput = { ...output, re: new Float64Array(count), im: new Float64Array(count) };
+  let derivative = alone;
+  let scale = modes;
+  for (let i = 0; i < rest; i++) scale += Math.abs(output.rest[i] * end[2 * count + i]);
+  const reach = 1 / Math.max(rate, 1 / motion.duration);
+  let left = 0;
+  let factor = 1;
+  for (let d = 0; d < rest; d++) {
+    derivative = modalDerivative(modal, derivative);
+    // Direct parts do not move any more: what is left is the block's own drift and its constant feed.
+    factor *= reach;
+    left = Math.max(left, factor * Math.abs(blockValue(derivative, end, count, standing)));
+  }
+  return left > UNSEEN * scale ? "it drifts on: nothing holds it" : undefined;
+}
+
+function blockValue(output: ModalOutput, row: Float64Array, count: number, standing: Float64Array): number {
+  let sum = 0;
+  for (let i = 0; i < output.rest.length; i++) sum += output.rest[i] * row[2 * count + i];
+  for (let k = 0; k < output.direct.length; k++) sum += output.direct[k] * standing[k];
+  return sum;
+}

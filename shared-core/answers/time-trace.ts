@@ -1,0 +1,409 @@
+/**
+ * Quantities along a motion: which instants must be looked at, the values there, and extremes between them.
+ *
+ * The grid is fine enough that every root that matters turns by no more than `TURN` a step while it matters:
+ * a root's free part decays, so fast damped roots are followed only behind the instants that excite them.
+ */
+import type { Outcome } from "../numerics/outcome.ts";
+import { fail, succeed } from "../numerics/outcome.ts";
+import { multiply } from "../numerics/products.ts";
+import type { ModalOutput, ModalSystem } from "./time-modal.ts";
+import { modalDerivative } from "./time-modal.ts";
+import type { Chunk, Grid, Motion } from "./time-motion.ts";
+import { outputValue } from "./time-motion.ts";
+import { DIRECT_ORDERS } from "./time-state.ts";
+
+/** A quantity in modal coordinates: linear + constant + sum of factor * (a + aConstant) * b. */
+export interface ModalQuantity {
+  readonly linear: ModalOutput;
+  readonly constant: number;
+  readonly products: readonly {
+    readonly factor: number;
+    readonly a: ModalOutput;
+    readonly aConstant: number;
+    readonly b: ModalOutput;
+  }[];
+}
+
+/** Largest turn of a mattering root in one step, rad: 18 points a cycle. */
+const TURN = 0.35;
+/** Rows followed at most: ten quantities at this length take half a gigabyte. */
+const MOST_ROWS = 4_000_000;
+/** Steps in any segment of a motion of few segments. */
+const LEAST_STEPS = 8;
+const SURVEY_STEPS = 256;
+
+/** Value, slope and curvature of a quantity at a row. */
+export class QuantityReader {
+  readonly quantity: ModalQuantity;
+  readonly #linear: readonly ModalOutput[];
+  readonly #products: readonly {
+    readonly factor: number;
+    readonly aConstant: number;
+    readonly a: readonly ModalOutput[];
+    readonly b: readonly ModalOutput[];
+  }[];
+
+  constructor(modal: ModalSystem, quantity: ModalQuantity) {
+    const three = (output: ModalOutput): ModalOutput[] => {
+      const first = modalDerivative(modal, output);
+      return [output, first, modalDerivative(modal, first)];
+    };
+    this.quantity = quantity;
+    this.#linear = three(quantity.linear);
+    this.#products = quantity.products.map((p) => ({ ...p, a: three(p.a), b: three(p.b) }));
+  }
+
+  value(row: Float64Array, inputs: Float64Array): number {
+    let sum = outputValue(this.#linear[0], row, inputs) + this.quantity.constant;
+    for (const { factor, a, aConstant, b } of this.#products) {
+      sum += factor * (outputValue(a[0], row, inputs) + aConstant) * outputValue(b[0], row, inputs);
+    }
+    return sum;
+  }
+
+  slope(row: Float64Array, inputs: Float64Array): number {
+    let sum = outputValue(this.#linear[1], row, inputs);
+    for (const { factor, a, aConstant, b } of this.#products) {
+      const a0 = outputValue(a[0], row, inputs) + aConstant;
+      const b0 = outputValue(b[0], row, inputs);
+      sum += factor * (outputValue(a[1], row, inputs) * b0 + a0 * outputValue(b[1], row, inputs));
+    }
+    return sum;
+  }
+
+  curvature(row: Float64Array, inputs: Float64Array): number {
+    let sum = outputValue(this.#linear[2], row, inputs);
+    for (const { factor, a, aConstant, b } of this.#products) {
+      const a0 = outputValue(a[0], row, inputs) + aConstant;
+      const b0 = outputValue(b[0], row, inputs);
+      const cross = 2 * outputValue(a[1], row, inputs) * outputValue(b[1], row, inputs);
+      sum += factor * (outputValue(a[2], row, inputs) * b0 + cross + a0 * outputValue(b[2], row, inputs));
+    }
+    return sum;
+  }
+}
+
+/** All linear outputs that a set of quantities needs, evaluated for whole chunks at a time. */
+class OutputTable {
+  readonly count: number;
+  readonly withInputs: boolean;
+  readonly #quantities: readonly ModalQuantity[];
+  /** width x count and J * DIRECT_ORDERS x count. */
+  readonly #factors: Float64Array;
+  readonly #direct: Float64Array;
+  readonly #width: number;
+
+  constructor(quantities: readonly ModalQuantity[], modal: ModalSystem) {
+    const outputs = quantities.flatMap((q) => [q.linear, ...q.products.flatMap((p) => [p.a, p.b])]);
+    const count = outputs.length;
+    const width = 2 * modal.count + modal.rest;
+    this.count = count;
+    this.#quantities = quantities;
+    this.#width = width;
+    this.#factors = new Float64Array(width * count);
+    this.#direct = new Float64Array(modal.inputs * DIRECT_ORDERS * count);
+    outputs.forEach((output, o) => {
+      for (let k = 0; k < modal.count; k++) {
+        this.#factors[k * count + o] = output.re[k];
+        this.#factors[(modal.count + k) * count + o] = -output.im[k];
+      }
+      for (let k = 0; k < modal.rest; k++) this.#factors[(2 * modal.count + k) * count + o] = output.rest[k];
+      for (let k = 0; k < output.direct.length; k++) this.#direct[k * count + o] = output.direct[k];
+    });
+    this.withInputs = this.#direct.some((v) => v !== 0);
+  }
+
+  /** Values of the quantities at the rows of a chunk: count rows of quantities, into `out`. */
+  values(chunk: Chunk, out: Float64Array): void {
+    const { count } = this;
+    const plain = multiply(chunk.rows, this.#factors, chunk.count, this.#width, count);
+    if (this.withInputs) {
+      const directWidth = this.#direct.length / count;
+      const direct = multiply(chunk.inputs, this.#direct, chunk.count, directWidth, count);
+      for (let p = 0; p < plain.length; p++) plain[p] += direct[p];
+    }
+    const columns = this.#quantities.length;
+    for (let r = 0; r < chunk.count; r++) {
+      let at = r * count;
+      for (let q = 0; q < columns; q++) {
+        const { constant, products } = this.#quantities[q];
+        let sum = plain[at++] + constant;
+        for (let p = 0; p < products.length; p++) {
+          sum += products[p].factor * (plain[at] + products[p].aConstant) * plain[at + 1];
+          at += 2;
+        }
+        out[r * columns + q] = sum;
+      }
+    }
+  }
+}
+
+/** Values of quantities along a grid. */
+export interface Trace {
+  readonly grid: Grid;
+  readonly count: number;
+  readonly times: Float64Array;
+  readonly steps: Int32Array;
+  readonly after: Uint8Array;
+  /** One array a quantity. */
+  readonly values: readonly Float64Array[];
+}
+
+/** Follows quantities along a grid; `upTo` of a failure holds what was followed until the motion ran away. */
+export function followTrace(
+  motion: Motion,
+  grid: Grid,
+  quantities: readonly ModalQuantity[],
+): Outcome<Trace> {
+  const table = new OutputTable(quantities, motion.modal);
+  const room = grid.segments.length + 1 + motion.line.edges.length;
+  const times = new Float64Array(room);
+  const steps = new Int32Array(room);
+  const after = new Uint8Array(room);
+  const values = quantities.map(() => new Float64Array(room));
+  const columns = quantities.length;
+  let count = 0;
+  let buffer = new Float64Array(0);
+  const options = { withInputs: table.withInputs, doubleUpTo: table.withInputs ? 2 : -1 };
+  const marched = motion.march(grid, options, (chunk) => {
+    if (buffer.length < chunk.count * columns) buffer = new Float64Array(chunk.count * columns);
+    table.values(chunk, buffer);
+    times.set(chunk.times.subarray(0, chunk.count), count);
+    steps.set(chunk.steps.subarray(0, chunk.count), count);
+    after.set(chunk.after.subarray(0, chunk.count), count);
+    for (let q = 0; q < columns; q++) {
+      const column = values[q];
+      for (let r = 0; r < chunk.count; r++) column[count + r] = buffer[r * columns + q];
+    }
+    count += chunk.count;
+  });
+  const trace = { grid, count, times, steps, after, values };
+  return marched.ok ? succeed(trace) : fail(marched.reason, trace);
+}
+
+/** What must be looked at behind the start of each segment. */
+export interface Demand {
+  /** rad/s */
+  readonly rate: number;
+  /** s behind the start of a segment; later it has died away. */
+  readonly until: number;
+  /** Largest share of any quantity that it makes up, 1 for what always counts. */
+  readonly share: number;
+}
+
+export interface Demands {
+  readonly rates: readonly Demand[];
+  /** Largest value of each quantity seen in the survey. */
+  readonly scales: Float64Array;
+}
+
+/**
+ * Finds the roots whose free part reaches `tolerance` of a quantity's size anywhere. Products turn twice as fast.
+ */
+export function surveyDemands(
+  motion: Motion,
+  quantities: readonly ModalQuantity[],
+  tolerance: number,
+): Outcome<Demands> {
+  const { modal } = motion;
+  const segments = motion.line.edges.length - 1;
+  const grid = motion.edgeGrid(Math.ceil(SURVEY_STEPS / segments));
+  const free = new FreeParts(motion);
+  const table = new OutputTable(quantities, modal);
+  const scales = new Float64Array(quantities.length);
+  let buffer = new Float64Array(0);
+  const options = { withInputs: table.withInputs, doubleUpTo: table.withInputs ? 2 : -1 };
+  const marched = motion.march(grid, options, (chunk) => {
+    if (buffer.length < chunk.count * quantities.length)
+      buffer = new Float64Array(chunk.count * quantities.length);
+    table.values(chunk, buffer);
+    for (let p = 0; p < chunk.count * quantities.length; p++) {
+      const q = p % quantities.length;
+      scales[q] = Math.max(scales[q], Math.abs(buffer[p]));
+    }
+    free.look(chunk, grid);
+  });
+  const shares = mattering(modal, quantities, scales, free.sizes, tolerance);
+  const twice = quantities.some((q) => q.products.length > 0) ? 2 : 1;
+  const rates: Demand[] = [];
+  for (let k = 0; k < modal.count; k++) {
+    if (!(shares[k] > 1)) continue;
+    const rate = twice * Math.hypot(modal.lambdaRe[k], modal.lambdaIm[k]);
+    const decay = -modal.lambdaRe[k];
+    const until = decay > 0 ? Math.log(shares[k]) / decay : Number.POSITIVE_INFINITY;
+    rates.push({ rate, until, share: Math.min(1, shares[k] * tolerance) });
+  }
+  if (modal.rest > 0 && quantities.some((q) => touchesBlock(q))) {
+    rates.push({ rate: twice * modal.blockRate, until: Number.POSITIVE_INFINITY, share: 1 });
+  }
+  for (const { omega } of motion.signals) {
+    if (omega === 0) continue;
+    rates.push({ rate: twice * omega, until: Number.POSITIVE_INFINITY, share: 1 });
+  }
+  const demands = { rates, scales };
+  return marched.ok ? succeed(demands) : fail(marched.reason, demands);
+}
+
+/** A grid of all edges and `stored` instants (ascending), cut as the demands ask. */
+export function demandedGrid(motion: Motion, demands: Demands, stored: Float64Array): Outcome<Grid> {
+  const { edges } = motion.line;
+  const segments = edges.length - 1;
+  const degree = motion.signals.reduce((most, s) => Math.max(most, s.order), 0);
+  const least = segments <= 500 ? LEAST_STEPS : degree > 4 ? 3 : 1;
+  const same = 1e-12 * motion.duration;
+  const times: number[] = [0];
+  const of: number[] = [];
+  let next = 0;
+  for (let i = 0; i < segments; i++) {
+    const start = edges[i];
+    const end = edges[i + 1];
+    const rates = demands.rates.filter(({ rate }) => rate * (end - start) > TURN);
+    let from = start;
+    while (from < end) {
+      while (next < stored.length && stored[next] <= from + same) next++;
+      const stop = next < stored.length && stored[next] < end - same ? stored[next] : end;
+      let rate = (TURN * least) / (end - start);
+      for (const r of rates) if (from - start < r.until && rate < r.rate) rate = r.rate;
+      // A stage ends where the fastest root of it has died away.
+      let to = stop;
+      for (const r of rates) {
+        const dead = start + r.until;
+        if (r.rate === rate && from < dead - same && dead < to) to = dead;
+      }
+      const steps = Math.max(1, Math.ceil(((to - from) * rate) / TURN - 1e-9));
+      if (times.length + steps > MOST_ROWS) {
+        return fail(
+          `it would have to be followed at more than ${MOST_ROWS} instants between 0 and ${motion.duration} s; ask for a shorter time`,
+        );
+      }
+      for (let k = 1; k < steps; k++) {
+        times.push(from + ((to - from) * k) / steps);
+        of.push(i);
+      }
+      times.push(to);
+      of.push(i);
+      from = to;
+    }
+  }
+  return succeed({ times: Float64Array.from(times), segments: Int32Array.from(of) });
+}
+
+/** Largest free part |eta - particular| of each root at the start of any segment long enough to show it. */
+class FreeParts {
+  readonly sizes: Float64Array;
+  readonly #motion: Motion;
+  #last = -1;
+
+  constructor(motion: Motion) {
+    this.#motion = motion;
+    this.sizes = new Float64Array(motion.modal.count);
+  }
+
+  look(chunk: Chunk, grid: Grid): void {
+    const motion = this.#motion;
+    const { edges } = motion.line;
+    for (let r = 0; r < chunk.count; r++) {
+      const step = chunk.after[r] ? chunk.steps[r] : chunk.steps[r] + 1;
+      if (step >= grid.segments.length) continue;
+      const segment = grid.segments[step];
+      if (grid.times[step] !== edges[segment] || (segment === this.#last && !chunk.after[r])) continue;
+      this.#last = segment;
+      this.#lookAt(segment, edges[segment + 1] - edges[segment], chunk.rows, r * motion.width);
+    }
+  }
+
+  #lookAt(segment: number, length: number, rows: Float64Array, at: number): void {
+    const { modal, signals } = this.#motion;
+    const { count } = modal;
+    let inputs: readonly Float64Array[] | undefined;
+    for (let k = 0; k < count; k++) {
+      const lr = modal.lambdaRe[k];
+      const li = modal.lambdaIm[k];
+      const square = lr * lr + li * li;
+      if (!(square * length * length > TURN * TURN)) continue;
+      inputs ??= this.#motion.inputsAt(segment, this.#motion.line.edges[segment]);
+      let re = rows[at + k];
+      let im = rows[at + count + k];
+      for (let j = 0; j < signals.length; j++) {
+        const br = modal.inputRe[j * count + k];
+        const bi = modal.inputIm[j * count + k];
+        if (br === 0 && bi === 0) continue;
+        const [pr, pi] = particular(inputs[j], signals[j].order, signals[j].omega, lr, li);
+        re -= br * pr - bi * pi;
+        im -= br * pi + bi * pr;
+      }
+      this.sizes[k] = Math.max(this.sizes[k], Math.hypot(re, im));
+    }
+  }
+}
+
+/** Particular solution at the start of x' = lambda x + u: -sum c_p p! / lambda^(p+1), plus the sinusoid's. */
+function particular(
+  input: Float64Array,
+  order: number,
+  omega: number,
+  lr: number,
+  li: number,
+): readonly [number, number] {
+  const square = lr * lr + li * li;
+  const ir = lr / square;
+  const ii = -li / square;
+  let re = 0;
+  let im = 0;
+  // Horner in 1/lambda from the highest power: (c_0 + 1/lambda (c_1 + 2/lambda (c_2 + ...))) / lambda.
+  for (let p = order - 1; p >= 0; p--) {
+    const sr = input[p] + (p + 1) * re;
+    const si = (p + 1) * im;
+    re = sr * ir - si * ii;
+    im = sr * ii + si * ir;
+  }
+  re = -re;
+  im = -im;
+  if (omega === 0) return [re, im];
+  for (const sign of [1, -1]) {
+    const dr = -lr;
+    const di = sign * omega - li;
+    const size = dr * dr + di * di;
+    if (size === 0) continue;
+    const sr = 0.5 * input[order];
+    const si = 0.5 * sign * input[order + 1];
+    re += (sr * dr + si * di) / size;
+    im += (si * dr - sr * di) / size;
+  }
+  return [re, im];
+}
+
+/** For each root the largest share of a quantity it makes up, in units of the tolerance. */
+function mattering(
+  modal: ModalSystem,
+  quantities: readonly ModalQuantity[],
+  scales: Float64Array,
+  sizes: Float64Array,
+  tolerance: number,
+): Float64Array {
+  const shares = new Float64Array(modal.count);
+  quantities.forEach(({ linear, products }, q) => {
+    if (!(scales[q] > 0)) return;
+    const outputs = [linear, ...products.flatMap((p) => [p.a, p.b])];
+    for (const output of outputs) {
+      // A product's parts are judged among themselves.
+      let scale = output === linear ? scales[q] : 0;
+      if (output !== linear) {
+        for (let k = 0; k < modal.count; k++) {
+          scale = Math.max(scale, Math.hypot(output.re[k], output.im[k]) * sizes[k]);
+        }
+      }
+      if (!(scale > 0)) continue;
+      for (let k = 0; k < modal.count; k++) {
+        const size = Math.hypot(output.re[k], output.im[k]) * sizes[k];
+        shares[k] = Math.max(shares[k], size / (tolerance * scale));
+      }
+    }
+  });
+  return shares;
+}
+
+function touchesBlock({ linear, products }: ModalQuantity): boolean {
+  return [linear, ...products.flatMap((p) => [p.a, p.b])].some((o) => o.rest.some((v) => v !== 0));
+}
