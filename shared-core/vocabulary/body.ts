@@ -1,6 +1,6 @@
 import { COORDINATE_QUANTITIES, DIRECTIONS } from "./coordinate-quantities.ts";
 import type { StatementDescription } from "./description.ts";
-import { amount, choice, detail, NAME, statement } from "./statement.ts";
+import { amount, choice, detail, NAME, prose, statement } from "./statement.ts";
 
 export const body: StatementDescription = statement({
   keyword: "body",
@@ -45,8 +45,38 @@ export const body: StatementDescription = statement({
   components: DIRECTIONS,
   quantities: COORDINATE_QUANTITIES,
   says: "A rigid body with up to six directions of motion.",
-  text: "",
-  example: "",
+  text: prose(
+    "A rigid body with its six directions: x, y, z of its centre of gravity and rx, ry, rz about it, all",
+    "small. `centre` says where the centre of gravity lies in the drawing's axes; every `at` of points",
+    "and mounts is in those axes, so that numbers can be copied from a drawing and a changed centre of",
+    "gravity is one changed line.",
+    "",
+    "The inertias are about the centre of gravity. `products` are the integrals of xy, xz and yz over the",
+    "mass; the tensor holds their negatives, and data sheets that print them have the other",
+    "sign, so check with one asymmetric case. `moves` keeps only the directions the guides leave free.",
+    "`spin` adds the gyroscopic terms of a steady rotation about an axis of rotation symmetry.",
+    "",
+    "A coordinate of a body is written with its direction: `genset.z`, `genset.ry`.",
+  ),
+  example: `thrum 1
+title "Quay generator as a rigid body on four mounts"
+
+body genset = 2.4 t
+    centre = (0.06, 0, 0.55) m
+    inertia = (310, 840, 760) kg*m^2
+    moves = z, rx, ry
+
+mount north_west between genset and ground at (-0.9, 0.45, 0) m
+    stiffness = (260, 260, 420) N/mm
+mount north_east between genset and ground at (0.9, 0.45, 0) m
+    like = north_west
+mount south_west between genset and ground at (-0.9, -0.45, 0) m
+    like = north_west
+mount south_east between genset and ground at (0.9, -0.45, 0) m
+    like = north_west
+
+expect below_idle = natural_frequency(3) <= 15 Hz
+`,
   snippet: "body $1 = $2 t\n    inertia = ($3, $4, $5) kg*m^2",
   notYet: true,
 });

@@ -139,6 +139,8 @@ export interface StatementDescription {
   readonly text: string;
   /** A whole file in which the statement does its work; runs as a test. */
   readonly example: string;
+  /** Other files that the example reads, by path. */
+  readonly exampleFiles?: Readonly<Record<string, string>>;
   /** What is typed when it is completed, with `$1` ... places. */
   readonly snippet: string;
   /** True while the mechanics of the whole statement are not computed by this version. */
