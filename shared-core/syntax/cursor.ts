@@ -74,6 +74,8 @@ export class ParseState {
 export class Cursor {
   readonly state: ParseState;
   readonly line: TreeLine;
+  readonly #text: string;
+  readonly #tokens: readonly Token[];
   /** The text of the current token; empty at the end of the line. */
   word = "";
   kind: Token["kind"] | "end" = "end";
@@ -91,6 +93,8 @@ export class Cursor {
   constructor(state: ParseState, line: TreeLine) {
     this.state = state;
     this.line = line;
+    this.#text = state.text;
+    this.#tokens = state.tokens;
     this.#at = line.first;
     this.#end = line.last;
     this.#taken = line.span.start;
@@ -159,9 +163,19 @@ export class Cursor {
     return found;
   }
 
+  /** The token `steps` significant tokens further on. */
+  tokenAhead(steps: number): Token | undefined {
+    const { tokens } = this.state;
+    let left = steps;
+    for (let i = this.#at; i < this.#end; i++) {
+      if (isSignificant(tokens[i]) && left-- === 0) return tokens[i];
+    }
+    return undefined;
+  }
+
   /** The text of the token `steps` significant tokens further on; empty when the line ends before. */
   wordAhead(steps: number): string {
-    const token = this.ahead(steps + 1)[steps];
+    const token = this.tokenAhead(steps);
     return token ? this.state.textOf(token) : "";
   }
 
@@ -199,11 +213,18 @@ export class Cursor {
   }
 
   #settle(): void {
-    const { tokens, text } = this.state;
-    while (this.#at < this.#end && !isSignificant(tokens[this.#at])) this.#at++;
-    const token = this.#at < this.#end ? tokens[this.#at] : undefined;
-    this.kind = token ? token.kind : "end";
-    this.word = token ? text.slice(token.offset, token.offset + token.length) : "";
+    const tokens = this.#tokens;
+    while (this.#at < this.#end) {
+      const token = tokens[this.#at];
+      if (isSignificant(token)) {
+        this.kind = token.kind;
+        this.word = this.#text.slice(token.offset, token.offset + token.length);
+        return;
+      }
+      this.#at++;
+    }
+    this.kind = "end";
+    this.word = "";
   }
 
   #lastToken(): Token | undefined {

@@ -136,7 +136,7 @@ function missingEquals(owner: OpenStatement, c: Cursor): void {
   c.expected(`\`=\` behind \`${key.text}\``, { fixes: [{ title: "Add `=`", edits, safe: true }] });
   const whole = span(start, endOf(c.state, c.line));
   const node: DetailNode = { kind: "detail", span: whole, notes: [], key, items: [], broken: true };
-  if (!owner.byKey.has(key.text)) owner.byKey.set(key.text, node);
+  if (!owner.byKey?.has(key.text)) remember(owner, node);
   owner.node.details.push(node);
 }
 
@@ -160,14 +160,15 @@ type Earlier = { readonly at: Span; readonly inHead: boolean };
 function earlier(owner: OpenStatement, node: DetailNode): Earlier | undefined {
   const { byKey, grammar } = owner;
   const key = node.key.text;
-  const whole = byKey.get(key);
-  const same = whole ?? byKey.get(node.component ? keyOf(node) : `${key}.`);
+  const whole = byKey?.get(key);
+  const same = whole ?? byKey?.get(node.component ? keyOf(node) : `${key}.`);
   if (same) return { at: same.span, inHead: false };
   const inHead = owner.node.value !== undefined && grammar?.principal === key;
   return inHead ? { at: owner.node.headSpan, inHead } : undefined;
 }
 
 function remember(owner: OpenStatement, node: DetailNode): void {
+  owner.byKey ??= new Map();
   owner.byKey.set(keyOf(node), node);
   // Marks that one component at least is given, for the whole that may come behind it.
   if (node.component) owner.byKey.set(`${node.key.text}.`, node);

@@ -10,8 +10,17 @@ export type Slots = Record<string, SlotValue>;
 
 /** Reads the parts of a head behind its keyword into slots; a slot that cannot be read stays missing. */
 export function headParts(c: Cursor, grammar: StatementGrammar, slots: Slots): void {
-  const hint = `written: ${formOf(grammar)}`;
-  parts(c, grammar.head, slots, hint);
+  parts(c, grammar.head, slots, writtenAs(grammar));
+}
+
+/** The hint of an error in a head. */
+export function writtenAs(grammar: StatementGrammar): string {
+  let hint = HINTS.get(grammar);
+  if (hint === undefined) {
+    hint = `written: ${formOf(grammar)}`;
+    HINTS.set(grammar, hint);
+  }
+  return hint;
 }
 
 /** How a statement is written, for messages and hovers: `spring NAME between A and B = VALUE`. */
@@ -36,8 +45,12 @@ export function definingName(c: Cursor, hint?: string): NameNode | undefined {
   return name(c, ROLE.definition);
 }
 
+/** Derived from the grammar alone, so it may outlive a parse. */
+const HINTS = new WeakMap<StatementGrammar, string>();
+
 function parts(c: Cursor, list: readonly HeadPart[], slots: Slots, hint: string): void {
-  for (const [i, part] of list.entries()) {
+  for (let i = 0; i < list.length; i++) {
+    const part = list[i];
     if (c.failed) return;
     if (part.kind === "either") {
       parts(c, chosenWay(c, part.ways, hint), slots, hint);

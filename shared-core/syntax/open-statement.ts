@@ -27,8 +27,8 @@ export interface OpenStatement {
   readonly grammar: StatementGrammar | undefined;
   /** Steps of indentation of its head: 0, or 1 inside a kit. */
   readonly level: number;
-  /** Details by key, `stiffness.x` for one component. */
-  readonly byKey: Map<string, DetailNode>;
+  /** Details by key, `stiffness.x` for one component; made with the first detail. */
+  byKey: Map<string, DetailNode> | undefined;
   detail: OpenDetail | undefined;
   /** True where the head made so little sense that what stands under it is passed over without a word. */
   readonly lost: boolean;

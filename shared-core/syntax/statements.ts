@@ -10,7 +10,7 @@ import { Cursor, type ParseState, shorten } from "./cursor.ts";
 import { brokenDetail, closeDetail, detail, row, startsDetail } from "./details.ts";
 import { name } from "./expressions.ts";
 import type { StatementGrammar } from "./grammar.ts";
-import { definingName, formOf, headParts, type Slots } from "./heads.ts";
+import { definingName, headParts, type Slots, writtenAs } from "./heads.ts";
 import { detailsOf, endOf, extend, type OpenStatement, startOf } from "./open-statement.ts";
 import { PendingNotes } from "./pending-notes.ts";
 import {
@@ -283,7 +283,7 @@ class StatementReader {
       },
       grammar: read.grammar,
       level,
-      byKey: new Map(),
+      byKey: undefined,
       detail: undefined,
       lost: read.lost ?? false,
     };
@@ -353,15 +353,16 @@ class StatementReader {
 
 /** What stands behind `=` in a head. */
 function headValue(c: Cursor, keyword: NameNode, grammar: StatementGrammar): Item[] | undefined {
-  const place = c.span;
+  const place = c.offset;
+  const hint = writtenAs(grammar);
   if (!c.accept("=")) {
-    const hint = `written: ${formOf(grammar)}`;
     if (grammar.value === "required" && c.atEnd) c.expected("`=` and a value", { hint });
-    else
-      c.expectEnd(grammar.value === "none" ? "the end of the line" : "`=` or the end of the line", { hint });
+    else if (!c.atEnd) {
+      c.expected(grammar.value === "none" ? "the end of the line" : "`=` or the end of the line", { hint });
+    }
     return undefined;
   }
   if (grammar.value !== "none") return items(c);
-  c.failAt(place, `\`${keyword.text}\` takes no value behind \`=\``, { hint: `written: ${formOf(grammar)}` });
+  c.failAt(c.from(place), `\`${keyword.text}\` takes no value behind \`=\``, { hint });
   return undefined;
 }

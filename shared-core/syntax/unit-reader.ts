@@ -31,8 +31,8 @@ export function unknownUnit(c: Cursor): void {
 export function isUnitHere(c: Cursor): boolean {
   if (c.kind !== "name") return c.word === "%" && c.state.isUnit("%");
   if (VALUE_WORDS.has(c.word) || !c.state.isUnit(c.word)) return false;
-  const [name, next] = c.ahead(2);
-  if (!next || next.offset !== name.offset + name.length) return true;
+  const next = c.tokenAhead(1);
+  if (!next || next.offset !== c.offset + c.word.length) return true;
   const sign = c.state.text[next.offset];
   return sign !== "(" && sign !== ".";
 }
@@ -110,8 +110,8 @@ function group(c: Cursor, sign: number, into: Factor[], depth: number): boolean 
 /** Raises the factors from `first` on to the power written behind them. */
 function exponent(c: Cursor, into: Factor[], first: number): boolean {
   if (!c.glued || c.word !== "^") return true;
-  const [hat, next] = c.ahead(2);
-  if (!next || next.offset !== hat.offset + 1) return true;
+  const next = c.tokenAhead(1);
+  if (!next || next.offset !== c.offset + 1) return true;
   c.take();
   const start = c.offset;
   const negative = c.accept("-");

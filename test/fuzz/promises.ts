@@ -1,7 +1,10 @@
 import { expect } from "vitest";
 import { CODES } from "../../shared-core/diagnostics/codes.ts";
+import { formatEdits } from "../../shared-core/syntax/formatter.ts";
 import type { Parsed } from "../../shared-core/syntax/parser.ts";
 import type { Node, StatementNode, Tree } from "../../shared-core/syntax/tree.ts";
+import { applyEdits } from "../../shared-core/text/line-index.ts";
+import { outlined } from "../syntax/helpers.ts";
 
 /** What holds of every parsed text, however broken. Throws the first promise that is not kept. */
 export function keepsPromises({ tree, diagnostics }: Parsed): void {
@@ -29,6 +32,49 @@ export function keepsPromises({ tree, diagnostics }: Parsed): void {
     if (linesWithSyntaxError.has(line)) fail("two syntax errors on one line", message);
     linesWithSyntaxError.add(line);
     if (tree.lines[line].readable) fail("an error on a line that is called readable", message);
+  }
+}
+
+/** What formatting promises for every text: only blanks change, what it means stays, and a second time nothing changes. */
+export function formatsWell(parsed: Parsed, read: (text: string) => Parsed): void {
+  const { tree } = parsed;
+  const edits = formatEdits(tree);
+  for (const { span } of edits) {
+    const { readable, role } = tree.lines[lineOf(tree, span.start)];
+    if (!readable || role === "conflict") fail("an edit of a line that does not parse", `at ${span.start}`);
+  }
+  const text = applyEdits(tree.text, edits);
+  const again = read(text);
+  same("tokens", solid(tree), solid(again.tree));
+  same("meaning", outlined(tree.statements), outlined(again.tree.statements));
+  same("notes", notesOf(tree), notesOf(again.tree));
+  same("diagnostics", messagesOf(parsed), messagesOf(again));
+  same("layout", [text], [applyEdits(text, formatEdits(again.tree))]);
+}
+
+/** Tokens that are not blanks; notes and comments without their leading blanks. */
+function solid({ text, tokens }: Tree): string[] {
+  return tokens
+    .filter(({ kind }) => kind !== "blank" && kind !== "newline")
+    .map(({ kind, offset, length }) => {
+      const word = text.slice(offset, offset + length);
+      return kind === "note" ? `>${word.slice(1).trim()}` : word;
+    });
+}
+
+const notesOf = (tree: Tree): string[] =>
+  [
+    ...tree.statements.flatMap((s) => [...s.notes, ...s.details.flatMap((d) => d.notes)]),
+    ...tree.looseNotes,
+  ].map((note) => note.text);
+
+const messagesOf = ({ diagnostics }: Parsed): string[] =>
+  diagnostics.map(({ code, message }) => `${code} ${message}`);
+
+function same(what: string, before: readonly string[], after: readonly string[]): void {
+  const i = before.findIndex((each, index) => each !== after[index]);
+  if (i >= 0 || before.length !== after.length) {
+    fail(`formatting changed the ${what}`, `${JSON.stringify(before[i])} became ${JSON.stringify(after[i])}`);
   }
 }
 

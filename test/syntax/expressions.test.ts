@@ -21,6 +21,7 @@ describe("grouping", () => {
     ["atan2(y, x) * pi", "(atan2[y, x] * pi)"],
     ["transmissibility(run_up, feet, at: 2 Hz)", "transmissibility[run_up, feet, at: 2 {Hz}]"],
     ["clear_of_modes(a, orders: (1, 2))", "clear_of_modes[a, orders: <1, 2>]"],
+    ["clear_of_modes(8 Hz to 2*12 Hz, orders: 1)", "clear_of_modes[[8 {Hz} to (2 * 12 {Hz})], orders: 1]"],
     ["genset.z.velocity - b.displacement", "(genset.z.velocity - b.displacement)"],
     ["mounts.rate", "mounts.rate"],
     ["sin (x)", "sin[x]"],

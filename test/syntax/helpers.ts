@@ -136,6 +136,8 @@ export function shape(node: Expression): string {
       return `(${shape(node.left)} ${node.operator} ${shape(node.right)})`;
     case "as":
       return `(${shape(node.operand)} as ${unitText(node.unit)})`;
+    case "range":
+      return `[${shape(node.from)} to ${shape(node.to)}]`;
     case "parenthesis":
       return shape(node.inner);
     case "broken":
