@@ -17,12 +17,12 @@ export function freeCoordinates(assembly: Assembly): Int32Array {
   return named;
 }
 
-/** A mode's shape over the free coordinates. */
-export function freeShape(assembly: Assembly, mode: Mode): FreeShape {
+/** A shape over the named coordinates brought to the free ones. */
+export function freeShape(assembly: Assembly, shape: Mode["shape"]): FreeShape {
   const named = freeCoordinates(assembly);
   const pick = (from: Float64Array): Float64Array =>
     Float64Array.from(named, (index) => (index < 0 ? 0 : from[index]));
-  return { re: pick(mode.shape.re), im: pick(mode.shape.im) };
+  return { re: pick(shape.re), im: pick(shape.im) };
 }
 
 /** Value of a form on a shape, supports standing still: [re, im]. */

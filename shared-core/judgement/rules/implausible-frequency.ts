@@ -19,7 +19,8 @@ export const implausibleFrequency: Rule = {
     if (!modes.ok) return [];
     return elasticModes(modes.value).flatMap((mode) => {
       const { frequencyHz } = mode;
-      if (SLOWEST <= frequencyHz && frequencyHz <= FASTEST) return [];
+      // 0 Hz is a mode that buckles; static-instability speaks of it.
+      if (frequencyHz === 0 || (SLOWEST <= frequencyHz && frequencyHz <= FASTEST)) return [];
       let mover = 0;
       mode.shape.re.forEach((value, i) => {
         if (Math.abs(value) > Math.abs(mode.shape.re[mover])) mover = i;

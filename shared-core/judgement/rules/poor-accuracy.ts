@@ -17,7 +17,7 @@ export const poorAccuracy: Rule = {
     if (!modes.ok) return [];
     return elasticModes(modes.value).flatMap((mode) => {
       const check = frequencyByEnergy(assembly, mode);
-      if (check === undefined) return [];
+      if (check === undefined || mode.frequencyHz === 0) return [];
       const apart = Math.abs(check / mode.frequencyHz - 1);
       if (!(apart > LARGEST_DIFFERENCE)) return [];
       const holder = stiffestShare(mode);
@@ -39,7 +39,7 @@ export const poorAccuracy: Rule = {
  * inertias. The sums of positive terms lose no digits, and the quotient's error is the square of the shape's.
  */
 function frequencyByEnergy(assembly: Assembly, mode: Mode): number | undefined {
-  const shape = freeShape(assembly, mode);
+  const shape = freeShape(assembly, mode.shape);
   if (shape.im.some((value) => value !== 0)) return undefined;
   let strain = 0;
   for (const element of assembly.elements) strain += element.stiffness * squareOnShape(element.form, shape);

@@ -1,7 +1,5 @@
 import type { Mode } from "../../answers/answer.ts";
 import type { Assembly, ExtraTerm } from "../../mechanics/assembly.ts";
-import { systemMatrices, toDense } from "../../mechanics/matrices.ts";
-import { factorComplexLu, solveComplexLu } from "../../numerics/complex-lu.ts";
 import { span } from "../../text/span.ts";
 import { growingModes } from "../growth.ts";
 import { nameSpan, placeOf, statementOf } from "../places.ts";
@@ -43,7 +41,7 @@ function finding(context: RuleContext, mode: Mode): Finding {
 
 /** The element that puts most power into the mode at its own root. */
 function feederOf(assembly: Assembly, mode: Mode): string | undefined {
-  const root = rootShape(assembly, mode.eigenvalue) ?? freeShape(assembly, mode);
+  const root = freeShape(assembly, mode.complexShape ?? mode.shape);
   const [re, im] = mode.eigenvalue;
   const power = new Map<string, number>();
   const add = (owner: string, value: number): void => {
@@ -72,30 +70,6 @@ const times = (a: readonly [number, number], b: readonly [number, number]): read
   a[0] * b[0] - a[1] * b[1],
   a[0] * b[1] + a[1] * b[0],
 ];
-
-/** Step off the root, relative, that keeps the inverse iteration's matrix regular. */
-const OFF_ROOT = 1e-8;
-
-/** Shape of a root by two steps of inverse iteration on M root^2 + C root + K. */
-function rootShape(assembly: Assembly, [re0, im0]: Mode["eigenvalue"]): FreeShape | undefined {
-  const n = assembly.free;
-  const { mass, damping, stiffness } = systemMatrices(assembly);
-  const [m, c, k] = [mass, damping, stiffness].map(toDense);
-  const [re, im] = [re0 * (1 + OFF_ROOT), im0 * (1 + OFF_ROOT)];
-  const a = Float64Array.from(m, (value, i) => value * (re * re - im * im) + c[i] * re + k[i]);
-  const b = Float64Array.from(m, (value, i) => 2 * value * re * im + c[i] * im);
-  const factored = factorComplexLu(a, b, n);
-  if (!factored.ok) return undefined;
-  let shape: FreeShape = { re: new Float64Array(n).fill(1), im: new Float64Array(n) };
-  for (let step = 0; step < 3; step++) {
-    const next = { re: new Float64Array(n), im: new Float64Array(n) };
-    solveComplexLu(factored.value, shape.re, shape.im, 1, next.re, next.im);
-    const size = Math.hypot(...next.re, ...next.im);
-    if (!(size > 0) || !Number.isFinite(size)) return undefined;
-    shape = { re: next.re.map((value) => value / size), im: next.im.map((value) => value / size) };
-  }
-  return shape;
-}
 
 /** The statement of the coordinate that moves most. */
 function mover({ model, assembly }: RuleContext, mode: Mode): Finding["related"] {
