@@ -7,17 +7,25 @@ export function endsOf(limit: LimitCurve): readonly [number, number] {
   return [Math.min(...at), Math.max(...at)];
 }
 
-/** Value of a limit at a frequency, straight or straight on log-log paper between points; undefined outside. */
+/**
+ * Value of a limit at a frequency, straight or straight on log-log paper between points; undefined outside. Where
+ * it jumps, the stricter side holds.
+ */
 export function limitAt(limit: LimitCurve, frequencyHz: number): number | undefined {
   if (typeof limit.points === "number") return limit.points;
   const points = limit.points;
-  for (let i = 1; i < points.length; i++) {
-    const [a, b] = [points[i - 1], points[i]];
-    if (frequencyHz < a.atHz || b.atHz < frequencyHz) continue;
-    if (a.atHz === b.atHz || frequencyHz === a.atHz) return a.value;
-    return between(limit, a, b, frequencyHz);
-  }
-  return points.length === 1 && points[0].atHz === frequencyHz ? points[0].value : undefined;
+  let found: number | undefined;
+  const take = (value: number): void => {
+    found = found === undefined ? value : Math.min(found, value);
+  };
+  points.forEach((b, i) => {
+    if (b.atHz === frequencyHz) take(b.value);
+    const a = points[i - 1];
+    if (a !== undefined && a.atHz < frequencyHz && frequencyHz < b.atHz) {
+      take(between(limit, a, b, frequencyHz));
+    }
+  });
+  return found;
 }
 
 function between(
