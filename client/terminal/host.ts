@@ -1,0 +1,45 @@
+import type { Readable, Writable } from "node:stream";
+
+/** What a command sees of the world around it; tests put their own in its place. */
+export interface Host {
+  readonly cwd: string;
+  readonly env: Readonly<Record<string, string | undefined>>;
+  readonly stdin: Readable;
+  readonly stdout: Screen;
+  readonly stderr: Screen;
+}
+
+/** A stream for text, with what is known of the terminal behind it. */
+export interface Screen {
+  write(text: string): void;
+  readonly isTerminal: boolean;
+  /** Columns of the terminal; a plain 100 where there is none. */
+  readonly width: number;
+}
+
+const PLAIN_WIDTH = 100;
+
+export function processHost(): Host {
+  return {
+    cwd: process.cwd(),
+    env: process.env,
+    stdin: process.stdin,
+    stdout: screen(process.stdout),
+    stderr: screen(process.stderr),
+  };
+}
+
+/** A stream that was closed at the other end (`| head`) ends the work quietly. */
+function screen(stream: Writable & { isTTY?: boolean; columns?: number }): Screen {
+  stream.on("error", (error: NodeJS.ErrnoException) => {
+    if (error.code === "EPIPE") process.exit(0);
+    throw error;
+  });
+  return {
+    write: (text) => void stream.write(text),
+    isTerminal: stream.isTTY === true,
+    get width() {
+      return stream.columns ?? PLAIN_WIDTH;
+    },
+  };
+}

@@ -1,0 +1,57 @@
+import { type FileOutcome, type FileReport, judge, nearest, understand } from "../../shared-core/index.ts";
+import { type Call, UsageError } from "./call.ts";
+import type { Source } from "./files.ts";
+import type { Host } from "./host.ts";
+import { workspaceReader } from "./workspace.ts";
+
+/** Judges a file. A fault of the program costs this file and is told on stderr; the others go on. */
+export function judgeSource(source: Source, host: Host): FileOutcome {
+  const { path, content } = source;
+  if (!content.ok) return { readable: false, path, reason: content.detail };
+  try {
+    const model = understand(path, content.text, workspaceReader(path, host.cwd));
+    return { readable: true, path, report: judge(model) };
+  } catch (error) {
+    host.stderr.write(`thrum: internal fault in ${path}\n${error instanceof Error ? error.stack : error}\n`);
+    return {
+      readable: false,
+      path,
+      reason: "an internal fault of thrum; the details stand on standard error",
+    };
+  }
+}
+
+/** Files that a run read, for watching: the model and what it uses. */
+export function filesBehind(outcome: FileOutcome): string[] {
+  if (!outcome.readable) return [outcome.path];
+  return [outcome.path, ...outcome.report.model.files];
+}
+
+/** Keeps only the case that `--case` names; without the option everything. */
+export function chosenCase(call: Call, outcomes: readonly FileOutcome[]): readonly FileOutcome[] {
+  const name = call.value("case");
+  if (name === undefined) return outcomes;
+  const known = new Set(
+    outcomes.flatMap((each) => (each.readable ? each.report.model.cases.map((known) => known.name) : [])),
+  );
+  if (known.size > 0 && !known.has(name)) {
+    const near = nearest(name, known);
+    const list = [...known].map((each) => JSON.stringify(each)).join(", ");
+    throw new UsageError(
+      `no file has a case ${name}; ${near ? `the nearest is ${near}` : `there are ${list}`}`,
+    );
+  }
+  return outcomes.map((each) => (each.readable ? { ...each, report: onlyCase(each.report, name) } : each));
+}
+
+function onlyCase(report: FileReport, name: string): FileReport {
+  const first = report.model.cases[0]?.name;
+  return {
+    ...report,
+    // What is wrong as written is wrong in every case.
+    diagnostics: report.diagnostics.filter(
+      (diagnostic) => diagnostic.case === undefined || diagnostic.case === name || diagnostic.case === first,
+    ),
+    cases: report.cases.filter((each) => each.name === name),
+  };
+}
