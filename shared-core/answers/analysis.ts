@@ -2,6 +2,7 @@ import type { LinearForm, QuantityRef } from "../mechanics/assembly.ts";
 import type { HistoryAsk, Instance, SweepAsk } from "../model/model.ts";
 import type { Outcome } from "../numerics/outcome.ts";
 import type { HistoryAnswer, ModeTable, Peak, SweepAnswer } from "./answer.ts";
+import type { FrequencySensitivity } from "./sensitivity.ts";
 
 /** A steady response that can be asked at any frequency, exactly. */
 export interface FrequencyResponse {
@@ -39,12 +40,13 @@ export interface StaticResponse {
 export interface Analysis {
   readonly instance: Instance;
   modes(): Outcome<ModeTable>;
-  /** Derivative of each elastic mode's frequency (Hz) by the stiffness and inertia terms; see sensitivity.ts. */
+  /** Derivative of each elastic mode's frequency (Hz) by the stiffness and inertia terms. */
+  sensitivity(): Outcome<FrequencySensitivity>;
   frequencyResponse(by: readonly number[]): Outcome<FrequencyResponse>;
   sweep(ask: SweepAsk): Outcome<SweepAnswer>;
   timeResponse(ask: HistoryAsk): Outcome<TimeResponse>;
   history(ask: HistoryAsk): Outcome<HistoryAnswer>;
   statics(): Outcome<StaticResponse>;
-  /** Participation of a direction given by a form: does a force along it excite mode number n? 0 to 1. */
+  /** Participation of a direction given by a form: does a force along it excite the mode at this index of the table? 0 to 1. */
   excites(form: LinearForm, modeIndex: number): number;
 }
