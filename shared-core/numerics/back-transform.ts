@@ -11,7 +11,12 @@ import type { Tridiagonal } from "./tridiagonalise.ts";
 const BLOCK = 32;
 
 /** rows (count×n) ← rows Qᵀ: vectors of T become vectors of A. */
-export function backTransform(rows: Float64Array, count: number, t: Tridiagonal, kernel: Kernel): void {
+export function backTransform(
+  rows: Float64Array,
+  count: number,
+  t: Tridiagonal,
+  product: Kernel["product"],
+): void {
   const { n, reflectors, tau } = t;
   const v = new Float64Array(BLOCK * n);
   const vt = new Float64Array(n * BLOCK);
@@ -32,9 +37,9 @@ export function backTransform(rows: Float64Array, count: number, t: Tridiagonal,
     }
     blockFactor(v, width, many, tau, first, factor);
     // rows ← rows − (rows V) T Vᵀ with H(first) … H(last) = I − V T Vᵀ acting from the right.
-    kernel.product(window(factor, many), window(v, width), window(tv, width), many, many, width);
-    kernel.product(window(rows, n), window(vt, many), window(dots, many), count, width, many);
-    kernel.product(window(dots, many), window(tv, width), window(change, width), count, many, width);
+    product(window(factor, many), window(v, width), window(tv, width), many, many, width);
+    product(window(rows, n), window(vt, many), window(dots, many), count, width, many);
+    product(window(dots, many), window(tv, width), window(change, width), count, many, width);
     for (let r = 0; r < count; r++) {
       const to = r * n;
       const from = r * width;

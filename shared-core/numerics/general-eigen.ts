@@ -8,7 +8,7 @@
  */
 import { balance } from "./balance.ts";
 import { hessenberg } from "./hessenberg.ts";
-import { type Kernel, plainKernel } from "./kernel.ts";
+import { type Kernel, kernelFor } from "./kernel.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, maxAbs } from "./products.ts";
 import { doubleShiftQr, type SchurValues } from "./real-schur.ts";
@@ -43,7 +43,7 @@ export function generalEigen(
   options: GeneralEigenOptions = {},
 ): Outcome<GeneralEigen> {
   if (!allFinite(a)) return fail("the matrix holds a value that is not finite");
-  const { right = true, left = false, kernel = plainKernel } = options;
+  const { right = true, left = false, kernel = kernelFor(n) } = options;
   const scale = unitScale(maxAbs(a));
   const work = a.map((v) => v * scale);
   const stretch = balance(work, n);

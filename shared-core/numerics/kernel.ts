@@ -4,6 +4,8 @@
  * The plain version here runs everywhere; kernel-simd.ts offers the same functions on WebAssembly SIMD. Both
  * are deterministic; between them results agree to rounding only.
  */
+import { backTransform } from "./back-transform.ts";
+import { simdKernel } from "./kernel-simd.ts";
 import { type Tridiagonal, tridiagonalise } from "./tridiagonalise.ts";
 
 /** A rows×columns window of a row-major array: first entry `at`, row distance `stride`. */
@@ -15,6 +17,8 @@ export type Kernel = {
   product(a: Window, b: Window, c: Window, rows: number, inner: number, columns: number): void;
   /** See tridiagonalise.ts; the array given is destroyed. */
   tridiagonalise(a: Float64Array, n: number): Tridiagonal;
+  /** rows (count×n) ← rows Qᵀ for the Q of a tridiagonalisation, see back-transform.ts. */
+  backTransform(rows: Float64Array, count: number, t: Tridiagonal): void;
 };
 
 /** Rows of B and columns of C held in the second-level cache at a time; chosen by trial. */
@@ -71,4 +75,25 @@ function addBlock(
 }
 
 /** Plain TypeScript, for every host. */
-export const plainKernel: Kernel = { name: "plain", product: plainProduct, tridiagonalise };
+export const plainKernel: Kernel = {
+  name: "plain",
+  product: plainProduct,
+  tridiagonalise,
+  backTransform: (rows, count, t) => backTransform(rows, count, t, plainProduct),
+};
+
+let best: Kernel | undefined;
+
+/** The quickest kernel of this host; the first call compiles it, in about a millisecond. */
+export function bestKernel(): Kernel {
+  best ??= simdKernel() ?? plainKernel;
+  return best;
+}
+
+/** Size from which the kernel's set-up and copying pay; found by trial. */
+const KERNEL_SIZE = 48;
+
+/** The kernel for a problem of order n. */
+export function kernelFor(n: number): Kernel {
+  return n < KERNEL_SIZE ? plainKernel : bestKernel();
+}

@@ -5,7 +5,7 @@
  * Appl. 26, 2005, algorithm 2.3); symbols as there. Backward error of order ε in exact squaring; squaring may
  * lose digits for strongly non-normal A, as with every method of this kind.
  */
-import { type Kernel, plainKernel } from "./kernel.ts";
+import { type Kernel, kernelFor } from "./kernel.ts";
 import { factorLu, solveLu } from "./lu.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, identity, norm1 } from "./products.ts";
@@ -36,7 +36,7 @@ const COEFFICIENTS: Readonly<Record<number, readonly number[]>> = {
 export function matrixExponential(
   a: Float64Array,
   n: number,
-  kernel: Kernel = plainKernel,
+  kernel: Kernel = kernelFor(n),
 ): Outcome<Float64Array> {
   if (!allFinite(a)) return fail("the matrix holds a value that is not finite");
   const norm = norm1(a, n, n);

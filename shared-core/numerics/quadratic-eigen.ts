@@ -10,7 +10,7 @@
 import { factorCholesky, solveLower, solveLowerTransposed } from "./cholesky.ts";
 import { type ComplexMatrix, generalEigen } from "./general-eigen.ts";
 import { diagonalOf, inverseRoots } from "./generalised-eigen.ts";
-import { type Kernel, plainKernel } from "./kernel.ts";
+import { type Kernel, kernelFor } from "./kernel.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, maxAbs, transpose } from "./products.ts";
 import { symmetricEigen } from "./symmetric-eigen.ts";
@@ -43,7 +43,7 @@ export function quadraticEigen(
 ): Outcome<DampedModes> {
   if (!allFinite(m) || !allFinite(c) || !allFinite(k))
     return fail("a matrix holds a value that is not finite");
-  const kernel = options.kernel ?? plainKernel;
+  const kernel = options.kernel ?? kernelFor(n);
   const unit = massUnits(m, n);
   if (!unit.ok) return fail(unit.reason);
   const { reduce, restore } = unit.value;

@@ -6,13 +6,12 @@
  * back-transformation above. Errors: values within about n·ε‖A‖, residuals ‖A v − λ v‖ and ‖VᵀV − I‖ likewise,
  * repeated roots included.
  */
-import { backTransform } from "./back-transform.ts";
 import { divideAndConquer } from "./divide-and-conquer.ts";
-import { type Kernel, plainKernel } from "./kernel.ts";
+import { type Kernel, kernelFor } from "./kernel.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, maxAbs } from "./products.ts";
 import { implicitQl, sortAscending } from "./tridiagonal-ql.ts";
-import { formTransposedQ, tridiagonalise } from "./tridiagonalise.ts";
+import { formTransposedQ } from "./tridiagonalise.ts";
 
 export type SymmetricEigen = {
   /** Ascending, in the unit of A. */
@@ -25,8 +24,6 @@ export type SymmetricEigenOptions = { vectors?: boolean; kernel?: Kernel };
 
 /** Largest size at which rotating the vectors inside QL is the quickest way; found by trial. */
 const QL_SIZE = 50;
-/** From here on the kernel's reduction pays. */
-const KERNEL_SIZE = 64;
 
 /** `a` is n×n row-major; only its lower triangle is read and it is kept. */
 export function symmetricEigen(
@@ -36,7 +33,7 @@ export function symmetricEigen(
 ): Outcome<SymmetricEigen> {
   if (!allFinite(a)) return fail("the matrix holds a value that is not finite");
   const withVectors = options.vectors ?? true;
-  const kernel = options.kernel ?? plainKernel;
+  const kernel = options.kernel ?? kernelFor(n);
   const order = ascendingDiagonal(a, n);
   const scale = unitScale(maxAbs(a));
   const work = new Float64Array(n * n);
@@ -47,13 +44,13 @@ export function symmetricEigen(
       work[i * n + j] = (p >= q ? a[p * n + q] : a[q * n + p]) * scale;
     }
   }
-  const t = n < KERNEL_SIZE ? tridiagonalise(work, n) : kernel.tridiagonalise(work, n);
+  const t = kernel.tridiagonalise(work, n);
   const values = t.diagonal;
   let rows: Float64Array | undefined;
   if (withVectors && n > QL_SIZE) {
     rows = divideAndConquer(values, t.offDiagonal, n, kernel);
     if (!rows) return fail("the divide-and-conquer iteration did not converge");
-    backTransform(rows, n, t, kernel);
+    kernel.backTransform(rows, n, t);
   } else {
     rows = withVectors ? formTransposedQ(t) : undefined;
     if (!implicitQl(values, t.offDiagonal, n, rows)) return fail("the QL iteration did not converge");

@@ -5,7 +5,7 @@
  * residuals and orthogonality, also where roots agree to the last bit.
  */
 import { divideAndConquer } from "./divide-and-conquer.ts";
-import { type Kernel, plainKernel } from "./kernel.ts";
+import { type Kernel, kernelFor } from "./kernel.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, identity, maxAbs } from "./products.ts";
 import { columnsFromRows, type SymmetricEigen, unitScale } from "./symmetric-eigen.ts";
@@ -32,7 +32,7 @@ export function tridiagonalEigen(
   const withVectors = options.vectors ?? true;
   let rows: Float64Array | undefined;
   if (withVectors && n > QL_SIZE) {
-    rows = divideAndConquer(d, e, n, options.kernel ?? plainKernel);
+    rows = divideAndConquer(d, e, n, options.kernel ?? kernelFor(n));
     if (!rows) return fail("the divide-and-conquer iteration did not converge");
   } else {
     rows = withVectors ? identity(n) : undefined;

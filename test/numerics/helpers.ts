@@ -92,3 +92,7 @@ export function unwrap<T>(outcome: { ok: true; value: T } | { ok: false; reason:
   if (!outcome.ok) throw new Error(outcome.reason);
   return outcome.value;
 }
+
+export function identityOf(n: number): Float64Array {
+  return Float64Array.from({ length: n * n }, (_, p) => (p % (n + 1) === 0 ? 1 : 0));
+}

@@ -1,0 +1,114 @@
+import { execFileSync } from "node:child_process";
+import { readFileSync } from "node:fs";
+import { describe, expect, it } from "vitest";
+import { kernelFor, plainKernel } from "../../shared-core/numerics/kernel.ts";
+import { simdKernel } from "../../shared-core/numerics/kernel-simd.ts";
+import { symmetricEigen } from "../../shared-core/numerics/symmetric-eigen.ts";
+import {
+  difference,
+  EPS,
+  eigenResidual,
+  identityOf,
+  largest,
+  orthogonalityError,
+  product,
+  randomMatrix,
+  randomSymmetric,
+  transposed,
+  unwrap,
+} from "./helpers.ts";
+
+const simd = simdKernel();
+if (!simd) throw new Error("this host lacks WebAssembly SIMD");
+
+const root = new URL("../../", import.meta.url);
+
+describe.each([plainKernel, simd])("kernel $name", (kernel) => {
+  it.each([
+    [1, 1, 1],
+    [4, 4, 4],
+    [3, 7, 5],
+    [5, 300, 6],
+    [67, 2, 67],
+    [65, 130, 131],
+    [2, 0, 3],
+    [0, 3, 4],
+  ])("multiplies windows of %i×%i×%i and touches nothing else", (rows, inner, columns) => {
+    const window = (r: number, c: number, seed: number) => ({
+      data: randomMatrix(r + 2, c + 3, seed),
+      at: c + 4,
+      stride: c + 3,
+    });
+    const [a, b, c] = [window(rows, inner, 1), window(inner, columns, 2), window(rows, columns, 3)];
+    const cut = (w: { data: Float64Array; at: number; stride: number }, r: number, n: number) =>
+      Float64Array.from({ length: r * n }, (_, p) => w.data[w.at + Math.floor(p / n) * w.stride + (p % n)]);
+    const expected = product(cut(a, rows, inner), cut(b, inner, columns), rows, inner, columns);
+    const before = Float64Array.from(c.data);
+    kernel.product(a, b, c, rows, inner, columns);
+    expect(difference(cut(c, rows, columns), expected)).toBeLessThanOrEqual(inner * EPS);
+    for (let p = 0; p < before.length; p++) {
+      const [i, j] = [Math.floor((p - c.at) / c.stride), (p - c.at) % c.stride];
+      if (!(0 <= i && i < rows && 0 <= j && j < columns)) expect(c.data[p]).toBe(before[p]);
+    }
+  });
+
+  it.each([1, 2, 3, 8, 51, 100])("reduces a matrix of %i to Q T Qᵀ", (n) => {
+    const a = randomSymmetric(n, n);
+    const t = kernel.tridiagonalise(Float64Array.from(a), n);
+    // Rows of the identity through the back-transformation give Qᵀ itself.
+    const q = identityOf(n);
+    kernel.backTransform(q, n, t);
+    expect(orthogonalityError(q, n)).toBeLessThan(4 * n * EPS);
+    const band = new Float64Array(n * n);
+    for (let i = 0; i < n; i++) {
+      band[i * n + i] = t.diagonal[i];
+      if (i > 0) band[i * n + i - 1] = band[(i - 1) * n + i] = t.offDiagonal[i - 1];
+    }
+    const back = product(product(transposed(q, n, n), band, n, n, n), q, n, n, n);
+    expect(difference(back, a)).toBeLessThan(4 * n * EPS);
+  });
+
+  it("takes a zero matrix and one already tridiagonal", () => {
+    const n = 20;
+    for (const off of [0, 1]) {
+      const a = new Float64Array(n * n);
+      for (let i = 1; i < n; i++) a[i * n + i - 1] = a[(i - 1) * n + i] = off;
+      const t = kernel.tridiagonalise(Float64Array.from(a), n);
+      expect(largest(t.tau)).toBe(0);
+      expect([...t.offDiagonal]).toEqual(Array(n - 1).fill(off));
+    }
+  });
+
+  it.each([70, 131])("carries the symmetric eigenproblem of %i", (n) => {
+    const a = randomSymmetric(n, n + 1);
+    const { values, vectors } = unwrap(symmetricEigen(a, n, { kernel }));
+    expect(eigenResidual(a, vectors, values, n)).toBeLessThan(4 * n * EPS * largest(values));
+    expect(orthogonalityError(vectors, n)).toBeLessThan(4 * n * EPS);
+  });
+
+  it("repeats itself bit for bit, whatever ran before", () => {
+    const a = randomMatrix(90, 90, 1);
+    const whole = (data: Float64Array) => ({ data, at: 0, stride: 90 });
+    const [first, second] = [new Float64Array(8100), new Float64Array(8100)];
+    kernel.product(whole(a), whole(a), whole(first), 90, 90, 90);
+    kernel.tridiagonalise(randomSymmetric(150, 2), 150);
+    kernel.product(whole(a), whole(a), whole(second), 90, 90, 90);
+    expect(difference(first, second)).toBe(0);
+  });
+});
+
+describe("kernel choice", () => {
+  it("is plain for small problems and the best there is for large ones", () => {
+    expect(kernelFor(10)).toBe(plainKernel);
+    expect(kernelFor(500).name).toBe("simd");
+    expect(kernelFor(500)).toBe(kernelFor(300));
+  });
+
+  it("embeds exactly what the source builds", () => {
+    const built = execFileSync(process.execPath, ["tools/build-kernel.mjs", "--print"], {
+      cwd: root,
+      encoding: "utf8",
+    });
+    expect(readFileSync(new URL("shared-core/numerics/kernel-module.ts", root), "utf8")).toBe(built);
+  }, 60_000);
+});

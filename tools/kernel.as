@@ -1,0 +1,276 @@
+// Dense inner loops in AssemblyScript with 128-bit SIMD, compiled by tools/build-kernel.mjs into
+// shared-core/numerics/kernel-module.ts. Pointers are byte addresses, sizes and strides count 64-bit numbers.
+// The host lays out memory; nothing is allocated here. The plain versions with their comments and sources are
+// products in kernel.ts, tridiagonalise.ts and back-transform.ts.
+
+/** Depth of a packed panel: 4 columns × 256 rows stay in the first-level cache. */
+const DEPTH: i32 = 256;
+/** Rows of A that stay in the second-level cache beside a panel. */
+const HEIGHT: i32 = 64;
+/** Reflections taken together by backTransform. */
+const BLOCK: i32 = 48;
+
+// @ts-ignore: decorator
+@inline
+function at(base: usize, index: i32): usize {
+  return base + ((<usize>index) << 3);
+}
+
+// @ts-ignore: decorator
+@inline
+function lanes(v: v128): f64 {
+  return f64x2.extract_lane(v, 0) + f64x2.extract_lane(v, 1);
+}
+
+/**
+ * C = A B (mode 0) or C −= A B (mode 1). `pack` has room for DEPTH × (columns rounded up to 4) numbers.
+ */
+export function product(
+  a: usize, aStride: i32, b: usize, bStride: i32, c: usize, cStride: i32,
+  rows: i32, inner: i32, columns: i32, mode: i32, pack: usize,
+): void {
+  if (inner == 0 && mode == 0) {
+    for (let i = 0; i < rows; i++) memory.fill(at(c, i * cStride), 0, columns << 3);
+    return;
+  }
+  for (let k = 0; k < inner; k += DEPTH) {
+    const depth = min(DEPTH, inner - k);
+    packPanels(at(b, k * bStride), bStride, depth, columns, pack);
+    const how = mode == 1 ? 2 : k == 0 ? 0 : 1;
+    for (let i0 = 0; i0 < rows; i0 += HEIGHT) {
+      const end = min(i0 + HEIGHT, rows);
+      for (let j = 0; j < columns; j += 4) {
+        const panel = at(pack, j * depth);
+        const width = min(4, columns - j);
+        for (let i = i0; i < end; i += 4) {
+          tile(at(a, i * aStride + k), aStride, panel, at(c, i * cStride + j), cStride, min(4, end - i), width, depth, how);
+        }
+      }
+    }
+  }
+}
+
+/** Copies B into panels of four columns, zeros behind the last one. */
+function packPanels(b: usize, stride: i32, depth: i32, columns: i32, pack: usize): void {
+  let to = pack;
+  for (let j = 0; j < columns; j += 4) {
+    let from = at(b, j);
+    if (j + 4 <= columns) {
+      for (let k = 0; k < depth; k++) {
+        v128.store(to, v128.load(from));
+        v128.store(to, v128.load(from, 16), 16);
+        from = at(from, stride);
+        to += 32;
+      }
+    } else {
+      for (let k = 0; k < depth; k++) {
+        for (let c = 0; c < 4; c++) store<f64>(at(to, c), j + c < columns ? load<f64>(at(from, c)) : 0);
+        from = at(from, stride);
+        to += 32;
+      }
+    }
+  }
+}
+
+/** A tile of up to 4×4 of C. `how`: 0 sets, 1 adds, 2 subtracts. Missing rows repeat the last one. */
+function tile(
+  a: usize, aStride: i32, panel: usize, c: usize, cStride: i32, rows: i32, width: i32, depth: i32, how: i32,
+): void {
+  let a0 = a;
+  let a1 = at(a, min(1, rows - 1) * aStride);
+  let a2 = at(a, min(2, rows - 1) * aStride);
+  let a3 = at(a, min(3, rows - 1) * aStride);
+  let s00 = f64x2.splat(0), s01 = s00, s10 = s00, s11 = s00, s20 = s00, s21 = s00, s30 = s00, s31 = s00;
+  const end = panel + ((<usize>depth) << 5);
+  for (let p = panel; p < end; p += 32) {
+    const b0 = v128.load(p);
+    const b1 = v128.load(p, 16);
+    let x = v128.load64_splat(a0);
+    s00 = f64x2.add(s00, f64x2.mul(x, b0));
+    s01 = f64x2.add(s01, f64x2.mul(x, b1));
+    x = v128.load64_splat(a1);
+    s10 = f64x2.add(s10, f64x2.mul(x, b0));
+    s11 = f64x2.add(s11, f64x2.mul(x, b1));
+    x = v128.load64_splat(a2);
+    s20 = f64x2.add(s20, f64x2.mul(x, b0));
+    s21 = f64x2.add(s21, f64x2.mul(x, b1));
+    x = v128.load64_splat(a3);
+    s30 = f64x2.add(s30, f64x2.mul(x, b0));
+    s31 = f64x2.add(s31, f64x2.mul(x, b1));
+    a0 += 8;
+    a1 += 8;
+    a2 += 8;
+    a3 += 8;
+  }
+  write(c, s00, s01, width, how);
+  if (rows > 1) write(at(c, cStride), s10, s11, width, how);
+  if (rows > 2) write(at(c, 2 * cStride), s20, s21, width, how);
+  if (rows > 3) write(at(c, 3 * cStride), s30, s31, width, how);
+}
+
+function write(c: usize, left: v128, right: v128, width: i32, how: i32): void {
+  if (width == 4) {
+    if (how == 1) {
+      left = f64x2.add(v128.load(c), left);
+      right = f64x2.add(v128.load(c, 16), right);
+    } else if (how == 2) {
+      left = f64x2.sub(v128.load(c), left);
+      right = f64x2.sub(v128.load(c, 16), right);
+    }
+    v128.store(c, left);
+    v128.store(c, right, 16);
+    return;
+  }
+  for (let k = 0; k < width; k++) {
+    const value = k == 0 ? f64x2.extract_lane(left, 0) : k == 1 ? f64x2.extract_lane(left, 1) : f64x2.extract_lane(right, 0);
+    const p = at(c, k);
+    store<f64>(p, how == 0 ? value : how == 1 ? load<f64>(p) + value : load<f64>(p) - value);
+  }
+}
+
+/**
+ * Tridiagonal form of the lower triangle of `a` (n×n, row distance `stride`), which becomes the reflections.
+ * `work` has room for 4 (n + 2) numbers. See tridiagonalise.ts.
+ */
+export function tridiagonalise(a: usize, stride: i32, n: i32, d: usize, e: usize, tau: usize, work: usize): void {
+  const v = work;
+  const w = at(v, n + 2 & ~1);
+  const u = at(w, n + 2 & ~1);
+  const p = at(u, n + 2 & ~1);
+  memory.fill(work, 0, (4 * (n + 2)) << 3);
+  for (let i = n - 1; i >= 0; i--) {
+    const row = at(a, i * stride);
+    const vi = load<f64>(at(v, i));
+    const wi = load<f64>(at(w, i));
+    for (let j = 0; j <= i; j++) {
+      store<f64>(at(row, j), load<f64>(at(row, j)) - (vi * load<f64>(at(w, j)) + wi * load<f64>(at(v, j))));
+    }
+    store<f64>(at(d, i), load<f64>(at(row, i)));
+    if (i == 0) break;
+    const t = reflect(row, i, at(e, i - 1));
+    store<f64>(at(tau, i), t);
+    memory.copy(u, row, i << 3);
+    memory.fill(p, 0, (i + 1) << 3);
+    pass(a, stride, i, v, w, u, p);
+    let dot: f64 = 0;
+    for (let j = 0; j < i; j++) dot += load<f64>(at(p, j)) * load<f64>(at(u, j));
+    const half = 0.5 * t * t * dot;
+    for (let j = 0; j < i; j++) {
+      const x = load<f64>(at(u, j));
+      store<f64>(at(w, j), t * load<f64>(at(p, j)) - half * x);
+      store<f64>(at(v, j), x);
+    }
+    if (t == 0) memory.fill(v, 0, i << 3);
+  }
+}
+
+function reflect(row: usize, i: i32, e: usize): f64 {
+  const last = load<f64>(at(row, i - 1));
+  let square: f64 = 0;
+  for (let j = 0; j < i - 1; j++) {
+    const x = load<f64>(at(row, j));
+    square += x * x;
+  }
+  if (square == 0) {
+    store<f64>(e, last);
+    memory.fill(row, 0, i << 3);
+    return 0;
+  }
+  const length = sqrt<f64>(square + last * last);
+  const beta = last >= 0 ? -length : length;
+  const scale = 1 / (last - beta);
+  for (let j = 0; j < i - 1; j++) store<f64>(at(row, j), load<f64>(at(row, j)) * scale);
+  store<f64>(at(row, i - 1), 1);
+  store<f64>(e, beta);
+  return (beta - last) / beta;
+}
+
+/** A −= v wᵀ + w vᵀ and p += A u over the leading i×i lower triangle, two rows at a time. */
+function pass(a: usize, stride: i32, i: i32, v: usize, w: usize, u: usize, p: usize): void {
+  let r = 0;
+  for (; r + 1 < i; r += 2) {
+    const row0 = at(a, r * stride);
+    const row1 = at(row0, stride);
+    const v0 = load<f64>(at(v, r)), v1 = load<f64>(at(v, r + 1));
+    const w0 = load<f64>(at(w, r)), w1 = load<f64>(at(w, r + 1));
+    const u0 = load<f64>(at(u, r)), u1 = load<f64>(at(u, r + 1));
+    const vv0 = f64x2.splat(v0), vv1 = f64x2.splat(v1), ww0 = f64x2.splat(w0), ww1 = f64x2.splat(w1);
+    const uu0 = f64x2.splat(u0), uu1 = f64x2.splat(u1);
+    let sum0 = f64x2.splat(0), sum1 = sum0;
+    const end = (<usize>r) << 3;
+    for (let c: usize = 0; c < end; c += 16) {
+      const wc = v128.load(w + c);
+      const vc = v128.load(v + c);
+      const uc = v128.load(u + c);
+      const x0 = f64x2.sub(f64x2.sub(v128.load(row0 + c), f64x2.mul(vv0, wc)), f64x2.mul(ww0, vc));
+      const x1 = f64x2.sub(f64x2.sub(v128.load(row1 + c), f64x2.mul(vv1, wc)), f64x2.mul(ww1, vc));
+      v128.store(row0 + c, x0);
+      v128.store(row1 + c, x1);
+      sum0 = f64x2.add(sum0, f64x2.mul(x0, uc));
+      sum1 = f64x2.add(sum1, f64x2.mul(x1, uc));
+      v128.store(p + c, f64x2.add(f64x2.add(v128.load(p + c), f64x2.mul(x0, uu0)), f64x2.mul(x1, uu1)));
+    }
+    // The 2×2 corner on the diagonal.
+    const x00 = load<f64>(at(row0, r)) - 2 * v0 * w0;
+    const x10 = load<f64>(at(row1, r)) - v1 * w0 - w1 * v0;
+    const x11 = load<f64>(at(row1, r + 1)) - 2 * v1 * w1;
+    store<f64>(at(row0, r), x00);
+    store<f64>(at(row1, r), x10);
+    store<f64>(at(row1, r + 1), x11);
+    store<f64>(at(p, r), load<f64>(at(p, r)) + lanes(sum0) + x00 * u0 + x10 * u1);
+    store<f64>(at(p, r + 1), load<f64>(at(p, r + 1)) + lanes(sum1) + x10 * u0 + x11 * u1);
+  }
+  if (r < i) {
+    const row = at(a, r * stride);
+    const vr = load<f64>(at(v, r)), wr = load<f64>(at(w, r)), ur = load<f64>(at(u, r));
+    let sum: f64 = 0;
+    for (let c = 0; c < r; c++) {
+      const x = load<f64>(at(row, c)) - vr * load<f64>(at(w, c)) - wr * load<f64>(at(v, c));
+      store<f64>(at(row, c), x);
+      sum += x * load<f64>(at(u, c));
+      store<f64>(at(p, c), load<f64>(at(p, c)) + x * ur);
+    }
+    const x = load<f64>(at(row, r)) - 2 * vr * wr;
+    store<f64>(at(row, r), x);
+    store<f64>(at(p, r), load<f64>(at(p, r)) + sum + x * ur);
+  }
+}
+
+/**
+ * rows (count×n, row distance `rowStride`) ← rows Qᵀ for the reflections left by tridiagonalise.
+ * `work` has room for 3 BLOCK n + 2 BLOCK² + count BLOCK numbers.
+ */
+export function backTransform(
+  rows: usize, rowStride: i32, count: i32, reflectors: usize, stride: i32, n: i32, tau: usize, work: usize, pack: usize,
+): void {
+  const v = work;
+  const vt = at(v, BLOCK * n);
+  const tv = at(vt, BLOCK * n);
+  const gram = at(tv, BLOCK * n);
+  const factor = at(gram, BLOCK * BLOCK);
+  const dots = at(factor, BLOCK * BLOCK);
+  for (let first = 1; first < n; first += BLOCK) {
+    const many = min(BLOCK, n - first);
+    const width = first + many - 1;
+    for (let b = 0; b < many; b++) {
+      const i = first + b;
+      memory.copy(at(v, b * width), at(reflectors, i * stride), i << 3);
+      memory.fill(at(v, b * width + i), 0, (width - i) << 3);
+      for (let j = 0; j < width; j++) store<f64>(at(vt, j * many + b), load<f64>(at(v, b * width + j)));
+    }
+    product(v, width, vt, many, gram, many, many, width, many, 0, pack);
+    for (let b = 0; b < many; b++) {
+      const t = load<f64>(at(tau, first + b));
+      for (let r = 0; r < b; r++) {
+        let sum: f64 = 0;
+        for (let c = r; c < b; c++) sum += load<f64>(at(factor, r * many + c)) * load<f64>(at(gram, c * many + b));
+        store<f64>(at(factor, r * many + b), -t * sum);
+      }
+      store<f64>(at(factor, b * many + b), t);
+      for (let r = b + 1; r < many; r++) store<f64>(at(factor, r * many + b), 0);
+    }
+    product(factor, many, v, width, tv, width, many, many, width, 0, pack);
+    product(rows, rowStride, vt, many, dots, many, count, width, many, 0, pack);
+    product(dots, many, tv, width, rows, rowStride, count, many, width, 1, pack);
+  }
+}
