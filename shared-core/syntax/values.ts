@@ -1,3 +1,4 @@
+import type { Span } from "../text/span.ts";
 import type { Cursor } from "./cursor.ts";
 import { LEVEL, literal, name, wholeExpression } from "./expressions.ts";
 import {
@@ -17,7 +18,12 @@ import { DISTRIBUTIONS, VALUE_WORDS } from "./words.ts";
 /** One or more items, separated by commas, to the end of the line. */
 export function items(c: Cursor): Item[] {
   const found = [item(c)];
-  while (c.accept(",")) found.push(item(c));
+  while (c.word === ",") {
+    const comma = c.span;
+    c.take();
+    if (c.atEnd) danglingComma(c, comma);
+    else found.push(item(c));
+  }
   c.expectEnd("an operator, `,` or the end of the line");
   return found;
 }
@@ -74,6 +80,11 @@ export function tableRow(c: Cursor): TableRow {
     if (c.accept(",") && c.atEnd) c.expected("another number behind the comma");
   }
   return { span: c.from(start), cells };
+}
+
+function danglingComma(c: Cursor, comma: Span): void {
+  const fixes = [{ title: "Remove the comma", edits: [{ span: comma, text: "" }], safe: true }];
+  c.expected("another item behind the comma", { fixes });
 }
 
 /** A closed text ends with an odd number of quotes behind its first: pairs stand for quotes inside. */

@@ -93,6 +93,8 @@ describe("what cannot be read is said once, with its place", () => {
     ["(1, 2", "expected an operator, `,` or `)`, and the line ends here"],
     ["(1", "expected an operator or `)`, and the line ends here"],
     ["1 +", "expected a value, and the line ends here"],
+    ["a, b,", "expected another item behind the comma, and the line ends here"],
+    ["a,, b", "expected a value, found `,`"],
     ["* 2", "expected a value, found `*`"],
     ["a b", "expected an operator, `,` or the end of the line, found `b`"],
     ["3 3", "expected an operator, `,` or the end of the line, found `3`"],
