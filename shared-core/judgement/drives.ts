@@ -3,8 +3,8 @@ import type { Mode, ModeTable } from "../answers/answer.ts";
 import type { Assembly, DriveInfo, LinearForm } from "../mechanics/assembly.ts";
 
 /**
- * Smallest participation (0 to 1) with which a drive counts as exciting a mode: about 3 % of the amplitude of
- * the best placed force. Common practice, no source.
+ * Smallest participation (cosine between push and mode, 0 to 1) with which a drive counts as exciting a mode; below
+ * it the drive sits on a node for all that matters. Common practice, no source.
  */
 export const EXCITED = 1e-3;
 

@@ -7,6 +7,7 @@ import { implausibleDeflection } from "./rules/implausible-deflection.ts";
 import { implausibleFrequency } from "./rules/implausible-frequency.ts";
 import { lossInTime } from "./rules/loss-in-time.ts";
 import { nearResonance } from "./rules/near-resonance.ts";
+import { noConvergence } from "./rules/no-convergence.ts";
 import { notDamped } from "./rules/not-damped.ts";
 import { notSettled } from "./rules/not-settled.ts";
 import { outsideValidity } from "./rules/outside-validity.ts";
@@ -25,6 +26,7 @@ export const RULES: readonly Rule[] = [
   unreached,
   lossInTime,
   startsWithJump,
+  noConvergence,
   freeMotion,
   staticInstability,
   unstableMode,

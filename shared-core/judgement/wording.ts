@@ -31,6 +31,9 @@ export const perLength = (stiffness: number, motion: Motion = "sliding"): string
 export const inUnit = (value: number, unit: string): string =>
   unit === "rad" ? degrees(value) : formatQuantity({ ...kindOfUnit(unit), value: inHertz(value, unit) });
 
+/** A name or text of the model, marked as such. */
+export const quoted = (text: string): string => `\`${text}\``;
+
 /** `a`, `a and b`, `a, b and c`. */
 export function list(names: readonly string[]): string {
   return names.length < 2

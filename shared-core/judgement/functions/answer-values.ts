@@ -62,16 +62,16 @@ export function valueAt(trial: Trial, args: AnswerArguments): Found<Quantity> {
   if (!at.ok) return at;
   const { ask, quantity } = series.value;
   if (ask.kind === "sweep") {
-    if (!at.value.rate) return fail(`${ask.name} is a sweep: at wants a rate such as 12 Hz`);
+    if (!at.value.rate) return fail(`\`${ask.name}\` is a sweep: at wants a rate such as 12 Hz`);
     const found = phasorAt(trial, ask, quantity, at.value.value);
     return found.ok ? succeed(seriesValue(quantity, Math.hypot(...found.value))) : found;
   }
-  if (at.value.rate) return fail(`${ask.name} is a history: at wants a time such as 0.2 s`);
+  if (at.value.rate) return fail(`\`${ask.name}\` is a history: at wants a time such as 0.2 s`);
   const response = inTime(trial, ask);
   if (!response.ok) return response;
   const time0 = at.value.value;
   if (time0 < 0 || time0 > ask.lasting * (1 + 1e-12)) {
-    return fail(`${ask.name} ends at ${time(ask.lasting)}, before ${time(time0)}`);
+    return fail(`\`${ask.name}\` ends at ${time(ask.lasting)}, before ${time(time0)}`);
   }
   const found = response.value.at(quantity, Math.min(time0, ask.lasting));
   return found.ok ? succeed(seriesValue(quantity, found.value)) : found;
@@ -179,7 +179,7 @@ function remarkStartingUp(trial: Trial, ask: HistoryAsk): void {
   trial.remark({
     code: "not-settled",
     ask,
-    message: `${ask.name} ends after ${time(ask.lasting)} while ${which} still rings with ${percent(slowest.left)} of its start, and an rms is taken over all of it`,
+    message: `\`${ask.name}\` ends after ${time(ask.lasting)} while ${which} still rings with ${percent(slowest.left)} of its start, and an rms is taken over all of it`,
     hint: `after ${time(Math.log(STILL_RINGS) / slowest.mode.eigenvalue[0])} less than ${percent(STILL_RINGS)} of it is left`,
   });
 }

@@ -14,10 +14,10 @@ export function argument<K extends AnswerArgument["is"]>(
   ...kinds: readonly K[]
 ): Found<Of<K>> {
   const found = args[name];
-  if (found === undefined) return fail(`${name} is missing`);
+  if (found === undefined) return fail(`\`${name}\` is missing`);
   return (kinds as readonly string[]).includes(found.is)
     ? succeed(found as Of<K>)
-    : fail(`${name} cannot be used here`);
+    : fail(`\`${name}\` cannot be used here`);
 }
 
 export function numberOf(args: AnswerArguments, name: string): Found<Quantity> {
@@ -48,17 +48,17 @@ export function askOf(args: AnswerArguments): Found<SweepAsk | HistoryAsk> {
 export function sweepOf(args: AnswerArguments): Found<SweepAsk> {
   const found = askOf(args);
   if (!found.ok || found.value.kind === "sweep") return found as Found<SweepAsk>;
-  return fail(`${found.value.name} is a history, and this is read from a sweep`);
+  return fail(`\`${found.value.name}\` is a history, and this is read from a sweep`);
 }
 
 export function historyOf(args: AnswerArguments): Found<HistoryAsk> {
   const found = askOf(args);
   if (!found.ok || found.value.kind === "history") return found as Found<HistoryAsk>;
-  return fail(`${found.value.name} is a sweep, and this is read from a history`);
+  return fail(`\`${found.value.name}\` is a sweep, and this is read from a history`);
 }
 
 function whyNoSeries(ask: Ask): string {
   return ask.kind === "later"
-    ? `${ask.name} asks for ${ask.askKind}, which this version does not compute`
-    : `${ask.name} asks for modes and holds no series`;
+    ? `\`${ask.name}\` asks for ${ask.askKind}, which this version does not compute`
+    : `\`${ask.name}\` asks for modes and holds no series`;
 }

@@ -66,7 +66,7 @@ function edge(
     inside = outside;
     step *= 1.1;
   }
-  return fail(`the peak at ${say(from)} does not fall to 1/sqrt(2) on both sides within ${ask.name}`);
+  return fail(`the peak at ${say(from)} does not fall to 1/sqrt(2) on both sides within \`${ask.name}\``);
 }
 
 function bisect(above: (hertz: number) => Found<number>, inside: number, outside: number): Found<number> {

@@ -23,16 +23,16 @@ export function below(trial: Trial, args: AnswerArguments): Found<Quantity> {
   const { ask, quantity } = series.value;
   if (ask.kind === "sweep") return belowInSweep(trial, ask, quantity, limit);
   if (typeof limit.points !== "number") {
-    return fail(`${limit.name} is a curve over frequency, and ${ask.name} is a history`);
+    return fail(`\`${limit.name}\` is a curve over frequency, and \`${ask.name}\` is a history`);
   }
   if (limit.of === "rms")
-    return fail(`${limit.name} is an rms limit, and ${ask.name} holds instantaneous values`);
+    return fail(`\`${limit.name}\` is an rms limit, and \`${ask.name}\` holds instantaneous values`);
   const peak = extremeOf(trial, ask, quantity, "peak");
   return peak.ok ? ratio(peak.value.value, limit.points, limit) : peak;
 }
 
 function ratio(value: number, limit: number, { name }: LimitCurve): Found<Quantity> {
-  return limit > 0 ? succeed(number(value / limit)) : fail(`${name} is not above zero everywhere`);
+  return limit > 0 ? succeed(number(value / limit)) : fail(`\`${name}\` is not above zero everywhere`);
 }
 
 function belowInSweep(
@@ -41,13 +41,13 @@ function belowInSweep(
   quantity: QuantityRef,
   limit: LimitCurve,
 ): Found<Quantity> {
-  if (limit.bands !== "none") return fail(`${limit.name} is over bands, which a sweep does not have`);
+  if (limit.bands !== "none") return fail(`\`${limit.name}\` is over bands, which a sweep does not have`);
   const [low, high] = endsOf(limit);
   const from = Math.max(low, ask.fromHz);
   const to = Math.min(high, ask.toHz);
   if (!(from <= to)) {
     return fail(
-      `${limit.name} judges from ${rate(low)} to ${rate(high)}, and ${ask.name} runs from ${rate(ask.fromHz)} to ${rate(ask.toHz)}`,
+      `\`${limit.name}\` judges from ${rate(low)} to ${rate(high)}, and \`${ask.name}\` runs from ${rate(ask.fromHz)} to ${rate(ask.toHz)}`,
     );
   }
   const response = steady(trial, ask);
@@ -89,7 +89,7 @@ function largestRatio(
     const allowed = limitAt(limit, hertz);
     if (!at.ok) failed = at.reason;
     else if (allowed !== undefined && !(allowed > 0))
-      failed = `${limit.name} is not above zero at ${rate(hertz)}`;
+      failed = `\`${limit.name}\` is not above zero at ${rate(hertz)}`;
     return at.ok && allowed !== undefined ? Math.hypot(...at.value) / allowed : 0;
   };
   const ratios = grid.map(ratioAt);

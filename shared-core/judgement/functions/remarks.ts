@@ -45,7 +45,7 @@ export function undampedWords(
 ): { readonly message: string; readonly hint: string } {
   const which = list(modes.map((mode) => `mode ${mode.number} at ${rate(mode.frequencyHz)}`));
   return {
-    message: `${ask.name} runs through ${which}, which nothing damps, so its peaks there have no bound`,
+    message: `\`${ask.name}\` runs through ${which}, which nothing damps, so its peaks there have no bound`,
     hint: "give a loss_factor, a damper or assume modal_damping, or end the sweep before it",
   };
 }

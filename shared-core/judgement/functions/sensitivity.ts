@@ -26,8 +26,8 @@ const STEP = 1e-4;
 /** (p / y) dy/dp. */
 export function relativeDerivative(trial: Trial, expression: Expression, name: string): Found<number> {
   const parameter = trial.instance.parameters.get(name);
-  if (parameter === undefined) return fail(`there is no parameter ${name}`);
-  if (parameter.value === 0) return fail(`${name} is zero, so it has no relative change`);
+  if (parameter === undefined) return fail(`there is no parameter \`${name}\``);
+  if (parameter.value === 0) return fail(`\`${name}\` is zero, so it has no relative change`);
   const here = trial.evaluate(expression);
   if (!here.ok) return here;
   if (here.value.value === 0) return fail("the quantity is zero, so it has no relative change");

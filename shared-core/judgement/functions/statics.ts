@@ -29,7 +29,7 @@ function staticOf(
   const element = argument(args, "element", "element");
   if (!element.ok) return element;
   const { elements, name } = element.value;
-  if (elements.length === 0) return fail(`${name} joins nothing`);
+  if (elements.length === 0) return fail(`\`${name}\` joins nothing`);
   const statics = trial.analysis.statics();
   if (!statics.ok) return statics;
   let travel = 0;

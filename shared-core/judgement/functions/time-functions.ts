@@ -53,7 +53,7 @@ export function periodOf(trial: Trial, args: AnswerArguments): Found<Quantity> {
   const crossings = response.crossings(quantity, level.value, "up");
   if (!crossings.ok) return fail(crossings.reason);
   const { length } = crossings.value;
-  if (length < 2) return fail(`${quantity.text} swings through less than one cycle in ${ask.name}`);
+  if (length < 2) return fail(`\`${quantity.text}\` swings through less than one cycle in \`${ask.name}\``);
   return succeed(seconds((crossings.value[length - 1] - crossings.value[0]) / (length - 1)));
 }
 
@@ -120,7 +120,7 @@ function notSettled(
   away: number,
   half: number,
 ): Found<Quantity> {
-  const message = `${ask.name} ends after ${time(ask.lasting)} with ${quantity.text} still ${inUnit(away, quantity.unit)} from where it settles, outside its band of ${inUnit(half, quantity.unit)}`;
+  const message = `\`${ask.name}\` ends after ${time(ask.lasting)} with \`${quantity.text}\` still ${inUnit(away, quantity.unit)} from where it settles, outside its band of ${inUnit(half, quantity.unit)}`;
   trial.remark({ code: "not-settled", ask, message, hint: "let it last longer" });
   return fail(message);
 }

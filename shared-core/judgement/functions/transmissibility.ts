@@ -33,9 +33,9 @@ function onlyDrive(trial: Trial, ask: SweepAsk): Found<DriveInfo> {
   const drives = ask.by.map((index) => trial.instance.assembly.drives[index]);
   if (drives.length === 1) return succeed(drives[0]);
   return drives.length === 0
-    ? fail(`no drive acts in ${ask.name}`)
+    ? fail(`no drive acts in \`${ask.name}\``)
     : fail(
-        `${drives.length} drives act in ${ask.name}, and a transmissibility is of one: give it by = one drive`,
+        `${drives.length} drives act in \`${ask.name}\`, and a transmissibility is of one: give it by = one drive`,
       );
 }
 
@@ -44,7 +44,7 @@ function amplitudeFor(drive: DriveInfo, quantity: QuantityRef, rateHz: number): 
   const omega = 2 * Math.PI * rateHz;
   const { shape } = drive;
   if (shape.kind !== "sine" && shape.kind !== "unbalance" && shape.kind !== "none") {
-    return fail(`${drive.name} is no steady drive`);
+    return fail(`\`${drive.name}\` is no steady drive`);
   }
   const amplitude =
     shape.kind === "unbalance"
@@ -52,7 +52,7 @@ function amplitudeFor(drive: DriveInfo, quantity: QuantityRef, rateHz: number): 
       : shape.kind === "sine"
         ? (shape.amplitude ?? 1)
         : 1;
-  if (!(Math.abs(amplitude) > 0)) return fail(`the amplitude of ${drive.name} is zero there`);
+  if (!(Math.abs(amplitude) > 0)) return fail(`the amplitude of \`${drive.name}\` is zero there`);
   if (drive.on.kind === "form") {
     return sameUnit(drive.unit, quantity.unit) ? succeed(Math.abs(amplitude)) : fail(unlike(drive, quantity));
   }
@@ -65,7 +65,7 @@ function amplitudeFor(drive: DriveInfo, quantity: QuantityRef, rateHz: number): 
 }
 
 const unlike = (drive: DriveInfo, quantity: QuantityRef): string =>
-  `${quantity.text} is in ${quantity.unit} and ${drive.name} in ${drive.unit}: a transmissibility compares like with like`;
+  `\`${quantity.text}\` is in ${quantity.unit} and \`${drive.name}\` in ${drive.unit}: a transmissibility compares like with like`;
 
 function sameUnit(a: string, b: string): boolean {
   return a === b || sameDimension(kindOfUnit(a).dimension, kindOfUnit(b).dimension);

@@ -31,12 +31,17 @@ function fails(context: RuleContext, judged: Judged): Finding {
   const parameter = cure === undefined ? undefined : statementOf(context.model, cure.parameter);
   return {
     span: expectation.comparison.span,
-    message: `${verdict.name} fails: ${leftText(context, judged)} is ${value}, ${limitText(context, judged)} wanted${by}`,
+    message: `\`${verdict.name}\` fails: \`${leftText(context, judged)}\` is ${value}, ${limitText(context, judged)} wanted${by}`,
     hint: hintOf(context, judged),
     related:
       parameter === undefined || cure === undefined
         ? undefined
-        : [{ span: nameSpan(parameter), message: `${cure.parameter} matters most among what can cure it` }],
+        : [
+            {
+              span: nameSpan(parameter),
+              message: `\`${cure.parameter}\` matters most among what can cure it`,
+            },
+          ],
     fixes: cure === undefined ? undefined : fixesFor(context, cure),
   };
 }
@@ -45,21 +50,21 @@ function hintOf({ instance }: RuleContext, { cure, verdict }: Judged): string | 
   if (cure !== undefined) {
     const { value } = roundedCure(instance, cure);
     const now = instance.parameters.get(cure.parameter)?.value ?? 0;
-    return `it would hold with ${cure.parameter} ${cure.side} ${showParameter(instance, cure.parameter, value)} (now ${showParameter(instance, cure.parameter, now)}), all else as it is`;
+    return `it would hold with \`${cure.parameter}\` ${cure.side} ${showParameter(instance, cure.parameter, value)} (now ${showParameter(instance, cure.parameter, now)}), all else as it is`;
   }
   if (verdict.mattersMost === undefined) {
     return "no let moves it: name the number that may change as a let to be told the value it needs";
   }
   const { name, sensitivity } = verdict.mattersMost;
-  return `${name} matters most, ${percent(sensitivity / 100)} for each 1 % of it, and does not cure it within a factor of ten`;
+  return `\`${name}\` matters most, ${percent(sensitivity / 100)} for each 1 % of it, and does not cure it within a factor of ten`;
 }
 
 function notJudged(context: RuleContext, judged: Judged): Finding {
   const { verdict, expectation } = judged;
   return {
     span: expectation.comparison.span,
-    message: `${verdict.name} cannot be judged: ${verdict.reason ?? "its value could not be computed"}`,
-    hint: `what is not computed does not hold: mend ${leftText(context, judged)} or take the expectation out`,
+    message: `\`${verdict.name}\` cannot be judged: ${verdict.reason ?? "its value could not be computed"}`,
+    hint: `what is not computed does not hold: mend \`${leftText(context, judged)}\` or take the expectation out`,
   };
 }
 

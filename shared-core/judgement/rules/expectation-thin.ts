@@ -1,7 +1,7 @@
 import { formatNumber } from "../../units/show.ts";
 import type { Finding, Judged, Rule, RuleContext } from "../rule.ts";
 import { showAs, showParameter } from "../shown-unit.ts";
-import { list, percent } from "../wording.ts";
+import { list, percent, quoted } from "../wording.ts";
 import { leftText, limitText } from "./expectation-words.ts";
 
 /** An expectation holds, but with less than its margin, or not under its tolerances. */
@@ -22,7 +22,7 @@ function insideMargin(context: RuleContext, judged: Judged): Finding | undefined
   }
   return {
     span: expectation.comparison.span,
-    message: `${verdict.name} holds with ${percent(verdict.margin)} left, less than its margin of ${percent(expectation.margin)}: ${leftText(context, judged)} is ${shown(context, judged, verdict.value)}, ${limitText(context, judged)} wanted`,
+    message: `\`${verdict.name}\` holds with ${percent(verdict.margin)} left, less than its margin of ${percent(expectation.margin)}: \`${leftText(context, judged)}\` is ${shown(context, judged, verdict.value)}, ${limitText(context, judged)} wanted`,
     hint: followed(judged),
   };
 }
@@ -35,7 +35,7 @@ function underTolerances(context: RuleContext, judged: Judged): Finding | undefi
   if (tolerance.holds === null) {
     return {
       span,
-      message: `${verdict.name} holds as written, and cannot be judged under its tolerances: ${tolerance.reason ?? "a value could not be computed"}`,
+      message: `\`${verdict.name}\` holds as written, and cannot be judged under its tolerances: ${tolerance.reason ?? "a value could not be computed"}`,
       hint: "narrow the bands that lead there",
     };
   }
@@ -45,13 +45,13 @@ function underTolerances(context: RuleContext, judged: Judged): Finding | undefi
     const wanted = typeof expectation.tolerance === "object" ? expectation.tolerance.share : 1;
     return {
       span,
-      message: `${verdict.name} holds as written, but in ${percent(tolerance.share ?? 0)} of ${tolerance.samples} draws only, ${percent(wanted)} wanted: ${leftText(context, judged)} reaches ${worst} there, ${limit}`,
+      message: `\`${verdict.name}\` holds as written, but in ${percent(tolerance.share ?? 0)} of ${tolerance.samples} draws only, ${percent(wanted)} wanted: \`${leftText(context, judged)}\` reaches ${worst} there, ${limit}`,
       hint: followed(judged),
     };
   }
   return {
     span,
-    message: `${verdict.name} holds as written, but not under its tolerances: ${leftText(context, judged)} reaches ${worst}, ${limit}`,
+    message: `\`${verdict.name}\` holds as written, but not under its tolerances: \`${leftText(context, judged)}\` reaches ${worst}, ${limit}`,
     hint: whereWorst(context, judged),
   };
 }
@@ -68,8 +68,8 @@ function whereWorst({ instance }: RuleContext, judged: Judged): string | undefin
   if (at === undefined) return followed(judged);
   const all = Object.entries(at).map(([owner, value]) =>
     instance.parameters.has(owner)
-      ? `${owner} at ${showParameter(instance, owner, value)}`
-      : `${owner} at ${formatNumber(value)}`,
+      ? `\`${owner}\` at ${showParameter(instance, owner, value)}`
+      : `\`${owner}\` at ${formatNumber(value)}`,
   );
   const names = all.length > NAMED ? [...all.slice(0, NAMED), `${all.length - NAMED} more`] : all;
   return `worst with ${list(names)} (${how === "proven" ? "all corners" : "searched, not proven"})`;
@@ -78,5 +78,5 @@ function whereWorst({ instance }: RuleContext, judged: Judged): string | undefin
 function followed({ verdict }: Judged): string | undefined {
   if (verdict.mattersMost === undefined) return undefined;
   const { name, sensitivity } = verdict.mattersMost;
-  return `${name} matters most: ${percent(sensitivity / 100)} for each 1 % of it`;
+  return `\`${name}\` matters most: ${percent(sensitivity / 100)} for each 1 % of it`;
 }

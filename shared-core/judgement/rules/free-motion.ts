@@ -1,7 +1,7 @@
 import { span } from "../../text/span.ts";
 import { nameSpan, statementOf } from "../places.ts";
 import type { Rule } from "../rule.ts";
-import { list } from "../wording.ts";
+import { list, quoted } from "../wording.ts";
 import { lonelyCoordinates } from "./unreached.ts";
 
 /** Part of the largest entry of a shape that still counts as moving. */
@@ -28,7 +28,7 @@ export const freeMotion: Rule = {
     const shown =
       names.length > NAMED
         ? `${names.slice(0, NAMED).join(", ")} and ${names.length - NAMED} more`
-        : list(names);
+        : list(names.map(quoted));
     const statement = statementOf(model, moving[0].owner);
     const count = free.length === 1 ? "one rigid-body mode" : `${free.length} rigid-body modes`;
     return [

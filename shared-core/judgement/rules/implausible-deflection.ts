@@ -24,7 +24,7 @@ export const implausibleDeflection: Rule = {
       return [
         {
           span: placeOf(model, element.name, "stiffness"),
-          message: `${element.name} sags ${length(Math.abs(sag.value.travel))} under the masses given, with ${perLength(each, "sliding")}${element.count > 1 ? " each" : ""}`,
+          message: `\`${element.name}\` sags ${length(Math.abs(sag.value.travel))} under the masses given, with ${perLength(each, "sliding")}${element.count > 1 ? " each" : ""}`,
           hint: "a thousand times stiffer is meant where N/m stands for N/mm",
           fixes: statement === undefined ? undefined : thousandfold(model, statement),
         },

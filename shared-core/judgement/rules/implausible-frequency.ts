@@ -34,12 +34,12 @@ export const implausibleFrequency: Rule = {
       return [
         {
           span: statement === undefined ? span(0, 0) : nameSpan(statement),
-          message: `mode ${mode.number}, mostly ${coordinate.name}${holder === undefined ? "" : ` on ${holder}`}, lies at ${rate(frequencyHz)}, ${bound}`,
+          message: `mode ${mode.number}, mostly \`${coordinate.name}\`${holder === undefined ? "" : ` on \`${holder}\``}, lies at ${rate(frequencyHz)}, ${bound}`,
           hint: "look at the units of that mass and that stiffness (g or kg, N/m or N/mm)",
           related:
             held === undefined
               ? undefined
-              : [{ span: nameSpan(held), message: `${holder} holds most of its strain energy` }],
+              : [{ span: nameSpan(held), message: `\`${holder}\` holds most of its strain energy` }],
         },
       ];
     });

@@ -1,6 +1,6 @@
 import { nameSpan, relatedTo } from "../places.ts";
 import type { Rule } from "../rule.ts";
-import { list, percent } from "../wording.ts";
+import { list, percent, quoted } from "../wording.ts";
 
 /** Structural damping has no exact form in time: it stands as the modal damping of the mode table. */
 export const lossInTime: Rule = {
@@ -16,7 +16,7 @@ export const lossInTime: Rule = {
       .filter((ask) => ask.kind === "history")
       .map((ask) => ({
         span: nameSpan(ask.node),
-        message: `the structural damping of ${list(names)} stands in ${ask.name} as modal damping: a loss factor of ${percent(first.lossFactor)} as at most ${half} in a mode`,
+        message: `the structural damping of ${list(names.map(quoted))} stands in \`${ask.name}\` as modal damping: a loss factor of ${percent(first.lossFactor)} as at most ${half} in a mode`,
         hint: "give a damper or damping_ratio where the damping between resonances matters",
         related: relatedTo(model, first.name, `loss factor ${percent(first.lossFactor)}`),
         key: ask.name,

@@ -40,7 +40,7 @@ function finding(
   const held = stiffestShare(mode);
   return {
     span: placeOf(context.model, drive.name, "frequency", "speed"),
-    message: `${drive.name} ${whereItRuns(band, modeHz)} mode ${mode.number} at ${rate(modeHz)}, which it excites${gain(band, mode)}`,
+    message: `\`${drive.name}\` ${whereItRuns(band, modeHz)} mode ${mode.number} at ${rate(modeHz)}, which it excites${gain(band, mode)}`,
     hint: `keep it more than ${percent(resonanceBand)} away: below ${rate(modeHz * (1 - resonanceBand))} or above ${rate(modeHz * (1 + resonanceBand))}, by speed, stiffness or mass, or accept it with a reason`,
     related: relatedTo(
       context.model,

@@ -35,11 +35,11 @@ function finding(
   const show = (size: number): string =>
     measure === "travel" ? length(size, element.motion) : force(size, element.motion);
   const where = ask.kind === "sweep" ? rate(at) : time(at);
-  const each = measure === "force" && element.count > 1 ? `each of ${element.name}` : element.name;
+  const each = `${measure === "force" && element.count > 1 ? "each of " : ""}\`${element.name}\``;
   const word = measure === "travel" ? "travels" : "carries";
   return {
     span: placeOf(context.model, element.name, measure === "travel" ? "rated_travel" : "rated_force"),
-    message: `${each} ${word} ${show(value)} at ${where} in ${ask.name}, rated for ${show(rated)}`,
+    message: `${each} ${word} ${show(value)} at ${where} in \`${ask.name}\`, rated for ${show(rated)}`,
     hint:
       measure === "travel" ? "what moves this far meets its stops" : "choose a larger one or more of them",
     related: [{ span: nameSpan(ask.node), message: `the answer in which it is passed` }],

@@ -31,7 +31,7 @@ export const recordUndersampled: Rule = {
       return [
         {
           span: placeOf(model, drive.name, "record"),
-          message: `${drive.name} is sampled at ${rate(sampledHz)}, ${number(sampledHz / short.frequencyHz)} samples a cycle of mode ${short.number} at ${rate(short.frequencyHz)}, which it excites`,
+          message: `\`${drive.name}\` is sampled at ${rate(sampledHz)}, ${number(sampledHz / short.frequencyHz)} samples a cycle of mode ${short.number} at ${rate(short.frequencyHz)}, which it excites`,
           hint: `${SAMPLES_A_CYCLE} samples a cycle, ${rate(SAMPLES_A_CYCLE * short.frequencyHz)} here, carry its peaks`,
         },
       ];

@@ -20,7 +20,7 @@ export const startsWithJump: Rule = {
       return [
         {
           span: placeOf(model, drive.name, "phase", "amplitude", "law", "record"),
-          message: `${drive.name} stands at ${inUnit(start, drive.unit)} at t = 0, so its support jumps there from rest in ${history.name}`,
+          message: `\`${drive.name}\` stands at ${inUnit(start, drive.unit)} at t = 0, so its support jumps there from rest in \`${history.name}\``,
           hint: sine
             ? "with phase = -90 deg the sine starts at zero"
             : "let it start at zero, or begin the record earlier",

@@ -22,12 +22,12 @@ export const staticInstability: Rule = {
     return [
       {
         span: placeOf(model, pusher.name, "stiffness"),
-        message: `${mover.name} does not return to rest: ${pusher.name} pushes it away with ${perLength(pusher.stiffness, pusher.motion)}, and what holds it is ${percent(held)} of what pushes`,
+        message: `\`${mover.name}\` does not return to rest: \`${pusher.name}\` pushes it away with ${perLength(pusher.stiffness, pusher.motion)}, and what holds it is ${percent(held)} of what pushes`,
         hint: "stiffen what holds it or take load off what pushes",
         related:
           statement === undefined
             ? undefined
-            : [{ span: nameSpan(statement), message: `${mover.name} moves away` }],
+            : [{ span: nameSpan(statement), message: `\`${mover.name}\` moves away` }],
       },
     ];
   },

@@ -23,9 +23,9 @@ function beforeDrivesEnd(context: RuleContext, ask: HistoryAsk): Finding | undef
     if (drive === undefined || end === undefined || ask.lasting >= end * (1 - 1e-9)) continue;
     return {
       span: lastingSpan(ask),
-      message: `${ask.name} lasts ${time(ask.lasting)}, and ${drive.name} acts until ${time(end)}`,
+      message: `\`${ask.name}\` lasts ${time(ask.lasting)}, and \`${drive.name}\` acts until ${time(end)}`,
       hint: "let it last until the drive has acted and the slowest mode has swung",
-      related: relatedTo(context.model, drive.name, `${drive.name} acts until ${time(end)}`),
+      related: relatedTo(context.model, drive.name, `\`${drive.name}\` acts until ${time(end)}`),
     };
   }
   return undefined;
@@ -55,7 +55,7 @@ function withinFirstCycle(context: RuleContext, ask: HistoryAsk): Finding | unde
   if (frequencyHz === undefined || frequencyHz === null || !(ask.lasting * frequencyHz < 1)) return undefined;
   return {
     span: lastingSpan(ask),
-    message: `${ask.name} lasts ${time(ask.lasting)}, less than one cycle of mode ${lowest.number} at ${rate(frequencyHz)} (${time(1 / frequencyHz)})`,
+    message: `\`${ask.name}\` lasts ${time(ask.lasting)}, less than one cycle of mode ${lowest.number} at ${rate(frequencyHz)} (${time(1 / frequencyHz)})`,
     hint: "its peaks need not have come yet; several cycles are usual",
   };
 }

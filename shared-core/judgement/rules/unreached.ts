@@ -2,7 +2,7 @@ import type { Assembly, LinearForm } from "../../mechanics/assembly.ts";
 import { span } from "../../text/span.ts";
 import { nameSpan, statementOf } from "../places.ts";
 import type { Finding, Rule, RuleContext } from "../rule.ts";
-import { list } from "../wording.ts";
+import { list, quoted } from "../wording.ts";
 
 /** Left-overs: what nothing joins and nothing drives, and what no drive reaches although others are driven. */
 export const unreached: Rule = {
@@ -12,7 +12,12 @@ export const unreached: Rule = {
     const lonely = lonelyCoordinates(context.assembly);
     return [
       ...lonely.map((name) =>
-        at(context, name, `nothing joins ${name} and nothing drives it`, "join it, drive it or take it out"),
+        at(
+          context,
+          name,
+          `nothing joins \`${name}\` and nothing drives it`,
+          "join it, drive it or take it out",
+        ),
       ),
       ...unmovedIslands(context, new Set(lonely)),
     ];
@@ -57,7 +62,7 @@ function unmovedIslands(context: RuleContext, lonely: ReadonlySet<string>): read
     at(
       context,
       names[0],
-      `no drive reaches ${list(names)}: every sweep and history leaves ${names.length === 1 ? "it" : "them"} at rest`,
+      `no drive reaches ${list(names.map(quoted))}: every sweep and history leaves ${names.length === 1 ? "it" : "them"} at rest`,
       "join it to what is driven or drive it",
     ),
   );

@@ -33,7 +33,7 @@ function finding(context: RuleContext, mode: Mode): Finding {
       statement === undefined || feeder === undefined
         ? span(0, 0)
         : placeOf(context.model, feeder, "damping", "stiffness"),
-    message: `${what} by ${number(growth)} 1/s and doubles every ${time(Math.LN2 / growth)}${feeder === undefined ? "" : `, fed by ${feeder}`}`,
+    message: `${what} by ${number(growth)} 1/s and doubles every ${time(Math.LN2 / growth)}${feeder === undefined ? "" : `, fed by \`${feeder}\``}`,
     hint: "damp what moves in it, or reduce what feeds it",
     related: mover(context, mode),
   };
@@ -86,5 +86,5 @@ function mover({ model, assembly }: RuleContext, mode: Mode): Finding["related"]
   const statement = coordinate === undefined ? undefined : statementOf(model, coordinate.owner);
   return statement === undefined
     ? undefined
-    : [{ span: nameSpan(statement), message: `${coordinate.name} moves most in it` }];
+    : [{ span: nameSpan(statement), message: `\`${coordinate.name}\` moves most in it` }];
 }
