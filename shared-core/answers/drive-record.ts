@@ -44,14 +44,22 @@ export function recordSignal(samples: Samples, after: AfterRecord): Outcome<Sign
     add(times[i] + cut, values[i] + slope * cut, slope);
   }
   add(Math.max(0, times[count - 1]), after === "hold" ? values[count - 1] : 0, 0);
+  // Lines meet; only the value may jump where the record begins and where it ends.
+  const jumps = new Uint8Array(used).fill(1);
+  jumps[0] = 0;
+  jumps[used - 1] = 0;
+  if (times[0] > 0 && used > 1) jumps[1] = 0;
   return succeed(
-    packedSignal({
-      starts: starts.slice(0, used),
-      order: 2,
-      coefficients: coefficients.slice(0, 2 * used),
-      omega: 0,
-      sineRe: new Float64Array(used),
-      sineIm: new Float64Array(used),
-    }),
+    packedSignal(
+      {
+        starts: starts.slice(0, used),
+        order: 2,
+        coefficients: coefficients.slice(0, 2 * used),
+        omega: 0,
+        sineRe: new Float64Array(used),
+        sineIm: new Float64Array(used),
+      },
+      jumps,
+    ),
   );
 }

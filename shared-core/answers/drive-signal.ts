@@ -75,9 +75,9 @@ export function constantSignal(value: number): Signal {
 
 type Plain = Omit<Signal, "impulses" | "jumps">;
 
-/** Packs ready arrays (see `Signal`) and finds where they jump. */
-export function packedSignal(plain: Plain, impulses: readonly Impulse[] = []): Signal {
-  return { ...plain, impulses, jumps: jumpOrders(plain) };
+/** Packs ready arrays (see `Signal`) and finds where they jump, unless that is known. */
+export function packedSignal(plain: Plain, jumps: Uint8Array = jumpOrders(plain)): Signal {
+  return { ...plain, impulses: [], jumps };
 }
 
 /** u, u', u'' ... at `tau` after the start of piece `i`, into `out` (length SIGNAL_DERIVATIVES). */

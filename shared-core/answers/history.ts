@@ -34,8 +34,8 @@ const MOST_USUAL_POINTS = 200_000;
 const MOST_POINTS = 2_000_000;
 /** A root that makes up less of every quantity does not set the spacing of the stored answer. */
 const DRAWN_SHARE = 1e-3;
-/** Quantities followed in one march; bounds the memory of their traces. */
-const BATCH = 16;
+/** Numbers kept in the traces of one march; more quantities are followed in several. */
+const TRACE_ROOM = 8_000_000;
 const UNASKED = "the model has nothing to move";
 
 /**
@@ -108,8 +108,9 @@ function storedAnswer(linear: LinearMotion, ask: HistoryAsk): Outcome<HistoryAns
   const peaks = new Map<string, Peak>();
   let reached = timeS.value.length;
   let trouble: string | undefined;
-  for (let from = 0; from < quantities.length; from += BATCH) {
-    const batch = quantities.slice(from, from + BATCH);
+  const together = Math.max(2, Math.floor(TRACE_ROOM / grid.value.times.length));
+  for (let from = 0; from < quantities.length; from += together) {
+    const batch = quantities.slice(from, from + together);
     const followed = followTrace(motion, grid.value, batch);
     const trace = followed.ok ? followed.value : followed.upTo;
     if (!followed.ok) trouble ??= followed.reason;
@@ -118,7 +119,7 @@ function storedAnswer(linear: LinearMotion, ask: HistoryAsk): Outcome<HistoryAns
     reached = Math.min(reached, rows.length);
     batch.forEach((quantity, q) => {
       const { text, unit } = ask.of[from + q];
-      series.set(text, { unit, values: Float64Array.from(rows, (row) => trace.values[q][row]) });
+      series.set(text, { unit, values: gathered(trace.values[q], rows) });
       const prober = new Prober(motion, new QuantityReader(motion.modal, quantity));
       const high = extreme(trace, q, prober, 1);
       const low = extreme(trace, q, prober, -1);
@@ -138,7 +139,9 @@ function storedTimes(ask: HistoryAsk, demands: Demands): Outcome<Float64Array> {
     if (count > MOST_POINTS) {
       return fail(`a step of ${step} s over ${lasting} s makes ${count} points; ${MOST_POINTS} is the most`);
     }
-    return succeed(Float64Array.from({ length: count }, (_, i) => Math.min(lasting, i * step)));
+    const times = new Float64Array(count);
+    for (let i = 0; i < count; i++) times[i] = Math.min(lasting, i * step);
+    return succeed(times);
   }
   let fastest = 0;
   for (const { rate, share } of demands.rates) if (share >= DRAWN_SHARE) fastest = Math.max(fastest, rate);
@@ -148,15 +151,21 @@ function storedTimes(ask: HistoryAsk, demands: Demands): Outcome<Float64Array> {
 }
 
 /** The last row of a trace at each stored instant: the value after a jump. Ends where the trace ends. */
-function storedRows(trace: Trace, stored: Float64Array): number[] {
+function storedRows(trace: Trace, stored: Float64Array): Int32Array {
   const { times, count } = trace;
   const same = 1e-12 * trace.grid.times[trace.grid.times.length - 1];
-  const rows: number[] = [];
+  const rows = new Int32Array(stored.length);
   let row = 0;
-  for (const time of stored) {
-    while (row + 1 < count && times[row + 1] <= time + same) row++;
-    if (times[row] < time - same) break;
-    rows.push(row);
+  for (let i = 0; i < stored.length; i++) {
+    while (row + 1 < count && times[row + 1] <= stored[i] + same) row++;
+    if (times[row] < stored[i] - same) return rows.slice(0, i);
+    rows[i] = row;
   }
   return rows;
+}
+
+function gathered(values: Float64Array, rows: Int32Array): Float64Array {
+  const out = new Float64Array(rows.length);
+  for (let i = 0; i < rows.length; i++) out[i] = values[rows[i]];
+  return out;
 }

@@ -194,8 +194,20 @@ export interface Demand {
 
 export interface Demands {
   readonly rates: readonly Demand[];
-  /** Largest value of each quantity seen in the survey. */
-  readonly scales: Float64Array;
+}
+
+/** True where every root turns little within every segment, so that the edges alone show all there is to see. */
+function edgesSuffice(motion: Motion, twice: number): boolean {
+  const { edges } = motion.line;
+  const { modal, signals } = motion;
+  let longest = 0;
+  for (let i = 0; i + 1 < edges.length; i++) longest = Math.max(longest, edges[i + 1] - edges[i]);
+  let fastest = modal.rest > 0 ? modal.blockRate : 0;
+  for (let k = 0; k < modal.count; k++) {
+    fastest = Math.max(fastest, Math.hypot(modal.lambdaRe[k], modal.lambdaIm[k]));
+  }
+  for (const { omega } of signals) fastest = Math.max(fastest, omega);
+  return twice * fastest * longest <= TURN;
 }
 
 /**
@@ -207,6 +219,8 @@ export function surveyDemands(
   tolerance: number,
 ): Outcome<Demands> {
   const { modal } = motion;
+  const twice = quantities.some((q) => q.products.length > 0) ? 2 : 1;
+  if (edgesSuffice(motion, twice)) return succeed({ rates: [] });
   const segments = motion.line.edges.length - 1;
   const grid = motion.edgeGrid(Math.ceil(SURVEY_STEPS / segments));
   const free = new FreeParts(motion);
@@ -218,14 +232,15 @@ export function surveyDemands(
     if (buffer.length < chunk.count * quantities.length)
       buffer = new Float64Array(chunk.count * quantities.length);
     table.values(chunk, buffer);
-    for (let p = 0; p < chunk.count * quantities.length; p++) {
-      const q = p % quantities.length;
-      scales[q] = Math.max(scales[q], Math.abs(buffer[p]));
+    for (let q = 0; q < scales.length; q++) {
+      for (let p = q; p < chunk.count * scales.length; p += scales.length) {
+        const size = Math.abs(buffer[p]);
+        if (scales[q] < size) scales[q] = size;
+      }
     }
     free.look(chunk, grid);
   });
   const shares = mattering(modal, quantities, scales, free.sizes, tolerance);
-  const twice = quantities.some((q) => q.products.length > 0) ? 2 : 1;
   const rates: Demand[] = [];
   for (let k = 0; k < modal.count; k++) {
     if (!(shares[k] > 1)) continue;
@@ -241,7 +256,7 @@ export function surveyDemands(
     if (omega === 0) continue;
     rates.push({ rate: twice * omega, until: Number.POSITIVE_INFINITY, share: 1 });
   }
-  const demands = { rates, scales };
+  const demands = { rates };
   return marched.ok ? succeed(demands) : fail(marched.reason, demands);
 }
 
