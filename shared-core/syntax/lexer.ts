@@ -1,7 +1,6 @@
 /**
  * Text -> tokens. Lossless: joining the tokens gives back the text, whatever the text. Linear: no character
- * is looked at more than a fixed number of times. The big switch is one function because a lexer is read as
- * one table.
+ * is looked at more than a fixed number of times.
  */
 import { BYTE_ORDER_MARK, isBlank, isDigit, isNewline, letterLength, nameLength } from "./characters.ts";
 import { type Conflict, findConflicts } from "./conflicts.ts";

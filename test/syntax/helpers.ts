@@ -1,6 +1,8 @@
+import { expect } from "vitest";
 import type { Diagnostic } from "../../shared-core/diagnostics/diagnostic.ts";
 import { type Parsed, type ParseOptions, parse } from "../../shared-core/syntax/parser.ts";
 import type { Expression, Item, SlotValue, StatementNode, UnitNode } from "../../shared-core/syntax/tree.ts";
+import { applyEdits } from "../../shared-core/text/line-index.ts";
 import { nearest } from "../../shared-core/text/nearest.ts";
 import { isUnitName, UNIT_NAMES } from "../../shared-core/units/lookup.ts";
 import { grammarTable } from "../../shared-core/vocabulary/registry.ts";
@@ -96,6 +98,18 @@ export function said(parsed: Parsed): string[] {
 
 export const marked = (parsed: Parsed, d: Diagnostic): string =>
   parsed.tree.text.slice(d.span.start, d.span.end);
+
+export const outline = (text: string): string[] => outlined(read(text).tree.statements);
+export const messages = (text: string): string[] => read(text).diagnostics.map((d) => d.message);
+
+/** The text after the first fix of its only diagnostic; the fixed text has no diagnostics but `left`. */
+export function fixed(text: string, left: string[] = []): string {
+  const parsed = read(text);
+  expect(parsed.diagnostics).toHaveLength(1);
+  const cured = applyEdits(text, parsed.diagnostics[0].fixes?.[0].edits ?? []);
+  expect(said(read(cured))).toEqual(left);
+  return cured;
+}
 
 /** The expression behind `let x = ` in brackets that show how it was grouped. */
 export function grouped(text: string): string {
