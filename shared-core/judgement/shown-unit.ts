@@ -1,9 +1,10 @@
 import type { Instance } from "../model/model.ts";
 import type { Expression, UnitNode } from "../syntax/tree.ts";
 import type { Quantity } from "../units/dimension.ts";
-import { sameKind } from "../units/quantity.ts";
+import { NUMBER, sameKind } from "../units/quantity.ts";
 import { formatQuantity } from "../units/show.ts";
 import { type UnitMeaning, unitOf } from "../units/unit-of.ts";
+import { dimensionOf } from "../vocabulary/measures.ts";
 
 /** A quantity in the unit in which one of the expressions writes that kind of quantity; else in a fitting one. */
 export function showAs(
@@ -25,6 +26,18 @@ export function showParameter(instance: Instance, name: string, value: number): 
   const unit = meaningOf(parameter.unitNode);
   return formatQuantity({ ...parameter, value }, { unit });
 }
+
+/** The value of what a tolerance is written on: a `let`, `mounts.stiffness`, `slab.mass`. */
+export function showOwner(instance: Instance, owner: string, value: number): string {
+  if (instance.parameters.has(owner)) return showParameter(instance, owner, value);
+  const dot = owner.lastIndexOf(".");
+  const element = instance.assembly.elements.find(({ name }) => name === owner.slice(0, dot));
+  const measure = MEASURES.find((known) => known === owner.slice(dot + 1));
+  const kind = measure === undefined ? undefined : dimensionOf(measure, element?.motion);
+  return formatQuantity({ ...(kind ?? NUMBER), value });
+}
+
+const MEASURES = ["stiffness", "damping", "inertance", "mass", "inertia"] as const;
 
 /** The first unit that an expression, or a `let` it names, is written in. Units inside calls are of arguments. */
 export function writtenUnit(instance: Instance, expression: Expression): UnitMeaning | undefined {

@@ -1,7 +1,6 @@
-import { formatNumber } from "../../units/show.ts";
 import type { Finding, Judged, Rule, RuleContext } from "../rule.ts";
-import { showAs, showParameter } from "../shown-unit.ts";
-import { list, percent, quoted } from "../wording.ts";
+import { showAs, showOwner } from "../shown-unit.ts";
+import { list, percent } from "../wording.ts";
 import { leftText, limitText } from "./expectation-words.ts";
 
 /** An expectation holds, but with less than its margin, or not under its tolerances. */
@@ -66,10 +65,8 @@ const NAMED = 4;
 function whereWorst({ instance }: RuleContext, judged: Judged): string | undefined {
   const { at, how } = judged.verdict.tolerance ?? {};
   if (at === undefined) return followed(judged);
-  const all = Object.entries(at).map(([owner, value]) =>
-    instance.parameters.has(owner)
-      ? `\`${owner}\` at ${showParameter(instance, owner, value)}`
-      : `\`${owner}\` at ${formatNumber(value)}`,
+  const all = Object.entries(at).map(
+    ([owner, value]) => `\`${owner}\` at ${showOwner(instance, owner, value)}`,
   );
   const names = all.length > NAMED ? [...all.slice(0, NAMED), `${all.length - NAMED} more`] : all;
   return `worst with ${list(names)} (${how === "proven" ? "all corners" : "searched, not proven"})`;
