@@ -11,7 +11,7 @@ export function sweepFigure(name: string, answer: SweepAnswer, units: UnitView):
   const phase: CurvePanel = {
     kind: "curves",
     x,
-    y: { label: "phase", unit: "deg", scale: "linear", from: -180, to: 180 },
+    y: { label: "phase", unit: "deg", scale: "linear", from: -180, to: 180, ticks: [-180, -90, 0, 90, 180] },
     share: 1,
     curves: series.map((each, style) => ({ name: each.quantity, x: each.x, y: each.phase ?? [], style })),
     marks: [],

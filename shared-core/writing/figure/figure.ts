@@ -15,6 +15,8 @@ export interface Axis {
   /** Given ends; otherwise the data decide. */
   readonly from?: number;
   readonly to?: number;
+  /** Values that carry a tick, where round ones are not the ones that matter (degrees). */
+  readonly ticks?: readonly number[];
 }
 
 export interface CurvePanel {

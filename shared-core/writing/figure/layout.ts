@@ -1,6 +1,6 @@
 import { line } from "d3-shape";
 import { keepExtremes } from "../decimate.ts";
-import { type Scale, scaleBetween, scaleOver } from "../scales.ts";
+import { type Scale, scaleBetween, scaleOver, tickLabel } from "../scales.ts";
 import type { Axis, CurvePanel, Mark } from "./figure.ts";
 
 /** A rectangle in pixels, y downwards. */
@@ -43,15 +43,13 @@ export function layoutCurves(panel: CurvePanel, box: Box): CurveLayout {
   );
   const toX = (value: number): number => box.left + x.place(value) * box.width;
   const toY = (value: number): number => box.top + (1 - y.place(value)) * box.height;
-  const place = (tick: { value: number; label: string }, at: number): PlacedTick => ({
-    at,
-    label: tick.label,
-  });
+  const xTicks = ticksOf(panel.x, x, box.width / PIXELS_PER_X_TICK);
+  const yTicks = ticksOf(panel.y, y, box.height / PIXELS_PER_Y_TICK);
   return {
     x,
     y,
-    xTicks: x.ticks(Math.max(2, box.width / PIXELS_PER_X_TICK)).map((tick) => place(tick, toX(tick.value))),
-    yTicks: y.ticks(Math.max(2, box.height / PIXELS_PER_Y_TICK)).map((tick) => place(tick, toY(tick.value))),
+    xTicks: xTicks.map((tick) => ({ at: toX(tick.value), label: tick.label })),
+    yTicks: yTicks.map((tick) => ({ at: toY(tick.value), label: tick.label })),
     paths: panel.curves.map((curve) => ({
       path: pathOf(curve.x, curve.y, toX, toY, { y, box }),
       style: curve.style,
@@ -60,9 +58,18 @@ export function layoutCurves(panel: CurvePanel, box: Box): CurveLayout {
   };
 }
 
+function ticksOf(axis: Axis, scale: Scale, room: number): readonly { value: number; label: string }[] {
+  const own = axis.ticks?.map((value) => ({ value, label: tickLabel(value) }));
+  return own ?? scale.ticks(Math.max(2, room));
+}
+
+/** A log axis that follows its data leaves room above the highest peak for its name. */
+const HEADROOM = 10 ** 0.15;
+
 function axisScale(axis: Axis, data: readonly ArrayLike<number>[], more: readonly number[]): Scale {
   if (axis.from !== undefined && axis.to !== undefined) return scaleBetween(axis.scale, axis.from, axis.to);
-  return scaleOver(axis.scale, ...data, more);
+  const scale = scaleOver(axis.scale, ...data, more);
+  return axis.scale === "log" ? scaleBetween("log", scale.from, scale.to * HEADROOM) : scale;
 }
 
 function pathOf(

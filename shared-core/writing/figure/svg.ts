@@ -1,4 +1,12 @@
-import { type BarPanel, type CurvePanel, DASHES, type Figure, type FigureTheme, NEUTRAL } from "./figure.ts";
+import {
+  type BarPanel,
+  type CurvePanel,
+  DASHES,
+  type Figure,
+  type FigureTheme,
+  type Mark,
+  NEUTRAL,
+} from "./figure.ts";
 import { type Box, type CurveLayout, layoutCurves } from "./layout.ts";
 
 export interface SvgOptions {
@@ -9,6 +17,8 @@ export interface SvgOptions {
 }
 
 const FONT_SIZE = 11;
+/** A sans-serif letter is about so wide. */
+const LETTER = 0.6 * FONT_SIZE;
 const LINE = 15;
 const GAP = 14;
 const MARGIN = { left: 58, right: 14, top: 22, bottom: 34 };
@@ -49,6 +59,8 @@ export function escapeText(text: string): string {
 // biome-ignore lint/suspicious/noControlCharactersInRegex: control characters are what is to be left out
 const FORBIDDEN_IN_XML = /[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]/g;
 
+const WIDEST_BAR = 36;
+
 const px = (value: number): string => `${Math.round(value * 100) / 100}`;
 
 function panelBoxes(figure: Figure, width: number, height: number, below: number): Box[] {
@@ -83,9 +95,16 @@ function curvePanel(panel: CurvePanel, box: Box, theme: FigureTheme, labelled: b
     ),
     ...layout.marks.flatMap(({ x, y, label }) => [
       `<circle cx="${px(x)}" cy="${px(y)}" r="2.5" fill="${theme.ink}"/>`,
-      `<text x="${px(x + (x > box.left + box.width * 0.75 ? -5 : 5))}" y="${px(Math.max(box.top + 8, y - 4))}" text-anchor="${x > box.left + box.width * 0.75 ? "end" : "start"}">${escapeText(label)}</text>`,
+      markLabel({ x, y, label }, box),
     ]),
   ];
+}
+
+/** Above its point, and inside the panel. */
+function markLabel({ x, y, label }: Mark, box: Box): string {
+  const half = (LETTER * [...label].length) / 2;
+  const middle = Math.max(box.left + half, Math.min(box.left + box.width - half, x));
+  return `<text x="${px(middle)}" y="${px(Math.max(box.top + FONT_SIZE, y - 6))}" text-anchor="middle">${escapeText(label)}</text>`;
 }
 
 function gridParts(layout: CurveLayout, box: Box, theme: FigureTheme, labelled: boolean): string[] {
@@ -121,6 +140,7 @@ function xTitle(panel: CurvePanel, box: Box): string {
 function barPanel(panel: BarPanel, box: Box, theme: FigureTheme): string[] {
   const middle = box.top + box.height / 2;
   const step = box.width / Math.max(1, panel.bars.length);
+  const wide = Math.min(WIDEST_BAR, step * 0.5);
   const tall = (box.height - LINE * 2) / 2;
   return [
     `<text x="${px(box.left)}" y="${px(box.top + 10)}">${escapeText(panel.title)}</text>`,
@@ -129,7 +149,7 @@ function barPanel(panel: BarPanel, box: Box, theme: FigureTheme): string[] {
       const size = Math.abs(value) * tall;
       const x = box.left + step * i;
       return [
-        `<rect x="${px(x + step * 0.25)}" y="${px(value > 0 ? middle - size : middle)}" width="${px(step * 0.5)}" height="${px(size)}" fill="${theme.curves[0]}"/>`,
+        `<rect x="${px(x + (step - wide) / 2)}" y="${px(value > 0 ? middle - size : middle)}" width="${px(wide)}" height="${px(size)}" fill="${theme.curves[0]}"/>`,
         `<text x="${px(x + step / 2)}" y="${px(value > 0 ? middle + 12 : middle - 4)}" text-anchor="middle" fill="${theme.quiet}">${escapeText(name)}</text>`,
       ];
     }),
@@ -146,9 +166,6 @@ function legendNames(figure: Figure): Map<string, number> {
   const curves = figure.panels.flatMap((panel) => (panel.kind === "curves" ? panel.curves : []));
   return new Map(curves.map((curve) => [curve.name, curve.style]));
 }
-
-/** A sans-serif letter is about this share of the font size wide. */
-const LETTER = 0.6 * FONT_SIZE;
 
 function legendRows(names: ReadonlyMap<string, number>, width: number): LegendEntry[][] {
   const rows: LegendEntry[][] = [];
