@@ -52,7 +52,7 @@ spring feet between pump and ground = 62 N/mm
     count = 4
     loss_factor = 0.08
 force imbalance on pump
-    unbalance = 9e-3 kg*m
+    unbalance = 6e-3 kg*m
 
 ask modes
 ask sweep run_up

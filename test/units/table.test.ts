@@ -1,3 +1,5 @@
+import { spawnSync } from "node:child_process";
+import { fileURLToPath } from "node:url";
 import { create, createUnitDependencies, unitDependencies } from "mathjs";
 import { describe, expect, test } from "vitest";
 import { isUnitName, lookupUnit, PREFIXES, UNIT_NAMES } from "../../shared-core/units/lookup.ts";
@@ -101,4 +103,11 @@ describe("the unit table", () => {
     );
     expect(clashes).toEqual([]);
   });
+});
+
+test("the table is what its script writes", () => {
+  const script = fileURLToPath(new URL("../../tools/make-unit-table.mjs", import.meta.url));
+  const { status, stderr } = spawnSync(process.execPath, [script, "--check"], { encoding: "utf8" });
+  expect(stderr).toBe("");
+  expect(status).toBe(0);
 });
