@@ -1,4 +1,3 @@
-import { spawnSync } from "node:child_process";
 import { describe, expect, it } from "vitest";
 import { commandNamed, readCall } from "../../client/terminal/arguments.ts";
 import { UsageError } from "../../client/terminal/call.ts";
@@ -6,7 +5,6 @@ import { inkOf } from "../../client/terminal/colour.ts";
 import { COMMANDS } from "../../client/terminal/commands.ts";
 import { explain, overview } from "../../client/terminal/help.ts";
 import { runCommand } from "../../client/terminal/run.ts";
-import { root } from "../house/files.ts";
 import { testHost } from "./host.ts";
 
 const call = (name: string, ...args: string[]) => readCall(commandNamed(name, COMMANDS), args, testHost());
@@ -65,14 +63,6 @@ describe("the front door", () => {
     const long = lines.filter((line) => line.length > 120 && line.startsWith("  "));
     expect(long).toEqual([]);
   });
-});
-
-it("docs/command-line.md is what the command table says", () => {
-  const { status, stderr } = spawnSync(process.execPath, ["tools/write-command-line.mjs", "--check"], {
-    cwd: root,
-    encoding: "utf8",
-  });
-  expect([status, stderr]).toEqual([0, ""]);
 });
 
 describe("colour", () => {
