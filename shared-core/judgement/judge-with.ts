@@ -65,7 +65,10 @@ function judgeCase(work: Work, index: number): CaseReport | undefined {
   const name = work.model.cases[index].name;
   const remarks: Remark[] = [];
   const trial = behindWall(work, "instance", name, () =>
-    trialOf(work.sources, work.model, index, (remark) => remarks.push(remark)),
+    trialOf(work.sources, work.model, index, {
+      remark: (remark) => remarks.push(remark),
+      fault: (where, error) => work.faults.push({ where, case: name, error }),
+    }),
   );
   if (trial === undefined) return undefined;
   sayInstance(work, index, trial.instance);

@@ -17,27 +17,23 @@ export interface Sources {
   evaluate(instance: Instance, expression: Expression, answers: AnswerFunction): Outcome<Quantity>;
 }
 
-/** A trial of one case; `remark` hears what its functions find out. */
+/** Who hears what comes to light while a trial is read. */
+export interface Listeners {
+  remark(remark: Remark): void;
+  /** An exception in a function: a defect of Thrum, which costs that value only. */
+  fault(where: string, error: unknown): void;
+}
+
+/** A trial of one case. Those derived from it hand on their faults, and keep their remarks to themselves. */
 export function trialOf(
   sources: Sources,
   model: Model,
   caseIndex: number,
-  remark: (remark: Remark) => void = () => {},
+  listeners: Listeners,
   overrides: Overrides = {},
 ): Trial {
   const instance = sources.instantiate(model, caseIndex, overrides);
   const analysis = sources.analyse(instance);
-  return trialFrom(sources, instance, analysis, remark, overrides);
-}
-
-/** The same around an instance that is there already. */
-export function trialFrom(
-  sources: Sources,
-  instance: Instance,
-  analysis: Analysis,
-  remark: (remark: Remark) => void = () => {},
-  overrides: Overrides = {},
-): Trial {
   let modes: Outcome<ModeTable> | undefined;
   let growth: { readonly reason: string | undefined } | undefined;
   const readModes = (): Outcome<ModeTable> => {
@@ -52,16 +48,32 @@ export function trialFrom(
       growth ??= { reason: whyNoSteadyAnswer(readModes()) };
       return growth.reason;
     },
-    evaluate: (expression): Found<Quantity> =>
-      sources.evaluate(instance, expression, (call, args) => {
-        const read = readAnswer(trial, call, args);
-        return read.ok ? read : fail(read.reason);
-      }),
-    with: (more) => trialOf(sources, instance.model, instance.caseIndex, undefined, joined(overrides, more)),
-    remark,
+    evaluate: (expression) =>
+      sources.evaluate(
+        instance,
+        expression,
+        answersOf(() => trial, listeners),
+      ),
+    with: (more) =>
+      trialOf(sources, model, caseIndex, { ...listeners, remark: () => {} }, joined(overrides, more)),
+    remark: listeners.remark,
   };
   return trial;
 }
+
+/** The answer functions of a trial, each call behind a wall. */
+const answersOf =
+  (trial: () => Trial, { fault }: Listeners): AnswerFunction =>
+  (call, args) => {
+    let read: Found<Quantity>;
+    try {
+      read = readAnswer(trial(), call, args);
+    } catch (error) {
+      fault(call.callee.text, error);
+      return fail(`a fault of Thrum kept ${call.callee.text} from being computed`);
+    }
+    return read.ok ? read : fail(read.reason);
+  };
 
 function joined(a: Overrides, b: Overrides): Overrides {
   return {

@@ -9,7 +9,7 @@ import type { Found } from "../found.ts";
 import { endsOf, limitAt } from "../limit-curve.ts";
 import type { Trial } from "../trial.ts";
 import { rate } from "../wording.ts";
-import { extremeOf, steady } from "./answer-values.ts";
+import { extremeOf, inTime, steady } from "./answer-values.ts";
 import { argument, seriesOf } from "./arguments.ts";
 import { remarkUndamped } from "./remarks.ts";
 
@@ -25,8 +25,11 @@ export function below(trial: Trial, args: AnswerArguments): Found<Quantity> {
   if (typeof limit.points !== "number") {
     return fail(`\`${limit.name}\` is a curve over frequency, and \`${ask.name}\` is a history`);
   }
-  if (limit.of === "rms")
-    return fail(`\`${limit.name}\` is an rms limit, and \`${ask.name}\` holds instantaneous values`);
+  if (limit.of === "rms") {
+    const mean = inTime(trial, ask);
+    const rms = mean.ok ? mean.value.rms(quantity) : mean;
+    return rms.ok ? ratio(rms.value, limit.points, limit) : rms;
+  }
   const peak = extremeOf(trial, ask, quantity, "peak");
   return peak.ok ? ratio(peak.value.value, limit.points, limit) : peak;
 }
