@@ -46,39 +46,63 @@ const asRoots = (rate: number, value: number): Root[] =>
 
 function freeMode(basis: ModalBasis, r: number): Mode {
   const { massDamping } = basis.assembly;
-  return withParts(
-    {
-      number: 0,
-      frequencyHz: 0,
-      dampedFrequencyHz: 0,
-      dampingRatio: null,
-      eigenvalue: [0, 0],
-      ...(massDamping === 0 ? {} : { realRoots: [-massDamping, 0] }),
+  const parts = new UndampedParts(basis, r);
+  const mode: Mode = {
+    number: 0,
+    frequencyHz: 0,
+    dampedFrequencyHz: 0,
+    dampingRatio: null,
+    eigenvalue: [0, 0],
+    get shape() {
+      return parts.shape();
     },
-    undampedParts(basis, r),
-  );
+    get modalMass() {
+      return parts.modalMass();
+    },
+    get effectiveMass() {
+      return parts.effectiveMass();
+    },
+    get participation() {
+      return parts.participation();
+    },
+    get energyShare() {
+      return parts.energyShare();
+    },
+  };
+  return massDamping === 0 ? mode : Object.assign(mode, { realRoots: [-massDamping, 0] as const });
 }
-
-/** Both together; the getters of the parts stay getters. */
-const withParts = (roots: Omit<Mode, keyof UndampedParts>, parts: UndampedParts): Mode =>
-  Object.defineProperties(roots as Mode, Object.getOwnPropertyDescriptors(parts));
 
 function elasticMode(basis: ModalBasis, r: number, roots: readonly Root[], coupled: boolean): Mode {
   const { free, held, values } = basis.undamped;
-  const slow = roots.reduce((best, root) => (Math.abs(root.re) < Math.abs(best.re) ? root : best));
-  const shape = lazy(() => complexShape(basis, slow));
-  const mode = withParts(
-    {
-      number: r - free - held + 1,
-      frequencyHz: Math.sqrt(Math.max(0, values[r])) / (2 * Math.PI),
-      dampedFrequencyHz: slow.im / (2 * Math.PI),
-      dampingRatio: dampingRatio(roots),
-      eigenvalue: [slow.re, slow.im],
-      ...(roots.length === 2 ? { realRoots: realRoots(roots) } : {}),
+  const slow = roots.length > 1 && Math.abs(roots[1].re) < Math.abs(roots[0].re) ? roots[1] : roots[0];
+  const parts = new UndampedParts(basis, r);
+  const mode: Mode = {
+    number: r - free - held + 1,
+    frequencyHz: Math.sqrt(Math.max(0, values[r])) / (2 * Math.PI),
+    dampedFrequencyHz: slow.im / (2 * Math.PI),
+    dampingRatio: dampingRatio(roots),
+    eigenvalue: [slow.re, slow.im],
+    get shape() {
+      return parts.shape();
     },
-    undampedParts(basis, r),
-  );
-  if (coupled) Object.defineProperty(mode, "complexShape", { get: shape, enumerable: true });
+    get modalMass() {
+      return parts.modalMass();
+    },
+    get effectiveMass() {
+      return parts.effectiveMass();
+    },
+    get participation() {
+      return parts.participation();
+    },
+    get energyShare() {
+      return parts.energyShare();
+    },
+  };
+  if (roots.length === 2) Object.assign(mode, { realRoots: realRoots(roots) });
+  if (coupled) {
+    const shape = lazy(() => complexShape(basis, slow));
+    Object.defineProperty(mode, "complexShape", { get: shape, enumerable: true });
+  }
   return mode;
 }
 
@@ -117,43 +141,51 @@ function realRoots(roots: readonly Root[]): readonly [number, number] {
   return a <= b ? [a, b] : [b, a];
 }
 
-type UndampedParts = Pick<Mode, "shape" | "modalMass" | "effectiveMass" | "participation" | "energyShare">;
+/** What the undamped shape gives; computed when looked at, which for a large model is seldom. */
+class UndampedParts {
+  readonly #basis: ModalBasis;
+  readonly #mode: number;
+  #scaled: { readonly shape: Shape; readonly largest: number } | undefined;
+  #shares: Record<string, number> | undefined;
 
-/** What the undamped shape gives; computed when looked at, for a large model seldom is. */
-function undampedParts(basis: ModalBasis, r: number): UndampedParts {
-  const scaled = lazy(() => {
-    const named = namedValues(basis.assembly, basis.shape(r));
-    const largest = named[largestAt(named, new Float64Array(named.length))] || 1;
-    return { shape: { re: named.map((v) => v / largest), im: new Float64Array(named.length) }, largest };
-  });
-  const shares = lazy(() => byElement(basis, basis.energyShares(r)));
-  const effective = lazy(() => {
-    const entries = basis.participation(r).map(({ direction, factor, total }) => {
-      return [direction, (factor * factor) / total] as const;
-    });
-    return Object.fromEntries(entries);
-  });
-  const participation = lazy(() => {
-    const { largest } = scaled();
-    return Object.fromEntries(basis.participation(r).map((p) => [p.direction, p.factor * largest]));
-  });
-  return {
-    get shape() {
-      return scaled().shape;
-    },
-    get modalMass() {
-      return 1 / scaled().largest ** 2;
-    },
-    get effectiveMass() {
-      return effective();
-    },
-    get participation() {
-      return participation();
-    },
-    get energyShare() {
-      return shares();
-    },
-  };
+  constructor(basis: ModalBasis, mode: number) {
+    this.#basis = basis;
+    this.#mode = mode;
+  }
+
+  shape(): Shape {
+    return this.#largest().shape;
+  }
+
+  modalMass(): number {
+    return 1 / this.#largest().largest ** 2;
+  }
+
+  effectiveMass(): Record<string, number> {
+    const all = this.#basis.participation(this.#mode);
+    return Object.fromEntries(all.map((p) => [p.direction, (p.factor * p.factor) / p.total]));
+  }
+
+  participation(): Record<string, number> {
+    const { largest } = this.#largest();
+    const all = this.#basis.participation(this.#mode);
+    return Object.fromEntries(all.map((p) => [p.direction, p.factor * largest]));
+  }
+
+  energyShare(): Record<string, number> {
+    this.#shares ??= byElement(this.#basis, this.#basis.energyShares(this.#mode));
+    return this.#shares;
+  }
+
+  #largest(): { readonly shape: Shape; readonly largest: number } {
+    if (this.#scaled === undefined) {
+      const named = namedValues(this.#basis.assembly, this.#basis.shape(this.#mode));
+      const still = new Float64Array(named.length);
+      const largest = named[largestAt(named, still)] || 1;
+      this.#scaled = { shape: { re: named.map((v) => v / largest), im: still }, largest };
+    }
+    return this.#scaled;
+  }
 }
 
 function byElement(basis: ModalBasis, shares: Float64Array | undefined): Record<string, number> {

@@ -229,13 +229,14 @@ class Reducer {
       if (unchanged) return form;
       return combineForms([{ ...form, coordinates: form.coordinates.map((i) => place[i]) }], [1]);
     };
-    const renumberTerm = ({ form, value }: SquareTerm) => ({ form: renumber(form), value });
+    const renumbered = (terms: SquareTerm[]) =>
+      unchanged ? terms : terms.map(({ form, value }) => ({ form: renumber(form), value }));
     return {
       inertial: inertial.length,
       relaxing: relaxing.length,
-      mass: this.#terms.mass.map(renumberTerm),
-      damping: this.#terms.damping.map(renumberTerm),
-      stiffness: this.#terms.stiffness.map(renumberTerm),
+      mass: renumbered(this.#terms.mass),
+      damping: renumbered(this.#terms.damping),
+      stiffness: renumbered(this.#terms.stiffness),
       recovery: recover(steps, free).map(renumber),
       load: (form) => renumber(distribute(steps, form).load),
       compliance: (form) => lift(steps, distribute(steps, form).offsets, free),

@@ -29,9 +29,13 @@ const RELATIVE_ZERO = 1e-10;
  * stand still. `size` is above every coordinate's index.
  */
 export function nullSpace(forms: readonly LinearForm[], subset: readonly number[], size: number): NullSpace {
+  if (subset.length === 0) return { free: [], vectors: [] };
   const forest = new Forest(subset, size);
   const wide: LinearForm[] = [];
-  for (const form of forms) if (!forest.absorb(form)) wide.push(form);
+  for (const form of forms) {
+    if (forest.open === 0) return { free: [], vectors: [] };
+    if (!forest.absorb(form)) wide.push(form);
+  }
   const rows = wide.map((form) => forest.reduce(form)).filter((row) => row.size > 0);
   return basisOf(subset, forest, solveRows(rows));
 }
@@ -43,6 +47,8 @@ class Forest {
   readonly #weight: Int32Array;
   readonly #held: Uint8Array;
   readonly #path: number[] = [];
+  /** Roots that are not held. */
+  open: number;
 
   constructor(subset: readonly number[], size: number) {
     this.#parent = Int32Array.from({ length: size }, (_, i) => i);
@@ -50,6 +56,7 @@ class Forest {
     this.#weight = new Int32Array(size).fill(1);
     this.#held = new Uint8Array(size).fill(1);
     for (const i of subset) this.#held[i] = 0;
+    this.open = subset.length;
   }
 
   /** Root and ratio of a coordinate; the path to it is shortened. */
@@ -97,17 +104,28 @@ class Forest {
 
   /** Follows a form of at most two roots; false for a wider one. */
   absorb(form: LinearForm): boolean {
+    if (form.coordinates.length === 1) {
+      const { root } = this.find(form.coordinates[0]);
+      if (!this.held(root)) this.#hold(root);
+      return true;
+    }
     const row = this.reduce(form);
     if (row.size > 2) return false;
     const [first, second] = row;
     if (first === undefined) return true;
-    if (second === undefined) this.#held[first[0]] = 1;
+    if (second === undefined) this.#hold(first[0]);
     else if (this.#weight[first[0]] < this.#weight[second[0]]) this.#tie(first, second);
     else this.#tie(second, first);
     return true;
   }
 
+  #hold(root: number): void {
+    this.#held[root] = 1;
+    this.open--;
+  }
+
   #tie([child, a]: readonly [number, number], [root, b]: readonly [number, number]): void {
+    this.open--;
     this.#parent[child] = root;
     this.#ratio[child] = -b / a;
     this.#weight[root] += this.#weight[child];
