@@ -2,13 +2,18 @@
  * Undamped modes: K φ = λ M φ with K symmetric and M symmetric positive definite.
  *
  * Method: a diagonal M scales K to M^−½ K M^−½; a full M is factored M = L Lᵀ and K becomes L⁻¹ K L⁻ᵀ (Golub &
- * Van Loan, Matrix Computations, 4th ed., §8.7.2). Vectors are mass-normalised, φᵀ M φ = 1. Error of a value:
+ * Van Loan, Matrix Computations, 4th ed., §8.7.2); chains go straight to the tridiagonal solver. Vectors are mass-normalised, φᵀ M φ = 1. Error of a value:
  * about n·ε times the largest one, times the condition of M when M is full.
  */
 import { factorCholesky, solveLower, solveLowerTransposed } from "./cholesky.ts";
+import { pathThrough } from "./ordering.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, transpose } from "./products.ts";
 import { symmetricEigen } from "./symmetric-eigen.ts";
+import { tridiagonalEigen } from "./tridiagonal-eigen.ts";
+
+/** Below this size looking for a chain costs more than it saves. */
+const CHAIN_SIZE = 16;
 
 export type Modes = {
   /** λ = ω², ascending; a free body's are zero within rounding, either sign. */
@@ -65,11 +70,36 @@ function withDiagonalMass(
   for (let i = 0; i < n; i++) {
     for (let j = 0; j <= i; j++) a[i * n + j] = k[i * n + j] * r[i] * r[j];
   }
-  const solved = symmetricEigen(a, n, options);
+  const path = n < CHAIN_SIZE ? undefined : pathThrough([a], n);
+  const solved = path ? alongPath(a, path, n, options) : symmetricEigen(a, n, options);
   if (!solved.ok) return solved;
   const { vectors } = solved.value;
   for (let i = 0; i < n; i++) for (let j = 0; j < n && vectors.length > 0; j++) vectors[i * n + j] *= r[i];
   return solved;
+}
+
+/** A chain is tridiagonal in its own order: no reduction is needed. Only the lower triangle of `a` is filled. */
+function alongPath(
+  a: Float64Array,
+  path: Int32Array,
+  n: number,
+  options: { vectors?: boolean },
+): Outcome<Modes> {
+  const diagonal = new Float64Array(n);
+  const offDiagonal = new Float64Array(n - 1);
+  for (let t = 0; t < n; t++) {
+    diagonal[t] = a[path[t] * n + path[t]];
+    if (t === 0) continue;
+    const [i, j] = [Math.max(path[t], path[t - 1]), Math.min(path[t], path[t - 1])];
+    offDiagonal[t - 1] = a[i * n + j];
+  }
+  const solved = tridiagonalEigen(diagonal, offDiagonal, options);
+  if (!solved.ok || solved.value.vectors.length === 0) return solved;
+  const vectors = new Float64Array(n * n);
+  for (let t = 0; t < n; t++) {
+    vectors.set(solved.value.vectors.subarray(t * n, (t + 1) * n), path[t] * n);
+  }
+  return succeed({ values: solved.value.values, vectors });
 }
 
 function withFullMass(

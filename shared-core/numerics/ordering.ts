@@ -114,3 +114,38 @@ export function bandwidthOf(adjacency: Adjacency, order?: Int32Array): number {
   }
   return most;
 }
+
+/**
+ * An order that makes all the given dense symmetric matrices (n×n) tridiagonal at once, if there is one: no
+ * coordinate has more than two neighbours and nothing closes to a ring. Parts follow one another.
+ */
+export function pathThrough(matrices: readonly Float64Array[], n: number): Int32Array | undefined {
+  const neighbours = new Int32Array(2 * n).fill(-1);
+  const degree = new Int32Array(n);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < i; j++) {
+      if (!touches(matrices, i * n + j)) continue;
+      if (degree[i] === 2 || degree[j] === 2) return undefined;
+      neighbours[2 * i + degree[i]++] = j;
+      neighbours[2 * j + degree[j]++] = i;
+    }
+  }
+  const order = new Int32Array(n);
+  const placed = new Uint8Array(n);
+  let count = 0;
+  for (let end = 0; end < n; end++) {
+    if (placed[end] || degree[end] === 2) continue;
+    for (let at = end; at >= 0; ) {
+      placed[at] = 1;
+      order[count++] = at;
+      const [a, b] = [neighbours[2 * at], neighbours[2 * at + 1]];
+      at = a >= 0 && !placed[a] ? a : b >= 0 && !placed[b] ? b : -1;
+    }
+  }
+  return count === n ? order : undefined;
+}
+
+function touches(matrices: readonly Float64Array[], at: number): boolean {
+  for (let m = 0; m < matrices.length; m++) if (matrices[m][at] !== 0) return true;
+  return false;
+}

@@ -5,12 +5,17 @@
  * where proportional damping decouples and is solved in closed form; otherwise the state matrix of these
  * coordinates, [0 S; −Λ S⁻¹ −D] with S² = |Λ|, goes to the general eigenproblem. For light damping that matrix
  * is nearly normal, so values carry errors of about n·ε times the largest |λ|, and far less for low modes.
+ * A chain (no coordinate coupled to more than two others, no ring) goes to chain-quadratic.ts first, which is far
+ * quicker and checks itself.
  * Linearisation: Tisseur & Meerbergen, The quadratic eigenvalue problem, SIAM Review 43, 2001, §3.4.
  */
+import { chainPairs } from "./chain-damped.ts";
 import { factorCholesky, solveLower, solveLowerTransposed } from "./cholesky.ts";
 import { type ComplexMatrix, generalEigen } from "./general-eigen.ts";
 import { diagonalOf, inverseRoots } from "./generalised-eigen.ts";
 import { type Kernel, kernelFor } from "./kernel.ts";
+import { closedForm, type Pairs } from "./modal-pairs.ts";
+import { pathThrough } from "./ordering.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, maxAbs, transpose } from "./products.ts";
 import { symmetricEigen } from "./symmetric-eigen.ts";
@@ -51,14 +56,19 @@ export function quadraticEigen(
   const damping = reduce(c);
   if (!allFinite(stiffness) || !allFinite(damping)) return fail("a matrix divided by the mass overflows");
   const symmetric = isSymmetric(k, n);
+  const path = symmetric && isSymmetric(c, n) ? pathThrough([damping, stiffness], n) : undefined;
+  const chain = path && chainPairs(damping, stiffness, path, kernel);
+  if (chain) return succeed(arrange(chain, undefined, n, kernel, restore, Math.sqrt(maxAbs(stiffness)) || 1));
   const basis = symmetric ? modalBasis(stiffness, n, kernel) : plainBasis(stiffness, n);
   if (!basis.ok) return fail(basis.reason);
   const { shape, lambda, scale } = basis.value;
   const modal = shape ? inBasis(damping, shape, n, kernel) : damping;
   const pairs =
-    shape && decoupled(modal, n) ? closedForm(lambda, modal, n) : coupled(basis.value, modal, n, kernel);
+    shape && decoupled(modal, n)
+      ? succeed(closedForm(lambda, (j) => modal[j * n + j]))
+      : coupled(basis.value, modal, n, kernel);
   if (!pairs.ok) return fail(pairs.reason);
-  return succeed(arrange(pairs.value, shape, n, kernel, restore, scale));
+  return succeed(arrange(pairs.value, shape, n, kernel, restore, maxAbs(scale)));
 }
 
 /** Coordinates in which M is the identity: A ↦ M^−½ A M^−½ (or L⁻¹ A L⁻ᵀ), and vectors back, in place. */
@@ -138,33 +148,6 @@ function decoupled(modal: Float64Array, n: number): boolean {
   return true;
 }
 
-/** Values and vectors in basis coordinates: `rows` holds one vector (n) a value, real and imaginary parts. */
-type Pairs = { re: Float64Array; im: Float64Array; rowsRe: Float64Array; rowsIm: Float64Array };
-
-/** λ² + d λ + ω² = 0 mode by mode, by the formula that loses no digits. */
-function closedForm(lambda: Float64Array, modal: Float64Array, n: number): Outcome<Pairs> {
-  const re = new Float64Array(2 * n);
-  const im = new Float64Array(2 * n);
-  const rowsRe = new Float64Array(2 * n * n);
-  for (let j = 0; j < n; j++) {
-    const d = modal[j * n + j];
-    const half = 0.5 * d;
-    const root = Math.sqrt(Math.abs(lambda[j]));
-    const inner = lambda[j] > 0 ? (half - root) * (half + root) : half * half - lambda[j];
-    if (inner < 0) {
-      re[2 * j] = re[2 * j + 1] = -half;
-      im[2 * j] = Math.sqrt(-inner);
-      im[2 * j + 1] = -im[2 * j];
-    } else {
-      const large = -(half + (half >= 0 ? 1 : -1) * Math.sqrt(inner));
-      re[2 * j] = large === 0 ? 0 : lambda[j] / large;
-      re[2 * j + 1] = large;
-    }
-    rowsRe[2 * j * n + j] = rowsRe[(2 * j + 1) * n + j] = 1;
-  }
-  return succeed({ re, im, rowsRe, rowsIm: new Float64Array(2 * n * n) });
-}
-
 /**
  * The state matrix with the coordinates of one mode side by side, stiffest mode first: [0 s; −λ/s −d] blocks on
  * the diagonal. QR likes matrices graded that way.
@@ -214,10 +197,10 @@ function arrange(
   n: number,
   kernel: Kernel,
   restore: MassUnits["restore"],
-  scale: Float64Array,
+  scale: number,
 ): DampedModes {
   const size = 2 * n;
-  const order = sortedPairs(pairs.re, pairs.im, maxAbs(scale));
+  const order = sortedPairs(pairs.re, pairs.im, scale);
   const re = new Float64Array(size);
   const im = new Float64Array(size);
   let x: ComplexMatrix = { re: new Float64Array(n * size), im: new Float64Array(n * size) };

@@ -51,18 +51,20 @@ export function secularRoot(
     for (let j = 0; j <= p; j++) {
       const gap = d[j] - origin - tau;
       gaps[at + j] = gap;
-      const t = squares[j] / gap;
+      const inverse = 1 / gap;
+      const t = squares[j] * inverse;
       psi += t;
-      dpsi += t / gap;
+      dpsi += t * inverse;
       error += psi;
     }
     error = Math.abs(error);
     for (let j = k - 1; j >= q; j--) {
       const gap = d[j] - origin - tau;
       gaps[at + j] = gap;
-      const t = squares[j] / gap;
+      const inverse = 1 / gap;
+      const t = squares[j] * inverse;
       phi += t;
-      dphi += t / gap;
+      dphi += t * inverse;
       error += Math.abs(phi);
     }
     const f = 1 / rho + psi + phi;

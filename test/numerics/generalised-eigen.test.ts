@@ -76,6 +76,25 @@ describe("generalised symmetric eigenproblem", () => {
     expect(difference(values, exact)).toBeLessThan(4 * n * EPS * values[n - 1]);
   });
 
+  it.each([40, 130])("solves a chain of %i whose numbering is shuffled, as the plain order does", (n) => {
+    const next = seeded(n);
+    const place = Array.from({ length: n }, (_, i) => (i * 37) % n);
+    expect(new Set(place).size).toBe(n);
+    const k = new Float64Array(n * n);
+    for (let t = 0; t + 1 < n; t++) {
+      const [i, j, s] = [place[t], place[t + 1], 1 + 0.5 * next()];
+      k[i * n + i] += s;
+      k[j * n + j] += s;
+      k[i * n + j] = k[j * n + i] = -s;
+    }
+    const mass = Float64Array.from({ length: n }, () => 2 + next());
+    const { values, vectors } = unwrap(generalisedEigen(k, mass, n));
+    checkModes(k, full(mass), n, values, vectors);
+    const alone = unwrap(generalisedEigen(k, mass, n, { vectors: false }));
+    expect(difference(alone.values, values)).toBeLessThan(4 * n * EPS * values[n - 1]);
+    expect(Math.abs(values[0])).toBeLessThan(n * EPS * values[n - 1]);
+  });
+
   it("keeps mass ratios of 1e12 apart", () => {
     const mass = Float64Array.of(1e-6, 1, 1e6);
     const { values } = unwrap(generalisedEigen(full(Float64Array.of(1, 4, 9)), mass, 3));

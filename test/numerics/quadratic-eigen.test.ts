@@ -87,9 +87,44 @@ function chain(
   };
 }
 
+/** Adds a dashpot from the first mass to ground. */
+function grounding(system: System, dashpot: number): System {
+  const c = Float64Array.from(system.c);
+  c[0] += dashpot;
+  return { ...system, c };
+}
+
+/** Takes away the coupling before coordinate `at`, the diagonal staying. */
+function cut(system: System, at: number): System {
+  const without = (a: Float64Array) =>
+    a.map((v, p) => (p === at * system.n + at - 1 || p === (at - 1) * system.n + at ? 0 : v));
+  return { ...system, c: without(system.c), k: without(system.k) };
+}
+
+/** Couples the last coordinate to the first. */
+function closed(system: System): System {
+  const k = Float64Array.from(system.k);
+  k[system.n - 1] = k[(system.n - 1) * system.n] = -30;
+  return { ...system, k };
+}
+
+function renumbered(system: System, place: Int32Array): System {
+  const { n } = system;
+  const move = (a: Float64Array) => {
+    const out = new Float64Array(n * n);
+    for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) out[place[i] * n + place[j]] = a[i * n + j];
+    return out;
+  };
+  const m = new Float64Array(n);
+  system.m.forEach((v, i) => {
+    m[place[i]] = v;
+  });
+  return { n, m, c: move(system.c), k: move(system.k) };
+}
+
 const solve = ({ m, c, k, n }: System) => unwrap(quadraticEigen(m, c, k, n));
 
-describe("quadratic eigenproblem, dense", () => {
+describe("quadratic eigenproblem", () => {
   it.each([0, 0.02, 0.999, 1, 1.001, 3, -0.1])("meets the closed form of one mass, ζ = %d", (zeta) => {
     const [m, w] = [2.5, 70];
     const system = {
@@ -186,6 +221,104 @@ describe("quadratic eigenproblem, dense", () => {
     // Heavy damping costs the low modes up to ‖C‖/√(‖M‖‖K‖), here 500, of the linear problem's accuracy
     // (Tisseur, 2000); eight covers what is seen.
     check(system, solve(system), name.startsWith("overdamped") ? 8 : 1);
+  });
+
+  it.each([
+    [
+      "loose, alike twice over",
+      chain(
+        30,
+        () => 100,
+        (i) => (i % 15 === 3 ? 4 : 0.2),
+        () => 1,
+      ),
+    ],
+    [
+      "long and lightly damped",
+      chain(
+        150,
+        (i) => 1e6 * (1 + (i % 5)),
+        (i) => 20 * (i % 3),
+        (i) => 1 + (i % 7),
+      ),
+    ],
+    [
+      "uniform with few dashpots",
+      chain(
+        120,
+        () => 1e6,
+        (i) => (i % 7 === 0 ? 200 : 0),
+        () => 1,
+      ),
+    ],
+    [
+      "damped to ground, not sprung to it",
+      grounding(
+        chain(
+          40,
+          () => 50,
+          (i) => (i % 4 ? 0.3 : 0),
+          () => 2,
+          false,
+        ),
+        0.8,
+      ),
+    ],
+    [
+      "one mode far overdamped",
+      chain(
+        60,
+        () => 100,
+        (i) => (i === 30 ? 900 : 0.1),
+        () => 1,
+      ),
+    ],
+    [
+      "heavily damped throughout",
+      chain(
+        40,
+        (i) => 100 * (1 + (i % 3)),
+        (i) => 40 * (1 + (i % 2)),
+        () => 1,
+      ),
+    ],
+    [
+      "proportional",
+      chain(
+        70,
+        (i) => 1e4 * (1 + (i % 3)),
+        (i) => 3 * (1 + (i % 3)),
+        () => 1,
+      ),
+    ],
+    [
+      "parts without coupling",
+      cut(
+        chain(
+          45,
+          () => 80,
+          (i) => 1 + (i % 2),
+          () => 1,
+        ),
+        15,
+      ),
+    ],
+    [
+      "a ring, which is no chain",
+      closed(
+        chain(
+          24,
+          () => 100,
+          (i) => (i % 2 ? 2 : 0),
+          () => 1,
+        ),
+      ),
+    ],
+  ] as const)("solves long chains: %s", (name, system) => {
+    check(system, solve(system), name.includes("damped") ? 8 : 1);
+    const place = Int32Array.from({ length: system.n }, (_, i) => (i * 7) % system.n);
+    if (new Set(place).size === system.n)
+      check(renumbered(system, place), solve(renumbered(system, place)), 8);
   });
 
   it("solves a gyroscopic system: pure imaginary values in closed form", () => {
