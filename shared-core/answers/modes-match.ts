@@ -5,7 +5,9 @@
  * two real roots. Where measures agree (one mass with a branch beside it: every shape is the same), a pair
  * that oscillates goes before real ones, then the roots whose size is nearest to the undamped frequency.
  */
+import { sparseTimesVector } from "../numerics/sparse.ts";
 import type { Root } from "./modes-roots.ts";
+import type { UndampedModes } from "./modes-undamped.ts";
 
 /** Root or two real roots of each undamped mode, by index; empty when nothing was left. */
 export interface Matching {
@@ -28,14 +30,10 @@ interface Candidate {
   readonly distance: number;
 }
 
-/** Matches roots to the modes `first` to `count - 1`; `values` are their omega^2. */
-export function matchRoots(
-  roots: readonly Root[],
-  values: Float64Array,
-  first: number,
-  count: number,
-): Matching {
-  const measures = new Measures(roots, count);
+/** Matches roots to the undamped modes from `first` on. */
+export function matchRoots(roots: readonly Root[], undamped: UndampedModes, first: number): Matching {
+  const { count, values } = undamped;
+  const measures = new Measures(roots, undamped);
   const taken = new Set<number>();
   const ofMode: (readonly number[])[] = Array.from({ length: count }, () => []);
   const open = new Set<number>();
@@ -48,8 +46,7 @@ export function matchRoots(
       for (const s of some) taken.add(s);
     }
   };
-  // A share above one half is the largest of its root's, so these agree with the full order and are cheap.
-  accept(clearPairs(roots, measures, open, values));
+  accept(clearPairs(roots, measures, [...open], values));
   // Once over what is left, and again while leftovers of the short lists of real roots can be placed.
   for (let round = 0; open.size > 0 && round <= count; round++) {
     const before = open.size;
@@ -69,24 +66,44 @@ function better(a: Candidate, b: Candidate): number {
   );
 }
 
+/** Share of a mode in a root's shape, 0 to 1; for shapes over the inertial coordinates worked out when asked. */
 class Measures {
   readonly #roots: readonly Root[];
-  readonly #norm: Float64Array;
+  readonly #undamped: UndampedModes;
+  readonly #weighted: ({ re: Float64Array; im: Float64Array; norm: number } | undefined)[];
 
-  constructor(roots: readonly Root[], count: number) {
+  constructor(roots: readonly Root[], undamped: UndampedModes) {
     this.#roots = roots;
-    this.#norm = Float64Array.from(roots, ({ shapeRe, shapeIm }) => {
-      let sum = 0;
-      for (let r = 0; r < count; r++) sum += shapeRe[r] * shapeRe[r] + shapeIm[r] * shapeIm[r];
-      return sum;
-    });
+    this.#undamped = undamped;
+    this.#weighted = new Array(roots.length);
   }
 
-  /** Share of the mode in the root's shape, 0 to 1. */
   of(mode: number, root: number): number {
-    const { shapeRe, shapeIm } = this.#roots[root];
-    const norm = this.#norm[root];
-    return norm > 0 ? (shapeRe[mode] * shapeRe[mode] + shapeIm[mode] * shapeIm[mode]) / norm : 0;
+    const { re, im, norm } = this.#weights(root);
+    if (!(norm > 0)) return 0;
+    if (this.#roots[root].shape.basis === "modal") return (re[mode] * re[mode] + im[mode] * im[mode]) / norm;
+    const { vectors, count } = this.#undamped;
+    let x = 0;
+    let y = 0;
+    for (let i = 0, p = mode * count; i < count; i++, p++) {
+      x += vectors[p] * re[i];
+      y += vectors[p] * im[i];
+    }
+    return (x * x + y * y) / norm;
+  }
+
+  /** The modal shape, or M times the shape, with psi^H M psi. */
+  #weights(root: number): { re: Float64Array; im: Float64Array; norm: number } {
+    const known = this.#weighted[root];
+    if (known !== undefined) return known;
+    const { basis, re, im } = this.#roots[root].shape;
+    const { mass, count } = this.#undamped;
+    const weighted = basis === "modal" ? [re, im] : [re, im].map((x) => sparseTimesVector(mass, x));
+    let norm = 0;
+    for (let r = 0; r < count; r++) norm += re[r] * weighted[0][r] + im[r] * weighted[1][r];
+    const made = { re: weighted[0], im: weighted[1], norm };
+    this.#weighted[root] = made;
+    return made;
   }
 }
 
@@ -95,25 +112,31 @@ function candidate(mode: number, some: readonly number[], measure: number, size:
   return { mode, roots: some, measure: Math.round(measure / STEP), distance };
 }
 
+/**
+ * Pairs and modes of the same rank that share more than one half, as the full order would match them: shares of
+ * one root add up to one at most, so each such root has less than one half of every other mode; the roots that
+ * are not such are compared one by one.
+ */
 function clearPairs(
   roots: readonly Root[],
   measures: Measures,
-  open: ReadonlySet<number>,
+  modes: readonly number[],
   values: Float64Array,
 ): Candidate[] {
-  const out: Candidate[] = [];
-  roots.forEach(({ re, im }, s) => {
-    if (im === 0) return;
-    for (const r of open) {
-      const measure = measures.of(r, s);
-      if (measure > 0.5) out.push(candidate(r, [s], measure, re * re + im * im, values[r]));
-    }
+  const squares = roots.map(({ re, im }) => re * re + im * im);
+  const pairs = roots.map((_, s) => s).filter((s) => roots[s].im > 0);
+  pairs.sort((a, b) => squares[a] - squares[b]);
+  const clear: { r: number; s: number; measure: number }[] = [];
+  const others = roots.map((_, s) => s).filter((s) => roots[s].im === 0);
+  pairs.forEach((s, rank) => {
+    const r = modes[rank];
+    const measure = r === undefined ? 0 : measures.of(r, s);
+    if (measure > 0.5) clear.push({ r, s, measure });
+    else others.push(s);
   });
-  // Roots whose measures nearly agree on one mode are left to the full comparison.
-  const perMode = new Map<number, number>();
-  for (const { mode } of out) perMode.set(mode, (perMode.get(mode) ?? 0) + 1);
-  const reals = roots.some(({ im }) => im === 0);
-  return reals ? [] : out.filter(({ mode }) => perMode.get(mode) === 1);
+  return clear
+    .filter(({ r, measure }) => others.every((t) => measures.of(r, t) < measure))
+    .map(({ r, s, measure }) => candidate(r, [s], measure, squares[s], values[r]));
 }
 
 function allCandidates(

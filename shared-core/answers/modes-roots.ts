@@ -22,16 +22,26 @@ import { factorLu, multiply, solveLu } from "../numerics/dense.ts";
 import { generalEigen } from "../numerics/general-eigen.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { sparseToDense } from "../numerics/sparse.ts";
+import { chainRoots } from "./modes-chain.ts";
+import { addSquare, newtonStep, type Pair } from "./modes-newton.ts";
 import type { UndampedModes } from "./modes-undamped.ts";
 
-/** A root, one of each complex pair, with its shape in modal and relaxing coordinates. 1/s. */
+/** A root, one of each complex pair, with its shape. 1/s. */
 export interface Root {
   readonly re: number;
   /** Not negative. */
   readonly im: number;
-  /** count + relaxing entries: factors of the undamped modes, then distances d. */
-  readonly shapeRe: Float64Array;
-  readonly shapeIm: Float64Array;
+  readonly shape: RootShape;
+}
+
+/**
+ * `modal`: count + relaxing entries, factors of the undamped modes and then distances d. `inertial`: the
+ * inertial coordinates themselves, in a system without relaxing ones.
+ */
+export interface RootShape {
+  readonly basis: "modal" | "inertial";
+  readonly re: Float64Array;
+  readonly im: Float64Array;
 }
 
 /** Damping in the coordinates above. */
@@ -57,14 +67,22 @@ export function complexRoots(
   undamped: UndampedModes,
   massDamping: number,
   added: Float64Array,
-): Outcome<{ readonly roots: Root[]; readonly system: ModalSystem; readonly coupled: boolean }> {
+): Outcome<{ readonly roots: Root[]; readonly coupled: boolean }> {
+  if (undamped.reduction.damping.length === 0) {
+    const rates = added.map((rate) => rate + massDamping);
+    return succeed({ roots: singleRoots(undamped, rates), coupled: false });
+  }
+  const chain = chainRoots(undamped, massDamping, added);
+  if (chain !== undefined) return succeed({ roots: chain, coupled: true });
   const system = modalSystem(undamped, massDamping, added);
   if (isDiagonal(system)) {
-    return succeed({ roots: singleRoots(undamped, system), system, coupled: false });
+    const { count, damping } = system;
+    const rates = added.map((_, r) => damping[r * count + r]);
+    return succeed({ roots: singleRoots(undamped, rates), coupled: false });
   }
   const found = coupledRoots(undamped, system);
   if (!found.ok) return fail(found.reason);
-  return succeed({ roots: found.value, system, coupled: true });
+  return succeed({ roots: found.value, coupled: true });
 }
 
 /** Damping matrix in modal and relaxing coordinates. */
@@ -166,16 +184,22 @@ export function oscillatorRoots(c: number, lambda: number): readonly { re: numbe
   ];
 }
 
-function singleRoots({ count, free, values }: UndampedModes, { damping }: ModalSystem): Root[] {
+/** Roots where mode r is damped by `rates[r]` = 2 zeta omega and coupled to no other. */
+function singleRoots({ count, free, values }: UndampedModes, rates: Float64Array): Root[] {
   const roots: Root[] = [];
   for (let r = free; r < count; r++) {
-    for (const { re, im } of oscillatorRoots(damping[r * count + r], values[r])) {
-      const shapeRe = new Float64Array(count);
-      shapeRe[r] = 1;
-      roots.push({ re: re + 0, im, shapeRe, shapeIm: new Float64Array(count) });
+    for (const { re, im } of oscillatorRoots(rates[r], values[r])) {
+      roots.push({ re: re + 0, im, shape: unitShape(r, count) });
     }
   }
   return roots;
+}
+
+/** The shape of undamped mode r alone. */
+function unitShape(r: number, size: number): RootShape {
+  const re = new Float64Array(size);
+  re[r] = 1;
+  return { basis: "modal", re, im: new Float64Array(size) };
 }
 
 /**
@@ -214,12 +238,11 @@ function coupledRoots(undamped: UndampedModes, system: ModalSystem): Outcome<Roo
       shapeRe[count + k] = right.re[(elastic + moving + k) * n + j];
       shapeIm[count + k] = right.im[(elastic + moving + k) * n + j];
     }
-    roots.push(improved({ re: re[j], im: im[j], shapeRe, shapeIm }, undamped, system));
+    const shape: RootShape = { basis: "modal", re: shapeRe, im: shapeIm };
+    roots.push(improved({ re: re[j], im: im[j], shape }, undamped, system));
   }
   for (let r = 0; r < held; r++) {
-    const shapeRe = new Float64Array(count + relaxing);
-    shapeRe[free + r] = 1;
-    roots.push({ re: 0, im: 0, shapeRe, shapeIm: new Float64Array(count + relaxing) });
+    roots.push({ re: 0, im: 0, shape: unitShape(free + r, count + relaxing) });
   }
   return succeed(roots);
 }
@@ -275,19 +298,15 @@ function stateMatrix(undamped: UndampedModes, system: ModalSystem): Outcome<Floa
   return succeed(a);
 }
 
-/** Newton steps larger than this share of the root, or where the functional is flat, are not trusted. */
-const TRUSTED_STEP = 1e-5;
-const FLAT = 1e-5;
-
-/** One Newton step on a root^2 + b root + c = 0 with a, b, c = psi^T (M, C, K) psi. */
+/** One Newton step on psi^T (M root^2 + C root + K) psi = 0. */
 function improved(root: Root, undamped: UndampedModes, system: ModalSystem): Root {
-  const { re, im, shapeRe: x, shapeIm: y } = root;
+  const { re: x, im: y } = root.shape;
   const { count, values } = undamped;
   const { relaxing, damping, relaxingStiffness } = system;
   const size = count + relaxing;
-  const a: [number, number] = [0, 0];
-  const b: [number, number] = [0, 0];
-  const c: [number, number] = [0, 0];
+  const a: Pair = [0, 0];
+  const b: Pair = [0, 0];
+  const c: Pair = [0, 0];
   for (let r = 0; r < count; r++) addSquare(a, 1, x[r], y[r]);
   for (let r = 0; r < count; r++) addSquare(c, values[r], x[r], y[r]);
   for (let i = 0; i < size; i++) {
@@ -307,20 +326,5 @@ function improved(root: Root, undamped: UndampedModes, system: ModalSystem): Roo
       c[1] += k * (x[count + i] * y[count + j] + y[count + i] * x[count + j]);
     }
   }
-  // a root + b, then (a root + b) root + c and 2 a root + b.
-  const linear = [a[0] * re - a[1] * im + b[0], a[0] * im + a[1] * re + b[1]];
-  const value = [linear[0] * re - linear[1] * im + c[0], linear[0] * im + linear[1] * re + c[1]];
-  const slope = [linear[0] + a[0] * re - a[1] * im, linear[1] + a[0] * im + a[1] * re];
-  const square = slope[0] * slope[0] + slope[1] * slope[1];
-  const scale = Math.hypot(a[0], a[1]) * Math.hypot(re, im) + Math.hypot(b[0], b[1]);
-  if (!(Math.sqrt(square) > FLAT * scale)) return root;
-  const stepRe = (value[0] * slope[0] + value[1] * slope[1]) / square;
-  const stepIm = im === 0 ? 0 : (value[1] * slope[0] - value[0] * slope[1]) / square;
-  if (!(Math.hypot(stepRe, stepIm) <= TRUSTED_STEP * Math.hypot(re, im))) return root;
-  return { ...root, re: re - stepRe, im: im - stepIm };
-}
-
-function addSquare(sum: [number, number], factor: number, x: number, y: number): void {
-  sum[0] += factor * (x * x - y * y);
-  sum[1] += 2 * factor * x * y;
+  return newtonStep(root, a, b, c);
 }

@@ -36,6 +36,8 @@ export interface UndampedModes {
   /** count x count, one mode a row, phi^T M phi = 1. */
   readonly vectors: Float64Array;
   readonly mass: SparseMatrix;
+  /** An order of the inertial coordinates that makes K tridiagonal; only where M is diagonal. */
+  readonly chain?: Int32Array;
 }
 
 /** Share of the largest root below which a root is taken from its sums: above, the routine's error is small. */
@@ -75,7 +77,17 @@ export function undampedModes(reduction: Reduction): Outcome<UndampedModes> {
     sorted[free + held + r] = values[from];
     vectors.set(rows.subarray(from * n, (from + 1) * n), (free + held + r) * n);
   });
-  return succeed({ reduction, condensed, count: n, free, held, values: sorted, vectors, mass });
+  return succeed({
+    reduction,
+    condensed,
+    count: n,
+    free,
+    held,
+    values: sorted,
+    vectors,
+    mass,
+    chain: solved.value.chain,
+  });
 }
 
 const asTerm = ({ form, value }: SquareTerm) => ({ row: form, column: form, value });
@@ -139,6 +151,7 @@ const massNorm = (x: Float64Array, mass: SparseMatrix): number =>
 interface Rows {
   readonly values: Float64Array;
   readonly rows: Float64Array;
+  readonly chain?: Int32Array;
 }
 
 /** All modes by the dense or tridiagonal routine. */
@@ -221,7 +234,7 @@ function solveChain(stiffness: SparseMatrix, diagonal: Float64Array, order: Int3
     const at = order[t];
     for (let r = 0; r < n; r++) rows[r * n + at] = vectors[t * n + r] * root[at];
   }
-  return succeed({ values: solved.value.values, rows });
+  return succeed({ values: solved.value.values, rows, chain: order });
 }
 
 /** The routine's modes without as many as there are null vectors (those nearest to them), cleared of these. */

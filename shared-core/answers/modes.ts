@@ -7,7 +7,7 @@ import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import type { Mode, ModeTable } from "./answer.ts";
 import { type ModalBasis, namedValues } from "./modes-basis.ts";
 import { matchRoots } from "./modes-match.ts";
-import { complexRoots, oscillatorRoots, type Root } from "./modes-roots.ts";
+import { complexRoots, type Root } from "./modes-roots.ts";
 
 type Shape = Mode["shape"];
 
@@ -19,15 +19,15 @@ export function modeTable(basis: ModalBasis): Outcome<ModeTable> {
   const { assembly, undamped } = basis;
   const found = complexRoots(undamped, assembly.massDamping, basis.modalRates(true));
   if (!found.ok) return fail(found.reason);
-  const { roots, system, coupled } = found.value;
+  const { roots, coupled } = found.value;
   const { free, held, count, values } = undamped;
-  const { ofMode, left } = matchRoots(roots, values, free + held, count);
+  const { ofMode, left } = matchRoots(roots, undamped, free + held);
   const modes: Mode[] = [];
   for (let r = 0; r < free; r++) modes.push(freeMode(basis, r));
   for (let r = free + held; r < count; r++) {
     const own = ofMode[r].map((s) => roots[s]);
-    const rate = system.damping[r * (count + system.relaxing) + r];
-    modes.push(elasticMode(basis, r, own.length > 0 ? own : asRoots(rate, values[r]), coupled));
+    if (own.length === 0) return fail(`no root was found for the mode at ${hertz(values[r])} Hz`);
+    modes.push(elasticMode(basis, r, own, coupled));
   }
   const others = left.map((s) => roots[s]).sort((a, b) => size(a) - size(b) || a.re - b.re);
   for (const root of others) modes.push(looseMode(basis, root));
@@ -37,12 +37,7 @@ export function modeTable(basis: ModalBasis): Outcome<ModeTable> {
 
 const size = ({ re, im }: Root): number => Math.hypot(re, im);
 
-const asRoots = (rate: number, value: number): Root[] =>
-  oscillatorRoots(rate, value).map((root) => ({
-    ...root,
-    shapeRe: new Float64Array(0),
-    shapeIm: new Float64Array(0),
-  }));
+const hertz = (value: number): number => Math.sqrt(Math.max(0, value)) / (2 * Math.PI);
 
 function freeMode(basis: ModalBasis, r: number): Mode {
   const { massDamping } = basis.assembly;
@@ -78,7 +73,7 @@ function elasticMode(basis: ModalBasis, r: number, roots: readonly Root[], coupl
   const parts = new UndampedParts(basis, r);
   const mode: Mode = {
     number: r - free - held + 1,
-    frequencyHz: Math.sqrt(Math.max(0, values[r])) / (2 * Math.PI),
+    frequencyHz: hertz(values[r]),
     dampedFrequencyHz: slow.im / (2 * Math.PI),
     dampingRatio: dampingRatio(roots),
     eigenvalue: [slow.re, slow.im],
@@ -198,21 +193,28 @@ function byElement(basis: ModalBasis, shares: Float64Array | undefined): Record<
 }
 
 /** Shape of a root over the free coordinates. */
-export function freeShapeOf(basis: ModalBasis, root: Root): Shape {
-  const { reduction, condensed, count, vectors } = basis.undamped;
-  const part = (factors: Float64Array): Float64Array => {
-    const inertial = new Float64Array(count);
-    for (let r = 0; r < count; r++) {
-      const factor = factors[r];
-      if (factor === 0) continue;
-      for (let i = 0; i < count; i++) inertial[i] += factor * vectors[r * count + i];
-    }
+export function freeShapeOf(basis: ModalBasis, { shape }: Root): Shape {
+  const { reduction, condensed, count } = basis.undamped;
+  const part = (given: Float64Array): Float64Array => {
+    const inertial = shape.basis === "inertial" ? given : fromModes(basis, given);
     const reduced = Float64Array.from(condensed.inner, (form, i) => {
-      return formValue(form, inertial) + (i < count ? 0 : factors[i]);
+      return formValue(form, inertial) + (i < count ? 0 : given[i]);
     });
     return Float64Array.from(reduction.recovery, (form) => formValue(form, reduced));
   };
-  return { re: part(root.shapeRe), im: part(root.shapeIm) };
+  return { re: part(shape.re), im: part(shape.im) };
+}
+
+/** Inertial coordinates for factors of the undamped modes. */
+function fromModes({ undamped }: ModalBasis, factors: Float64Array): Float64Array {
+  const { count, vectors } = undamped;
+  const out = new Float64Array(count);
+  for (let r = 0; r < count; r++) {
+    const factor = factors[r];
+    if (factor === 0) continue;
+    for (let i = 0; i < count; i++) out[i] += factor * vectors[r * count + i];
+  }
+  return out;
 }
 
 /** Shape of a root over the named coordinates, largest entry 1. */
