@@ -10,6 +10,7 @@ import { modeTable } from "./modes.ts";
 import { type ModalBasis, modalBasis } from "./modes-basis.ts";
 import { type FrequencySensitivity, frequencySensitivity } from "./sensitivity.ts";
 import { staticResponse } from "./statics.ts";
+import { type SteadyModel, steadyModel, steadyResponse, sweepAnswer } from "./sweep.ts";
 import { hasAddedDamping } from "./time-damping.ts";
 
 /** The analysis of an instance. Cheap to make: nothing is computed before it is asked for. */
@@ -23,6 +24,9 @@ class InstanceAnalysis implements Analysis {
   #modes: Outcome<ModeTable> | undefined;
   #statics: Outcome<StaticResponse> | undefined;
   #sensitivity: Outcome<FrequencySensitivity> | undefined;
+  #steady: Outcome<SteadyModel> | undefined;
+  readonly #responses = new Map<string, Outcome<FrequencyResponse>>();
+  readonly #sweeps = new Map<SweepAsk, Outcome<SweepAnswer>>();
   readonly #histories = new Map<HistoryAsk, Outcome<HistorySolution>>();
   readonly #answers = new Map<HistoryAsk, Outcome<HistoryAnswer>>();
 
@@ -40,12 +44,14 @@ class InstanceAnalysis implements Analysis {
     return this.#sensitivity;
   }
 
-  frequencyResponse(_by: readonly number[]): Outcome<FrequencyResponse> {
-    return fail("steady responses are not computed yet");
+  frequencyResponse(by: readonly number[]): Outcome<FrequencyResponse> {
+    return keep(this.#responses, by.join(), () =>
+      through(this.#steadyModel(), (model) => steadyResponse(model, by)),
+    );
   }
 
-  sweep(_ask: SweepAsk): Outcome<SweepAnswer> {
-    return fail("steady responses are not computed yet");
+  sweep(ask: SweepAsk): Outcome<SweepAnswer> {
+    return keep(this.#sweeps, ask, () => through(this.#steadyModel(), (model) => sweepAnswer(model, ask)));
   }
 
   timeResponse(ask: HistoryAsk): Outcome<TimeResponse> {
@@ -79,6 +85,13 @@ class InstanceAnalysis implements Analysis {
   #modalBasis(): Outcome<ModalBasis> {
     this.#basis ??= modalBasis(this.instance.assembly);
     return this.#basis;
+  }
+
+  #steadyModel(): Outcome<SteadyModel> {
+    this.#steady ??= through(this.#modalBasis(), (basis) =>
+      through(this.modes(), (table) => steadyModel(this.instance.assembly, basis, table)),
+    );
+    return this.#steady;
   }
 
   #history(ask: HistoryAsk): Outcome<HistorySolution> {

@@ -18,6 +18,8 @@ export interface MotionTerm {
 /** factor * a * b: a power or a stored energy. */
 export interface ProductTerm {
   readonly kind: "power" | "energy";
+  /** Which term of the quantity it belongs to: an element's energies of travel and of rate share one. */
+  readonly owner: number;
   readonly factor: number;
   readonly a: readonly MotionTerm[];
   /** Constant part of `a` (a preload), which counts in time only. */
@@ -36,7 +38,7 @@ export function quantityParts(assembly: Assembly, quantity: QuantityRef): Quanti
   const linear: MotionTerm[] = [];
   const products: ProductTerm[] = [];
   let constant = 0;
-  for (const term of quantity.terms) {
+  for (const [owner, term] of quantity.terms.entries()) {
     const { factor } = term;
     if (term.of === "coordinate") {
       const { form } = assembly.coordinates[term.coordinate];
@@ -60,6 +62,7 @@ export function quantityParts(assembly: Assembly, quantity: QuantityRef): Quanti
         case "power":
           products.push({
             kind: "power",
+            owner,
             factor,
             a: forceTerms(assembly, element, 1),
             aConstant: element.preload,
@@ -67,7 +70,7 @@ export function quantityParts(assembly: Assembly, quantity: QuantityRef): Quanti
           });
           break;
         case "energy":
-          products.push(...energyTerms(element, factor));
+          products.push(...energyTerms(element, owner, factor));
           break;
       }
     }
@@ -85,10 +88,14 @@ function forceTerms(assembly: Assembly, element: ElementInfo, factor: number): M
   return terms;
 }
 
-function energyTerms({ form, stiffness, inertance }: ElementInfo, factor: number): ProductTerm[] {
+function energyTerms(
+  { form, stiffness, inertance }: ElementInfo,
+  owner: number,
+  factor: number,
+): ProductTerm[] {
   const half = (derivative: 0 | 1, size: number): ProductTerm => {
     const motion: MotionTerm[] = [{ form, derivative, factor: 1, loss: 0 }];
-    return { kind: "energy", factor: 0.5 * factor * size, a: motion, aConstant: 0, b: motion };
+    return { kind: "energy", owner, factor: 0.5 * factor * size, a: motion, aConstant: 0, b: motion };
   };
   const terms: ProductTerm[] = [];
   if (stiffness !== 0) terms.push(half(0, stiffness));

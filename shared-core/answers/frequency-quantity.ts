@@ -1,0 +1,181 @@
+/**
+ * Quantities of a steady answer, from the phasors of coordinates and supports.
+ *
+ * A linear quantity has one phasor for all drives at one ratio to the axis. Where drives at different ratios act
+ * together no common phasor exists: the value is the sum of the magnitudes of the components, the largest the
+ * quantity can reach when they meet in phase, and its imaginary part is 0.
+ * Power is the mean over a cycle, positive when it goes into the element; components at different rates add.
+ * Energy is the largest that each element stores in the cycle: the larger of half k x^2 and half b v^2, which
+ * stand a quarter of a cycle apart; those of several elements are added. Preloads and gravity are no part of a steady answer.
+ */
+import type { Assembly, QuantityRef } from "../mechanics/assembly.ts";
+import { type MotionTerm, quantityParts } from "./time-quantity.ts";
+
+/** Phasors of all coordinates and supports for one group of drives. */
+export interface GroupState {
+  /** rad/s, of the group's own frequency. */
+  omega: number;
+  readonly xRe: Float64Array;
+  readonly xIm: Float64Array;
+  readonly sRe: Float64Array;
+  readonly sIm: Float64Array;
+}
+
+/** Sum over coordinates and supports: factor * (1 + i loss) * (i omega)^derivative * phasor. */
+interface FlatTerms {
+  readonly count: number;
+  readonly support: Uint8Array;
+  readonly index: Int32Array;
+  readonly derivative: Uint8Array;
+  readonly factor: Float64Array;
+  readonly loss: Float64Array;
+}
+
+export interface SteadyQuantity {
+  readonly linear: FlatTerms;
+  readonly products: readonly {
+    readonly kind: "power" | "energy";
+    readonly owner: number;
+    readonly factor: number;
+    readonly a: FlatTerms;
+    readonly b: FlatTerms;
+  }[];
+}
+
+export function steadyQuantity(assembly: Assembly, ref: QuantityRef): SteadyQuantity {
+  const parts = quantityParts(assembly, ref);
+  return {
+    linear: flatten(parts.linear),
+    products: parts.products.map(({ kind, owner, factor, a, b }) => ({
+      kind,
+      owner,
+      factor,
+      a: flatten(a),
+      b: flatten(b),
+    })),
+  };
+}
+
+/** [re, im] into `out`. */
+export function steadyValue(
+  quantity: SteadyQuantity,
+  groups: readonly GroupState[],
+  out: Float64Array,
+): void {
+  let re = 0;
+  let im = 0;
+  if (quantity.linear.count > 0) {
+    if (groups.length === 1) {
+      phasor(quantity.linear, groups[0], scratch);
+      re = scratch[0];
+      im = scratch[1];
+    } else {
+      for (const group of groups) {
+        phasor(quantity.linear, group, scratch);
+        re += Math.hypot(scratch[0], scratch[1]);
+      }
+    }
+  }
+  if (quantity.products.length > 0) re += productValue(quantity, groups);
+  out[0] = re;
+  out[1] = im;
+}
+
+function productValue({ products }: SteadyQuantity, groups: readonly GroupState[]): number {
+  let sum = 0;
+  for (let p = 0; p < products.length; p++) {
+    if (products[p].kind === "power") {
+      sum += meanPower(products[p], groups);
+      continue;
+    }
+    let largest = largestEnergy(products[p], groups);
+    while (p + 1 < products.length && products[p + 1].owner === products[p].owner) {
+      const other = largestEnergy(products[++p], groups);
+      if (Math.abs(other) > Math.abs(largest)) largest = other;
+    }
+    sum += largest;
+  }
+  return sum;
+}
+
+type Product = SteadyQuantity["products"][number];
+
+function meanPower({ factor, a, b }: Product, groups: readonly GroupState[]): number {
+  let sum = 0;
+  for (const group of groups) {
+    phasor(a, group, scratch);
+    const re = scratch[0];
+    const im = scratch[1];
+    phasor(b, group, scratch);
+    sum += 0.5 * factor * (re * scratch[0] + im * scratch[1]);
+  }
+  return sum;
+}
+
+function largestEnergy({ factor, a }: Product, groups: readonly GroupState[]): number {
+  let size = 0;
+  for (const group of groups) {
+    phasor(a, group, scratch);
+    size += Math.hypot(scratch[0], scratch[1]);
+  }
+  return factor * size * size;
+}
+
+const scratch = new Float64Array(2);
+
+function phasor(terms: FlatTerms, group: GroupState, out: Float64Array): void {
+  let re = 0;
+  let im = 0;
+  const { omega } = group;
+  for (let t = 0; t < terms.count; t++) {
+    const at = terms.index[t];
+    let pr = terms.support[t] ? group.sRe[at] : group.xRe[at];
+    let pi = terms.support[t] ? group.sIm[at] : group.xIm[at];
+    const derivative = terms.derivative[t];
+    if (derivative === 1) {
+      const kept = pr;
+      pr = -omega * pi;
+      pi = omega * kept;
+    } else if (derivative === 2) {
+      pr *= -omega * omega;
+      pi *= -omega * omega;
+    }
+    const factor = terms.factor[t];
+    const lossy = factor * terms.loss[t];
+    re += factor * pr - lossy * pi;
+    im += factor * pi + lossy * pr;
+  }
+  out[0] = re;
+  out[1] = im;
+}
+
+function flatten(terms: readonly MotionTerm[]): FlatTerms {
+  const support: number[] = [];
+  const index: number[] = [];
+  const derivative: number[] = [];
+  const factor: number[] = [];
+  const loss: number[] = [];
+  for (const term of terms) {
+    const add = (isSupport: number, at: number, share: number) => {
+      support.push(isSupport);
+      index.push(at);
+      derivative.push(term.derivative);
+      factor.push(term.factor * share);
+      loss.push(term.loss);
+    };
+    term.form.coordinates.forEach((at, k) => {
+      add(0, at, term.form.factors[k]);
+    });
+    term.form.supports.forEach((at, k) => {
+      add(1, at, term.form.supportFactors[k]);
+    });
+  }
+  return {
+    count: index.length,
+    support: Uint8Array.from(support),
+    index: Int32Array.from(index),
+    derivative: Uint8Array.from(derivative),
+    factor: Float64Array.from(factor),
+    loss: Float64Array.from(loss),
+  };
+}

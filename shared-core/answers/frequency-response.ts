@@ -1,0 +1,231 @@
+/**
+ * The `FrequencyResponse` of an ask's drives: exact at any frequency, extremes found between samples.
+ *
+ * An undamped pole that the drives excite and the quantity sees has no peak, but a reason; one that they do not
+ * is passed by with the finite value it has on both sides.
+ */
+import type { QuantityRef } from "../mechanics/assembly.ts";
+import { minimise } from "../numerics/minimise.ts";
+import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
+import { findRoot } from "../numerics/roots.ts";
+import type { FrequencyResponse } from "./analysis.ts";
+import type { Peak } from "./answer.ts";
+import { type Pole, sampleFrequencies } from "./frequency-poles.ts";
+import { type SteadyQuantity, steadyValue } from "./frequency-quantity.ts";
+import type { SteadySolution } from "./frequency-solution.ts";
+
+/** Points a decade of every search, beside those around the poles. */
+const PER_DECADE = 120;
+/** Local maxima below this share of the largest sample cannot win: poles are sampled to a few per cent. */
+const CONTENDER = 0.7;
+/** Nearer to an undamped pole than this share of its frequency, the value is taken from beside it. */
+const TOO_NEAR = 1e-9;
+/** Width to which a peak is closed in, as a share of the samples around it: the value errs by its square. */
+const PEAK_TOLERANCE = 1e-6;
+/** How far beside: the mean of both sides is then good to the square of it. */
+const BESIDE = 1e-6;
+/** Distance of the two looks by which an undamped pole is found to be seen: a pole doubles the value between them. */
+const LOOK = 1e-7;
+const SEEN = 1.2;
+
+/** Values of one quantity along the axis. */
+export type Reader = (axisHz: number) => Outcome<readonly [number, number]>;
+
+export function frequencyResponseOf(
+  solution: SteadySolution,
+  poles: readonly Pole[],
+  quantityOf: (ref: QuantityRef) => SteadyQuantity,
+): FrequencyResponse {
+  const extremes = new Map<string, Outcome<Peak>>();
+  const kept = (key: string, find: () => Outcome<Peak>): Outcome<Peak> => {
+    const known = extremes.get(key);
+    if (known !== undefined) return known;
+    const found = find();
+    extremes.set(key, found);
+    return found;
+  };
+  const readerOf = (ref: QuantityRef) => poleAwareReader(solution, poles, quantityOf(ref));
+  return {
+    at: (quantity, frequencyHz) => readerOf(quantity)(frequencyHz),
+    peak: (quantity, fromHz, toHz) =>
+      kept(`peak ${fromHz} ${toHz} ${quantity.text}`, () => largest(readerOf(quantity), poles, fromHz, toHz)),
+    least: (quantity, fromHz, toHz) =>
+      kept(`least ${fromHz} ${toHz} ${quantity.text}`, () =>
+        smallest(readerOf(quantity), poles, fromHz, toHz),
+      ),
+  };
+}
+
+/** The quantity at any frequency; a reason at an undamped pole that it sees. */
+export function poleAwareReader(
+  solution: SteadySolution,
+  poles: readonly Pole[],
+  quantity: SteadyQuantity,
+): Reader {
+  const plain = plainReader(solution, quantity);
+  return (axisHz) => {
+    const pole = poles.find(
+      ({ atHz, halfWidthHz }) => halfWidthHz === 0 && Math.abs(axisHz - atHz) <= TOO_NEAR * atHz,
+    );
+    if (pole === undefined) return plain(axisHz);
+    if (seesPole(plain, pole)) return fail(undampedReason(pole));
+    const low = plain(pole.atHz * (1 - BESIDE));
+    const high = plain(pole.atHz * (1 + BESIDE));
+    if (!low.ok) return low;
+    if (!high.ok) return high;
+    return succeed([0.5 * (low.value[0] + high.value[0]), 0.5 * (low.value[1] + high.value[1])] as const);
+  };
+}
+
+function plainReader(solution: SteadySolution, quantity: SteadyQuantity): Reader {
+  const out = new Float64Array(2);
+  return (axisHz) => {
+    const states = solution.at(axisHz);
+    if (!states.ok) return fail(states.reason);
+    steadyValue(quantity, states.value, out);
+    return succeed([out[0], out[1]] as const);
+  };
+}
+
+/** Whether the value grows without bound towards an undamped pole. */
+export function seesPole(reader: Reader, pole: Pole): boolean {
+  const sizeAt = (share: number) => {
+    const got = reader(pole.atHz * (1 + share));
+    return got.ok ? Math.hypot(got.value[0], got.value[1]) : Number.POSITIVE_INFINITY;
+  };
+  const near = Math.max(sizeAt(LOOK), sizeAt(-LOOK));
+  const far = Math.max(sizeAt(2 * LOOK), sizeAt(-2 * LOOK));
+  return near > SEEN * far;
+}
+
+export const undampedReason = ({ name, atHz }: Pole): string =>
+  `not damped: ${name} at ${Number(atHz.toPrecision(5))} Hz has no damping`;
+
+/** A value of a quantity on the axis. */
+export interface Sample {
+  readonly f: number;
+  readonly size: number;
+  readonly re: number;
+  readonly im: number;
+}
+
+/** Samples between the ends; those where there is no value are left out. */
+function samplesOf(reader: Reader, poles: readonly Pole[], from: number, to: number): Outcome<Sample[]> {
+  const samples: Sample[] = [];
+  let reason = "there is no frequency between the ends";
+  for (const f of sampleFrequencies(poles, from, to, PER_DECADE)) {
+    const got = reader(f);
+    if (!got.ok) {
+      reason = got.reason;
+      continue;
+    }
+    const [re, im] = got.value;
+    samples.push({ f, re, im, size: Math.hypot(re, im) });
+  }
+  return samples.length > 0 ? succeed(samples) : fail(reason);
+}
+
+function largest(reader: Reader, poles: readonly Pole[], from: number, to: number): Outcome<Peak> {
+  if (!(0 <= from && from <= to)) return fail("the band must rise from a frequency to a higher one");
+  const unbounded = unboundedReason(reader, poles, from, to);
+  if (unbounded !== undefined) return fail(unbounded);
+  const samples = samplesOf(reader, poles, from, to);
+  return samples.ok ? succeed(polishedPeak(reader, samples.value)) : fail(samples.reason);
+}
+
+/** Why the quantity has no largest value in the band, if so: an undamped pole that it sees, a body that drifts. */
+export function unboundedReason(
+  reader: Reader,
+  poles: readonly Pole[],
+  from: number,
+  to: number,
+): string | undefined {
+  for (const pole of poles) {
+    const inside = from * (1 - TOO_NEAR) <= pole.atHz && pole.atHz <= to * (1 + TOO_NEAR);
+    if (pole.halfWidthHz === 0 && inside && seesPole(reader, pole)) return undampedReason(pole);
+  }
+  if (from > 0) return undefined;
+  const first = reader(from);
+  return first.ok ? undefined : first.reason;
+}
+
+/** The largest magnitude: of the samples, and of the local maxima between them that may exceed them. */
+export function polishedPeak(reader: Reader, list: readonly Sample[]): Peak {
+  let best = list[0];
+  for (const s of list) if (s.size > best.size) best = s;
+  let peak: Peak = { value: best.size, at: best.f };
+  const sizeAt = sizeReader(reader);
+  for (let i = 0; i < list.length; i++) {
+    const here = list[i];
+    const left = list[Math.max(0, i - 1)];
+    const right = list[Math.min(list.length - 1, i + 1)];
+    if (here.size < left.size || here.size < right.size || here.size < CONTENDER * best.size) continue;
+    if (!(right.f > left.f) || !(here.size > 0)) continue;
+    // The inverse square of a resonance is nearly a parabola, so that few steps are needed.
+    const turn = minimise((f) => (here.size / sizeAt(f)) ** 2, left.f, right.f, {
+      tolerance: PEAK_TOLERANCE * (right.f - left.f),
+    });
+    const found = turn.ok ? turn.value : turn.upTo;
+    if (found === undefined || !(found.value > 0)) continue;
+    const value = here.size / Math.sqrt(found.value);
+    if (value > peak.value) peak = { value, at: found.x };
+  }
+  return peak;
+}
+
+function smallest(reader: Reader, poles: readonly Pole[], from: number, to: number): Outcome<Peak> {
+  if (!(0 <= from && from <= to)) return fail(`the band must rise from a frequency to a higher one`);
+  const samples = samplesOf(reader, poles, from, to);
+  if (!samples.ok) return fail(samples.reason);
+  const list = samples.value;
+  let best = list[0];
+  for (const s of list) if (s.size < best.size) best = s;
+  let least: Peak = { value: best.size, at: best.f };
+  const take = (f: number, value: number) => {
+    if (value < least.value) least = { value, at: f };
+  };
+  for (let i = 0; i + 1 < list.length; i++) {
+    const zero = zeroBetween(reader, list[i], list[i + 1]);
+    if (zero !== undefined) take(zero.at, zero.value);
+  }
+  const sizeAt = sizeReader(reader);
+  for (let i = 0; i < list.length; i++) {
+    const left = list[Math.max(0, i - 1)];
+    const right = list[Math.min(list.length - 1, i + 1)];
+    if (list[i].size > left.size || list[i].size > right.size || !(right.f > left.f)) continue;
+    const scale = Math.max(left.size, right.size) || 1;
+    const turn = minimise((f) => sizeAt(f) / scale, left.f, right.f, {
+      tolerance: 1e-9 * (right.f - left.f),
+    });
+    const found = turn.ok ? turn.value : turn.upTo;
+    if (found !== undefined) take(found.x, found.value * scale);
+  }
+  return succeed(least);
+}
+
+/** A response that turns by about half a cycle between two samples passes zero there, or a pole. */
+export function zeroBetween(reader: Reader, a: Sample, b: Sample): Peak | undefined {
+  const along = a.re * b.re + a.im * b.im;
+  if (!(along < -0.9 * a.size * b.size)) return undefined;
+  // The part along the left phasor changes sign once.
+  const root = findRoot(
+    (f) => {
+      const got = reader(f);
+      return got.ok ? (got.value[0] * a.re + got.value[1] * a.im) / a.size : Number.NaN;
+    },
+    a.f,
+    b.f,
+  );
+  if (!root.ok) return undefined;
+  const got = reader(root.value.x);
+  if (!got.ok) return undefined;
+  const value = Math.hypot(got.value[0], got.value[1]);
+  return value < Math.min(a.size, b.size) ? { value, at: root.value.x } : undefined;
+}
+
+function sizeReader(reader: Reader): (f: number) => number {
+  return (f) => {
+    const got = reader(f);
+    return got.ok ? Math.hypot(got.value[0], got.value[1]) : Number.NaN;
+  };
+}
