@@ -45,15 +45,21 @@ export function formatBlocks(tree: Tree): Block[] {
 
 const STEP = "    ";
 
-/** Lines that start a block; notes in column 1 belong to what follows them. */
+/** Lines that start a block: a statement in column 1, or the notes above it, which may stand loose above a detail too. */
 function blockStarts(lines: readonly TreeLine[]): number[] {
-  const starts = [0];
-  let notesOnly = true;
+  const starts: number[] = [];
+  let notes: number | undefined;
   for (const [i, { role, level }] of lines.entries()) {
     if (role === "blank" || role === "comment" || role === "conflict") continue;
-    if (level === 0 && !notesOnly) starts.push(i);
-    notesOnly = level === 0 && role === "note";
+    if (role === "note" && level === 0) {
+      notes ??= i;
+      continue;
+    }
+    if (level === 0) starts.push(notes ?? i);
+    notes = undefined;
   }
+  // What stands above the first statement belongs to it.
+  starts[0] = 0;
   return starts;
 }
 

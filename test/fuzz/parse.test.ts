@@ -1,9 +1,22 @@
+import { readdirSync, readFileSync } from "node:fs";
+import { join } from "node:path";
+import { fileURLToPath } from "node:url";
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import type { Parsed } from "../../shared-core/syntax/parser.ts";
 import { read, SAMPLE } from "../syntax/helpers.ts";
 import { mangle, tries } from "./mangle.ts";
 import { formatsWell, keepsPromises } from "./promises.ts";
+
+/** The sample of the language and all examples. */
+const EXAMPLES = fileURLToPath(new URL("../../examples/", import.meta.url));
+const TEXTS = [
+  SAMPLE,
+  ...readdirSync(EXAMPLES)
+    .filter((file) => file.endsWith(".thrum"))
+    .sort()
+    .map((file) => readFileSync(join(EXAMPLES, file), "utf8")),
+];
 
 /** Reads and formats a text and holds both to their promises. */
 function tried(text: string): Parsed {
@@ -16,6 +29,14 @@ function tried(text: string): Parsed {
 describe("any text is read and formatted", () => {
   test("every prefix of the sample", () => {
     for (let end = 0; end <= SAMPLE.length; end++) tried(SAMPLE.slice(0, end));
+  });
+
+  test("every example, as it is and with other line endings", () => {
+    expect(TEXTS.length).toBeGreaterThan(3);
+    for (const text of TEXTS) {
+      expect(tried(text).diagnostics).toEqual([]);
+      expect(tried(text.replaceAll("\n", "\r\n")).diagnostics).toEqual([]);
+    }
   });
 
   test("every suffix of the sample", () => {
@@ -52,7 +73,7 @@ describe("any text is read and formatted", () => {
     );
   });
 
-  test("mangled samples are read", () => {
+  test("mangled samples and examples are read", () => {
     const count = tries(20_000);
     let broken = 0;
     for (let seed = 0; seed < count; seed++) {
@@ -67,14 +88,14 @@ describe("any text is read and formatted", () => {
     expect(broken).toBeGreaterThan(count / 2);
   });
 
-  test("mangled samples are formatted", () => {
+  test("mangled samples and examples are formatted", () => {
     for (let seed = 0; seed < tries(4000); seed++) onSeed(seed, tried);
   });
 });
 
 /** Says the seed and the text when a promise is broken. */
 function onSeed<T>(seed: number, work: (text: string) => T): T {
-  const text = mangle(SAMPLE, seed);
+  const text = mangle(TEXTS[seed % TEXTS.length], seed);
   try {
     return work(text);
   } catch (error) {

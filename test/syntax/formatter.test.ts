@@ -130,6 +130,12 @@ describe("text that does not parse", () => {
     );
   });
 
+  test("a loose note does not part a kit into blocks", () => {
+    const text =
+      "thrum 1\nkit k(p) between a and b\n      mass m=1kg\n> loose\n   spring s between m and b=p\n   count=2\n";
+    expect(formatted(text)).toBe(text);
+  });
+
   test("a conflict is not touched, on either side", () => {
     const [ours, middle, theirs] = ["<", "=", ">"].map((sign) => sign.repeat(7));
     const text = `thrum 1\nmass  a=1kg\n${ours} x\nmass  b=1kg\n\n\n${middle}\nmass  b=2kg\n\n\n${theirs} y\nmass  c=1kg\n`;
