@@ -13,6 +13,7 @@ import type {
 import type { Span } from "../text/span.ts";
 import type { Kind, Quantity } from "../units/dimension.ts";
 import type { StatementDescription } from "../vocabulary/description.ts";
+import type { Plan } from "./plan.ts";
 
 /** Reads other files (used models, records). Everything outside comes in through it; null: there is no such file. */
 export interface FileReader {
@@ -192,8 +193,10 @@ export interface Instance {
   readonly assembly: Assembly;
   readonly asks: readonly Ask[];
   readonly limits: ReadonlyMap<string, LimitCurve>;
-  /** Diagnostics that arise with these numbers only (not-positive, inconsistent-bind ...). */
+  /** Diagnostics that arise with these numbers only (not-positive, inconsistent-bind ...), not those of the model. */
   readonly diagnostics: readonly Diagnostic[];
+  /** False where these numbers leave no system to compute; nothing must be asked of it then. */
+  readonly sound: boolean;
 }
 
 /** What could be understood of a file. Always there; `buildable` says whether it has a mechanics to compute. */
@@ -217,4 +220,6 @@ export interface Model {
   >;
   /** Other files it read, for watching. */
   readonly files: readonly string[];
+  /** Compiled for putting numbers in; only `model/` reads it. */
+  readonly plan: Plan;
 }

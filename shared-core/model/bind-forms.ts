@@ -1,0 +1,146 @@
+import type { LinearForm } from "../mechanics/assembly.ts";
+import { LineIndex } from "../text/line-index.ts";
+import type { Frame } from "./code.ts";
+import type { Findings } from "./findings.ts";
+import type { Plan, PlannedBind } from "./plan.ts";
+
+export interface BoundForms {
+  /** Number of free coordinates. */
+  readonly free: number;
+  /** One a coordinate, over the free coordinates and the supports. */
+  readonly forms: readonly LinearForm[];
+}
+
+/** Sums over coordinates and supports, by index. */
+interface Row {
+  readonly coordinates: Map<number, number>;
+  readonly supports: Map<number, number>;
+}
+
+/** Relative size below which a coefficient is rounding: binds hold a few factors, each good to 1e-16. */
+const ZERO = 1e-12;
+
+/**
+ * Solves the binds for as many coordinates as there are binds, each for the one on its left side where that can
+ * be. A bind that says nothing new, or that leaves no motion, is an inconsistent-bind.
+ */
+export function bindForms(plan: Plan, frame: Frame, findings: Findings): BoundForms {
+  const solved = new Map<number, Row>();
+  const by = new Map<number, PlannedBind>();
+  for (const bind of plan.binds) takeBind(bind, frame, solved, by, findings, plan);
+  const freeIndex = new Map<number, number>();
+  plan.coordinates.forEach((_, i) => {
+    if (!solved.has(i)) freeIndex.set(i, freeIndex.size);
+  });
+  const forms = plan.coordinates.map((_, i) => formOf(solved.get(i) ?? unitRow(i), freeIndex));
+  return { free: freeIndex.size, forms };
+}
+
+function takeBind(
+  bind: PlannedBind,
+  frame: Frame,
+  solved: Map<number, Row>,
+  by: Map<number, PlannedBind>,
+  findings: Findings,
+  plan: Plan,
+): void {
+  const row: Row = { coordinates: new Map(), supports: new Map() };
+  let scale = 1;
+  add(row, substituted(bind.coordinate, solved), 1);
+  for (const { place, compute } of bind.terms) {
+    const factor = compute(frame);
+    scale = Math.max(scale, Math.abs(factor));
+    if (place.is === "coordinate") add(row, substituted(place.index, solved), -factor);
+    else if (place.is === "support")
+      row.supports.set(place.index, (row.supports.get(place.index) ?? 0) - factor);
+  }
+  for (const part of [row.coordinates, row.supports]) {
+    for (const [index, value] of part) if (!(Math.abs(value) > ZERO * scale)) part.delete(index);
+  }
+  const target = row.coordinates.has(bind.coordinate) ? bind.coordinate : largest(row.coordinates);
+  const others = row.coordinates.size - 1 + row.supports.size;
+  if (
+    target === undefined ||
+    (others === 0 && bind.terms.length > 0 && solved.size > 0 && !isOwnZero(bind, frame))
+  ) {
+    sayInconsistent(bind, target, by, plan, findings);
+    return;
+  }
+  solve(target, row, solved);
+  by.set(target, bind);
+}
+
+const isOwnZero = (bind: PlannedBind, frame: Frame): boolean =>
+  bind.terms.every(({ compute }) => compute(frame) === 0);
+
+const unitRow = (index: number): Row => ({ coordinates: new Map([[index, 1]]), supports: new Map() });
+
+const substituted = (index: number, solved: ReadonlyMap<number, Row>): Row =>
+  solved.get(index) ?? unitRow(index);
+
+function add(into: Row, row: Row, factor: number): void {
+  for (const [index, value] of row.coordinates) {
+    into.coordinates.set(index, (into.coordinates.get(index) ?? 0) + factor * value);
+  }
+  for (const [index, value] of row.supports) {
+    into.supports.set(index, (into.supports.get(index) ?? 0) + factor * value);
+  }
+}
+
+function largest(entries: ReadonlyMap<number, number>): number | undefined {
+  let best: number | undefined;
+  for (const [index, value] of entries) {
+    if (best === undefined || Math.abs(value) > Math.abs(entries.get(best) ?? 0)) best = index;
+  }
+  return best;
+}
+
+/** `row = 0` solved for one coordinate, and put into what was solved before. */
+function solve(target: number, row: Row, solved: Map<number, Row>): void {
+  const pivot = row.coordinates.get(target) ?? 1;
+  const expressed: Row = { coordinates: new Map(), supports: new Map() };
+  for (const [index, value] of row.coordinates)
+    if (index !== target) expressed.coordinates.set(index, -value / pivot);
+  for (const [index, value] of row.supports) expressed.supports.set(index, -value / pivot);
+  for (const each of solved.values()) {
+    const factor = each.coordinates.get(target);
+    if (factor === undefined) continue;
+    each.coordinates.delete(target);
+    add(each, expressed, factor);
+  }
+  solved.set(target, expressed);
+}
+
+function formOf(row: Row, freeIndex: ReadonlyMap<number, number>): LinearForm {
+  const free = [...row.coordinates]
+    .map(([index, value]) => [freeIndex.get(index) ?? 0, value] as const)
+    .sort((a, b) => a[0] - b[0]);
+  const given = [...row.supports].sort((a, b) => a[0] - b[0]);
+  return {
+    coordinates: free.map(([index]) => index),
+    factors: free.map(([, value]) => value),
+    supports: given.map(([index]) => index),
+    supportFactors: given.map(([, value]) => value),
+  };
+}
+
+function sayInconsistent(
+  bind: PlannedBind,
+  held: number | undefined,
+  by: ReadonlyMap<number, PlannedBind>,
+  plan: Plan,
+  findings: Findings,
+): void {
+  const name = plan.coordinates[bind.coordinate].name;
+  const others = [...new Set(by.values())];
+  const lines = new LineIndex(plan.text);
+  const shown = others.slice(0, 3).map((each) => `line ${lines.lineAt(each.span.start) + 1}`);
+  const message =
+    held === undefined
+      ? `this bind of \`${name}\` says what the others say already, or contradicts them: it fixes no further coordinate`
+      : `this bind of \`${name}\` and the others together hold \`${plan.coordinates[held].name}\` at zero`;
+  findings.say("inconsistent-bind", bind.span, message, {
+    hint: others.length > 0 ? `take one of them out; the others stand on ${shown.join(", ")}` : undefined,
+    related: others.map((each) => ({ span: each.span, message: "with this bind" })),
+  });
+}

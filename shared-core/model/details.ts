@@ -1,0 +1,219 @@
+import type { DetailNode, Item, NameNode, TableRow, ValueNode } from "../syntax/tree.ts";
+import { nearest } from "../text/nearest.ts";
+import { cover, type Span } from "../text/span.ts";
+import type { DetailDescription, StatementDescription } from "../vocabulary/description.ts";
+import { detailOf } from "../vocabulary/registry.ts";
+import { type Draft, sayNotYet } from "./draft.ts";
+import { editsFix, type Findings, orList, replaceFix } from "./findings.ts";
+import { type Described, nameSpan } from "./names.ts";
+
+/** A detail that is given: in the head, on a line of its own, or taken over by `like`. */
+export interface Given {
+  readonly key: string;
+  readonly description: DetailDescription;
+  readonly items: readonly Item[];
+  readonly table?: readonly TableRow[];
+  /** Of the key, or of the value in the head. */
+  readonly span: Span;
+  readonly node?: DetailNode;
+}
+
+export interface GivenDetails {
+  readonly details: ReadonlyMap<string, Given>;
+  /** False where something was wrong; it has been said. */
+  readonly sound: boolean;
+}
+
+/** The details of a statement that can be used, those of the element it is `like` included. */
+export function givenDetails(statement: Described, draft: Draft): GivenDetails {
+  const own = ownDetails(statement, draft);
+  const like = own.details.get("like");
+  if (like === undefined) return own;
+  const other = likeOf(statement, like, draft);
+  if (other === undefined) return { details: own.details, sound: false };
+  const merged = new Map(own.details);
+  for (const [key, given] of other.details) if (!merged.has(key)) merged.set(key, given);
+  return { details: merged, sound: own.sound && other.sound };
+}
+
+function ownDetails({ node, description }: Described, draft: Draft): GivenDetails {
+  const details = new Map<string, Given>();
+  let sound = !node.broken;
+  const { principal } = description;
+  const inHead = principal === undefined ? undefined : detailOf(description, principal);
+  if (inHead !== undefined && node.value !== undefined && node.value.length > 0) {
+    const span = cover(node.value[0].span, node.value[node.value.length - 1].span);
+    details.set(inHead.key, { key: inHead.key, description: inHead, items: node.value, span });
+  }
+  for (const detail of node.details) {
+    const given = detail.broken ? undefined : ownDetail(detail, description, draft);
+    if (given === undefined) sound = false;
+    else details.set(given.key, given);
+  }
+  return { details, sound };
+}
+
+function ownDetail(detail: DetailNode, description: StatementDescription, draft: Draft): Given | undefined {
+  const key = detail.key.text;
+  const known = detailOf(description, key);
+  if (known === undefined) {
+    sayUnknownDetail(detail.key, description, draft.findings);
+    return undefined;
+  }
+  if (known.notYet) {
+    sayNotYet(draft, detail.key.span, `\`${key}\``);
+    return undefined;
+  }
+  if (detail.component !== undefined && known.content.is !== "tuple") {
+    draft.findings.say(
+      "unknown-detail",
+      detail.component.span,
+      `\`${key}\` has no component \`${detail.component.text}\``,
+    );
+    return undefined;
+  }
+  const { items, table } = detail;
+  return { key, description: known, items, ...(table ? { table } : {}), span: detail.key.span, node: detail };
+}
+
+function sayUnknownDetail(key: NameNode, description: StatementDescription, findings: Findings): void {
+  const keys = description.details.map((detail) => detail.key);
+  const near = nearest(key.text, keys);
+  const what = `\`${description.keyword}${description.variant ? ` ${description.variant}` : ""}\``;
+  findings.say("unknown-detail", key.span, `${what} has no detail \`${key.text}\``, {
+    hint: keys.length > 0 ? `it takes ${keys.join(", ")}` : "it takes no details",
+    fixes: near === undefined ? [] : [replaceFix(`Write \`${near}\``, key.span, near)],
+  });
+}
+
+function likeOf(
+  statement: Described,
+  like: Given,
+  draft: Draft,
+  chain: readonly Described[] = [],
+): GivenDetails | undefined {
+  const name = nameItem(like.items[0]);
+  if (name === undefined) {
+    draft.findings.say(
+      "wrong-kind",
+      like.span,
+      "`like` takes the name of one element, as in `like = mounts`",
+    );
+    return undefined;
+  }
+  const other = draft.byName.get(name.text);
+  if (other === undefined) {
+    const same = draft.statements.filter(({ node }) => node.keyword.text === statement.node.keyword.text);
+    sayUnknownName(
+      name,
+      same.map((each) => each.name ?? ""),
+      draft.findings,
+    );
+    return undefined;
+  }
+  const keyword = statement.node.keyword.text;
+  if (other.node.keyword.text !== keyword) {
+    const message = `\`${name.text}\` is a ${other.node.keyword.text}, a ${keyword} can only be like a ${keyword}`;
+    draft.findings.say("wrong-kind", name.span, message);
+    return undefined;
+  }
+  if (other === statement || chain.includes(other)) {
+    draft.findings.say("circular-definition", name.span, `\`${statement.name}\` is like itself`, {
+      related: [{ span: nameSpan(other.node), message: `\`${other.name}\` stands here` }],
+    });
+    return undefined;
+  }
+  const own = ownDetails(other, draft);
+  const further = own.details.get("like");
+  if (further === undefined) return own;
+  const beyond = likeOf(other, further, draft, [...chain, statement]);
+  if (beyond === undefined) return undefined;
+  const merged = new Map(own.details);
+  for (const [key, given] of beyond.details) if (!merged.has(key)) merged.set(key, given);
+  return { details: merged, sound: own.sound && beyond.sound };
+}
+
+/** Says which required detail is missing; true when none is. */
+export function hasRequired(statement: Described, given: GivenDetails, draft: Draft): boolean {
+  const { node, description } = statement;
+  let complete = true;
+  for (const detail of description.details) {
+    const broken = node.details.some((each) => each.key.text === detail.key);
+    if (!detail.required || detail.notYet || given.details.has(detail.key) || broken) continue;
+    complete = false;
+    sayMissing(statement, detail, draft.findings);
+  }
+  return complete;
+}
+
+/** Says that a detail is missing, with the line that would give it. */
+export function sayMissing(
+  { node, description, name }: Described,
+  detail: DetailDescription,
+  findings: Findings,
+): void {
+  const what = `${node.keyword.text}${name === undefined ? "" : ` ${name}`}`;
+  const principal = description.principal === detail.key;
+  const example = principal ? `${what} = ${detail.example}` : `${detail.key} = ${detail.example}`;
+  const end = node.headSpan.end;
+  const line = principal ? ` = ${detail.example}` : `\n    ${detail.key} = ${detail.example}`;
+  const canAdd = !node.broken && detail.content.is !== "table";
+  findings.say("missing-detail", nameSpan(node), `\`${what}\` needs its ${detail.key}: ${detail.says}`, {
+    hint: `as in \`${example}\``,
+    fixes: canAdd ? [editsFix(`Add \`${example}\``, [{ span: { start: end, end }, text: line }])] : [],
+  });
+}
+
+/** A single name: `positive`, `mounts`. */
+export function nameItem(item: Item | undefined): NameNode | undefined {
+  if (item?.kind !== "value" || item.tolerance || item.within) return undefined;
+  const { expression } = item;
+  return expression.kind === "path" && expression.names.length === 1 ? expression.names[0] : undefined;
+}
+
+/** One word of a list; undefined where it is none of them, which is said. */
+export function wordOf(given: Given, words: readonly string[], findings: Findings): string | undefined {
+  const [item] = given.items;
+  const name = nameItem(item);
+  if (name !== undefined && given.items.length === 1 && words.includes(name.text)) return name.text;
+  const span = item?.span ?? given.span;
+  const near = name === undefined ? undefined : nearest(name.text, words);
+  const foundText = name === undefined ? "" : `, found \`${name.text}\``;
+  findings.say("wrong-kind", span, `\`${given.key}\` is ${orList(words)}${foundText}`, {
+    fixes: near === undefined ? [] : [replaceFix(`Write \`${near}\``, span, near)],
+  });
+  return undefined;
+}
+
+/** The one value of a detail; undefined where it holds something else, which is said. */
+export function singleValue(given: Given, findings: Findings): ValueNode | undefined {
+  const [item] = given.items;
+  if (given.items.length === 1 && item?.kind === "value") return item;
+  const span = given.items.length > 1 ? given.items[1].span : (item?.span ?? given.span);
+  const found = given.items.length > 1 ? `${given.items.length} values` : itemWords(item);
+  findings.say("wrong-kind", span, `\`${given.key}\` takes one number, found ${found}`, {
+    hint: `as in \`${given.key} = ${given.description.example}\``,
+  });
+  return undefined;
+}
+
+export function itemWords(item: Item | undefined): string {
+  if (item === undefined) return "rows";
+  return { value: "a number", range: "a range", at: "a value at a rate", text: "a text in quotes" }[
+    item.kind
+  ];
+}
+
+/** Says that nothing has this name, with the nearest of those that would fit. */
+export function sayUnknownName(
+  name: NameNode,
+  candidates: Iterable<string>,
+  findings: Findings,
+  hint?: string,
+): void {
+  const near = nearest(name.text, candidates);
+  findings.say("unknown-name", name.span, `nothing is called \`${name.text}\``, {
+    hint,
+    fixes: near === undefined ? [] : [replaceFix(`Write \`${near}\``, name.span, near)],
+  });
+}

@@ -1,0 +1,56 @@
+import { CODES, type DiagnosticCode } from "../diagnostics/codes.ts";
+import type { Diagnostic, Fix, RelatedPlace, Severity } from "../diagnostics/diagnostic.ts";
+import type { Span, TextEdit } from "../text/span.ts";
+
+/** What a diagnostic may have beside its code, place and sentence. */
+export interface Details {
+  readonly hint?: string;
+  readonly related?: readonly RelatedPlace[];
+  readonly fixes?: readonly Fix[];
+  readonly severity?: Severity;
+  readonly tag?: "unnecessary";
+}
+
+/** Collects what is said about one file. One mistake, one message: a code is said once at a place. */
+export class Findings {
+  readonly list: Diagnostic[] = [];
+  readonly #said = new Set<string>();
+
+  say(code: DiagnosticCode, span: Span, message: string, details: Details = {}): void {
+    const place = `${code} ${span.start} ${span.end}`;
+    if (this.#said.has(place)) return;
+    this.#said.add(place);
+    const { severity = CODES[code], ...rest } = details;
+    this.list.push({ code, severity, message, span, ...rest });
+  }
+
+  /** Takes over what another collection holds. */
+  take(other: Findings): void {
+    for (const { code, span, message, ...rest } of other.list) this.say(code, span, message, rest);
+  }
+
+  get hasErrors(): boolean {
+    return this.list.some((diagnostic) => diagnostic.severity === "error");
+  }
+}
+
+/** A fix that puts one text in the place of another. */
+export function replaceFix(title: string, span: Span, text: string, safe = false): Fix {
+  return { title, edits: [{ span, text }], safe };
+}
+
+/** A fix that adds a text behind a place. */
+export function insertFix(title: string, at: number, text: string, safe = false): Fix {
+  return { title, edits: [{ span: { start: at, end: at }, text }], safe };
+}
+
+export function editsFix(title: string, edits: readonly TextEdit[], safe = false): Fix {
+  return { title, edits, safe };
+}
+
+/** `a`, `a or b`, `a, b or c`, each in backticks. */
+export function orList(words: readonly string[]): string {
+  const quoted = words.map((word) => `\`${word}\``);
+  if (quoted.length < 2) return quoted.join("");
+  return `${quoted.slice(0, -1).join(", ")} or ${quoted.at(-1)}`;
+}

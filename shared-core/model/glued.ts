@@ -1,0 +1,178 @@
+import type { Expression, NumberNode, UnitNode } from "../syntax/tree.ts";
+import type { Span } from "../text/span.ts";
+import { isFault } from "../units/fault.ts";
+import { unitOf } from "../units/unit-of.ts";
+import { editsFix, Findings } from "./findings.ts";
+import { type Checked, type ExpressionContext, textOf, type Wanted } from "./typed.ts";
+
+type Check = (node: Expression, c: ExpressionContext, wanted?: Wanted) => Checked;
+
+/**
+ * `12 Hz*t` is hertz-tonnes. A unit whose later factors are also names of numbers here is read both ways: as the
+ * unit, and with the names as factors of a product. Where the names would fit, or the unit does not, the writer
+ * has to say which is meant.
+ */
+export function checkGlued(
+  node: Expression,
+  c: ExpressionContext,
+  wanted: Wanted | undefined,
+  check: Check,
+): Checked {
+  const literals = gluedLiterals(node, c);
+  if (literals.length === 0) return check(node, c, wanted);
+  const asUnits = trial(node, c, wanted, check);
+  const apart = literals.reduce<Expression>(
+    (whole, literal) => replace(whole, literal, takenApart(literal, c)),
+    node,
+  );
+  const asNames = trial(apart, { ...c, root: apart }, wanted, check);
+  const isVariable = literals.some((literal) =>
+    gluedFactors(literal, c).some(({ name }) => isLawVariable(name, c)),
+  );
+  const namesFit =
+    asNames.typed !== undefined && !asNames.findings.hasErrors && (wanted !== undefined || isVariable);
+  if (asUnits.typed !== undefined && !asUnits.findings.hasErrors && !namesFit) {
+    c.findings.take(asUnits.findings);
+    return asUnits.typed;
+  }
+  if (asUnits.typed === undefined && !asUnits.findings.hasErrors) return undefined;
+  for (const literal of literals) sayGlued(literal, c);
+  return undefined;
+}
+
+function trial(node: Expression, c: ExpressionContext, wanted: Wanted | undefined, check: Check) {
+  const findings = new Findings();
+  return { typed: check(node, { ...c, findings }, wanted), findings };
+}
+
+const isLawVariable = (name: string, c: ExpressionContext): boolean => c.variables?.has(name) ?? false;
+
+type UnitFactor = UnitNode["factors"][number];
+
+/** Factors after the first of a unit that are also names of numbers in this place. */
+function gluedFactors(literal: NumberNode, c: ExpressionContext): readonly UnitFactor[] {
+  const [, ...later] = literal.unit?.factors ?? [];
+  return later.filter(({ name }) => c.scope.holdsNumber(name));
+}
+
+function gluedLiterals(node: Expression, c: ExpressionContext): NumberNode[] {
+  const literals: NumberNode[] = [];
+  visit(node, (each) => {
+    if (each.kind === "number" && gluedFactors(each, c).length > 0) literals.push(each);
+  });
+  return literals;
+}
+
+function sayGlued(literal: NumberNode, c: ExpressionContext): void {
+  const unit = literal.unit as UnitNode;
+  const factors = gluedFactors(literal, c);
+  const edits = factors.flatMap((factor) => {
+    const operator = operatorBefore(unit, factor, c.tree.text);
+    return operator === undefined
+      ? []
+      : [{ span: operator, text: ` ${c.tree.text.slice(operator.start, operator.end)} ` }];
+  });
+  const written = textOf(c, literal.span);
+  const names = factors.map(({ name }) => `\`${name}\``).join(" and ");
+  const meant = applied(written, edits, literal.span.start);
+  const meaning = unitOf(unit);
+  const reading = isFault(meaning) ? "a unit" : `the unit ${unit.text}`;
+  c.findings.say(
+    "glued-name",
+    literal.span,
+    `\`${written}\` reads as a number in ${reading}, and ${names} is also the name of a number`,
+    {
+      hint: `blanks round the operator make it a product: \`${meant}\``,
+      fixes: edits.length === 0 ? [] : [editsFix(`Write \`${meant}\``, edits)],
+    },
+  );
+}
+
+function operatorBefore(unit: UnitNode, factor: UnitFactor, text: string): Span | undefined {
+  for (let at = factor.span.start - 1; at >= unit.span.start; at--) {
+    if ("*·/".includes(text[at])) return { start: at, end: at + 1 };
+    if (text[at] !== "(") return undefined;
+  }
+  return undefined;
+}
+
+function applied(text: string, edits: readonly { span: Span; text: string }[], offset: number): string {
+  let result = text;
+  for (const edit of [...edits].reverse()) {
+    const [start, end] = [edit.span.start - offset, edit.span.end - offset];
+    result = result.slice(0, start) + edit.text + result.slice(end);
+  }
+  return result;
+}
+
+/** `12 Hz*t` as the product of `12 Hz` and the name `t`; spans stay those of the text. */
+function takenApart(literal: NumberNode, c: ExpressionContext): Expression {
+  const unit = literal.unit as UnitNode;
+  const glued = new Set(gluedFactors(literal, c));
+  const kept = unit.factors.filter((factor) => !glued.has(factor));
+  const text = c.tree.text.slice(unit.span.start, kept.at(-1)?.span.end ?? unit.span.end);
+  let whole: Expression = { ...literal, unit: { ...unit, text, factors: kept } };
+  for (const { name, power, span } of glued) {
+    let factor: Expression = { kind: "path", span, names: [{ kind: "name", span, text: name }] };
+    if (Math.abs(power) !== 1) {
+      const right: Expression = { kind: "number", span, value: Math.abs(power) };
+      factor = { kind: "binary", span, operator: "^", operatorSpan: span, left: factor, right };
+    }
+    whole = {
+      kind: "binary",
+      span: literal.span,
+      operator: power < 0 ? "/" : "*",
+      operatorSpan: span,
+      left: whole,
+      right: factor,
+    };
+  }
+  return whole;
+}
+
+function visit(node: Expression, see: (node: Expression) => void): void {
+  see(node);
+  for (const child of childrenOf(node)) visit(child, see);
+}
+
+function childrenOf(node: Expression): readonly Expression[] {
+  switch (node.kind) {
+    case "parenthesis":
+      return [node.inner];
+    case "unary":
+    case "as":
+      return [node.operand];
+    case "binary":
+      return [node.left, node.right];
+    case "call":
+      return [...node.positional, ...node.named.map(({ value }) => value)];
+    case "tuple":
+      return node.items;
+    default:
+      return [];
+  }
+}
+
+function replace(node: Expression, what: Expression, by: Expression): Expression {
+  if (node === what) return by;
+  const inside = (child: Expression) => replace(child, what, by);
+  switch (node.kind) {
+    case "parenthesis":
+      return { ...node, inner: inside(node.inner) };
+    case "unary":
+    case "as":
+      return { ...node, operand: inside(node.operand) };
+    case "binary":
+      return { ...node, left: inside(node.left), right: inside(node.right) };
+    case "call":
+      return {
+        ...node,
+        positional: node.positional.map(inside),
+        named: node.named.map((each) => ({ ...each, value: inside(each.value) })),
+      };
+    case "tuple":
+      return { ...node, items: node.items.map(inside) };
+    default:
+      return node;
+  }
+}
