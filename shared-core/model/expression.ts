@@ -14,12 +14,13 @@ import {
 import { type UnitMeaning, unitOf } from "../units/unit-of.ts";
 import { checkCall } from "./calls.ts";
 import { type BinaryOperator, binary, constant, constantValue, scaled } from "./code.ts";
-import { replaceFix } from "./findings.ts";
+import { Findings, replaceFix } from "./findings.ts";
 import { agrees, found, literalOf, plainRate, suited } from "./fit.ts";
 import { flatten, productOf, sayMixture } from "./product.ts";
 import {
   type Checked,
   type ExpressionContext,
+  type Scope,
   type Typed,
   textOf,
   type Wanted,
@@ -208,7 +209,7 @@ export function alike(
 }
 
 function checkProduct(node: BinaryNode, c: ExpressionContext, wanted: Wanted | undefined): Checked {
-  const slots = flatten(node);
+  const slots = flatten(node, (inner) => standsAlone(inner, c));
   const checked = slots.map((slot) => check(slot.node, c));
   if (checked.some((typed) => typed === undefined)) return undefined;
   const typed = checked as Typed[];
@@ -228,6 +229,31 @@ function checkProduct(node: BinaryNode, c: ExpressionContext, wanted: Wanted | u
     }
   }
   return suited(node, product, wanted, c);
+}
+
+/**
+ * Whether a product in parentheses holds a rate and comes out, by itself, as something that is no rate. Kept by
+ * scope, so that deep nesting costs no more than its length squared.
+ */
+function standsAlone(node: Expression, c: ExpressionContext): boolean {
+  if (node.kind === "parenthesis") return standsAlone(node.inner, c);
+  if (node.kind !== "binary") return false;
+  const known = STANDING.get(c.scope) ?? new WeakMap<Expression, boolean>();
+  STANDING.set(c.scope, known);
+  const kept = known.get(node);
+  if (kept !== undefined) return kept;
+  const stands = tryAlone(node, c);
+  known.set(node, stands);
+  return stands;
+}
+
+const STANDING = new WeakMap<Scope, WeakMap<Expression, boolean>>();
+
+function tryAlone(node: BinaryNode, c: ExpressionContext): boolean {
+  const quiet = { ...c, findings: new Findings(), turning: false };
+  const typed = check(node, quiet);
+  if (typed === undefined || typed.kind.rate) return false;
+  return flatten(node, () => false).some((slot) => check(slot.node, quiet)?.kind.rate);
 }
 
 function checkPower(node: BinaryNode, c: ExpressionContext): Checked {

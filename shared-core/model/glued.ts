@@ -21,17 +21,11 @@ export function checkGlued(
   const literals = gluedLiterals(node, c);
   if (literals.length === 0) return check(node, c, wanted);
   const asUnits = trial(node, c, wanted, check);
-  const apart = literals.reduce<Expression>(
-    (whole, literal) => replace(whole, literal, takenApart(literal, c)),
-    node,
-  );
-  const asNames = trial(apart, { ...c, root: apart }, wanted, check);
-  const isVariable = literals.some((literal) =>
-    gluedFactors(literal, c).some(({ name }) => isLawVariable(name, c)),
-  );
-  const namesFit =
-    asNames.typed !== undefined && !asNames.findings.hasErrors && (wanted !== undefined || isVariable);
-  if (asUnits.typed !== undefined && !asUnits.findings.hasErrors && !namesFit) {
+  const unitFits = asUnits.typed !== undefined && !asUnits.findings.hasErrors;
+  const decides =
+    wanted !== undefined ||
+    literals.some((literal) => gluedFactors(literal, c).some(({ name }) => c.variables?.has(name)));
+  if (unitFits && (!decides || !namesFit(node, literals, c, wanted, check))) {
     c.findings.take(asUnits.findings);
     return asUnits.typed;
   }
@@ -45,7 +39,20 @@ function trial(node: Expression, c: ExpressionContext, wanted: Wanted | undefine
   return { typed: check(node, { ...c, findings }, wanted), findings };
 }
 
-const isLawVariable = (name: string, c: ExpressionContext): boolean => c.variables?.has(name) ?? false;
+function namesFit(
+  node: Expression,
+  literals: readonly NumberNode[],
+  c: ExpressionContext,
+  wanted: Wanted | undefined,
+  check: Check,
+): boolean {
+  const apart = literals.reduce<Expression>(
+    (whole, literal) => replace(whole, literal, takenApart(literal, c)),
+    node,
+  );
+  const { typed, findings } = trial(apart, { ...c, root: apart }, wanted, check);
+  return typed !== undefined && !findings.hasErrors;
+}
 
 type UnitFactor = UnitNode["factors"][number];
 

@@ -28,16 +28,26 @@ export interface Factor {
 
 export type Slot = { readonly node: Expression; readonly power: 1 | -1; readonly negative: boolean };
 
-/** The factors of a product, in the order in which they are written. */
-export function flatten(node: Expression, power: 1 | -1 = 1, negative = false): Slot[] {
+/**
+ * The factors of a product, in the order in which they are written. A parenthesis is opened unless `stands` says
+ * that it means something by itself: `(1 / rate)` is a time.
+ */
+export function flatten(
+  node: Expression,
+  stands: (node: Expression) => boolean,
+  power: 1 | -1 = 1,
+  negative = false,
+): Slot[] {
   if (node.kind === "binary" && (node.operator === "*" || node.operator === "/")) {
     const below = (node.operator === "*" ? power : -power) as 1 | -1;
-    return [...flatten(node.left, power, negative), ...flatten(node.right, below)];
+    return [...flatten(node.left, stands, power, negative), ...flatten(node.right, stands, below)];
   }
   if (node.kind === "unary" && node.operator !== "not") {
-    return flatten(node.operand, power, negative !== (node.operator === "-"));
+    return flatten(node.operand, stands, power, negative !== (node.operator === "-"));
   }
-  if (node.kind === "parenthesis" && isProductLike(node.inner)) return flatten(node.inner, power, negative);
+  if (node.kind === "parenthesis" && isProductLike(node.inner) && !stands(node.inner)) {
+    return flatten(node.inner, stands, power, negative);
+  }
   return [{ node, power, negative }];
 }
 

@@ -62,7 +62,7 @@ export function understand(path: string, source: string | Tree, reader: FileRead
     cases: cases.map(({ info }) => info),
     expectations,
     diagnostics: inOrder([...parsed.diagnostics, ...findings.list]),
-    buildable: draft.buildable && draft.coordinates.length > 0,
+    buildable: draft.buildable,
     accepted: acceptances(tree, findings),
     files: [...files],
     plan: planOf(
