@@ -1,4 +1,4 @@
-import { instances, oneLine, outlineText, understand } from "../../shared-core/index.ts";
+import { oneLine, outlineOf, understand } from "../../shared-core/index.ts";
 import { type Call, EXIT } from "./call.ts";
 import { selectOne } from "./files.ts";
 import { workspaceReader } from "./workspace.ts";
@@ -12,6 +12,6 @@ export async function run(call: Call): Promise<number> {
     return EXIT.cannotRun;
   }
   const model = understand(path, content.text, workspaceReader(path, host.cwd));
-  host.stdout.write(outlineText(model, instances(model)));
+  host.stdout.write(outlineOf(model));
   return EXIT.holds;
 }

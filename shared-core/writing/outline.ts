@@ -1,9 +1,16 @@
 import { freeCoordinates } from "../judgement/shapes.ts";
 import type { Assembly, DriveInfo, ElementInfo, LinearForm, Motion } from "../mechanics/assembly.ts";
+import { instantiate } from "../model/instantiate.ts";
 import type { Ask, Expectation, Instance, Model, ParameterValue } from "../model/model.ts";
 import type { StatementNode } from "../syntax/tree.ts";
 import { siUnit } from "../units/show.ts";
 import { canonicalNumber, canonicalValue, expressionText } from "./expression-text.ts";
+
+/** The outline of a model with all its cases. */
+export function outlineOf(model: Model): string {
+  const instances = model.buildable ? model.cases.map((_, index) => instantiate(model, index)) : [];
+  return outlineText(model, instances);
+}
 
 /**
  * The canonical text of a model, for diffs: resolved numbers in SI, one fact a line, sorted by name within each
