@@ -5,13 +5,12 @@ import {
   type FileOutcome,
   type FileReport,
   jsonText,
-  nearest,
   oneLine,
   PLAIN,
   withAsks,
 } from "../../shared-core/index.ts";
 import { writeAnswers } from "./answer-files.ts";
-import { type Call, UsageError } from "./call.ts";
+import { type Call, UnknownWord } from "./call.ts";
 import { exitStatus } from "./check.ts";
 import { inkOf } from "./colour.ts";
 import { selectOne } from "./files.ts";
@@ -56,10 +55,8 @@ function chosenAsks(report: FileReport, words: readonly string[]): string[] {
     // Without a case there is nothing computed, and the diagnostics say why.
     if (report.cases.length === 0) return word;
     const known = [...answers, ...modes];
-    const near = nearest(word, known);
-    throw new UsageError(
-      `${report.file} asks nothing called ${word}; ${near ? `the nearest is ${near}` : `there are ${known.join(", ")}`}`,
-    );
+    const list = `there are ${known.join(", ")}`;
+    throw new UnknownWord(`${report.file} asks nothing called ${word}`, word, known, list);
   });
 }
 

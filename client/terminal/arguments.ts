@@ -1,6 +1,5 @@
 import { parseArgs } from "node:util";
-import { nearest } from "../../shared-core/index.ts";
-import { type Call, UsageError } from "./call.ts";
+import { type Call, UnknownWord, UsageError } from "./call.ts";
 import type { Command, Option } from "./commands.ts";
 import type { Host } from "./host.ts";
 
@@ -8,13 +7,11 @@ import type { Host } from "./host.ts";
 export function commandNamed(word: string, commands: readonly Command[]): Command {
   const found = commands.find((command) => command.name === word);
   if (found) return found;
-  throw new UsageError(
-    unknown(
-      "command",
-      word,
-      commands.map((command) => command.name),
-      "thrum help",
-    ),
+  throw unknown(
+    "command",
+    word,
+    commands.map((command) => command.name),
+    "thrum help",
   );
 }
 
@@ -56,7 +53,7 @@ function optionValue(command: Command, token: OptionToken): string | true {
   const option = command.options.find((candidate) => candidate.name === token.name);
   if (!option) {
     const names = command.options.map((candidate) => `--${candidate.name}`);
-    throw new UsageError(unknown("option", token.rawName, names, `thrum help ${command.name}`));
+    throw unknown("option", token.rawName, names, `thrum help ${command.name}`);
   }
   if (option.value === undefined) {
     if (token.value !== undefined) throw new UsageError(`${token.rawName} takes no value`);
@@ -82,7 +79,6 @@ function checkCount(command: Command, operands: readonly string[]): void {
     throw new UsageError(`${command.name} takes one file, found ${operands.length}: ${usage}`);
 }
 
-function unknown(what: string, word: string, known: readonly string[], help: string): string {
-  const near = nearest(word, known) ?? known.find((name) => name.startsWith(word));
-  return `there is no ${what} ${word}; ${near ? `the nearest is ${near}` : `${help} lists them`}`;
+function unknown(what: string, word: string, known: readonly string[], help: string): UnknownWord {
+  return new UnknownWord(`there is no ${what} ${word}`, word, known, `${help} lists them`);
 }

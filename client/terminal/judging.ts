@@ -1,5 +1,5 @@
-import { type FileOutcome, type FileReport, judge, nearest, understand } from "../../shared-core/index.ts";
-import { type Call, UsageError } from "./call.ts";
+import { type FileOutcome, type FileReport, judge, understand } from "../../shared-core/index.ts";
+import { type Call, UnknownWord } from "./call.ts";
 import type { Source } from "./files.ts";
 import type { Host } from "./host.ts";
 import { workspaceReader } from "./workspace.ts";
@@ -35,11 +35,8 @@ export function chosenCase(call: Call, outcomes: readonly FileOutcome[]): readon
     outcomes.flatMap((each) => (each.readable ? each.report.model.cases.map((known) => known.name) : [])),
   );
   if (known.size > 0 && !known.has(name)) {
-    const near = nearest(name, known);
     const list = [...known].map((each) => JSON.stringify(each)).join(", ");
-    throw new UsageError(
-      `no file has a case ${name}; ${near ? `the nearest is ${near}` : `there are ${list}`}`,
-    );
+    throw new UnknownWord(`no file has a case ${name}`, name, [...known], `there are ${list}`);
   }
   return outcomes.map((each) => (each.readable ? { ...each, report: onlyCase(each.report, name) } : each));
 }

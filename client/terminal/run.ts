@@ -1,6 +1,6 @@
 import { version } from "../../package.json";
 import { commandNamed, readCall } from "./arguments.ts";
-import { EXIT, UsageError } from "./call.ts";
+import { EXIT, UnknownWord, UsageError } from "./call.ts";
 import { COMMANDS } from "./commands.ts";
 import { explain, overview } from "./help.ts";
 import type { Host } from "./host.ts";
@@ -11,7 +11,7 @@ export async function runCommand(args: readonly string[], host: Host): Promise<n
     return await dispatch(args, host);
   } catch (error) {
     if (!(error instanceof UsageError)) throw error;
-    host.stderr.write(`thrum: ${error.message}\n`);
+    host.stderr.write(`thrum: ${await told(error)}\n`);
     return EXIT.cannotRun;
   }
 }
@@ -30,6 +30,15 @@ async function dispatch(args: readonly string[], host: Host): Promise<number> {
   if (asksForHelp(rest)) return say(host, explain(command));
   const { run } = await command.load();
   return run(readCall(command, rest, host));
+}
+
+/** The core is only loaded for the nearest word when somebody mistyped one. */
+async function told(error: UsageError): Promise<string> {
+  if (!(error instanceof UnknownWord)) return error.message;
+  const { nearest } = await import("../../shared-core/index.ts");
+  const { word, known, otherwise, message } = error;
+  const near = nearest(word, known) ?? known.find((each) => each.startsWith(word));
+  return `${message}; ${near ? `the nearest is ${near}` : otherwise}`;
 }
 
 function asksForHelp(args: readonly string[]): boolean {

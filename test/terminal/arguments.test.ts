@@ -1,6 +1,5 @@
 import { describe, expect, it } from "vitest";
 import { commandNamed, readCall } from "../../client/terminal/arguments.ts";
-import { UsageError } from "../../client/terminal/call.ts";
 import { inkOf } from "../../client/terminal/colour.ts";
 import { COMMANDS } from "../../client/terminal/commands.ts";
 import { explain, overview } from "../../client/terminal/help.ts";
@@ -31,18 +30,14 @@ describe("a call", () => {
     [["check", "a", "--unit", "imperial"], "--unit takes as-written, si, inch, not imperial"],
     [["chek", "a"], "there is no command chek; the nearest is check"],
     [["solve", "a"], "there is no command solve; thrum help lists them"],
-  ])("%j is told what would be right", ([name, ...args], message) => {
-    expect(() => call(name, ...args)).toThrow(new UsageError(message));
+  ])("%j is told what would be right", async (args, message) => {
+    const host = testHost();
+    expect(await runCommand(args, host)).toBe(2);
+    expect([host.out(), host.err()]).toEqual(["", `thrum: ${message}\n`]);
   });
 });
 
 describe("the front door", () => {
-  it("ends a wrong call with 2, the words on standard error", async () => {
-    const host = testHost();
-    expect(await runCommand(["chek"], host)).toBe(2);
-    expect([host.out(), host.err()]).toEqual(["", "thrum: there is no command chek; the nearest is check\n"]);
-  });
-
   it.each([[["--help"]], [["help"]], [["-h"]]])("%j lists every command on standard output", async (args) => {
     const host = testHost();
     expect(await runCommand(args, host)).toBe(0);
