@@ -24,7 +24,7 @@ export function planAssumption({ node, description }: Described, draft: Draft): 
   if (known.content.is !== "quantity") return;
   const given: Given = { key: key.text, description: known, items: node.value, span: key.span };
   const value = singleValue(given, draft.findings);
-  const wanted = wantedOf(known.content.measure, "sliding", `\`${key.text}\`: ${known.says}`);
+  const wanted = wantedOf(known.content.measure);
   const number = value && planNumber(value, draft.numbers, wanted, key.text);
   if (number === undefined) spoil(draft, undefined);
   else draft.assumptions.set(key.text, number);

@@ -199,13 +199,19 @@ export function alike(
   }
   const leftIsToBlame =
     (isNumber(left.kind) && literalOf(leftNode) !== undefined) ||
-    (isPlainPerTime(left.kind) && right.kind.rate);
-  const [wrongNode, wrong, other, otherNode] = leftIsToBlame
-    ? [leftNode, left, right, rightNode]
-    : [rightNode, right, left, leftNode];
-  const hint = `only like quantities add up and compare; \`${textOf(c, otherNode.span)}\` is ${found(otherNode, other, c)}`;
-  suited(wrongNode, wrong, wantedKind(other.kind, hint), c);
+    (isPlainPerTime(left.kind) && right.kind.rate && left.code.op !== "answer");
+  const [wrongNode, wrong, otherNode, other] = leftIsToBlame
+    ? [leftNode, left, rightNode, right]
+    : [rightNode, right, leftNode, left];
+  const hint = `only like quantities add up and compare; beside it stands ${shownOperand(otherNode, other, c)}`;
+  suited(wrongNode, wrong, { ...wantedKind(other.kind, hint), beside: true }, c);
   return false;
+}
+
+function shownOperand(node: Expression, typed: Typed, c: ExpressionContext): string {
+  const words = found(node, typed, c);
+  const text = textOf(c, node.span);
+  return words.includes(text) ? words : `\`${text}\`, ${words}`;
 }
 
 function checkProduct(node: BinaryNode, c: ExpressionContext, wanted: Wanted | undefined): Checked {

@@ -36,7 +36,7 @@ export function readFile(
   if (content.ok) return content.text;
   const detail = content.detail === "" ? "" : `: ${content.detail}`;
   const message = {
-    missing: `there is no file \`${written}\`, looked for at \`${path}\``,
+    missing: `there is no file \`${written}\`${path === written ? "" : `, looked for at \`${path}\``}`,
     outside: `\`${written}\` lies outside the workspace`,
     unreadable: `\`${written}\` cannot be read${detail}`,
   }[content.why];

@@ -161,6 +161,7 @@ function slip(node: Expression, typed: Typed, wanted: Wanted, c: ExpressionConte
   if (literal?.unit === undefined) return weightAsMass(node, typed, wanted, c);
   const unit = literal.unit;
   const known = wanted.kinds.map((kind) => slipIn(unit, kind)).find((each) => each !== undefined);
+  if (known?.code === "weight-as-mass" && wanted.beside) return false;
   if (known === undefined) return weightAsMass(node, typed, wanted, c);
   const factor = unit.factors[known.factorIndex];
   const number = c.tree.text.slice(literal.span.start, unit.span.start);
@@ -171,7 +172,9 @@ function slip(node: Expression, typed: Typed, wanted: Wanted, c: ExpressionConte
   c.findings.say(
     known.code,
     factor.span,
-    `expected ${expected(wanted)}, found ${found(node, typed, c)}: ${known.message}`,
+    known.code === "weight-as-mass"
+      ? `${textOf(c, literal.span)} is a weight, and ${wanted.says} belongs here; ${meant}?`
+      : `expected ${expected(wanted)}, found ${found(node, typed, c)}: ${known.message}`,
     { hint: wanted.hint, fixes: [replaceFix(`Write \`${meant}\``, literal.span, meant)] },
   );
   return true;
@@ -192,7 +195,7 @@ function weightAsMass(node: Expression, typed: Typed, wanted: Wanted, c: Express
   const [kind] = wanted.kinds;
   const isMass = sameDimension(MASS, kind.dimension) && !kind.rate;
   const weighed = divideDimensions(typed.kind.dimension, ACCELERATION);
-  if (!isMass || typed.kind.rate || !sameDimension(weighed, kind.dimension)) return false;
+  if (wanted.beside || !isMass || typed.kind.rate || !sameDimension(weighed, kind.dimension)) return false;
   const text = textOf(c, node.span);
   const operand = node.kind === "binary" || node.kind === "as" ? `(${text})` : text;
   const mass = `${operand} / (1 gn)`;

@@ -1,7 +1,5 @@
 import type { Expression, NumberNode, UnitNode } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
-import { isFault } from "../units/fault.ts";
-import { unitOf } from "../units/unit-of.ts";
 import { editsFix, Findings } from "./findings.ts";
 import { type Checked, type ExpressionContext, textOf, type Wanted } from "./typed.ts";
 
@@ -80,19 +78,23 @@ function sayGlued(literal: NumberNode, c: ExpressionContext): void {
       : [{ span: operator, text: ` ${c.tree.text.slice(operator.start, operator.end)} ` }];
   });
   const written = textOf(c, literal.span);
-  const names = factors.map(({ name }) => `\`${name}\``).join(" and ");
+  const names = factors.map(({ name }) => `\`${name}\` is also ${nameWords(name, c)}`).join(" and ");
   const meant = applied(written, edits, literal.span.start);
-  const meaning = unitOf(unit);
-  const reading = isFault(meaning) ? "a unit" : `the unit ${unit.text}`;
   c.findings.say(
     "glued-name",
     literal.span,
-    `\`${written}\` reads as a number in ${reading}, and ${names} is also the name of a number`,
+    `\`${written}\` is read as a number in ${unit.text}, and ${names}`,
     {
       hint: `blanks round the operator make it a product: \`${meant}\``,
       fixes: edits.length === 0 ? [] : [editsFix(`Write \`${meant}\``, edits)],
     },
   );
+}
+
+const VARIABLES: Readonly<Record<string, string>> = { t: "the time", travel: "the travel", rate: "the rate" };
+
+function nameWords(name: string, c: ExpressionContext): string {
+  return c.variables?.has(name) ? (VARIABLES[name] ?? name) : "the name of a number";
 }
 
 function operatorBefore(unit: UnitNode, factor: UnitFactor, text: string): Span | undefined {

@@ -114,9 +114,8 @@ export function planQuantity(
 }
 
 function quantityWanted(given: Given, motion: Motion, hint: string | undefined): Wanted | undefined {
-  const { content, says, key } = given.description;
-  if (content.is !== "quantity") return undefined;
-  return wantedOf(content.measure, motion, hint ?? `\`${key}\`: ${says}`);
+  const { content } = given.description;
+  return content.is === "quantity" ? wantedOf(content.measure, motion, hint) : undefined;
 }
 
 /** Where a reference points; undefined where it points nowhere, which has been said or was said before. */

@@ -38,6 +38,12 @@ const ELEMENT_MEASURES: ReadonlyMap<string, ElementMeasure> = new Map([
   ["energy", "energy"],
 ]);
 
+/** What slides and what turns call the same thing. */
+const COUNTERPARTS: ReadonlyMap<string, string> = new Map([
+  ...[...DERIVATIVES].map(([name, derivative]) => [name, `derivative ${derivative}`] as const),
+  ...ELEMENT_MEASURES,
+]);
+
 /** Quantities of a group beside those that its description names: sums too, or common to all of its members. */
 const GROUP_EXTRAS = ["travel", "twist", "rate", "power", "energy"];
 
@@ -253,8 +259,9 @@ function quantityOf(
     return undefined;
   }
   const other = all.find((each) => each.name === name.text);
-  const meant = other && fitting.find((each) => each.measure === other.measure);
-  const near = meant?.name ?? nearest(name.text, names);
+  const same = COUNTERPARTS.get(name.text);
+  const counterpart = fitting.find((each) => same !== undefined && COUNTERPARTS.get(each.name) === same);
+  const near = counterpart?.name ?? nearest(name.text, names);
   const fixes = near === undefined ? [] : [replaceFix(`Write \`${near}\``, name.span, near)];
   const hint = `it has ${names.join(", ")}`;
   if (other !== undefined) {

@@ -34,6 +34,8 @@ export interface Wanted {
   /** Likely units, the likeliest first; the message names one, the fixes offer several. */
   readonly units: readonly string[];
   readonly hint?: string;
+  /** Wanted because of another operand: a weight is then no slip for a mass. */
+  readonly beside?: boolean;
 }
 
 /** What a name stands for where a number is wanted. */

@@ -237,12 +237,15 @@ function planOf(draft: Draft, asked: Asked, lets: readonly (readonly PlannedLet[
 
 const letKey = ({ name, file }: Entity): string => `${file ?? ""}#${name}`;
 
-/** What is wrong with the numbers as written belongs to the text: it is said at once and leaves no system. */
+/**
+ * What is wrong with the numbers as written belongs to the text: it is said at once and leaves no system. Where
+ * there is none anyway, binds may be missing, so nothing is said about how they go together.
+ */
 function withNumbersAsWritten(model: Model): Model {
-  if (!model.buildable) return model;
-  const { diagnostics } = instantiate(model, 0);
+  const found = instantiate(model, 0).diagnostics;
+  const diagnostics = model.buildable ? found : found.filter((each) => each.code !== "inconsistent-bind");
   if (diagnostics.length === 0) return model;
-  const buildable = !diagnostics.some((each) => each.severity === "error");
+  const buildable = model.buildable && !diagnostics.some((each) => each.severity === "error");
   return { ...model, buildable, diagnostics: inOrder([...model.diagnostics, ...diagnostics]) };
 }
 

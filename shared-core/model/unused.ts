@@ -7,6 +7,7 @@ export function sayUnusedNumbers(draft: Draft): void {
   if (!hasSystem) return;
   for (const entity of draft.main.names.values()) {
     if (entity.keyword !== "let" || entity.file !== undefined || draft.lets.used.has(entity)) continue;
+    if (draft.lets.plannedOf(entity) === undefined) continue;
     if (mentioned(entity.name, draft)) continue;
     draft.findings.say("unused-number", nameSpan(entity.node), `nothing uses \`${entity.name}\``, {
       hint: "take it out, or use it where the number stands now",
