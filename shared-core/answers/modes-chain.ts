@@ -9,7 +9,7 @@
 import { type FlatForms, flatForms } from "../mechanics/flat-forms.ts";
 import { sumTerms } from "../mechanics/matrices.ts";
 import type { SquareTerm } from "../mechanics/star-mesh.ts";
-import { type ChainQuadratic, chainModes } from "../numerics/chain-quadratic.ts";
+import { type ChainModes, type ChainQuadratic, chainModes } from "../numerics/chain-quadratic.ts";
 import type { SparseMatrix } from "../numerics/sparse.ts";
 import { addSquare, newtonStep, type Pair } from "./modes-newton.ts";
 import type { Root } from "./modes-roots.ts";
@@ -41,7 +41,18 @@ export function chainRoots(
     kOff: stiffness.off.map((x) => x / (rate * rate)),
   };
   const solved = chainModes(quadratic);
-  if (solved === undefined) return undefined;
+  return solved === undefined ? undefined : collect(solved, undamped, chain, root, rate);
+}
+
+/** One root of each pair over the inertial coordinates; undefined where there are not as many zeros as known. */
+function collect(
+  solved: ChainModes,
+  undamped: UndampedModes,
+  chain: Int32Array,
+  root: Float64Array,
+  rate: number,
+): Root[] | undefined {
+  const { count } = undamped;
   const sums = new Sums(undamped);
   const roots: Root[] = [];
   let zeros = 0;

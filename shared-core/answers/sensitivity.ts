@@ -87,8 +87,7 @@ export function frequencySensitivity(basis: ModalBasis): FrequencySensitivity {
     },
     between(number, before, after, step) {
       const r = first + number - 1;
-      const at = (a: Assembly) => energyForms(a);
-      const [low, high] = [at(before), at(after)];
+      const [low, high] = [energyForms(before), energyForms(after)];
       return inForm(r, (p, q) => {
         const [x, y] = [basis.shape(p), basis.shape(q)];
         return (high(x, y, values[r]) - low(x, y, values[r])) / step;

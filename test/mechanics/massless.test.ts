@@ -39,22 +39,17 @@ describe("massless places", () => {
       b: i === 4 ? "ground" : `j${i + 1}`,
       stiffness,
     }));
-    const reduced = unwrap(
-      reduceSystem(sketch({ masses: { m: 1 }, junctions: ["j1", "j2", "j3", "j4"], joints })),
-    );
+    const assembly = sketch({ masses: { m: 1 }, junctions: ["j1", "j2", "j3", "j4"], joints });
+    const reduced = unwrap(reduceSystem(assembly));
     expect(reduced.inertial).toBe(1);
     const k = matrix(reduced.stiffness, 1)[0];
     // Springs in series: 1/k = sum 1/k_i.
     const expected = 1 / stiffnesses.reduce((sum, s) => sum + 1 / s, 0);
     expect(Math.abs(k / expected - 1)).toBeLessThan(16 * EPS);
-    // The force is the same in all of them.
+    // The force is the same in all of them; a stiff one's small travel is a difference of places near one.
     const q = recoverValues(reduced, [1]);
-    for (const { form, stiffness } of sketch({
-      masses: { m: 1 },
-      junctions: ["j1", "j2", "j3", "j4"],
-      joints: joints.slice(1, 2),
-    }).elements) {
-      expect(stiffness * formValue(form, q)).toBeCloseTo(expected, 12);
+    for (const { form, stiffness } of assembly.elements) {
+      expect(Math.abs(stiffness * formValue(form, q) - expected)).toBeLessThan(2 * EPS * stiffness + 1e-14);
     }
   });
 
