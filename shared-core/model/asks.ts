@@ -86,11 +86,11 @@ function history(r: AskReader): Resolve {
 }
 
 /** A drive with a rate of its own or with none at all: the sweep gives the rate. */
-const isHarmonic = ({ shapeKind }: PlannedDrive): boolean =>
+export const isHarmonic = ({ shapeKind }: PlannedDrive): boolean =>
   shapeKind === "none" || shapeKind === "sine" || shapeKind === "unbalance";
 
 /** A drive that says what it does at every time; a sine or unbalance does when it has one frequency. */
-function isTimed(drive: PlannedDrive): boolean {
+export function isTimed(drive: PlannedDrive): boolean {
   if (drive.shapeKind === "none") return false;
   return drive.shapeKind === "sine" || drive.shapeKind === "unbalance" ? drive.isSteady : true;
 }
