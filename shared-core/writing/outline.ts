@@ -1,8 +1,8 @@
 import { freeCoordinates } from "../judgement/shapes.ts";
 import type { Assembly, DriveInfo, ElementInfo, LinearForm, Motion } from "../mechanics/assembly.ts";
 import { instantiate } from "../model/instantiate.ts";
-import type { Ask, Expectation, Instance, Model, ParameterValue } from "../model/model.ts";
-import type { StatementNode } from "../syntax/tree.ts";
+import type { Ask, Expectation, Instance, LimitCurve, Model, ParameterValue } from "../model/model.ts";
+import type { StatementNode, ToleranceNode } from "../syntax/tree.ts";
 import { siUnit } from "../units/show.ts";
 import { canonicalNumber, canonicalValue, expressionText } from "./expression-text.ts";
 
@@ -24,7 +24,10 @@ export function outlineText(model: Model, instances: readonly Instance[]): strin
     model.title === undefined ? [] : [`title ${model.title}`],
     notes(model),
     written ? parameters(written) : [],
+    tolerances(model),
     cases.flatMap((instance) => caseFacts(instance, written)),
+    groups(model),
+    written ? [...written.limits.values()].flatMap(limitFacts) : [],
     written ? system(written.assembly) : ["unresolved: the model has errors"],
     written ? written.asks.flatMap((ask) => askFacts(ask, written)) : [],
     model.expectations.flatMap(expectationFacts),
@@ -64,6 +67,45 @@ function parameterFacts(start: string, parameter: ParameterValue): string[] {
       ? []
       : [`${start} range = ${canonicalNumber(range[0])} to ${canonicalValue(range[1], unit)}`]),
   ];
+}
+
+/** Tolerances written on elements, and how any tolerance is drawn; the band of a `let` stands with its value. */
+function tolerances(model: Model): string[] {
+  const written = new Map(tolerancesIn(model.tree.statements).map((node) => [node.span.start, node]));
+  return model.draws.flatMap(({ owner, span, file, distribution, copies }) => {
+    const node = file === undefined ? written.get(span.start) : undefined;
+    const amount = node ? ` = +/- ${expressionText(node.amount)}` : "";
+    return [`tolerance ${owner}${amount} ${distribution}${copies > 1 ? `, ${copies} draws` : ""}`];
+  });
+}
+
+function tolerancesIn(node: object): ToleranceNode[] {
+  if ("kind" in node && node.kind === "tolerance") return [node as ToleranceNode];
+  return Object.values(node).flatMap((child) =>
+    typeof child === "object" && child !== null ? tolerancesIn(child) : [],
+  );
+}
+
+function groups(model: Model): string[] {
+  const statements = model.tree.statements.filter((statement) => statement.keyword.text === "group");
+  return statements.map((statement) => {
+    const members = (statement.value ?? []).map((item) =>
+      item.kind === "value" ? expressionText(item.expression) : "?",
+    );
+    return `group ${nameOf(statement)} = ${members.sort(byText).join(", ")}`;
+  });
+}
+
+function limitFacts({ name, points, betweenPoints, of, bands, kind }: LimitCurve): string[] {
+  const start = `limit ${name}`;
+  const unit = siUnit(kind);
+  const values =
+    typeof points === "number"
+      ? [`${start} = ${canonicalValue(points, unit)}`]
+      : points.map(
+          (point) => `${start} at ${canonicalValue(point.atHz, "Hz")} = ${canonicalValue(point.value, unit)}`,
+        );
+  return [...values, `${start} is ${of}, ${betweenPoints}, bands ${bands}`];
 }
 
 /** A case says the parameters whose value or band it changes. */
