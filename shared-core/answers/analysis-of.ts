@@ -97,8 +97,10 @@ class InstanceAnalysis implements Analysis {
   #history(ask: HistoryAsk): Outcome<HistorySolution> {
     return keep(this.#histories, ask, () => {
       const { assembly } = this.instance;
-      if (!hasAddedDamping(assembly, true)) return historySolution(assembly, undefined, ask);
-      return through(this.#modalBasis(), (basis) => historySolution(assembly, basis, ask));
+      const basis = this.#modalBasis();
+      // Histories need the modes for their damping, and take them for their digits where they are to be had.
+      if (!basis.ok && hasAddedDamping(assembly, true)) return fail(basis.reason);
+      return historySolution(assembly, basis.ok ? basis.value : undefined, ask);
     });
   }
 }

@@ -5,7 +5,6 @@ import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import type { TimeResponse } from "./analysis.ts";
 import type { HistoryAnswer, Peak } from "./answer.ts";
 import type { ModalBasis } from "./modes-basis.ts";
-import { addedDamping } from "./time-damping.ts";
 import { extreme, Prober } from "./time-extremes.ts";
 import { type LinearMotion, linearMotion } from "./time-linear.ts";
 import { timeResponseOf } from "./time-response.ts";
@@ -39,7 +38,8 @@ const TRACE_ROOM = 8_000_000;
 const UNASKED = "the model has nothing to move";
 
 /**
- * Solves a history. `basis` is needed where modal damping or loss factors are in the model. Chirps and laws are
+ * Solves a history. Without a `basis` the model may have neither modal damping nor loss factors, and slow motions
+ * beside fast ones lose digits. Chirps and laws are
  * looked at twice as closely until the peaks of all quantities asked for agree within the ask's accuracy.
  */
 export function historySolution(
@@ -49,9 +49,8 @@ export function historySolution(
 ): Outcome<HistorySolution> {
   if (assembly.free === 0) return fail(UNASKED);
   if (!(ask.lasting > 0)) return fail(`a history needs a duration above zero, found ${ask.lasting} s`);
-  const added = basis === undefined ? undefined : addedDamping(basis, true);
   const make = (finer: number) =>
-    linearMotion(assembly, { ...ask, tolerance: DRIVE_TOLERANCE, finer }, added);
+    linearMotion(assembly, { ...ask, tolerance: DRIVE_TOLERANCE, finer }, basis);
   const first = make(1);
   if (!first.ok) return fail(first.reason);
   if (!first.value.interpolated) return succeed(solutionOf(first.value, ask));

@@ -7,25 +7,18 @@
  * t = 0, whatever places are written.
  */
 import type { Assembly, LinearForm, QuantityRef } from "../mechanics/assembly.ts";
+import { equilibrium } from "../mechanics/equilibrium.ts";
 import { combineForms } from "../mechanics/forms.ts";
 import { type StateInput, type StateSpace, stateSpace } from "../mechanics/state-space.ts";
-import { balance } from "../numerics/balance.ts";
-import { generalEigen } from "../numerics/general-eigen.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
+import { identity, multiply, multiplyVector } from "../numerics/products.ts";
 import { type DriveSignal, driveSignal } from "./drive-history.ts";
 import { constantSignal } from "./drive-signal.ts";
-import type { AddedDamping } from "./time-damping.ts";
-import {
-  type ModalOutput,
-  type ModalSystem,
-  modalOutput,
-  modalState,
-  modalSystem,
-  type StateRoots,
-} from "./time-modal.ts";
+import type { ModalBasis } from "./modes-basis.ts";
+import { modalStates, type StateBasis } from "./time-basis.ts";
+import { type ModalOutput, type ModalSystem, modalOutput, modalState, modalSystem } from "./time-modal.ts";
 import { Motion } from "./time-motion.ts";
 import { type MotionTerm, quantityParts } from "./time-quantity.ts";
-import { equilibriumRow } from "./time-settled.ts";
 import {
   type CleanState,
   DIRECT_ORDERS,
@@ -53,47 +46,42 @@ export interface MotionAsk {
   readonly finer: number;
 }
 
-export function linearMotion(
-  assembly: Assembly,
-  ask: MotionAsk,
-  added?: AddedDamping,
-): Outcome<LinearMotion> {
+/**
+ * `basis` holds the undamped modes; without it the states of the mechanics are split as they are, and the model
+ * must have neither modal damping nor loss factors.
+ */
+export function linearMotion(assembly: Assembly, ask: MotionAsk, basis?: ModalBasis): Outcome<LinearMotion> {
   const drives = drivesOf(assembly, ask);
   if (!drives.ok) return fail(drives.reason);
   const load = steadyLoad(assembly);
   const inputs: StateInput[] = ask.by.map((index) => inputOf(assembly, index));
   if (load !== undefined) inputs.push({ kind: "load", form: load });
-  const space = stateSpace(assembly, inputs, added?.matrix);
+  const space = stateSpace(assembly, inputs);
   if (!space.ok) return fail(space.reason);
-  if (added !== undefined) addSupportDamping(space.value, inputs, added);
-  const states = new States(assembly, space.value, inputs);
+  const chosen = chosenStates(space.value, inputs, basis);
+  if (!chosen.ok) return fail(chosen.reason);
+  const states = new States(assembly, space.value, inputs, chosen.value);
   const signals = drives.value.map((d) => d.signal);
   if (load !== undefined) signals.push(constantSignal(1));
-  const modal = modalSystem(states.system, stateRoots(states.system));
-  const before = [...drives.value.map((d) => d.standing), ...(load === undefined ? [] : [1])];
-  const start = startRow(assembly, ask, states, modal, Float64Array.from(before));
+  const start = startState(assembly, ask, states, load, drives.value);
   if (!start.ok) return fail(start.reason);
+  const modal = modalSystem(states.system, chosen.value.components);
   return succeed({
-    motion: new Motion(modal, signals, ask.lasting, start.value),
+    motion: new Motion(modal, signals, ask.lasting, modalState(modal, start.value)),
     interpolated: drives.value.some((d) => d.interpolated),
     quantity: (ref) => states.quantity(ref, modal),
   });
 }
 
-/** The roots of a balanced system with their vectors. */
-export function stateRoots(system: StateForm): Outcome<StateRoots> {
-  const n = system.size;
-  const found = generalEigen(system.a, n);
-  if (!found.ok) return fail(found.reason);
-  const { re, im, right } = found.value;
-  if (right === undefined) return fail("the roots have no vectors");
-  const vectors = Float64Array.from(right.re);
-  for (let k = 0; k < n; k++) {
-    if (im[k] === 0) continue;
-    for (let i = 0; i < n; i++) vectors[i * n + k + 1] = right.im[i * n + k];
-    k++;
-  }
-  return succeed({ re, im, vectors });
+function chosenStates(
+  space: StateSpace,
+  inputs: readonly StateInput[],
+  basis: ModalBasis | undefined,
+): Outcome<StateBasis> {
+  if (basis !== undefined) return modalStates(basis, space, inputs, basis.modalRates(true));
+  const one = identity(space.size);
+  const all = Array.from({ length: space.size }, (_, i) => i);
+  return succeed({ raw: space, columns: one, inverse: one, components: all.length > 0 ? [all] : [] });
 }
 
 /** Gravity on every mass with a weight and the preloads of all elements, as one force; undefined when none acts. */
@@ -130,52 +118,36 @@ function inputOf(assembly: Assembly, index: number): StateInput {
   return on.kind === "form" ? { kind: "load", form: on.form } : { kind: "support", support: on.support };
 }
 
-/** Modal damping acts on the motion relative to where a support's displacement alone would carry the system. */
-function addSupportDamping(space: StateSpace, inputs: readonly StateInput[], added: AddedDamping): void {
-  const m = space.reduction.inertial;
-  const supports = m > 0 ? added.support.length / m : 0;
-  inputs.forEach((input, j) => {
-    if (input.kind !== "support") return;
-    for (let i = 0; i < m; i++) {
-      space.b1[(m + i) * inputs.length + j] += added.support[i * supports + input.support];
-    }
-  });
-}
-
-/** The balanced state form with the outputs that quantities need. */
+/** The chosen states with the outputs that quantities need. */
 class States {
   readonly system: StateForm;
   readonly #assembly: Assembly;
   readonly #space: StateSpace;
   readonly #inputs: readonly StateInput[];
   readonly #clean: CleanState;
-  /** z = scale * balanced z. */
-  readonly #scale: Float64Array;
+  readonly #chosen: StateBasis;
+  /** free x N: coordinates from the chosen states. */
+  readonly #displacement: Float64Array;
   readonly #outputs = new Map<LinearForm, OutputForm[]>();
 
-  constructor(assembly: Assembly, space: StateSpace, inputs: readonly StateInput[]) {
+  constructor(assembly: Assembly, space: StateSpace, inputs: readonly StateInput[], chosen: StateBasis) {
     this.#assembly = assembly;
     this.#space = space;
     this.#inputs = inputs;
-    this.#clean = withoutInputDerivatives(space);
-    const { size, a, b } = this.#clean.system;
-    const balanced = Float64Array.from(a);
-    this.#scale = balance(balanced, size);
-    const scaledInput = b.map((v, p) => v / this.#scale[Math.floor(p / Math.max(1, inputs.length))]);
-    this.system = { size, a: balanced, inputs: inputs.length, b: scaledInput };
+    this.#chosen = chosen;
+    this.#clean = withoutInputDerivatives(chosen.raw);
+    this.#displacement = multiply(space.displacement, chosen.columns, assembly.free, space.size, space.size);
+    this.system = this.#clean.system;
   }
 
-  /** The balanced state at written places and speeds. */
-  written(): Float64Array {
-    const { coordinates, free } = this.#assembly;
-    const q = new Float64Array(free);
-    const v = new Float64Array(free);
-    for (const { form, startsAt, startsMoving } of coordinates) {
-      if (form.coordinates.length !== 1 || form.factors[0] !== 1 || form.supports.length > 0) continue;
-      q[form.coordinates[0]] = startsAt;
-      v[form.coordinates[0]] = startsMoving;
-    }
-    return this.#space.stateOf(q, v).map((value, i) => value / this.#scale[i]);
+  /** The chosen states at places `q` and speeds `v` of the free coordinates, supports at zero. */
+  stateOf(q: Float64Array, v: Float64Array): Float64Array {
+    return multiplyVector(
+      this.#chosen.inverse,
+      this.#space.stateOf(q, v),
+      this.system.size,
+      this.system.size,
+    );
   }
 
   quantity(ref: QuantityRef, modal: ModalSystem): ModalQuantity {
@@ -206,7 +178,7 @@ class States {
   #output(form: LinearForm, derivative: 0 | 1 | 2): OutputForm {
     let known = this.#outputs.get(form);
     if (known === undefined) {
-      const place = this.#displacement(form);
+      const place = this.#place(form);
       const speed = derivativeForm(place, this.system);
       known = [place, speed, derivativeForm(speed, this.system)];
       this.#outputs.set(form, known);
@@ -214,14 +186,14 @@ class States {
     return known[derivative];
   }
 
-  #displacement(form: LinearForm): OutputForm {
+  #place(form: LinearForm): OutputForm {
     const n = this.system.size;
     const count = this.system.inputs;
-    const { displacement, displacementDirect } = this.#space;
+    const { displacementDirect } = this.#space;
     const state = new Float64Array(n);
     const direct = new Float64Array(count * DIRECT_ORDERS);
     form.coordinates.forEach((q, k) => {
-      for (let i = 0; i < n; i++) state[i] += form.factors[k] * displacement[q * n + i];
+      for (let i = 0; i < n; i++) state[i] += form.factors[k] * this.#displacement[q * n + i];
       for (let j = 0; j < count; j++) {
         direct[j * DIRECT_ORDERS] += form.factors[k] * displacementDirect[q * count + j];
       }
@@ -238,23 +210,44 @@ class States {
         direct[j * DIRECT_ORDERS] += state[i] * this.#clean.p0[i * count + j];
         direct[j * DIRECT_ORDERS + 1] += state[i] * this.#clean.p1[i * count + j];
       }
-      state[i] *= this.#scale[i];
     }
     return { state, direct };
   }
 }
 
-function startRow(
+function startState(
   assembly: Assembly,
   ask: MotionAsk,
   states: States,
-  modal: ModalSystem,
-  before: Float64Array,
+  load: LinearForm | undefined,
+  drives: readonly DriveSignal[],
 ): Outcome<Float64Array> {
-  if (ask.start === "as_written") return succeed(modalState(modal, states.written()));
-  for (let k = 0; k < ask.by.length; k++) {
-    // Supports stand at zero before t = 0.
-    if (assembly.drives[ask.by[k]].on.kind === "support") before[k] = 0;
+  const { coordinates, free } = assembly;
+  const v = new Float64Array(free);
+  if (ask.start === "as_written") {
+    const q = new Float64Array(free);
+    for (const { form, startsAt, startsMoving } of coordinates) {
+      if (form.coordinates.length !== 1 || form.factors[0] !== 1 || form.supports.length > 0) continue;
+      q[form.coordinates[0]] = startsAt;
+      v[form.coordinates[0]] = startsMoving;
+    }
+    return succeed(states.stateOf(q, v));
   }
-  return equilibriumRow(modal, before, 1, new Float64Array(2 * modal.count + modal.rest));
+  const forms: LinearForm[] = load === undefined ? [] : [load];
+  const factors = forms.map(() => 1);
+  drives.forEach(({ standing }, k) => {
+    const { on } = assembly.drives[ask.by[k]];
+    if (standing === 0 || on.kind !== "form") return;
+    forms.push(on.form);
+    factors.push(standing);
+  });
+  const held = equilibrium(assembly, combineForms(forms, factors));
+  if (!held.ok) return fail(held.reason);
+  const loose = coordinates.find(({ form }) => held.value.looseIn(form) !== undefined);
+  if (loose !== undefined) {
+    return fail(
+      `nothing holds ${loose.name} against its steady load, so it has no equilibrium to start from`,
+    );
+  }
+  return succeed(states.stateOf(held.value.q, v));
 }

@@ -2,13 +2,15 @@
  * z' = A z + B u split into parts that do not feel each other: single complex roots, and one real block of what
  * cannot be split safely (double roots without two vectors: rigid bodies that move on, critical damping).
  *
- * A root is split off when its condition, sum over i of |w_i v_i| with w v = 1 (w the row of the inverse of the
- * vectors, v the vector), stays below `MOST_CONDITION`; the sum does not depend on the units of the states. The
- * rest keeps an orthonormal basis of its invariant subspace and is propagated by matrix exponentials, so a
- * defective system is answered as exactly as a plain one, only more slowly.
+ * A root is split off when its condition |w| |v| with w v = 1 (w the row of the inverse of the vectors, v the
+ * vector, states balanced) stays below `MOST_CONDITION`. The rest keeps an orthonormal basis of its invariant
+ * subspace and is propagated by matrix exponentials, so a defective system is answered as exactly as a plain
+ * one, only more slowly.
  */
+import { balance } from "../numerics/balance.ts";
+import { generalEigen } from "../numerics/general-eigen.ts";
 import { factorLu, solveLu } from "../numerics/lu.ts";
-import type { Outcome } from "../numerics/outcome.ts";
+import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { multiply } from "../numerics/products.ts";
 import { DIRECT_ORDERS, type OutputForm, type StateForm } from "./time-state.ts";
 
@@ -54,6 +56,8 @@ export interface ModalSystem {
 
 /** Chosen by trial: keeps ten digits of every split root. */
 const MOST_CONDITION = 1e5;
+/** An oscillator whose roots are closer than this share of their size stays together. */
+const NEARLY_DOUBLE = 1e-4;
 
 /** The factors of an output in modal coordinates: y = sum(re * eta_re - im * eta_im) + sum(rest * x) + direct. */
 export interface ModalOutput {
@@ -64,15 +68,101 @@ export interface ModalOutput {
 }
 
 /**
- * Splits the system by its roots; `roots` fails or is left out: everything stays in the block.
+ * Splits a system whose `components` (sets of states) do not feel each other, each by its own roots. A component
+ * whose roots cannot be had stays in the block.
  */
-export function modalSystem(system: StateForm, roots: Outcome<StateRoots> | undefined): ModalSystem {
+export function modalSystem(system: StateForm, components: readonly (readonly number[])[]): ModalSystem {
+  const parts = components.map((states) => {
+    const part = subsystem(system, states);
+    return { states, modal: oscillator(part) ?? balancedParting(part) };
+  });
+  return joined(system, parts);
+}
+
+interface Part {
+  readonly states: readonly number[];
+  readonly modal: ModalSystem;
+}
+
+function subsystem({ a, b, size, inputs }: StateForm, states: readonly number[]): StateForm {
+  const n = states.length;
+  const own = new Float64Array(n * n);
+  const feed = new Float64Array(n * inputs);
+  states.forEach((i, p) => {
+    states.forEach((j, q) => {
+      own[p * n + q] = a[i * size + j];
+    });
+    for (let j = 0; j < inputs; j++) feed[p * inputs + j] = b[i * inputs + j];
+  });
+  return { size: n, a: own, inputs, b: feed };
+}
+
+/** x'' + c x' + k x as two states (x, x'), in closed form; undefined for anything else or a nearly double root. */
+function oscillator(system: StateForm): ModalSystem | undefined {
+  if (system.size !== 2 || system.a[0] !== 0 || system.a[1] !== 1) return undefined;
+  const k = -system.a[2];
+  const half = -system.a[3] / 2;
+  const square = half * half - k;
+  if (!(Math.abs(square) > NEARLY_DOUBLE * NEARLY_DOUBLE * (half * half + Math.abs(k)))) return undefined;
+  const root = Math.sqrt(Math.abs(square));
+  if (square < 0) {
+    // v = (1, s), w = (-s*, 1) / (s - s*), with s = -half + i root.
+    return assemble(system, {
+      singles: [{ re: 0 - half, im: root, column: 0 }],
+      columns: Float64Array.of(1, 0, -half, root),
+      rest: 0,
+      inverse: Float64Array.of(1, 0, half / root, 1 / root),
+      roots: [],
+    });
+  }
+  // The root of larger size first; the other from the product, so that it keeps its digits.
+  const large = half < 0 ? root - half : -half - root;
+  const small = k / large;
+  const apart = small - large;
+  return assemble(system, {
+    singles: [
+      { re: large, im: 0, column: 0 },
+      { re: small, im: 0, column: 1 },
+    ],
+    columns: Float64Array.of(1, 1, large, small),
+    rest: 0,
+    inverse: Float64Array.of(small / apart, -1 / apart, -large / apart, 1 / apart),
+    roots: [],
+  });
+}
+
+/** Splits after balancing, so that conditions do not depend on the units of the states. */
+function balancedParting(system: StateForm): ModalSystem {
+  const { size: n, inputs } = system;
+  const a = Float64Array.from(system.a);
+  const scale = balance(a, n);
+  const b = Float64Array.from(system.b);
+  for (let i = 0; i < n; i++) for (let j = 0; j < inputs; j++) b[i * inputs + j] /= scale[i];
+  const modal = partedSystem({ size: n, a, inputs, b });
+  const { count, rest } = modal;
+  for (let i = 0; i < n; i++) {
+    for (let k = 0; k < count; k++) {
+      modal.vectorRe[i * count + k] *= scale[i];
+      modal.vectorIm[i * count + k] *= scale[i];
+      modal.leftRe[k * n + i] /= scale[i];
+      modal.leftIm[k * n + i] /= scale[i];
+    }
+    for (let k = 0; k < rest; k++) {
+      modal.basis[i * rest + k] *= scale[i];
+      modal.left[k * n + i] /= scale[i];
+    }
+  }
+  return modal;
+}
+
+function partedSystem(system: StateForm): ModalSystem {
   const n = system.size;
-  if (roots?.ok) {
+  const roots = stateRoots(system);
+  if (roots.ok) {
     const parted = partRoots(system, roots.value);
     if (parted !== undefined) return parted;
   }
-  const all = roots?.ok ? Array.from(roots.value.re, (re, k) => [re, roots.value.im[k]] as const) : undefined;
+  const all = roots.ok ? Array.from(roots.value.re, (re, k) => [re, roots.value.im[k]] as const) : undefined;
   return assemble(system, {
     singles: [],
     columns: identity(n),
@@ -80,6 +170,92 @@ export function modalSystem(system: StateForm, roots: Outcome<StateRoots> | unde
     inverse: identity(n),
     roots: all ?? [[normOf(system.a, n), 0]],
   });
+}
+
+function stateRoots(system: StateForm): Outcome<StateRoots> {
+  const n = system.size;
+  const found = generalEigen(system.a, n);
+  if (!found.ok) return fail(found.reason);
+  const { re, im, right } = found.value;
+  if (right === undefined) return fail("the roots have no vectors");
+  const vectors = Float64Array.from(right.re);
+  for (let k = 0; k < n; k++) {
+    if (im[k] === 0) continue;
+    for (let i = 0; i < n; i++) vectors[i * n + k + 1] = right.im[i * n + k];
+    k++;
+  }
+  return succeed({ re, im, vectors });
+}
+
+/** Puts the parts back into one system over all states. */
+function joined({ size: n, inputs }: StateForm, parts: readonly Part[]): ModalSystem {
+  const count = parts.reduce((sum, { modal }) => sum + modal.count, 0);
+  const rest = parts.reduce((sum, { modal }) => sum + modal.rest, 0);
+  const out: ModalSystem = {
+    size: n,
+    inputs,
+    count,
+    rest,
+    lambdaRe: new Float64Array(count),
+    lambdaIm: new Float64Array(count),
+    weight: new Float64Array(count),
+    inputRe: new Float64Array(inputs * count),
+    inputIm: new Float64Array(inputs * count),
+    block: new Float64Array(rest * rest),
+    blockInput: new Float64Array(rest * inputs),
+    blockRate: parts.reduce((most, { modal }) => Math.max(most, modal.blockRate), 0),
+    blockRoots: parts.flatMap(({ modal }) => modal.blockRoots),
+    vectorRe: new Float64Array(n * count),
+    vectorIm: new Float64Array(n * count),
+    basis: new Float64Array(n * rest),
+    leftRe: new Float64Array(count * n),
+    leftIm: new Float64Array(count * n),
+    left: new Float64Array(rest * n),
+  };
+  let single = 0;
+  let open = 0;
+  for (const part of parts) {
+    putSingles(out, part, single);
+    putBlock(out, part, open);
+    single += part.modal.count;
+    open += part.modal.rest;
+  }
+  return out;
+}
+
+function putSingles(out: ModalSystem, { states, modal }: Part, at: number): void {
+  const { count, inputs, size: n } = out;
+  out.lambdaRe.set(modal.lambdaRe, at);
+  out.lambdaIm.set(modal.lambdaIm, at);
+  out.weight.set(modal.weight, at);
+  for (let k = 0; k < modal.count; k++) {
+    for (let j = 0; j < inputs; j++) {
+      out.inputRe[j * count + at + k] = modal.inputRe[j * modal.count + k];
+      out.inputIm[j * count + at + k] = modal.inputIm[j * modal.count + k];
+    }
+    states.forEach((state, i) => {
+      out.vectorRe[state * count + at + k] = modal.vectorRe[i * modal.count + k];
+      out.vectorIm[state * count + at + k] = modal.vectorIm[i * modal.count + k];
+      out.leftRe[(at + k) * n + state] = modal.leftRe[k * states.length + i];
+      out.leftIm[(at + k) * n + state] = modal.leftIm[k * states.length + i];
+    });
+  }
+}
+
+function putBlock(out: ModalSystem, { states, modal }: Part, at: number): void {
+  const { rest, inputs, size: n } = out;
+  for (let k = 0; k < modal.rest; k++) {
+    for (let l = 0; l < modal.rest; l++) {
+      out.block[(at + k) * rest + at + l] = modal.block[k * modal.rest + l];
+    }
+    for (let j = 0; j < inputs; j++) {
+      out.blockInput[(at + k) * inputs + j] = modal.blockInput[k * inputs + j];
+    }
+    states.forEach((state, i) => {
+      out.basis[state * rest + at + k] = modal.basis[i * modal.rest + k];
+      out.left[(at + k) * n + state] = modal.left[k * states.length + i];
+    });
+  }
 }
 
 /** Projects an output on the modal coordinates. */
@@ -202,9 +378,7 @@ function partRest(
   if (inverse === undefined) return undefined;
   const singles = singlesOf(roots, bad);
   for (let k = 0; k < n; k++) {
-    let condition = 0;
-    for (let i = 0; i < n; i++) condition += Math.abs(inverse[k * n + i] * full[i * n + k]);
-    if (!(condition <= MOST_CONDITION)) return undefined;
+    if (!(conditionOf(full, inverse, n, k, 1) <= MOST_CONDITION)) return undefined;
   }
   const within = Array.from({ length: n }, (_, k) => k)
     .filter((k) => bad[k])
@@ -261,18 +435,31 @@ function markIllConditioned(
 ): void {
   for (let k = 0; k < n; k++) {
     const pair = roots.im[k] !== 0;
-    let condition = 0;
-    for (let i = 0; i < n; i++) {
-      const v = pair ? Math.hypot(columns[i * n + k], columns[i * n + k + 1]) : columns[i * n + k];
-      const w = pair ? 0.5 * Math.hypot(inverse[k * n + i], inverse[(k + 1) * n + i]) : inverse[k * n + i];
-      condition += Math.abs(v * w);
-    }
-    if (!(condition <= MOST_CONDITION)) {
+    if (!(conditionOf(columns, inverse, n, k, pair ? 2 : 1) <= MOST_CONDITION)) {
       bad[k] = 1;
       if (pair) bad[k + 1] = 1;
     }
     if (pair) k++;
   }
+}
+
+/** |w| |v| of the columns k to k + width - 1 and the rows of the inverse that belong to them. */
+function conditionOf(
+  columns: Float64Array,
+  inverse: Float64Array,
+  n: number,
+  k: number,
+  width: number,
+): number {
+  let v = 0;
+  let w = 0;
+  for (let i = 0; i < n; i++) {
+    for (let l = k; l < k + width; l++) {
+      v += columns[i * n + l] ** 2;
+      w += inverse[l * n + i] ** 2;
+    }
+  }
+  return Math.sqrt(v * w);
 }
 
 /** Where the vectors cannot be inverted: marks roots whose vectors are parallel to another's. */

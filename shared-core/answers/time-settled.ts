@@ -1,4 +1,5 @@
 /** Where a quantity comes to rest once every drive has ended or stands still. */
+import { matrixExponential } from "../numerics/matrix-exponential.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { SIGNAL_DERIVATIVES, signalDerivatives } from "./drive-signal.ts";
 import { type ModalOutput, type ModalSystem, modalDerivative } from "./time-modal.ts";
@@ -7,6 +8,8 @@ import type { ModalQuantity } from "./time-trace.ts";
 
 /** A root with less damping than this (share of its own size) never comes to rest. */
 const UNDAMPED = 1e-11;
+/** Double roots are known to half the digits: a root of the block that decays by less may be one of zero. */
+const DECAYS = 1e-6;
 /** What makes up less than this of the motion at hand does not keep it from resting. */
 const UNSEEN = 1e-9;
 
@@ -21,8 +24,12 @@ export function settledValue(motion: Motion, quantity: ModalQuantity): Outcome<n
   const inputs = new Float64Array(motion.signals.length * SIGNAL_DERIVATIVES);
   const end = motion.rowAt(motion.duration, "before", row, inputs);
   if (!end.ok) return fail(end.reason);
-  const rest = equilibriumRow(motion.modal, standing.value, SIGNAL_DERIVATIVES, row);
+  const rest = equilibriumRow(motion.modal, standing.value, row);
   if (!rest.ok) return fail(rest.reason);
+  const block = laterBlock(motion.modal, standing.value, row);
+  if (!block.ok) return fail(block.reason);
+  row.set(block.value, 2 * motion.modal.count);
+  rest.value.set(block.value, 2 * motion.modal.count);
   const outputs = [quantity.linear, ...quantity.products.flatMap((p) => [p.a, p.b])];
   for (const output of outputs) {
     const trouble = unrest(motion, output, row, rest.value, standing.value);
@@ -56,24 +63,20 @@ function standingInputs(motion: Motion): Outcome<Float64Array> {
   return succeed(out);
 }
 
-/**
- * The modal row at which constant inputs (one value an input, `stride` apart in `loads`) hold the motion still.
- * Where a free motion leaves the place open it is taken from `open`. Fails where a load meets nothing that holds.
- */
-export function equilibriumRow(
+/** The single roots' places under standing inputs; where a root of zero leaves one open it is that of `open`. */
+function equilibriumRow(
   modal: ModalSystem,
-  loads: Float64Array,
-  stride: number,
+  standing: Float64Array,
   open: Float64Array,
 ): Outcome<Float64Array> {
-  const { count, rest, inputs } = modal;
-  const out = new Float64Array(2 * count + rest);
+  const { count, inputs } = modal;
+  const out = new Float64Array(2 * count + modal.rest);
   for (let k = 0; k < count; k++) {
     let br = 0;
     let bi = 0;
     let size = 0;
     for (let j = 0; j < inputs; j++) {
-      const load = loads[j * stride];
+      const load = standing[j * SIGNAL_DERIVATIVES];
       br += modal.inputRe[j * count + k] * load;
       bi += modal.inputIm[j * count + k] * load;
       size += Math.hypot(modal.inputRe[j * count + k], modal.inputIm[j * count + k]) * Math.abs(load);
@@ -82,67 +85,41 @@ export function equilibriumRow(
     const li = modal.lambdaIm[k];
     const square = lr * lr + li * li;
     if (square === 0) {
-      if (Math.abs(br) > UNSEEN * size) return fail(UNHELD);
+      if (Math.abs(br) > UNSEEN * size) return fail("a standing load moves something that nothing holds");
       out[k] = open[k];
       continue;
     }
     out[k] = -(br * lr + bi * li) / square;
     out[count + k] = -(bi * lr - br * li) / square;
   }
-  if (rest === 0) return succeed(out);
-  const load = new Float64Array(rest);
-  for (let i = 0; i < rest; i++) {
-    for (let j = 0; j < inputs; j++) load[i] -= modal.blockInput[i * inputs + j] * loads[j * stride];
-  }
-  // What is open is taken relative to where it stands, so that only the rest of the place is solved for.
-  const stand = open.subarray(2 * count);
-  for (let i = 0; i < rest; i++)
-    for (let k = 0; k < rest; k++) load[i] -= modal.block[i * rest + k] * stand[k];
-  const moved = consistentSolution(modal.block, load, rest);
-  if (moved === undefined) return fail(UNHELD);
-  for (let i = 0; i < rest; i++) out[2 * count + i] = stand[i] + moved[i];
   return succeed(out);
 }
 
-const UNHELD = "a steady load acts on a motion that nothing holds, so there is no equilibrium";
-/** Pivots below this share of the largest entry are none: the block's double roots are known to half the digits. */
-const NO_PIVOT = 1e-7;
-
-/** x with A x = b where one exists (free entries 0), by complete pivoting; otherwise undefined. */
-function consistentSolution(matrix: Float64Array, right: Float64Array, n: number): Float64Array | undefined {
-  const a = Float64Array.from(matrix);
-  const b = Float64Array.from(right);
-  const most = a.reduce((m, v) => Math.max(m, Math.abs(v)), 0);
-  const size = b.reduce((m, v) => Math.max(m, Math.abs(v)), 0);
-  const rows = Array.from({ length: n }, (_, i) => i);
-  const columns = Array.from({ length: n }, (_, i) => i);
-  let rank = 0;
-  for (; rank < n; rank++) {
-    let [pr, pc, best] = [rank, rank, 0];
-    for (let i = rank; i < n; i++) {
-      for (let j = rank; j < n; j++) {
-        const v = Math.abs(a[rows[i] * n + columns[j]]);
-        if (v > best) [pr, pc, best] = [i, j, v];
-      }
-    }
-    if (!(best > NO_PIVOT * most)) break;
-    [rows[rank], rows[pr]] = [rows[pr], rows[rank]];
-    [columns[rank], columns[pc]] = [columns[pc], columns[rank]];
-    const pivotRow = rows[rank] * n;
-    for (let i = rank + 1; i < n; i++) {
-      const factor = a[rows[i] * n + columns[rank]] / a[pivotRow + columns[rank]];
-      for (let j = rank; j < n; j++) a[rows[i] * n + columns[j]] -= factor * a[pivotRow + columns[j]];
-      b[rows[i]] -= factor * b[rows[rank]];
+/** The block so much later that whatever decays in it has died away: forty times its slowest decay. */
+function laterBlock(modal: ModalSystem, standing: Float64Array, end: Float64Array): Outcome<Float64Array> {
+  const { count, rest, inputs } = modal;
+  const row = end.slice(2 * count);
+  const decays = modal.blockRoots.map(([re, im]) => (re < -DECAYS * Math.hypot(re, im) ? -re : 0));
+  const slowest = Math.min(...decays.filter((d) => d > 0));
+  if (rest === 0 || !Number.isFinite(slowest)) return succeed(row);
+  // The equations of the block with one state more, which holds the standing load.
+  const width = rest + 1;
+  const m = new Float64Array(width * width);
+  const later = 40 / slowest;
+  for (let i = 0; i < rest; i++) {
+    for (let k = 0; k < rest; k++) m[i * width + k] = later * modal.block[i * rest + k];
+    for (let j = 0; j < inputs; j++) {
+      m[i * width + rest] += later * modal.blockInput[i * inputs + j] * standing[j * SIGNAL_DERIVATIVES];
     }
   }
-  for (let i = rank; i < n; i++) if (Math.abs(b[rows[i]]) > UNSEEN * size) return undefined;
-  const x = new Float64Array(n);
-  for (let k = rank - 1; k >= 0; k--) {
-    let sum = b[rows[k]];
-    for (let j = k + 1; j < rank; j++) sum -= a[rows[k] * n + columns[j]] * x[columns[j]];
-    x[columns[k]] = sum / a[rows[k] * n + columns[k]];
+  const step = matrixExponential(m, width);
+  if (!step.ok) return fail("where it comes to rest cannot be told");
+  const out = new Float64Array(rest);
+  for (let i = 0; i < rest; i++) {
+    out[i] = step.value[i * width + rest];
+    for (let k = 0; k < rest; k++) out[i] += step.value[i * width + k] * row[k];
   }
-  return x;
+  return succeed(out);
 }
 
 /** Why the output does not come to the resting row, if so. */
@@ -184,7 +161,7 @@ function blockUnrest(
 ): string | undefined {
   const { modal } = motion;
   const rate = Math.max(modal.blockRate, Number.MIN_VALUE);
-  if (modal.blockRoots.every(([re, im]) => re < -1e-6 * Math.hypot(re, im) && re < 0)) return undefined;
+  if (modal.blockRoots.every(([re, im]) => re < -DECAYS * Math.hypot(re, im))) return undefined;
   const { count, rest } = modal;
   const alone: ModalOutput = { ...output, re: new Float64Array(count), im: new Float64Array(count) };
   let derivative = alone;
