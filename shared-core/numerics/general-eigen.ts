@@ -1,7 +1,7 @@
 /**
  * All eigenvalues, and right and left eigenvectors if wanted, of a general real matrix.
  *
- * Method: balancing, Householder reduction to Hessenberg form, implicit double-shift QR to the real Schur form
+ * Method: balancing, Householder reduction to Hessenberg form, implicit QR (double shift, multishift above order 64) to the real Schur form
  * and back substitution (Golub & Van Loan, Matrix Computations, 4th ed., ch. 7). Values are exact for a matrix
  * within about n·ε‖A‖ of A; a value of a defective matrix of index k is therefore uncertain by about
  * (n·ε‖A‖)^(1/k), and its vectors come out (nearly) parallel, each with a small residual.
@@ -9,9 +9,10 @@
 import { balance } from "./balance.ts";
 import { hessenberg } from "./hessenberg.ts";
 import { type Kernel, kernelFor } from "./kernel.ts";
+import { multishiftQr } from "./multishift-qr.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, maxAbs } from "./products.ts";
-import { doubleShiftQr, type SchurValues } from "./real-schur.ts";
+import type { SchurValues } from "./real-schur.ts";
 import { schurVectors } from "./schur-vectors.ts";
 import { unitScale } from "./symmetric-eigen.ts";
 
@@ -53,7 +54,7 @@ export function generalEigen(
     re: new Float64Array(n).fill(Number.NaN),
     im: new Float64Array(n).fill(Number.NaN),
   };
-  const found = doubleShiftQr(h, n, 0, n - 1, vectors, values, vectors ? transposedQ : undefined);
+  const found = multishiftQr(h, n, values, kernel, vectors ? transposedQ : undefined);
   const result: GeneralEigen = { re: values.re.map((v) => v / scale), im: values.im.map((v) => v / scale) };
   if (found < n) return fail(`the QR iteration found ${found} of ${n} values within its cap`, result);
   if (right) {

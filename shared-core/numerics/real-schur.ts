@@ -60,7 +60,7 @@ export function doubleShiftQr(
 }
 
 /** Row of the lowest negligible subdiagonal at or above i, or `lo`. */
-function smallSubdiagonal(h: Float64Array, n: number, lo: number, hi: number, i: number): number {
+export function smallSubdiagonal(h: Float64Array, n: number, lo: number, hi: number, i: number): number {
   const ulp = Number.EPSILON;
   const floor = SMALLEST * (n / ulp);
   let k = i;
@@ -202,7 +202,7 @@ function doubleStep(
   }
 }
 
-function reflectRows3(
+export function reflectRows3(
   h: Float64Array,
   row: number,
   stride: number,
@@ -226,7 +226,7 @@ function reflectRows3(
   }
 }
 
-function reflectRows2(
+export function reflectRows2(
   h: Float64Array,
   row: number,
   stride: number,
@@ -246,7 +246,7 @@ function reflectRows2(
   }
 }
 
-function reflectColumns3(
+export function reflectColumns3(
   h: Float64Array,
   n: number,
   k: number,
@@ -269,7 +269,7 @@ function reflectColumns3(
   }
 }
 
-function reflectColumns2(
+export function reflectColumns2(
   h: Float64Array,
   n: number,
   k: number,
@@ -332,10 +332,10 @@ function standardise(
   }
 }
 
-type Block = { a: number; b: number; c: number; d: number; cs: number; sn: number };
+export type Block = { a: number; b: number; c: number; d: number; cs: number; sn: number };
 
 /** Schur form of [a b; c d]: either c = 0, or a = d and b c < 0. */
-function standardBlock(a: number, b: number, c: number, d: number): Block {
+export function standardBlock(a: number, b: number, c: number, d: number): Block {
   if (c === 0) return { a, b, c, d, cs: 1, sn: 0 };
   if (b === 0) return { a: d, b: -c, c: 0, d: a, cs: 0, sn: 1 };
   if (a - d === 0 && Math.sign(b) !== Math.sign(c)) return { a, b, c, d, cs: 1, sn: 0 };
