@@ -174,6 +174,9 @@ export function numberFault(code: Code, frame: Frame): NumberFault | undefined {
     const inner = numberFault(child, frame);
     if (inner !== undefined) return inner;
   }
+  if (code.op === "divide" && compile(code.b)(frame) === 0) {
+    return { span: code.b.span, message: "this is zero, and zero divides nothing" };
+  }
   return { span: code.span, message: faultOf(code, frame) };
 }
 
@@ -184,7 +187,6 @@ function evaluatedChildren(code: Code, frame: Frame): readonly Code[] {
 
 function faultOf(code: Code, frame: Frame): string {
   const values = children(code).map((child) => compile(child)(frame));
-  if (code.op === "divide" && values[1] === 0) return "this divides by zero";
   if (code.op === "power" && values[0] < 0) {
     return `a negative number, ${short(values[0])}, has no power ${short(values[1])}`;
   }

@@ -71,6 +71,8 @@ function gluedLiterals(node: Expression, c: ExpressionContext): NumberNode[] {
 function sayGlued(literal: NumberNode, c: ExpressionContext): void {
   const unit = literal.unit as UnitNode;
   const factors = gluedFactors(literal, c);
+  // Whichever is meant, the names are spoken of here, so they do not count as unused.
+  for (const { name: text, span } of factors) c.scope.find({ kind: "name", text, span });
   const edits = factors.flatMap((factor) => {
     const operator = operatorBefore(unit, factor, c.tree.text);
     return operator === undefined
