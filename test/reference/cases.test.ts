@@ -7,7 +7,7 @@ import {
   NOT_EXPRESSIBLE,
   type ReferenceCase,
   referenceCases,
-  UNITS,
+  unitFactor,
   WAITING,
 } from "./cases.ts";
 
@@ -42,7 +42,7 @@ const EXPECTED_ERRORS = new Set(["unstable-mode"]);
 function readTags(report: FileReport, path: string, found: Map<string, Found>): void {
   for (const verdict of report.cases[0].verdicts) {
     for (const { tag } of verdict.expectation.node.notes) {
-      const value = tag?.key === "reference-worst" ? verdict.tolerance?.worst : verdict.value;
+      const value = tag?.key === "reference_worst" ? verdict.tolerance?.worst : verdict.value;
       if (tag?.key.startsWith("reference")) {
         found.set(tag.text, {
           value: value ?? Number.NaN,
@@ -53,12 +53,16 @@ function readTags(report: FileReport, path: string, found: Map<string, Found>): 
   }
 }
 
-function errorOf(wanted: ExpectedNumber, found: Found): { readonly error: number; readonly allowed: number } {
-  const si = wanted.value * UNITS[wanted.unit];
+function errorOf(
+  wanted: ExpectedNumber,
+  factor: number,
+  found: Found,
+): { readonly error: number; readonly allowed: number } {
+  const si = wanted.value * factor;
   const relative = wanted.value === 0 ? 0 : wanted.rel_tol * Math.abs(si);
   return {
     error: Math.abs(found.value - si),
-    allowed: Math.max(relative, (wanted.abs_tol ?? 0) * UNITS[wanted.unit]),
+    allowed: Math.max(relative, (wanted.abs_tol ?? 0) * factor),
   };
 }
 
@@ -77,7 +81,7 @@ describe("check cases with sources", () => {
         excused !== undefined,
       );
       if (!found) continue;
-      const { error, allowed } = errorOf(wanted, found);
+      const { error, allowed } = errorOf(wanted, unitFactor(id, wanted.unit), found);
       const said = `${wanted.quantity} = ${wanted.value} ${wanted.unit} (${reference.source.citation}); ${found.where}: ${found.value}`;
       expect(error, said).toBeLessThanOrEqual(allowed);
     }

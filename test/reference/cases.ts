@@ -40,7 +40,7 @@ export function modelsOf(
 }
 
 /** Units of data/cases.json in SI (rates in Hz): the definitions of NIST SP 811. */
-export const UNITS: Readonly<Record<string, number>> = {
+const UNITS: Readonly<Record<string, number>> = {
   "1": 1,
   "%": 0.01,
   Hz: 1,
@@ -77,6 +77,10 @@ export const UNITS: Readonly<Record<string, number>> = {
   "N m s/rad": 1,
   "lbf in/rad": 4.4482216152605 * 0.0254,
 };
+
+/** `g` is standard gravity in the cases about shock and random vibration, the gram in the one about balancing. */
+export const unitFactor = (id: string, unit: string): number =>
+  unit === "g" && id === "p61-limits-balance-grade" ? 1e-3 : UNITS[unit];
 
 type Reader = (report: CaseReport) => number;
 
