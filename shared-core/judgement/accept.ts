@@ -13,7 +13,7 @@ export interface Sorted {
 
 /**
  * Takes out what `> accept CODE: reason` on the same statement silences, and hints at acceptances that silence
- * nothing. An error cannot be accepted.
+ * nothing. The model holds no acceptance of an error: that is said with the text.
  */
 export function sortAccepted(
   model: Model,
@@ -23,7 +23,6 @@ export function sortAccepted(
   const said: Diagnostic[] = [];
   const accepted: { diagnostic: Diagnostic; reason: string }[] = [];
   const used = new Set<NoteNode>();
-  const refused = new Set<NoteNode>();
   for (const diagnostic of diagnostics) {
     const statement = statementAt(model, diagnostic.span);
     const acceptance =
@@ -32,37 +31,33 @@ export function sortAccepted(
         : model.accepted.get(statement)?.find(({ code }) => code === diagnostic.code);
     if (acceptance === undefined || diagnostic.severity === "error") {
       said.push(diagnostic);
-      if (acceptance !== undefined) refused.add(acceptance.note);
       continue;
     }
     used.add(acceptance.note);
     accepted.push({ diagnostic, reason: acceptance.reason });
   }
-  said.push(...unusedAccepts(model, used, refused, done));
+  said.push(...unusedAccepts(model, used, done));
   return { said, accepted };
 }
 
 function unusedAccepts(
   model: Model,
   used: ReadonlySet<NoteNode>,
-  refused: ReadonlySet<NoteNode>,
   done: ReadonlySet<CostClass>,
 ): readonly Diagnostic[] {
   return [...model.accepted.values()].flat().flatMap(({ code, note }) => {
     const cost = RULES.find((rule) => rule.code === code)?.cost;
     if (used.has(note) || (cost !== undefined && !done.has(cost))) return [];
-    return [unusedAccept(model, note, code, refused.has(note))];
+    return [unusedAccept(model, note, code)];
   });
 }
 
-function unusedAccept(model: Model, note: NoteNode, code: string, refused: boolean): Diagnostic {
+function unusedAccept(model: Model, note: NoteNode, code: string): Diagnostic {
   return {
     code: "unused-accept",
     severity: "hint",
-    message: refused
-      ? `${code} is an error, and errors cannot be accepted`
-      : `nothing here says ${code}, so there is nothing to accept`,
-    hint: refused ? "mend what it says and take the acceptance out" : "take it out",
+    message: `nothing here says \`${code}\`, so there is nothing to accept`,
+    hint: "take it out",
     span: note.accept?.codeSpan ?? note.span,
     tag: "unnecessary",
     fixes: [

@@ -71,7 +71,3 @@ export function separationFrom(band: readonly [number, number], modeHz: number):
 export function magnification(r: number, dampingRatio: number): number {
   return 1 / Math.hypot(1 - r * r, 2 * dampingRatio * r);
 }
-
-/** True for drives whose steady response a sweep can hold. */
-export const isSteady = (drive: DriveInfo): boolean =>
-  drive.shape.kind === "sine" || drive.shape.kind === "unbalance";

@@ -40,9 +40,12 @@ export function influences(
       }
     }
   }
-  for (const list of found.values()) list.sort((a, b) => Math.abs(b.sensitivity) - Math.abs(a.sensitivity));
+  for (const list of found.values()) list.sort((a, b) => sizeOf(b) - sizeOf(a));
   return found;
 }
+
+/** To three digits: among equals the one that the file gives first comes first. */
+const sizeOf = ({ sensitivity }: Influence): number => Number(Math.abs(sensitivity).toPrecision(3));
 
 function nominalOf(trial: Trial, expression: Expression): number {
   const value = trial.evaluate(expression);

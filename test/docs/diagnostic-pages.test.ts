@@ -129,8 +129,10 @@ describe.each([...LATER])("examples of %s", (code) => {
     const reports = judged(code, "later");
     expect(reports.length).toBe(2);
     for (const report of reports) {
-      expect(["", "not-yet-computed"]).toContain(said(report, "error", "warning").join());
+      // What a tune is to mend fails as written.
+      const codes = said(report, "error", "warning").filter((each) => each !== "expectation-fails");
+      expect(["", "not-yet-computed"], messages(report)).toContain(codes.join());
     }
-    expect(said(reports[0], "error"), messages(reports[0])).toEqual(["not-yet-computed"]);
+    expect(said(reports[0], "error"), messages(reports[0])).toContain("not-yet-computed");
   });
 });

@@ -18,6 +18,7 @@ export function contextOf(assembly: Assembly, asks: readonly Ask[] = []): RuleCo
     asks,
     limits: new Map(),
     diagnostics: [],
+    sound: true,
   };
   const analysis = analyse(instance);
   return {

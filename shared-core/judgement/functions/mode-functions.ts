@@ -1,11 +1,12 @@
 /** Functions of the mode table: frequencies, damping, effective mass, distance from drives, decay. */
 
 import type { Mode } from "../../answers/answer.ts";
+import { isSteady } from "../../answers/drive-phasor.ts";
 import type { AnswerArguments } from "../../model/model.ts";
 import { fail, succeed } from "../../numerics/outcome.ts";
 import type { Quantity } from "../../units/dimension.ts";
 import { number, PER_TIME, quantity, rate } from "../../units/quantity.ts";
-import { excitedModes, isSteady, separationFrom } from "../drives.ts";
+import { excitedModes, separationFrom } from "../drives.ts";
 import type { Found } from "../found.ts";
 import { elasticModes } from "../shapes.ts";
 import type { Trial } from "../trial.ts";

@@ -4,6 +4,7 @@ import type { StatementNode } from "../../syntax/tree.ts";
 import { literalOf, placeOf, statementOf } from "../places.ts";
 import type { Rule } from "../rule.ts";
 import { length, perLength } from "../wording.ts";
+import { staticInstabilityOf } from "./static-instability.ts";
 
 /** A sag beyond this, in metres, is more often a slip between N/m and N/mm than a spring. */
 const LARGEST_SAG = 1;
@@ -14,7 +15,8 @@ export const implausibleDeflection: Rule = {
   cost: "modes",
   check({ model, assembly, analysis }) {
     const statics = analysis.statics();
-    if (!statics.ok) return [];
+    // What topples has no sag to speak of; static-instability speaks of it.
+    if (!statics.ok || staticInstabilityOf(assembly) !== undefined) return [];
     return assembly.elements.flatMap((element, index) => {
       if (element.motion !== "sliding" || element.stiffness <= 0) return [];
       const sag = statics.value.element(index);

@@ -1,6 +1,7 @@
 import type { Mode } from "../../answers/answer.ts";
+import { isSteady } from "../../answers/drive-phasor.ts";
 import type { DriveInfo } from "../../mechanics/assembly.ts";
-import { excitesMode, isSteady, magnification, separationFrom } from "../drives.ts";
+import { excitesMode, magnification, separationFrom } from "../drives.ts";
 import { placeOf, relatedTo } from "../places.ts";
 import type { Finding, Rule, RuleContext } from "../rule.ts";
 import { elasticModes, stiffestShare } from "../shapes.ts";

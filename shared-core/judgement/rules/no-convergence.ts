@@ -1,3 +1,4 @@
+import { floatingNames } from "../../mechanics/massless.ts";
 import { span } from "../../text/span.ts";
 import { growingModes } from "../growth.ts";
 import { nameSpan } from "../places.ts";
@@ -11,6 +12,7 @@ export const noConvergence: Rule = {
     const { instance, assembly, modes } = context;
     if (assembly.free === 0 || instance.diagnostics.some(({ severity }) => severity === "error")) return [];
     if (!modes.ok) {
+      if (floatingNames(assembly).length > 0) return [];
       const ask = instance.asks.find(({ kind }) => kind === "modes");
       const first = instance.model.tree.statements[0];
       return [

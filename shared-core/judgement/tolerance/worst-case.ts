@@ -17,8 +17,8 @@ export interface WorstFound {
 export type Worst = WorstFound | { readonly reason: string } | "cancelled";
 
 const LINE = [-1, -0.5, 0, 0.5, 1];
-/** Through a corner the ends are corners themselves; the slopes at three places tell whether it bends. */
-const CORNER_LINE = [-1, 0, 1];
+/** Through a corner the ends are corners themselves; the slopes there tell whether the excess rises inwards. */
+const CORNER_LINE = [-1, 1];
 
 /**
  * The worst point of the bands for each expectation. Up to twelve draws: every corner, then every line through
