@@ -22,7 +22,7 @@ const COMMON = { bundle: true, minify: true, legalComments: "none", logLevel: "w
 
 /** Builds all programs; throws when one does not build. */
 export async function build() {
-  ensureInstalled();
+  ensureInstalled("build");
   const esbuild = await import("esbuild");
   for (const program of PROGRAMS) {
     rmSync(join(root, program.outdir), { recursive: true, force: true });
