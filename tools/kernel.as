@@ -274,3 +274,179 @@ export function backTransform(
     product(dots, many, tv, width, rows, rowStride, count, many, width, 1, pack);
   }
 }
+
+/**
+ * Hessenberg form of `a` (n×n, row distance `stride`) in place; row k of `vectors` (n×n, same distance, zero on
+ * entry) becomes the vector of reflection k. `work` has room for 6 (n + 2) numbers. See hessenberg.ts.
+ */
+export function hessenberg(a: usize, stride: i32, n: i32, vectors: usize, tau: usize, work: usize): void {
+  const step = n + 2 & ~1;
+  const y = work;
+  const w = at(y, step);
+  const sum = at(w, step);
+  const pack = at(sum, step);
+  memory.fill(work, 0, (6 * (n + 2)) << 3);
+  // Pending update of the step before: A −= y vᵀ + v wᵀ with v in row k − 1 of `vectors`.
+  let v = pack;
+  for (let k = 0; k + 2 < n; k++) {
+    for (let i = 0; i < n; i++) {
+      const p = at(a, i * stride + k);
+      store<f64>(p, load<f64>(p) - (load<f64>(at(y, i)) * load<f64>(at(v, k)) + load<f64>(at(v, i)) * load<f64>(at(w, k))));
+    }
+    const u = at(vectors, k * stride);
+    const t = reflectColumn(a, stride, n, k, u);
+    store<f64>(at(tau, k), t);
+    memory.fill(sum, 0, n << 3);
+    for (let i = 0; i < n; i += 2) hessenbergRows(a, stride, n, k, i, y, v, w, u, sum);
+    // y of the rows stands in `y` now, Aᵀ u in `sum`.
+    let dot: f64 = 0;
+    for (let i = k + 1; i < n; i++) dot += load<f64>(at(u, i)) * load<f64>(at(y, i));
+    for (let i = 0; i < n; i++) store<f64>(at(y, i), t * load<f64>(at(y, i)));
+    for (let j = k + 1; j < n; j++) {
+      store<f64>(at(w, j), t * load<f64>(at(sum, j)) - t * t * dot * load<f64>(at(u, j)));
+    }
+    v = u;
+  }
+  for (let i = 0; i < n && n > 2; i++) {
+    for (let j = n - 2; j < n; j++) {
+      const p = at(a, i * stride + j);
+      store<f64>(p, load<f64>(p) - (load<f64>(at(y, i)) * load<f64>(at(v, j)) + load<f64>(at(v, i)) * load<f64>(at(w, j))));
+    }
+  }
+}
+
+function reflectColumn(a: usize, stride: i32, n: i32, k: i32, v: usize): f64 {
+  const first = load<f64>(at(a, (k + 1) * stride + k));
+  let square: f64 = 0;
+  for (let i = k + 2; i < n; i++) {
+    const x = load<f64>(at(a, i * stride + k));
+    square += x * x;
+  }
+  if (square == 0) {
+    for (let i = k + 2; i < n; i++) store<f64>(at(a, i * stride + k), 0);
+    return 0;
+  }
+  const length = sqrt<f64>(first * first + square);
+  const beta = first >= 0 ? -length : length;
+  const scale = 1 / (first - beta);
+  store<f64>(at(v, k + 1), 1);
+  for (let i = k + 2; i < n; i++) {
+    const p = at(a, i * stride + k);
+    store<f64>(at(v, i), load<f64>(p) * scale);
+    store<f64>(p, 0);
+  }
+  store<f64>(at(a, (k + 1) * stride + k), beta);
+  return (beta - first) / beta;
+}
+
+/** Rows i and i + 1, columns from k + 1: the pending update, then y = A u into `y` and sum += uᵢ A. */
+function hessenbergRows(
+  a: usize, stride: i32, n: i32, k: i32, i: i32, y: usize, v: usize, w: usize, u: usize, sum: usize,
+): void {
+  const two = i + 1 < n;
+  const row0 = at(a, i * stride);
+  const row1 = two ? at(row0, stride) : row0;
+  const y0 = load<f64>(at(y, i)), v0 = load<f64>(at(v, i)), u0 = load<f64>(at(u, i));
+  const y1 = two ? load<f64>(at(y, i + 1)) : 0, v1 = two ? load<f64>(at(v, i + 1)) : 0, u1 = two ? load<f64>(at(u, i + 1)) : 0;
+  let s0: f64 = 0;
+  let s1: f64 = 0;
+  let j = k + 1;
+  if (two) {
+    const yy0 = f64x2.splat(y0), yy1 = f64x2.splat(y1), vv0 = f64x2.splat(v0), vv1 = f64x2.splat(v1);
+    const uu0 = f64x2.splat(u0), uu1 = f64x2.splat(u1);
+    let t0 = f64x2.splat(0), t1 = t0;
+    const from = (<usize>j) << 3;
+    const end = from + ((<usize>((n - j) & ~1)) << 3);
+    if (i + 1 < k) {
+      // Above the reflections: v and u are zero in these rows.
+      for (let c = from; c < end; c += 16) {
+        const vc = v128.load(v + c);
+        const uc = v128.load(u + c);
+        const x0 = f64x2.sub(v128.load(row0 + c), f64x2.mul(yy0, vc));
+        const x1 = f64x2.sub(v128.load(row1 + c), f64x2.mul(yy1, vc));
+        v128.store(row0 + c, x0);
+        v128.store(row1 + c, x1);
+        t0 = f64x2.add(t0, f64x2.mul(x0, uc));
+        t1 = f64x2.add(t1, f64x2.mul(x1, uc));
+      }
+    } else {
+      for (let c = from; c < end; c += 16) {
+        const vc = v128.load(v + c);
+        const wc = v128.load(w + c);
+        const uc = v128.load(u + c);
+        const x0 = f64x2.sub(f64x2.sub(v128.load(row0 + c), f64x2.mul(yy0, vc)), f64x2.mul(vv0, wc));
+        const x1 = f64x2.sub(f64x2.sub(v128.load(row1 + c), f64x2.mul(yy1, vc)), f64x2.mul(vv1, wc));
+        v128.store(row0 + c, x0);
+        v128.store(row1 + c, x1);
+        t0 = f64x2.add(t0, f64x2.mul(x0, uc));
+        t1 = f64x2.add(t1, f64x2.mul(x1, uc));
+        v128.store(sum + c, f64x2.add(f64x2.add(v128.load(sum + c), f64x2.mul(x0, uu0)), f64x2.mul(x1, uu1)));
+      }
+    }
+    s0 = lanes(t0);
+    s1 = lanes(t1);
+    j += (n - j) & ~1;
+  }
+  for (; j < n; j++) {
+    const p0 = at(row0, j);
+    const vj = load<f64>(at(v, j)), wj = load<f64>(at(w, j)), uj = load<f64>(at(u, j));
+    const x0 = load<f64>(p0) - y0 * vj - v0 * wj;
+    store<f64>(p0, x0);
+    s0 += x0 * uj;
+    let add = x0 * u0;
+    if (two) {
+      const p1 = at(row1, j);
+      const x1 = load<f64>(p1) - y1 * vj - v1 * wj;
+      store<f64>(p1, x1);
+      s1 += x1 * uj;
+      add += x1 * u1;
+    }
+    store<f64>(at(sum, j), load<f64>(at(sum, j)) + add);
+  }
+  store<f64>(at(y, i), s0);
+  if (two) store<f64>(at(y, i + 1), s1);
+}
+
+/**
+ * q (n×n, row distance `stride`) becomes Qᵀ for the reflections left by hessenberg. `work` as for backTransform
+ * with count = n.
+ */
+export function hessenbergQ(q: usize, stride: i32, n: i32, vectors: usize, tau: usize, work: usize, pack: usize): void {
+  const v = work;
+  const vt = at(v, BLOCK * n);
+  const tv = at(vt, BLOCK * n);
+  const gram = at(tv, BLOCK * n);
+  const factor = at(gram, BLOCK * BLOCK);
+  const dots = at(factor, BLOCK * BLOCK);
+  for (let i = 0; i < n; i++) {
+    memory.fill(at(q, i * stride), 0, stride << 3);
+    store<f64>(at(q, i * stride + i), 1);
+  }
+  const last = n - 2;
+  let first = last <= 0 ? 0 : (last - 1) / BLOCK * BLOCK;
+  for (; last > 0 && first >= 0; first -= BLOCK) {
+    const many = min(BLOCK, last - first);
+    const skip = first + 1;
+    const width = n - skip;
+    for (let b = 0; b < many; b++) {
+      memory.copy(at(v, b * width), at(vectors, (first + b) * stride + skip), width << 3);
+      for (let j = 0; j < width; j++) store<f64>(at(vt, j * many + b), load<f64>(at(v, b * width + j)));
+    }
+    product(v, width, vt, many, gram, many, many, width, many, 0, pack);
+    // T of H(first) … H(last), stored transposed because the rows take the reflections in reverse.
+    for (let b = 0; b < many; b++) {
+      const t = load<f64>(at(tau, first + b));
+      for (let r = 0; r < b; r++) {
+        let sum: f64 = 0;
+        for (let c = r; c < b; c++) sum += load<f64>(at(factor, c * many + r)) * load<f64>(at(gram, c * many + b));
+        store<f64>(at(factor, b * many + r), -t * sum);
+      }
+      store<f64>(at(factor, b * many + b), t);
+      for (let r = b + 1; r < many; r++) store<f64>(at(factor, b * many + r), 0);
+    }
+    const block = at(q, skip * stride + skip);
+    product(factor, many, v, width, tv, width, many, many, width, 0, pack);
+    product(block, stride, vt, many, dots, many, width, width, many, 0, pack);
+    product(dots, many, tv, width, block, stride, width, many, width, 1, pack);
+  }
+}

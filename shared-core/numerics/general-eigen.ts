@@ -7,7 +7,6 @@
  * (n·ε‖A‖)^(1/k), and its vectors come out (nearly) parallel, each with a small residual.
  */
 import { balance } from "./balance.ts";
-import { hessenberg } from "./hessenberg.ts";
 import { type Kernel, kernelFor } from "./kernel.ts";
 import { multishiftQr } from "./multishift-qr.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
@@ -49,7 +48,7 @@ export function generalEigen(
   const work = a.map((v) => v * scale);
   const stretch = balance(work, n);
   const vectors = right || left;
-  const { h, transposedQ } = hessenberg(work, n, vectors);
+  const { h, transposedQ } = kernel.hessenberg(work, n, vectors);
   const values: SchurValues = {
     re: new Float64Array(n).fill(Number.NaN),
     im: new Float64Array(n).fill(Number.NaN),

@@ -34,6 +34,16 @@ type Exports = {
     work: number,
     pack: number,
   ): void;
+  hessenberg(a: number, stride: number, n: number, vectors: number, tau: number, work: number): void;
+  hessenbergQ(
+    q: number,
+    stride: number,
+    n: number,
+    vectors: number,
+    tau: number,
+    work: number,
+    pack: number,
+  ): void;
 };
 
 const PAGE = 65536;
@@ -109,6 +119,32 @@ export function simdKernel(): Kernel | undefined {
         memory.set(t.tau, pt / 8);
         wasm.backTransform(pr, n, count, pv, stride, n, pt, work, pack);
         rows.set(memory.subarray(pr / 8, pr / 8 + count * n));
+      });
+    },
+    hessenberg: (a, n, withQ) => {
+      const stride = n + (n % 2);
+      const room = withQ ? roomFor(n, n) : 0;
+      const sizes = [
+        n * stride,
+        n * stride,
+        n,
+        6 * (n + 2),
+        withQ ? n * stride : 0,
+        room,
+        withQ ? packRoom(n) : 0,
+      ];
+      return run(sizes, (wasm, memory, [pa, pv, pt, work, pq, scratch, pack]) => {
+        for (let i = 0; i < n; i++) memory.set(a.subarray(i * n, (i + 1) * n), pa / 8 + i * stride);
+        memory.fill(0, pv / 8, pv / 8 + n * stride);
+        memory.fill(0, pt / 8, pt / 8 + n);
+        wasm.hessenberg(pa, stride, n, pv, pt, work);
+        if (withQ) wasm.hessenbergQ(pq, stride, n, pv, pt, scratch, pack);
+        const transposedQ = new Float64Array(withQ ? n * n : 0);
+        for (let i = 0; i < n; i++) {
+          a.set(memory.subarray(pa / 8 + i * stride, pa / 8 + i * stride + n), i * n);
+          if (withQ) transposedQ.set(memory.subarray(pq / 8 + i * stride, pq / 8 + i * stride + n), i * n);
+        }
+        return { n, h: a, transposedQ };
       });
     },
   };

@@ -5,6 +5,7 @@
  * are deterministic; between them results agree to rounding only.
  */
 import { backTransform } from "./back-transform.ts";
+import { type Hessenberg, hessenberg } from "./hessenberg.ts";
 import { simdKernel } from "./kernel-simd.ts";
 import { type Tridiagonal, tridiagonalise } from "./tridiagonalise.ts";
 
@@ -19,6 +20,8 @@ export type Kernel = {
   tridiagonalise(a: Float64Array, n: number): Tridiagonal;
   /** rows (count×n) ← rows Qᵀ for the Q of a tridiagonalisation, see back-transform.ts. */
   backTransform(rows: Float64Array, count: number, t: Tridiagonal): void;
+  /** See hessenberg.ts; the array given becomes H. */
+  hessenberg(a: Float64Array, n: number, withQ: boolean): Hessenberg;
 };
 
 /** Rows of B and columns of C held in the second-level cache at a time; chosen by trial. */
@@ -80,6 +83,7 @@ export const plainKernel: Kernel = {
   product: plainProduct,
   tridiagonalise,
   backTransform: (rows, count, t) => backTransform(rows, count, t, plainProduct),
+  hessenberg,
 };
 
 let best: Kernel | undefined;

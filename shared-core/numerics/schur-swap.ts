@@ -49,8 +49,9 @@ function swapBlocks(t: Float64Array, n: number, j: number, p: number, q: number,
     for (let c = 0; c < q; c++)
       if (!(Math.abs(moved[r * m + c]) <= REFUSAL * Number.EPSILON * most)) return false;
   }
-  applyLeft(u, t, n, j, m);
-  applyRight(u, t, n, j, m);
+  // Nothing stands left of the blocks or below them.
+  applyLeft(u, t, n, j, m, j);
+  applyRight(u, t, n, j, m, j + m);
   applyLeft(u, qt, n, j, m);
   for (let r = q; r < m; r++) for (let c = 0; c < q; c++) t[(j + r) * n + j + c] = 0;
   if (q === 2) settle(t, n, j, qt);
@@ -137,23 +138,36 @@ function sandwich(u: Float64Array, d: Float64Array, m: number): Float64Array {
   return out;
 }
 
-/** Rows j … j + m − 1 of `a` ← U times them. */
-function applyLeft(u: Float64Array, a: Float64Array, n: number, j: number, m: number): void {
-  const kept = new Float64Array(m);
-  for (let c = 0; c < n; c++) {
-    for (let r = 0; r < m; r++) kept[r] = a[(j + r) * n + c];
-    for (let r = 0; r < m; r++) {
-      let sum = 0;
-      for (let k = 0; k < m; k++) sum += u[r * m + k] * kept[k];
-      a[(j + r) * n + c] = sum;
-    }
+/** Rows j … j + m − 1 of `a`, columns from `from` on, ← U times them; m ≤ 4. */
+function applyLeft(u: Float64Array, a: Float64Array, n: number, j: number, m: number, from = 0): void {
+  const two = m > 2;
+  const three = m > 3;
+  // Rows beyond m repeat the first with weight zero.
+  const weight = (r: number, c: number) => (r < m && c < m ? u[r * m + c] : 0);
+  const [u00, u01, u02, u03] = [weight(0, 0), weight(0, 1), weight(0, 2), weight(0, 3)];
+  const [u10, u11, u12, u13] = [weight(1, 0), weight(1, 1), weight(1, 2), weight(1, 3)];
+  const [u20, u21, u22, u23] = [weight(2, 0), weight(2, 1), weight(2, 2), weight(2, 3)];
+  const [u30, u31, u32, u33] = [weight(3, 0), weight(3, 1), weight(3, 2), weight(3, 3)];
+  const r0 = j * n;
+  const r1 = r0 + n;
+  const r2 = two ? r1 + n : r0;
+  const r3 = three ? r1 + 2 * n : r0;
+  for (let c = from; c < n; c++) {
+    const x0 = a[r0 + c];
+    const x1 = a[r1 + c];
+    const x2 = a[r2 + c];
+    const x3 = a[r3 + c];
+    a[r0 + c] = u00 * x0 + u01 * x1 + u02 * x2 + u03 * x3;
+    a[r1 + c] = u10 * x0 + u11 * x1 + u12 * x2 + u13 * x3;
+    if (two) a[r2 + c] = u20 * x0 + u21 * x1 + u22 * x2 + u23 * x3;
+    if (three) a[r3 + c] = u30 * x0 + u31 * x1 + u32 * x2 + u33 * x3;
   }
 }
 
-/** Columns j … j + m − 1 of `a` ← themselves times Uᵀ. */
-function applyRight(u: Float64Array, a: Float64Array, n: number, j: number, m: number): void {
+/** Columns j … j + m − 1 of `a`, rows before `to`, ← themselves times Uᵀ. */
+function applyRight(u: Float64Array, a: Float64Array, n: number, j: number, m: number, to = n): void {
   const kept = new Float64Array(m);
-  for (let r = 0; r < n; r++) {
+  for (let r = 0; r < to; r++) {
     const row = r * n + j;
     for (let c = 0; c < m; c++) kept[c] = a[row + c];
     for (let c = 0; c < m; c++) {
@@ -169,8 +183,8 @@ function settle(t: Float64Array, n: number, j: number, qt: Float64Array): void {
   const p = j * n + j;
   const { a, b, c, d, cs, sn } = standardBlock(t[p], t[p + 1], t[p + n], t[p + n + 1]);
   const u = Float64Array.of(cs, sn, -sn, cs);
-  applyLeft(u, t, n, j, 2);
-  applyRight(u, t, n, j, 2);
+  applyLeft(u, t, n, j, 2, j);
+  applyRight(u, t, n, j, 2, j + 2);
   applyLeft(u, qt, n, j, 2);
   t[p] = a;
   t[p + 1] = b;

@@ -68,6 +68,26 @@ describe.each([plainKernel, simd])("kernel $name", (kernel) => {
     expect(difference(back, a)).toBeLessThan(4 * n * EPS);
   });
 
+  it.each([1, 2, 3, 4, 9, 50, 51, 100, 131])("reduces a general matrix of %i to Hessenberg form", (n) => {
+    const a = randomMatrix(n, n, n);
+    const { h, transposedQ } = kernel.hessenberg(Float64Array.from(a), n, true);
+    for (let i = 2; i < n; i++) for (let j = 0; j < i - 1; j++) expect(h[i * n + j]).toBe(0);
+    expect(orthogonalityError(transposedQ, n)).toBeLessThan(4 * n * EPS);
+    const back = product(product(transposed(transposedQ, n, n), h, n, n, n), transposedQ, n, n, n);
+    expect(difference(back, a)).toBeLessThan(8 * n * EPS);
+    const alone = kernel.hessenberg(Float64Array.from(a), n, false);
+    expect(difference(alone.h, h)).toBe(0);
+    expect(alone.transposedQ.length).toBe(0);
+  });
+
+  it("leaves a triangular matrix as it is", () => {
+    const n = 12;
+    const a = Float64Array.from({ length: n * n }, (_, p) => (p % n >= Math.floor(p / n) ? 1 + p : 0));
+    const { h, transposedQ } = kernel.hessenberg(Float64Array.from(a), n, true);
+    expect(difference(h, a)).toBe(0);
+    expect(difference(transposedQ, identityOf(n))).toBe(0);
+  });
+
   it("takes a zero matrix and one already tridiagonal", () => {
     const n = 20;
     for (const off of [0, 1]) {
