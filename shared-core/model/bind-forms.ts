@@ -59,10 +59,7 @@ function takeBind(
   }
   const target = row.coordinates.has(bind.coordinate) ? bind.coordinate : largest(row.coordinates);
   const others = row.coordinates.size - 1 + row.supports.size;
-  if (
-    target === undefined ||
-    (others === 0 && bind.terms.length > 0 && solved.size > 0 && !isOwnZero(bind, frame))
-  ) {
+  if (target === undefined || (others === 0 && !holdsStill(bind, frame))) {
     sayInconsistent(bind, target, by, plan, findings);
     return;
   }
@@ -70,8 +67,9 @@ function takeBind(
   by.set(target, bind);
 }
 
-const isOwnZero = (bind: PlannedBind, frame: Frame): boolean =>
-  bind.terms.every(({ compute }) => compute(frame) === 0);
+/** `bind tip = ground`, and multiples that are zero: meant to stand still. */
+const holdsStill = (bind: PlannedBind, frame: Frame): boolean =>
+  bind.terms.every(({ place, compute }) => place.is === "ground" || compute(frame) === 0);
 
 const unitRow = (index: number): Row => ({ coordinates: new Map([[index, 1]]), supports: new Map() });
 

@@ -16,6 +16,7 @@ import { checkCall } from "./calls.ts";
 import { type BinaryOperator, binary, constant, constantValue, scaled } from "./code.ts";
 import { Findings, replaceFix } from "./findings.ts";
 import { agrees, found, literalOf, plainRate, suited } from "./fit.ts";
+import { inSI } from "./literal.ts";
 import { flatten, productOf, sayMixture } from "./product.ts";
 import {
   type Checked,
@@ -75,7 +76,7 @@ function checkNumber(node: NumberNode, c: ExpressionContext): Checked {
   }
   const unit = meaningOf(node.unit, c);
   if (unit === undefined) return undefined;
-  const value = node.value * unit.factor;
+  const value = inSI(node.value, unit);
   if (!Number.isFinite(value)) {
     c.findings.say("not-positive", node.span, "this is beyond the largest number, about 1.8e308");
     return undefined;

@@ -7,6 +7,7 @@ import { type UnitMeaning, unitOf } from "../units/unit-of.ts";
 import { type Given, givenDetails, singleValue, wordOf } from "./details.ts";
 import type { Draft } from "./draft.ts";
 import type { FileContext } from "./lets.ts";
+import { inSI } from "./literal.ts";
 import type { LimitCurve } from "./model.ts";
 import { type Described, nameSpan } from "./names.ts";
 import { planNumber } from "./number.ts";
@@ -144,7 +145,7 @@ function cellsOf(row: TableRow, file: FileContext): Cell[] | undefined {
       file.findings.say(meaning.code, place, meaning.message, { hint: meaning.hint });
       return undefined;
     }
-    cells.push({ ...meaning.kind, kind: meaning.kind, value: cell.value * meaning.factor });
+    cells.push({ ...meaning.kind, kind: meaning.kind, value: inSI(cell.value, meaning) });
   }
   return cells;
 }

@@ -82,7 +82,7 @@ function marksOf(text: string): Mark[] {
     }
     const [, blanks, carets, code, words] = mark;
     const start = carets.startsWith("<") ? 0 : 1 + blanks.length;
-    const end = carets.startsWith("<") ? 1 + carets.length : start + carets.length;
+    const end = carets.startsWith("<") ? carets.length : start + carets.length;
     marks.push({ place: `${line + 1}:${start}-${end} ${code}`, words });
   });
   return marks;
