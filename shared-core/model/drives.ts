@@ -216,7 +216,7 @@ export function derivativeOf(
 ): { derivative: 0 | 1 | 2; unit: string } {
   if (keyword !== "motion") return { derivative: 0, unit: keyword === "force" ? "N" : "N*m" };
   const units = motion === "turning" ? ["rad", "rad/s", "rad/s^2"] : ["m", "m/s", "m/s^2"];
-  const derivative = motion === "turning" ? turningDerivative(kind) : (-kind.dimension[2] as 0 | 1 | 2);
+  const derivative = motion === "turning" ? turningDerivative(kind) : ((0 - kind.dimension[2]) as 0 | 1 | 2);
   return { derivative, unit: units[derivative] };
 }
 
