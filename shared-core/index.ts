@@ -32,3 +32,32 @@ export { systemFiles, type TextFile } from "./writing/system-files.ts";
 
 // The word somebody meant.
 export { nearest } from "./text/nearest.ts";
+
+// The text in an editor: where names lead, what they are called, how the text is laid out and coloured.
+export { type FoldingRange, foldingRanges } from "./features/fold.ts";
+export { formatDocument, formatRange, formatRanges } from "./features/format.ts";
+export { type DocumentLink, documentLinks } from "./features/links.ts";
+export { type Move, moveEdits } from "./features/move.ts";
+export {
+  definition,
+  type FileEdits,
+  type FilePlace,
+  type Highlight,
+  highlights,
+  references,
+} from "./features/navigate.ts";
+export { type Prepared, prepareRename, type Renamed, rename } from "./features/rename.ts";
+export { selectionRanges } from "./features/select.ts";
+export {
+  type DocumentSymbol,
+  documentSymbols,
+  type WorkspaceSymbol,
+  workspaceSymbols,
+} from "./features/symbols.ts";
+export {
+  encodeTokens,
+  type SemanticToken,
+  semanticTokens,
+  TOKEN_MODIFIERS,
+  TOKEN_TYPES,
+} from "./features/tokens.ts";
