@@ -18,6 +18,22 @@ export const WRITE_VALUE = "thrum/writeValue";
 export const CSV = "thrum/csv";
 /** Request: rows copied from a table as statements. */
 export const ROWS = "thrum/rows";
+/** Request from the server, when the client offers it: the text of a file that only the client can read. */
+export const READ_FILE = "thrum/readFile";
+/** Request from the server, when the client offers it: the models of a folder that only the client can search. */
+export const FIND_MODELS = "thrum/findModels";
+
+/** What a client may say of itself when it starts the server (`initializationOptions`); everything may be missing. */
+export interface InitializationOptions {
+  /** The client's `PROTOCOL_VERSION`; with another one than the server's it gets the standard protocol only. */
+  readonly protocol?: number;
+  /** It answers `READ_FILE` and `FIND_MODELS`, for folders that are not on disk. */
+  readonly readsFiles?: boolean;
+  /** Where the pages of docs/ lie, ending in `/`; links of diagnostics and hovers lead there. */
+  readonly docs?: string;
+  /** Settings of a client that answers no `workspace/configuration`, as it would answer for `thrum`. */
+  readonly settings?: unknown;
+}
 
 export interface SummaryParams {
   readonly uri: string;
@@ -84,8 +100,16 @@ export interface WriteValueResult {
 
 export interface CsvParams {
   readonly uri: string;
+  /** `modes`, or the name of an ask. */
   readonly ask: string;
+  /** Default: as written. */
   readonly case?: string;
+}
+
+export interface CsvResult {
+  readonly text: string | null;
+  /** Why there is none. */
+  readonly refused?: string;
 }
 
 export interface RowsParams {
@@ -97,4 +121,21 @@ export interface RowsParams {
 export interface RowsResult {
   readonly text: string | null;
   readonly refused?: string;
+}
+
+export interface ReadFileParams {
+  readonly uri: string;
+}
+
+export type ReadFileResult =
+  | { readonly text: string }
+  | { readonly why: "missing" | "unreadable"; readonly detail: string };
+
+export interface FindModelsParams {
+  /** URI of a folder. */
+  readonly folder: string;
+}
+
+export interface FindModelsResult {
+  readonly uris: readonly string[];
 }
