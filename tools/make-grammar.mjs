@@ -156,11 +156,11 @@ function statement(scope, keywords) {
 
 /** `kg*m^2`, `N/(m*s)`, `1/s`: as far as there is no blank and each factor is a unit. */
 function unitPattern() {
-  const escape = (word) => word.replace(/[.*+?^${}()|[\]\\]/g, "\\$&");
+  const escaped = (word) => word.replace(/[.*+?^${}()|[\]\\]/g, "\\$&");
   const longest = (words) =>
     [...words]
       .sort((a, b) => b.length - a.length || (a < b ? -1 : 1))
-      .map(escape)
+      .map(escaped)
       .join("|");
   const names = new Set(UNIT_TABLE.filter((u) => !u.prefixes).map((u) => u.name));
   const si = new Set(UNIT_TABLE.filter((u) => u.prefixes).map((u) => u.name));

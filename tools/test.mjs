@@ -42,12 +42,12 @@ function vitest(args) {
     [
       join(root, "node_modules/vitest/vitest.mjs"),
       "run",
-      "--reporter=dot",
+      "--reporter=default",
       "--reporter=json",
       `--outputFile.json=${output}`,
       ...args,
     ],
-    { cwd: root, stdio: "inherit" },
+    { cwd: root, stdio: "inherit", env: plainEnvironment() },
   );
   const before = counts.failed;
   try {
@@ -62,4 +62,11 @@ function vitest(args) {
     counts.failed++;
   }
   if (run.status !== 0 && counts.failed === before) counts.failed++;
+}
+
+/** No colour where the output is not looked at on a terminal. */
+function plainEnvironment() {
+  if (process.stdout.isTTY) return process.env;
+  const { FORCE_COLOR: _, ...rest } = process.env;
+  return { ...rest, NO_COLOR: "1" };
 }

@@ -11,8 +11,8 @@ import { root } from "./root.mjs";
 const target = join(root, "README.md");
 const page = readFileSync(target, "utf8");
 const folder = mkdtempSync(join(tmpdir(), "thrum-readme-"));
-writeFileSync(join(folder, "pump.thrum"), /```thrum\n([^]*?)```/.exec(page)[1]);
-const text = page.replace(/```\n\$ thrum (.*)\n[^]*?```/g, (_, call) => {
+writeFileSync(join(folder, "pump.thrum"), /```thrum\n([\s\S]*?)```/.exec(page)[1]);
+const text = page.replace(/```\n\$ thrum (.*)\n[\s\S]*?```/g, (_, call) => {
   const { stdout } = spawnSync(process.execPath, [join(root, "dist/terminal/thrum.js"), ...call.split(" ")], {
     cwd: folder,
     encoding: "utf8",
