@@ -67,7 +67,7 @@ function judgeCase(work: Work, index: number): CaseReport | undefined {
   const trial = behindWall(work, "instance", name, () =>
     trialOf(work.sources, work.model, index, {
       remark: (remark) => remarks.push(remark),
-      fault: (where, error) => work.faults.push({ where, case: name, error }),
+      fault: (where, error) => sayFault(work, where, name, error),
     }),
   );
   if (trial === undefined) return undefined;
@@ -180,9 +180,15 @@ function behindWall<T>(work: Work, where: string, name: string, run: () => T): T
   try {
     return run();
   } catch (error) {
-    work.faults.push({ where, case: name, error });
+    sayFault(work, where, name, error);
     return undefined;
   }
+}
+
+/** Once for each place and case: a function may break at every corner of the bands. */
+function sayFault(work: Work, where: string, name: string, error: unknown): void {
+  if (work.faults.some((fault) => fault.where === where && fault.case === name)) return;
+  work.faults.push({ where, case: name, error });
 }
 
 /** By place, as written before cases, otherwise as said. */

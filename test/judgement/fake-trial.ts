@@ -10,7 +10,7 @@ export function fakeTrial(
   draws: readonly Draw[],
 ): Trial {
   const make = (positions: readonly number[]): Trial => ({
-    instance: { model: { draws } } as unknown as Instance,
+    instance: { model: { draws }, asks: [] } as unknown as Instance,
     analysis: undefined as never,
     modes: () => ({ ok: false, reason: "there are no modes here" }),
     noSteadyAnswer: undefined,

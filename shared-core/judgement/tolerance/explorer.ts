@@ -1,4 +1,5 @@
 import type { Draw, Expectation } from "../../model/model.ts";
+import { readsHistory } from "../matters-most.ts";
 import { sidesOf } from "../sides.ts";
 import type { Trial } from "../trial.ts";
 
@@ -23,6 +24,12 @@ export class Explorer {
   constructor(base: Trial, draws: readonly Draw[]) {
     this.#base = base;
     this.draws = draws;
+  }
+
+  /** Whether an expectation reads a history, so that each point costs an integration. */
+  isDear(expectation: Expectation): boolean {
+    const histories = this.#base.instance.asks.filter((ask) => ask.kind === "history");
+    return readsHistory(expectation, histories);
   }
 
   excess(expectation: Expectation, positions: Positions): Excess {

@@ -17,6 +17,8 @@ export interface WorstFound {
 export type Worst = WorstFound | { readonly reason: string } | "cancelled";
 
 const LINE = [-1, -0.5, 0, 0.5, 1];
+/** Along a line of histories, each of which is integrated anew. */
+const DEAR_LINE = [-1, 0, 1];
 /** Through a corner the ends are corners themselves; the slopes there tell whether the excess rises inwards. */
 const CORNER_LINE = [-1, 1];
 
@@ -128,8 +130,9 @@ function insideSearch(
 ): Worst {
   let worst = corner;
   const nominal = explorer.draws.map(() => 0);
+  const line = explorer.isDear(expectation) ? DEAR_LINE : LINE;
   for (const [through, samples] of [
-    [nominal, LINE],
+    [nominal, line],
     [corner.positions, CORNER_LINE],
   ] as const) {
     for (let draw = 0; draw < nominal.length; draw++) {
@@ -154,11 +157,12 @@ function climb(
   cancelled: () => boolean,
 ): Worst {
   let worst: WorstFound = { positions: from.positions, excess: from.excess, proven: false };
+  const line = explorer.isDear(expectation) ? DEAR_LINE : LINE;
   for (let round = 0; round < ROUNDS; round++) {
     const before = worst.excess;
     for (let draw = 0; draw < explorer.draws.length; draw++) {
       if (cancelled()) return "cancelled";
-      const found = largestAlong(explorer, expectation, worst.positions, draw, LINE);
+      const found = largestAlong(explorer, expectation, worst.positions, draw, line);
       if ("reason" in found) return found;
       if (found.excess > worst.excess) {
         worst = { positions: found.positions, excess: found.excess, proven: false };
