@@ -1,4 +1,7 @@
-/** The numbers of a drive's shape: planned once, put in for every instance. */
+/**
+ * The numbers of a drive's shape: planned once, put in for every instance. Longer than other files because it is
+ * one short function a shape of the language's table.
+ */
 import type { DriveShape, PulseShape, Samples } from "../mechanics/assembly.ts";
 import type { Item, RangeNode } from "../syntax/tree.ts";
 import type { Kind } from "../units/dimension.ts";

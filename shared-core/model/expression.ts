@@ -1,3 +1,6 @@
+/**
+ * One function a kind of node. Longer than other files because they call each other all the way round.
+ */
 import type { AsNode, BinaryNode, Expression, NumberNode, PathNode, UnitNode } from "../syntax/tree.ts";
 import { nearest } from "../text/nearest.ts";
 import { describeQuantity } from "../units/describe.ts";
@@ -61,13 +64,22 @@ export function check(node: Expression, c: ExpressionContext, wanted?: Wanted): 
 
 /** What a unit means; says where it means nothing. */
 export function meaningOf(unit: UnitNode, c: ExpressionContext): UnitMeaning | undefined {
+  const known = MEANINGS.get(unit.text);
+  if (known !== undefined) return known;
   const meaning = unitOf(unit);
-  if (!isFault(meaning)) return meaning;
+  if (!isFault(meaning)) {
+    if (MEANINGS.size < MOST_MEANINGS) MEANINGS.set(unit.text, meaning);
+    return meaning;
+  }
   const place = unit.factors[meaning.factorIndex]?.span ?? unit.span;
   const fixes = (meaning.replace ?? []).map((text) => replaceFix(`Write \`${text}\``, place, text));
   c.findings.say(meaning.code, place, meaning.message, { hint: meaning.hint, fixes });
   return undefined;
 }
+
+/** What the units of models mean, by their text; so many at most that no text can make it large. */
+const MEANINGS = new Map<string, UnitMeaning>();
+const MOST_MEANINGS = 1000;
 
 function checkNumber(node: NumberNode, c: ExpressionContext): Checked {
   if (node.unit === undefined) {

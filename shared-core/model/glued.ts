@@ -60,7 +60,8 @@ function gluedFactors(literal: NumberNode, c: ExpressionContext): readonly UnitF
   return later.filter(({ name }) => c.scope.holdsNumber(name));
 }
 
-function gluedLiterals(node: Expression, c: ExpressionContext): NumberNode[] {
+function gluedLiterals(node: Expression, c: ExpressionContext): readonly NumberNode[] {
+  if (node.kind === "path" || (node.kind === "number" && (node.unit?.factors.length ?? 0) < 2)) return [];
   const literals: NumberNode[] = [];
   visit(node, (each) => {
     if (each.kind === "number" && gluedFactors(each, c).length > 0) literals.push(each);

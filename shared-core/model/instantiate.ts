@@ -151,7 +151,7 @@ class PutModel implements Instance {
   }
 
   #coordinate(planned: Plan["coordinates"][number], form: LinearForm): CoordinateInfo {
-    const { name, motion, owner, massless, weight, startsAt, startsMoving } = planned;
+    const { name, motion, owner, massless, weight, mass, startsAt, startsMoving } = planned;
     const speed = startsMoving ? this.#number(startsMoving) : 0;
     return {
       name,
@@ -162,7 +162,7 @@ class PutModel implements Instance {
       startsAt: startsAt ? this.#number(startsAt) : 0,
       startsMoving: startsMoving?.kind.rate ? 2 * Math.PI * speed : speed,
       weight,
-      gravityMass: 0,
+      gravityMass: mass ? this.#number(mass) : 0,
     };
   }
 

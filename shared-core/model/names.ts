@@ -45,13 +45,12 @@ export function collectNames(
   findings: Findings,
 ): Map<string, Entity> {
   const names = new Map(used);
-  const lines = new LineIndex(tree.text);
   for (const { node, description, name } of statements) {
     if (name === undefined) continue;
     const entity: Entity = { name, keyword: node.keyword.text, description, node };
     const first = names.get(name);
     if (first === undefined) names.set(name, entity);
-    else sayDuplicate(entity, first, names, lines, findings);
+    else sayDuplicate(entity, first, names, tree, findings);
   }
   return names;
 }
@@ -60,14 +59,16 @@ function sayDuplicate(
   entity: Entity,
   first: Entity,
   names: ReadonlyMap<string, Entity>,
-  lines: LineIndex,
+  tree: Tree,
   findings: Findings,
 ): void {
   const { name, node } = entity;
   const place = nameSpan(node);
   const firstPlace = nameSpan(first.node);
   const where =
-    first.file === undefined ? `on line ${lines.lineAt(firstPlace.start) + 1}` : `in \`${first.file}\``;
+    first.file === undefined
+      ? `on line ${new LineIndex(tree.text).lineAt(firstPlace.start) + 1}`
+      : `in \`${first.file}\``;
   const free = freeName(name, names);
   const written = nameIn(node, "name");
   const rename = written

@@ -42,16 +42,17 @@ export function planExpression(
   const whole: ExpressionContext = { ...c, root: node };
   const typed = checkGlued(node, whole, wanted, check);
   if (typed === undefined) return undefined;
-  const fault = reads(typed.code) ? undefined : numberFault(typed.code, c.nominal());
-  if (fault !== undefined) {
-    c.findings.say("not-positive", fault.span, fault.message);
+  const compute = compile(typed.code);
+  if (!Number.isFinite(compute(c.nominal())) && !reads(typed.code)) {
+    const fault = numberFault(typed.code, c.nominal());
+    c.findings.say("not-positive", fault?.span ?? node.span, fault?.message ?? "this is no number");
     return undefined;
   }
   const unitNode = unitOfValue(node);
   return {
     span: node.span,
     code: typed.code,
-    compute: compile(typed.code),
+    compute,
     kind: typed.kind,
     ...(unitNode ? { unitNode } : {}),
   };

@@ -80,6 +80,7 @@ function declareCoordinate(
     owner: name,
     massless: node.keyword.text === "junction",
     weight: weight === "positive" ? 1 : weight === "negative" ? -1 : 0,
+    mass: motion === "sliding" ? numbers.get("mass") : undefined,
     startsAt: numbers.get("starts_at"),
     startsMoving: numbers.get("starts_moving"),
   });

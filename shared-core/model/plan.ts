@@ -78,6 +78,8 @@ export interface PlannedCoordinate {
   readonly owner: string;
   readonly massless: boolean;
   readonly weight: number;
+  /** On which gravity acts; a turning coordinate and a junction have none. */
+  readonly mass?: PlannedNumber;
   readonly startsAt?: PlannedNumber;
   readonly startsMoving?: PlannedNumber;
 }

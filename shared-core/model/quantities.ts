@@ -1,3 +1,7 @@
+/**
+ * Quantities of a model: what `unit.velocity` and its like read. Longer than other files because each sort of
+ * owner (coordinate, support, element, group) is one branch of the same walk.
+ */
 import type { ElementMeasure } from "../mechanics/assembly.ts";
 import type { Motion } from "../mechanics/builder.ts";
 import type { Expression, NameNode, PathNode } from "../syntax/tree.ts";
