@@ -10,15 +10,21 @@ export function judgeSource(source: Source, host: Host): FileOutcome {
   if (!content.ok) return { readable: false, path, reason: content.detail };
   try {
     const model = understand(path, content.text, workspaceReader(path, host.cwd));
-    return { readable: true, path, report: judge(model) };
+    const report = judge(model);
+    for (const { where, error } of report.faults) tellFault(host, `${path}, ${where}`, error);
+    return { readable: true, path, report };
   } catch (error) {
-    host.stderr.write(`thrum: internal fault in ${path}\n${error instanceof Error ? error.stack : error}\n`);
+    tellFault(host, path, error);
     return {
       readable: false,
       path,
       reason: "an internal fault of thrum; the details stand on standard error",
     };
   }
+}
+
+function tellFault(host: Host, where: string, error: unknown): void {
+  host.stderr.write(`thrum: internal fault in ${where}\n${error instanceof Error ? error.stack : error}\n`);
 }
 
 /** Files that a run read, for watching: the model and what it uses. */
