@@ -12,10 +12,13 @@ import type { FrequencyResponse } from "./analysis.ts";
 import type { Peak } from "./answer.ts";
 import { type Pole, sampleFrequencies } from "./frequency-poles.ts";
 import { type SteadyQuantity, steadyValue } from "./frequency-quantity.ts";
+import { type SampledStates, sampledStates } from "./frequency-samples.ts";
 import type { SteadySolution } from "./frequency-solution.ts";
 
 /** Points a decade of every search, beside those around the poles. */
 const PER_DECADE = 120;
+/** Bands whose samples are kept at a time. */
+const KEPT_TABLES = 2;
 /** Local maxima below this share of the largest sample cannot win: poles are sampled to a few per cent. */
 const CONTENDER = 0.7;
 /** Nearer to an undamped pole than this share of its frequency, the value is taken from beside it. */
@@ -31,9 +34,11 @@ const SEEN = 1.2;
 /** Values of one quantity along the axis. */
 export type Reader = (axisHz: number) => Outcome<readonly [number, number]>;
 
+/** `poles` and `undamped`, those of them that nothing damps, are found when they are first asked for. */
 export function frequencyResponseOf(
   solution: SteadySolution,
-  poles: readonly Pole[],
+  poles: () => readonly Pole[],
+  undamped: () => readonly Pole[],
   quantityOf: (ref: QuantityRef) => SteadyQuantity,
 ): FrequencyResponse {
   const extremes = new Map<string, Outcome<Peak>>();
@@ -44,21 +49,35 @@ export function frequencyResponseOf(
     extremes.set(key, found);
     return found;
   };
-  const readerOf = (ref: QuantityRef) => poleAwareReader(solution, poles, quantityOf(ref));
+  const tables = new Map<string, SampledStates>();
+  const samples = (from: number, to: number) => {
+    const key = `${from} ${to}`;
+    let found = tables.get(key);
+    if (found === undefined) {
+      found = sampledStates(solution, sampleFrequencies(poles(), from, to, PER_DECADE));
+      if (tables.size >= KEPT_TABLES) tables.delete(tables.keys().next().value as string);
+      tables.set(key, found);
+    }
+    return found;
+  };
+  const searchFor = (ref: QuantityRef): Search => {
+    const quantity = quantityOf(ref);
+    const reader = poleAwareReader(solution.quick, undamped(), quantity);
+    return { reader, quantity, poles: poles(), samples };
+  };
   return {
-    at: (quantity, frequencyHz) => readerOf(quantity)(frequencyHz),
+    at: (quantity, frequencyHz) =>
+      poleAwareReader(solution.at, undamped(), quantityOf(quantity))(frequencyHz),
     peak: (quantity, fromHz, toHz) =>
-      kept(`peak ${fromHz} ${toHz} ${quantity.text}`, () => largest(readerOf(quantity), poles, fromHz, toHz)),
+      kept(`peak ${fromHz} ${toHz} ${quantity.text}`, () => largest(searchFor(quantity), fromHz, toHz)),
     least: (quantity, fromHz, toHz) =>
-      kept(`least ${fromHz} ${toHz} ${quantity.text}`, () =>
-        smallest(readerOf(quantity), poles, fromHz, toHz),
-      ),
+      kept(`least ${fromHz} ${toHz} ${quantity.text}`, () => smallest(searchFor(quantity), fromHz, toHz)),
   };
 }
 
 /** The quantity at any frequency; a reason at an undamped pole that it sees. */
 export function poleAwareReader(
-  solution: SteadySolution,
+  solution: SteadySolution["at"],
   poles: readonly Pole[],
   quantity: SteadyQuantity,
 ): Reader {
@@ -77,10 +96,10 @@ export function poleAwareReader(
   };
 }
 
-function plainReader(solution: SteadySolution, quantity: SteadyQuantity): Reader {
+function plainReader(solution: SteadySolution["at"], quantity: SteadyQuantity): Reader {
   const out = new Float64Array(2);
   return (axisHz) => {
-    const states = solution.at(axisHz);
+    const states = solution(axisHz);
     if (!states.ok) return fail(states.reason);
     steadyValue(quantity, states.value, out);
     return succeed([out[0], out[1]] as const);
@@ -109,28 +128,47 @@ export interface Sample {
   readonly im: number;
 }
 
-/** Samples between the ends; those where there is no value are left out. */
-function samplesOf(reader: Reader, poles: readonly Pole[], from: number, to: number): Outcome<Sample[]> {
-  const samples: Sample[] = [];
-  let reason = "there is no frequency between the ends";
-  for (const f of sampleFrequencies(poles, from, to, PER_DECADE)) {
-    const got = reader(f);
-    if (!got.ok) {
-      reason = got.reason;
-      continue;
-    }
-    const [re, im] = got.value;
-    samples.push({ f, re, im, size: Math.hypot(re, im) });
-  }
-  return samples.length > 0 ? succeed(samples) : fail(reason);
+/** What a search needs: the quantity, the poles and the states along the axis. */
+interface Search {
+  readonly reader: Reader;
+  readonly quantity: SteadyQuantity;
+  readonly poles: readonly Pole[];
+  readonly samples: (from: number, to: number) => SampledStates;
 }
 
-function largest(reader: Reader, poles: readonly Pole[], from: number, to: number): Outcome<Peak> {
+/** Samples between the ends; those where there is no value are left out. */
+function samplesOf(
+  { reader, quantity, poles, samples }: Search,
+  from: number,
+  to: number,
+): Outcome<Sample[]> {
+  const undamped = poles.filter(({ halfWidthHz }) => halfWidthHz === 0);
+  const states = samples(from, to);
+  const out: Sample[] = [];
+  const value = new Float64Array(2);
+  for (let i = 0; i < states.axis.length; i++) {
+    const f = states.axis[i];
+    if (undamped.some(({ atHz }) => Math.abs(f - atHz) <= TOO_NEAR * atHz)) {
+      const got = reader(f);
+      if (got.ok) out.push(sampleAt(f, got.value[0], got.value[1]));
+      continue;
+    }
+    const at = states.at(i);
+    if (at === undefined) continue;
+    steadyValue(quantity, at, value);
+    out.push(sampleAt(f, value[0], value[1]));
+  }
+  return out.length > 0 ? succeed(out) : fail("there is no finite value between the ends");
+}
+
+const sampleAt = (f: number, re: number, im: number): Sample => ({ f, re, im, size: Math.hypot(re, im) });
+
+function largest(search: Search, from: number, to: number): Outcome<Peak> {
   if (!(0 <= from && from <= to)) return fail("the band must rise from a frequency to a higher one");
-  const unbounded = unboundedReason(reader, poles, from, to);
+  const unbounded = unboundedReason(search.reader, search.poles, from, to);
   if (unbounded !== undefined) return fail(unbounded);
-  const samples = samplesOf(reader, poles, from, to);
-  return samples.ok ? succeed(polishedPeak(reader, samples.value)) : fail(samples.reason);
+  const samples = samplesOf(search, from, to);
+  return samples.ok ? succeed(polishedPeak(search.reader, samples.value)) : fail(samples.reason);
 }
 
 /** Why the quantity has no largest value in the band, if so: an undamped pole that it sees, a body that drifts. */
@@ -173,9 +211,10 @@ export function polishedPeak(reader: Reader, list: readonly Sample[]): Peak {
   return peak;
 }
 
-function smallest(reader: Reader, poles: readonly Pole[], from: number, to: number): Outcome<Peak> {
-  if (!(0 <= from && from <= to)) return fail(`the band must rise from a frequency to a higher one`);
-  const samples = samplesOf(reader, poles, from, to);
+function smallest(search: Search, from: number, to: number): Outcome<Peak> {
+  if (!(0 <= from && from <= to)) return fail("the band must rise from a frequency to a higher one");
+  const { reader } = search;
+  const samples = samplesOf(search, from, to);
   if (!samples.ok) return fail(samples.reason);
   const list = samples.value;
   let best = list[0];

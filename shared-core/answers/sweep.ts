@@ -4,6 +4,7 @@ import type { SweepAsk } from "../model/model.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import type { FrequencyResponse } from "./analysis.ts";
 import type { ModeTable, Peak, SweepAnswer } from "./answer.ts";
+import { modalTransfer } from "./frequency-modal.ts";
 import { growingMode, type Pole, polesOf, sampleFrequencies, withPoles } from "./frequency-poles.ts";
 import { type SteadyQuantity, steadyQuantity, steadyValue } from "./frequency-quantity.ts";
 import {
@@ -33,6 +34,7 @@ const MOST_DIP_POINTS = 2000;
 export interface SteadyModel {
   readonly assembly: Assembly;
   readonly table: ModeTable;
+  readonly basis: ModalBasis;
   readonly system: SteadySystem;
   readonly lossy: boolean;
 }
@@ -43,16 +45,41 @@ export function steadyModel(assembly: Assembly, basis: ModalBasis, table: ModeTa
   if (growing !== undefined) return fail(growing);
   const added = hasAddedDamping(assembly, false) ? freeDamping(basis) : undefined;
   const lossy = assembly.elements.some(({ lossFactor, stiffness }) => lossFactor * stiffness !== 0);
-  return succeed({ assembly, table, system: steadySystem(assembly, added), lossy });
+  return succeed({ assembly, table, basis, system: steadySystem(assembly, added), lossy });
+}
+
+/** Dense models from this size on are searched by superposition of their roots. */
+const SUPERPOSED_SIZE = 6;
+
+function solutionFor(model: SteadyModel, by: readonly number[]): Outcome<SteadySolution> {
+  const { assembly, basis, system, table, lossy } = model;
+  return steadySolution(assembly, system, by, () => {
+    if (lossy || system.route === "band" || system.free < SUPERPOSED_SIZE) return undefined;
+    const rates = table.modes.map(({ eigenvalue }) => eigenvalue[1] / (2 * Math.PI)).filter((f) => f > 0);
+    const transfer = modalTransfer(assembly, basis, by);
+    if (!transfer.ok || rates.length === 0) return undefined;
+    const low = Math.min(...rates);
+    const high = Math.max(...rates);
+    // Below, between and above the roots, at no round ratio.
+    const checkHz = [0.317 * low, Math.sqrt(low * high) * 1.0713, 1.713 * high];
+    return { transfer: transfer.value, checkHz };
+  });
 }
 
 /** The response to some drives at any frequency. */
 export function steadyResponse(model: SteadyModel, by: readonly number[]): Outcome<FrequencyResponse> {
-  const solution = steadySolution(model.assembly, model.system, by);
+  const solution = solutionFor(model, by);
   if (!solution.ok) return fail(solution.reason);
   const quantities = new Map<string, SteadyQuantity>();
+  let found: readonly Pole[] | undefined;
+  const poles = (): readonly Pole[] => {
+    found ??= polesFor(model, solution.value);
+    return found;
+  };
+  // Refining the poles costs more than many values; a value at one frequency needs none where all are damped.
+  const undamped = mayBeUndamped(model.table) ? poles : () => [];
   return succeed(
-    frequencyResponseOf(solution.value, polesFor(model, solution.value), (ref) => {
+    frequencyResponseOf(solution.value, poles, undamped, (ref) => {
       const known = quantities.get(ref.text);
       if (known !== undefined) return known;
       const made = steadyQuantity(model.assembly, ref);
@@ -69,7 +96,7 @@ export function steadyResponse(model: SteadyModel, by: readonly number[]): Outco
 export function sweepAnswer(model: SteadyModel, ask: SweepAsk): Outcome<SweepAnswer> {
   const base = basePoints(ask);
   if (!base.ok) return fail(base.reason);
-  const solved = steadySolution(model.assembly, model.system, ask.by);
+  const solved = solutionFor(model, ask.by);
   if (!solved.ok) return fail(solved.reason);
   const solution = solved.value;
   const poles = polesFor(model, solution);
@@ -85,7 +112,10 @@ export function sweepAnswer(model: SteadyModel, ask: SweepAsk): Outcome<SweepAns
   const peaks = new Map<string, Peak | { reason: string }>();
   ask.of.forEach((ref, q) => {
     series.set(ref.text, { unit: ref.unit, re: table.re[q], im: table.im[q] });
-    peaks.set(ref.text, peakOf(poleAwareReader(solution, poles, quantities[q]), poles, searched, q, ask));
+    peaks.set(
+      ref.text,
+      peakOf(poleAwareReader(solution.quick, poles, quantities[q]), poles, searched, q, ask),
+    );
   });
   return succeed({ kind: "sweep", frequencyHz: table.axis, series, peaks });
 }
@@ -107,6 +137,10 @@ function peakOf(
   if (samples.length === 0) return { reason: "it has no finite value in the band" };
   return polishedPeak(reader, samples);
 }
+
+/** Whether refining could leave a root without damping: loss factors and dampers change it by far less. */
+const mayBeUndamped = ({ modes }: ModeTable): boolean =>
+  modes.some(({ eigenvalue: [re, im] }) => im > 0 && Math.abs(re) <= 1e-6 * im);
 
 function polesFor(model: SteadyModel, solution: SteadySolution): Pole[] {
   const ratios = solution.groups.map((g) => g.ratio);
@@ -151,12 +185,12 @@ function evaluate(
   let careful: ReturnType<typeof poleAwareReader>[] | undefined;
   for (let i = 0; i < axis.length; i++) {
     const atPole = undamped.some((p) => Math.abs(axis[i] - p.atHz) <= 1e-9 * p.atHz);
-    const states = atPole ? undefined : solution.at(axis[i]);
+    const states = atPole ? undefined : solution.quick(axis[i]);
     for (let q = 0; q < quantities.length; q++) {
       if (states?.ok) {
         steadyValue(quantities[q], states.value, out);
       } else {
-        careful ??= quantities.map((quantity) => poleAwareReader(solution, poles, quantity));
+        careful ??= quantities.map((quantity) => poleAwareReader(solution.quick, poles, quantity));
         const got = careful[q](axis[i]);
         out[0] = got.ok ? got.value[0] : Number.NaN;
         out[1] = got.ok ? got.value[1] : Number.NaN;
