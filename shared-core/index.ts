@@ -1,8 +1,11 @@
 /** The facade: what other packages may use of the core, read as a list of what it can do. */
 
 // A text, understood and judged.
-export { judge } from "./judgement/judge.ts";
-export type { CaseReport, FileReport, JudgeOptions, Verdict } from "./judgement/report.ts";
+export type { DiagnosticCode } from "./diagnostics/codes.ts";
+export type { Diagnostic, Fix, RelatedPlace, Severity } from "./diagnostics/diagnostic.ts";
+export { judge, judgeInSteps } from "./judgement/judge.ts";
+export type { CaseReport, FileReport, InternalFault, JudgeOptions, Verdict } from "./judgement/report.ts";
+export type { Steps } from "./judgement/steps.ts";
 export type { FileContent, FileReader, Model } from "./model/model.ts";
 export { understand } from "./model/understand.ts";
 
@@ -30,8 +33,13 @@ export { type FileOutcome, holds } from "./writing/file-outcome.ts";
 export { jsonText } from "./writing/json-text.ts";
 export { systemFiles, type TextFile } from "./writing/system-files.ts";
 
-// The word somebody meant.
+// Places in a text, and the word somebody meant.
+export { applyEdits, LineIndex } from "./text/line-index.ts";
 export { nearest } from "./text/nearest.ts";
+export type { Position, Range, Span, TextEdit } from "./text/span.ts";
+
+// What the features of an editor look at.
+export type { View } from "./features/view.ts";
 
 // The text in an editor: where names lead, what they are called, how the text is laid out and coloured.
 export { type FoldingRange, foldingRanges } from "./features/fold.ts";
@@ -61,3 +69,11 @@ export {
   TOKEN_MODIFIERS,
   TOKEN_TYPES,
 } from "./features/tokens.ts";
+
+// What server and client say to each other beside the language server protocol.
+export * from "./protocol/requests.ts";
+
+// Readouts in an editor: what stands at a place, numbers behind numbers, lines above asks, expectations and cases.
+export { type Hover, hover } from "./features/hover.ts";
+export { type InlayHint, type InlayKind, type InlayOptions, inlayHints } from "./features/inlay.ts";
+export { type CodeLens, codeLenses, type LensKind, type ResolvedLens, resolveLens } from "./features/lens.ts";

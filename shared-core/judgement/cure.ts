@@ -3,6 +3,7 @@ import { findRoot } from "../numerics/roots.ts";
 import type { Influence } from "./matters-most.ts";
 import type { Cure } from "./rule.ts";
 import { sidesOf } from "./sides.ts";
+import type { Steps } from "./steps.ts";
 import type { Trial } from "./trial.ts";
 
 /** Factors by which a parameter is moved until the expectation holds. Beyond ten it would be another design. */
@@ -14,16 +15,15 @@ const CLOSE = 1e-5;
 const EVALUATIONS = 24;
 
 /** The value of the parameter that matters most at which a failing expectation would hold. */
-export function cureOf(
+export function* cureOf(
   base: Trial,
   expectation: Expectation,
   followed: readonly Influence[],
-  cancelled: () => boolean,
-): Cure | undefined {
+): Steps<Cure | undefined> {
   const upper = expectation.operator === "<=" || expectation.operator === "<";
   const value = base.evaluate(expectation.left);
   for (const { name, sensitivity } of followed.slice(0, TRIED)) {
-    if (cancelled() || !value.ok) return undefined;
+    if ((yield) || !value.ok) return undefined;
     const lessValue = sensitivity * value.value.value > 0 ? -1 : 1;
     const found = moveUntilItHolds(base, expectation, name, upper ? lessValue : -lessValue);
     if (found !== undefined) return found;

@@ -10,42 +10,44 @@ import { type Influence, influences, readsHistory } from "./matters-most.ts";
 import type { Verdict } from "./report.ts";
 import type { Judged } from "./rule.ts";
 import { marginOf, type Sides, sidesOf } from "./sides.ts";
+import type { Steps } from "./steps.ts";
 import { judgeTolerances, type ToleranceFound } from "./tolerance/judge-tolerances.ts";
 import type { Remark, Trial } from "./trial.ts";
 
 /** `trial` is the case as it stands; `remarks` is where it writes what it finds out. */
-export function judgeExpectations(
+export function* judgeExpectations(
   trial: Trial,
   remarks: Remark[],
   expectations: readonly Expectation[],
-  cancelled: () => boolean,
-): readonly Judged[] {
-  const read = expectations.map((expectation) => {
+): Steps<readonly Judged[]> {
+  const read: { expectation: Expectation; sides: Found<Sides>; remarks: Remark[] }[] = [];
+  for (const expectation of expectations) {
     remarks.length = 0;
-    const sides = sidesOf(trial, expectation);
-    return { expectation, sides, remarks: [...remarks] };
-  });
+    read.push({ expectation, sides: sidesOf(trial, expectation), remarks: [...remarks] });
+    yield;
+  }
   const computed = read.filter(({ sides }) => sides.ok).map(({ expectation }) => expectation);
-  const tolerances = judgeTolerances(trial, computed, cancelled);
+  const tolerances = yield* judgeTolerances(trial, computed);
   const asked = read.filter(({ expectation, sides }) =>
     wantsInfluences(trial, expectation, sides, tolerances),
   );
-  const followed = influences(
+  const followed = yield* influences(
     trial,
     asked.map(({ expectation }) => expectation),
-    cancelled,
   );
-  return read.map(({ expectation, sides, remarks: found }) => {
+  const judged: Judged[] = [];
+  for (const { expectation, sides, remarks: found } of read) {
     const influence = followed.get(expectation) ?? [];
     const fails = sides.ok && !sides.value.holds;
-    return {
+    judged.push({
       verdict: verdictOf(expectation, sides, tolerances.get(expectation), influence[0]),
       expectation,
-      cure: fails ? cureOf(trial, expectation, influence, cancelled) : undefined,
+      cure: fails ? yield* cureOf(trial, expectation, influence) : undefined,
       remarks: found,
       explained: sides.ok || found.length > 0 || isExplained(trial, expectation, sides.reason),
-    };
-  });
+    });
+  }
+  return judged;
 }
 
 /** What stands for an expectation that a fault of Thrum kept from being judged: it does not hold in silence. */

@@ -8,16 +8,21 @@ import { judgeExpectations, unjudged } from "./expectations.ts";
 import { RULES } from "./registry.ts";
 import type { AnswerResult, CaseReport, FileReport, InternalFault, JudgeOptions } from "./report.ts";
 import type { CostClass, Finding, Judged, Rule, RuleContext } from "./rule.ts";
+import { finish, type Steps } from "./steps.ts";
 import type { Remark, Trial } from "./trial.ts";
 import { type Sources, trialOf } from "./trial-of.ts";
 
 /** `judge` with its sources given from outside, so that it can be tried on hand-made ones. */
 export function judgeWith(sources: Sources, model: Model, options: JudgeOptions = {}): FileReport {
+  return finish(judgeSteps(sources, model, options.upTo), options.cancelled ?? (() => false));
+}
+
+/** The same piece by piece: each answer, each corner of a tolerance, each rule is a step. */
+export function* judgeSteps(sources: Sources, model: Model, upTo: CostClass = "answers"): Steps<FileReport> {
   const work: Work = {
     sources,
     model,
-    cancelled: options.cancelled ?? (() => false),
-    wanted: WANTED[options.upTo ?? "answers"],
+    wanted: WANTED[upTo],
     done: new Set(),
     diagnostics: [...model.diagnostics],
     keys: new Set(),
@@ -25,12 +30,12 @@ export function judgeWith(sources: Sources, model: Model, options: JudgeOptions 
   };
   const cases: CaseReport[] = [];
   if (model.buildable) {
-    for (let index = 0; index < model.cases.length && !work.cancelled(); index++) {
-      const report = judgeCase(work, index);
+    for (let index = 0; index < model.cases.length && !(yield); index++) {
+      const report = yield* judgeCase(work, index);
       if (report !== undefined) cases.push(report);
     }
   }
-  const done = work.cancelled() || work.faults.length > 0 ? new Set<CostClass>() : work.done;
+  const done = (yield) || work.faults.length > 0 ? new Set<CostClass>() : work.done;
   const { said, accepted } = sortAccepted(model, work.diagnostics, done);
   return {
     file: model.file,
@@ -51,7 +56,6 @@ const WANTED: Readonly<Record<CostClass, ReadonlySet<CostClass>>> = {
 interface Work {
   readonly sources: Sources;
   readonly model: Model;
-  readonly cancelled: () => boolean;
   readonly wanted: ReadonlySet<CostClass>;
   /** Cost classes of which every rule has been asked in every case so far. */
   readonly done: Set<CostClass>;
@@ -61,7 +65,7 @@ interface Work {
   readonly faults: InternalFault[];
 }
 
-function judgeCase(work: Work, index: number): CaseReport | undefined {
+function* judgeCase(work: Work, index: number): Steps<CaseReport | undefined> {
   const name = work.model.cases[index].name;
   const remarks: Remark[] = [];
   const trial = behindWall(work, "instance", name, () =>
@@ -73,8 +77,8 @@ function judgeCase(work: Work, index: number): CaseReport | undefined {
   if (trial === undefined) return undefined;
   sayInstance(work, index, trial.instance);
   const modes = readModes(work, name, trial);
-  const answers = readAnswers(work, name, trial);
-  const judged = work.wanted.has("answers") ? readExpectations(work, name, trial, remarks) : [];
+  const answers = yield* readAnswers(work, name, trial);
+  const judged = work.wanted.has("answers") ? yield* readExpectations(work, name, trial, remarks) : [];
   const { instance, analysis } = trial;
   const context: RuleContext = {
     model: work.model,
@@ -86,7 +90,7 @@ function judgeCase(work: Work, index: number): CaseReport | undefined {
     judged,
     evaluate: trial.evaluate,
   };
-  askRules(work, index, context);
+  yield* askRules(work, index, context);
   return {
     name,
     instance,
@@ -109,11 +113,11 @@ function readModes(work: Work, name: string, trial: Trial): Outcome<ModeTable> {
   return behindWall(work, "modes", name, () => trial.modes()) ?? fail("modes could not be computed");
 }
 
-function readAnswers(work: Work, name: string, trial: Trial): ReadonlyMap<string, AnswerResult> {
+function* readAnswers(work: Work, name: string, trial: Trial): Steps<ReadonlyMap<string, AnswerResult>> {
   const answers = new Map<string, AnswerResult>();
   if (!work.wanted.has("answers")) return answers;
   for (const ask of trial.instance.asks) {
-    if (ask.kind === "modes" || work.cancelled()) continue;
+    if (ask.kind === "modes" || (yield)) continue;
     const answer = behindWall(work, ask.name, name, () => answerOf(trial, ask));
     answers.set(ask.name, answer ?? noAnswer(ask, "it could not be computed"));
   }
@@ -139,19 +143,26 @@ const noAnswer = (ask: Ask, reason: string): AnswerResult => ({
   reason,
 });
 
-function readExpectations(work: Work, name: string, trial: Trial, remarks: Remark[]): readonly Judged[] {
+function* readExpectations(
+  work: Work,
+  name: string,
+  trial: Trial,
+  remarks: Remark[],
+): Steps<readonly Judged[]> {
   const meant = work.model.expectations.filter(({ cases }) => cases === undefined || cases.includes(name));
-  const judged = behindWall(work, "expectations", name, () =>
-    judgeExpectations(trial, remarks, meant, work.cancelled),
-  );
-  return judged ?? meant.map((expectation) => unjudged(expectation));
+  try {
+    return yield* judgeExpectations(trial, remarks, meant);
+  } catch (error) {
+    sayFault(work, "expectations", name, error);
+    return meant.map((expectation) => unjudged(expectation));
+  }
 }
 
-function askRules(work: Work, index: number, context: RuleContext): void {
+function* askRules(work: Work, index: number, context: RuleContext): Steps<void> {
   const done = new Set(work.wanted);
   for (const rule of RULES) {
     if (!work.wanted.has(rule.cost)) continue;
-    if (work.cancelled()) {
+    if (yield) {
       done.delete(rule.cost);
       continue;
     }

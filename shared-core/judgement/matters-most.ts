@@ -1,6 +1,7 @@
 import type { Expectation, HistoryAsk } from "../model/model.ts";
 import type { Expression } from "../syntax/tree.ts";
 import { names } from "./expression-nodes.ts";
+import type { Steps } from "./steps.ts";
 import type { Trial } from "./trial.ts";
 
 /** A `let` and the relative change of a value per relative change of it. */
@@ -18,15 +19,14 @@ const NONE = 1e-7;
  * For each expectation the parameters that its value follows, the strongest first. Each parameter is moved once
  * up and once down for all of them.
  */
-export function influences(
+export function* influences(
   base: Trial,
   expectations: readonly Expectation[],
-  cancelled: () => boolean,
-): ReadonlyMap<Expectation, readonly Influence[]> {
+): Steps<ReadonlyMap<Expectation, readonly Influence[]>> {
   const found = new Map<Expectation, Influence[]>(expectations.map((expectation) => [expectation, []]));
   const here = new Map(expectations.map(({ left }) => [left, nominalOf(base, left)]));
   for (const { name, value } of base.instance.parameters.values()) {
-    if (cancelled() || expectations.length === 0) break;
+    if (expectations.length === 0 || (yield)) break;
     if (value === 0 || !Number.isFinite(value)) continue;
     const [up, down] = [1 + STEP, 1 - STEP].map((times) =>
       base.with({ parameters: new Map([[name, value * times]]) }),

@@ -1,4 +1,5 @@
 import { describe, expect, test } from "vitest";
+import { finish } from "../../shared-core/judgement/steps.ts";
 import { Explorer } from "../../shared-core/judgement/tolerance/explorer.ts";
 import { shareOfDraws } from "../../shared-core/judgement/tolerance/share.ts";
 import { type WorstFound, worstCases } from "../../shared-core/judgement/tolerance/worst-case.ts";
@@ -8,7 +9,7 @@ const never = () => false;
 
 function worst(f: (positions: readonly number[]) => number, count: number): WorstFound & { trials: number } {
   const explorer = new Explorer(fakeTrial(f, 0, fakeDraws(count)), fakeDraws(count));
-  const [found] = worstCases(explorer, [atMost("worst_case")], never);
+  const [found] = finish(worstCases(explorer, [atMost("worst_case")]), never);
   if (found === "cancelled" || "reason" in found) throw new Error("nothing was found");
   return { ...found, trials: explorer.count };
 }
@@ -59,7 +60,9 @@ describe("worst case over bands", () => {
       fakeTrial(([a]) => (a > 0.9 ? Number.NaN : a), 0, fakeDraws(1)),
       fakeDraws(1),
     );
-    expect(worstCases(explorer, [atMost("worst_case")], never)).toEqual([{ reason: "no value here" }]);
+    expect(finish(worstCases(explorer, [atMost("worst_case")]), never)).toEqual([
+      { reason: "no value here" },
+    ]);
   });
 
   test("ends when cancelled", () => {
@@ -67,7 +70,7 @@ describe("worst case over bands", () => {
       fakeTrial(([a]) => a, 0, fakeDraws(1)),
       fakeDraws(1),
     );
-    expect(worstCases(explorer, [atMost("worst_case")], () => true)).toEqual(["cancelled"]);
+    expect(finish(worstCases(explorer, [atMost("worst_case")]), () => true)).toEqual(["cancelled"]);
   });
 });
 
@@ -77,7 +80,7 @@ describe("share of draws", () => {
       fakeTrial(([a]) => a, limit, draws),
       draws,
     );
-    const found = shareOfDraws(explorer, atMost({ share: wanted }), wanted, never);
+    const found = finish(shareOfDraws(explorer, atMost({ share: wanted }), wanted), never);
     if (found === "cancelled" || "reason" in found) throw new Error("nothing was drawn");
     return found;
   };

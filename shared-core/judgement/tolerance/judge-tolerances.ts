@@ -1,5 +1,6 @@
 import type { Expectation } from "../../model/model.ts";
 import type { Verdict } from "../report.ts";
+import type { Steps } from "../steps.ts";
 import type { Trial } from "../trial.ts";
 import { Explorer, type Positions } from "./explorer.ts";
 import { relevantDraws } from "./relevant.ts";
@@ -9,23 +10,22 @@ import { type Worst, worstCases } from "./worst-case.ts";
 export type ToleranceFound = NonNullable<Verdict["tolerance"]>;
 
 /** Judges every expectation that asks for more than the nominal numbers. Empty where the work was cancelled. */
-export function judgeTolerances(
+export function* judgeTolerances(
   base: Trial,
   expectations: readonly Expectation[],
-  cancelled: () => boolean,
-): ReadonlyMap<Expectation, ToleranceFound> {
+): Steps<ReadonlyMap<Expectation, ToleranceFound>> {
   const found = new Map<Expectation, ToleranceFound>();
   const worst = expectations.filter(({ tolerance }) => tolerance === "worst_case");
   const shares = expectations.filter(({ tolerance }) => typeof tolerance === "object");
-  if ((worst.length === 0 && shares.length === 0) || cancelled()) return found;
+  if ((worst.length === 0 && shares.length === 0) || (yield)) return found;
   const draws = relevantDraws(base, base.instance.model.draws, [...worst, ...shares]);
   const explorer = new Explorer(base, draws);
-  worstCases(explorer, worst, cancelled).forEach((result, i) => {
+  (yield* worstCases(explorer, worst)).forEach((result, i) => {
     if (result !== "cancelled") found.set(worst[i], worstFound(explorer, worst[i], result));
   });
   for (const expectation of shares) {
     const wanted = typeof expectation.tolerance === "object" ? expectation.tolerance.share : 1;
-    const result = shareOfDraws(explorer, expectation, wanted, cancelled);
+    const result = yield* shareOfDraws(explorer, expectation, wanted);
     if (result === "cancelled") continue;
     found.set(
       expectation,

@@ -1,5 +1,6 @@
 import type { Draw, Expectation } from "../../model/model.ts";
 import { normal, uniform } from "../../numerics/random.ts";
+import type { Steps } from "../steps.ts";
 import type { Explorer } from "./explorer.ts";
 
 export interface ShareFound {
@@ -17,16 +18,15 @@ const FEWEST = 400;
 const MOST = 4000;
 
 /** Draws at random and counts. */
-export function shareOfDraws(
+export function* shareOfDraws(
   explorer: Explorer,
   expectation: Expectation,
   wanted: number,
-  cancelled: () => boolean,
-): ShareFound | { readonly reason: string } | "cancelled" {
+): Steps<ShareFound | { readonly reason: string } | "cancelled"> {
   const samples = Math.min(MOST, Math.max(FEWEST, Math.ceil(20 / Math.max(1 - wanted, 1e-9))));
   const found: { excess: number; value: number }[] = [];
   for (let sample = 0; sample < samples; sample++) {
-    if (cancelled()) return "cancelled";
+    if (yield) return "cancelled";
     const here = explorer.excess(
       expectation,
       explorer.draws.map((draw) => positionOf(draw, sample)),

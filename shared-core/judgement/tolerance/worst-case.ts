@@ -1,4 +1,5 @@
 import type { Expectation } from "../../model/model.ts";
+import type { Steps } from "../steps.ts";
 import type { Explorer, Positions } from "./explorer.ts";
 import { largestAlong } from "./line.ts";
 
@@ -27,33 +28,29 @@ const CORNER_LINE = [-1, 1];
  * the nominal point and through the worst corner; where one has its largest excess inside, a search goes on
  * from there. Above: the corner that the nominal lines point to, flips of it, and the same search.
  */
-export function worstCases(
+export function* worstCases(
   explorer: Explorer,
   expectations: readonly Expectation[],
-  cancelled: () => boolean,
-): readonly Worst[] {
+): Steps<readonly Worst[]> {
   const corners = explorer.draws.length <= MOST_CORNERS;
-  const starts = corners ? worstCorners(explorer, expectations, cancelled) : undefined;
-  return expectations.map((expectation, i) => {
-    if (starts !== undefined) {
-      const start = starts[i];
-      return start === "cancelled" || "reason" in start
-        ? start
-        : insideSearch(explorer, expectation, start, cancelled);
-    }
-    const start = pointedCorner(explorer, expectation, cancelled);
-    if (start === "cancelled" || "reason" in start) return start;
-    const found = insideSearch(explorer, expectation, start, cancelled);
-    return found === "cancelled" || "reason" in found ? found : { ...found, proven: false };
-  });
+  const starts = corners ? yield* worstCorners(explorer, expectations) : undefined;
+  const worst: Worst[] = [];
+  for (const [i, expectation] of expectations.entries()) {
+    worst.push(yield* worstOf(explorer, expectation, starts?.[i]));
+  }
+  return worst;
+}
+
+function* worstOf(explorer: Explorer, expectation: Expectation, corner: Worst | undefined): Steps<Worst> {
+  const start = corner ?? (yield* pointedCorner(explorer, expectation));
+  if (start === "cancelled" || "reason" in start) return start;
+  const found = yield* insideSearch(explorer, expectation, start);
+  if (corner !== undefined || found === "cancelled" || "reason" in found) return found;
+  return { ...found, proven: false };
 }
 
 /** All corners, each visited once for all expectations. */
-function worstCorners(
-  explorer: Explorer,
-  expectations: readonly Expectation[],
-  cancelled: () => boolean,
-): readonly Worst[] {
+function* worstCorners(explorer: Explorer, expectations: readonly Expectation[]): Steps<readonly Worst[]> {
   const worst: Worst[] = expectations.map(() => ({
     positions: [],
     excess: Number.NEGATIVE_INFINITY,
@@ -61,7 +58,7 @@ function worstCorners(
   }));
   const count = explorer.draws.length;
   for (let corner = 0; corner < 2 ** count; corner++) {
-    if (cancelled()) return expectations.map(() => "cancelled");
+    if (yield) return expectations.map(() => "cancelled");
     const positions = Array.from({ length: count }, (_, i) => ((corner >> i) & 1 ? 1 : -1));
     expectations.forEach((expectation, i) => {
       worst[i] = worse(worst[i], explorer, expectation, positions);
@@ -78,11 +75,11 @@ function worse(so: Worst, explorer: Explorer, expectation: Expectation, position
 }
 
 /** Where each draw's own line through the nominal point ends worst, then single flips of that corner. */
-function pointedCorner(explorer: Explorer, expectation: Expectation, cancelled: () => boolean): Worst {
+function* pointedCorner(explorer: Explorer, expectation: Expectation): Steps<Worst> {
   const nominal = explorer.draws.map(() => 0);
   const positions: number[] = [];
   for (let draw = 0; draw < nominal.length; draw++) {
-    if (cancelled()) return "cancelled";
+    if (yield) return "cancelled";
     const ends = [-1, 1].map((end) =>
       explorer.excess(
         expectation,
@@ -94,15 +91,10 @@ function pointedCorner(explorer: Explorer, expectation: Expectation, cancelled: 
     if ("reason" in high) return high;
     positions.push(high.excess >= low.excess ? 1 : -1);
   }
-  return flipped(explorer, expectation, positions, cancelled);
+  return yield* flipped(explorer, expectation, positions);
 }
 
-function flipped(
-  explorer: Explorer,
-  expectation: Expectation,
-  from: Positions,
-  cancelled: () => boolean,
-): Worst {
+function* flipped(explorer: Explorer, expectation: Expectation, from: Positions): Steps<Worst> {
   let worst: Worst = worse(
     { positions: from, excess: Number.NEGATIVE_INFINITY, proven: false },
     explorer,
@@ -112,7 +104,7 @@ function flipped(
   for (let round = 0; round < ROUNDS; round++) {
     const before: Worst = worst;
     for (let draw = 0; draw < from.length; draw++) {
-      if (cancelled()) return "cancelled";
+      if (yield) return "cancelled";
       if (worst === "cancelled" || "reason" in worst) return worst;
       const other: Positions = worst.positions.map((position, i) => (i === draw ? -position : position));
       worst = worse(worst, explorer, expectation, other);
@@ -122,12 +114,7 @@ function flipped(
   return worst;
 }
 
-function insideSearch(
-  explorer: Explorer,
-  expectation: Expectation,
-  corner: WorstFound,
-  cancelled: () => boolean,
-): Worst {
+function* insideSearch(explorer: Explorer, expectation: Expectation, corner: WorstFound): Steps<Worst> {
   let worst = corner;
   const nominal = explorer.draws.map(() => 0);
   const line = explorer.isDear(expectation) ? DEAR_LINE : LINE;
@@ -136,12 +123,12 @@ function insideSearch(
     [corner.positions, CORNER_LINE],
   ] as const) {
     for (let draw = 0; draw < nominal.length; draw++) {
-      if (cancelled()) return "cancelled";
+      if (yield) return "cancelled";
       const found = largestAlong(explorer, expectation, through, draw, samples);
       if ("reason" in found) return found;
       if (!found.inside) continue;
       worst = { ...worst, proven: false };
-      const climbed = climb(explorer, expectation, found, cancelled);
+      const climbed: Worst = yield* climb(explorer, expectation, found);
       if (climbed === "cancelled" || "reason" in climbed) return climbed;
       if (climbed.excess > worst.excess) worst = climbed;
     }
@@ -150,18 +137,17 @@ function insideSearch(
 }
 
 /** From a point on, moves each draw in turn to the worst place on its line, until nothing gets worse. */
-function climb(
+function* climb(
   explorer: Explorer,
   expectation: Expectation,
   from: { readonly positions: Positions; readonly excess: number },
-  cancelled: () => boolean,
-): Worst {
+): Steps<Worst> {
   let worst: WorstFound = { positions: from.positions, excess: from.excess, proven: false };
   const line = explorer.isDear(expectation) ? DEAR_LINE : LINE;
   for (let round = 0; round < ROUNDS; round++) {
     const before = worst.excess;
     for (let draw = 0; draw < explorer.draws.length; draw++) {
-      if (cancelled()) return "cancelled";
+      if (yield) return "cancelled";
       const found = largestAlong(explorer, expectation, worst.positions, draw, line);
       if ("reason" in found) return found;
       if (found.excess > worst.excess) {
