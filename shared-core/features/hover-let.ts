@@ -2,12 +2,14 @@
 import { derivatives } from "../model/derivatives.ts";
 import { instantiate } from "../model/instantiate.ts";
 import type { Entity, Instance, Model, ParameterValue } from "../model/model.ts";
-import { ROLE, type StatementNode, type Tree } from "../syntax/tree.ts";
-import { formatNumber, formatQuantity, type UnitSystem } from "../units/show.ts";
+import type { StatementNode, Tree } from "../syntax/tree.ts";
+import { formatNumber, type UnitSystem } from "../units/show.ts";
 import { equalities } from "./hover-unit.ts";
+import { occurrences } from "./navigate-names.ts";
 import { type Block, lines, numeric, type Phrase } from "./readout.ts";
+import { saysItself } from "./readout-literal.ts";
 import { elasticModes, modesWorthSaying } from "./readout-modes.ts";
-import { isNothing, type Numbers, showHz, showMove, showParameter } from "./readout-numbers.ts";
+import { isNothing, type Numbers, showHz, showMove, showParameter, showQuantity } from "./readout-numbers.ts";
 import type { View } from "./view.ts";
 
 /** The first modes are always shown, and others that the number moves most. */
@@ -18,28 +20,38 @@ const TEN_PERCENT = 0.1;
 export function valueReadout(view: View, entity: Entity): readonly Block[] {
   const { model, units } = view;
   // Putting the numbers in is cheap, and these belong to the text as it stands even while others are awaited.
-  const parameter = instantiate(model, 0).parameters.get(entity.name);
-  const value = parameter === undefined ? [] : valueLines(parameter, units);
+  const instance = instantiate(model, 0);
+  const parameter = instance.parameters.get(entity.name);
+  const value = parameter === undefined ? [] : valueLines(parameter, computedText(instance, entity), units);
   return [
     lines(...value, entity.file === undefined ? undefined : `from \`${entity.file}\``),
     lines(...caseLines(model, entity.name, units), ...useLines(view, entity)),
   ];
 }
 
-function valueLines(parameter: ParameterValue, units: UnitSystem): readonly (Phrase | undefined)[] {
-  const { value, written, low, high, range } = parameter;
-  const literal = /^[-+\d.\s]/.test(written);
-  const band =
+/** The value of an expression in the unit in which it writes that kind of number; undefined for a literal. */
+function computedText(instance: Instance, { name, node }: Entity): Phrase | undefined {
+  const parameter = instance.parameters.get(name);
+  const item = node.value?.[0];
+  if (parameter === undefined || item?.kind !== "value" || saysItself(item.expression)) return undefined;
+  return showQuantity(parameter, "as-written", instance, item.expression);
+}
+
+function valueLines(
+  parameter: ParameterValue,
+  computed: Phrase | undefined,
+  units: UnitSystem,
+): readonly (Phrase | undefined)[] {
+  const { value, low, high, range } = parameter;
+  const written = parameter.written.replace(/\s+/g, " ");
+  const shown = (each: number): Phrase => showParameter(parameter, each, units);
+  return [
+    equalities(computed ?? written, value, parameter),
+    computed === undefined ? undefined : `written: \`${written.replaceAll("`", "")}\``,
     low === undefined || high === undefined
       ? undefined
-      : `tolerance: ${showParameter(parameter, low, units)} to ${showParameter(parameter, high, units)}${shareOfBand(parameter)}`;
-  return [
-    equalities(literal ? written.replace(/\s+/g, " ") : formatQuantity(parameter, {}), value, parameter),
-    literal ? undefined : `written: \`${written.replace(/\s+/g, " ").replaceAll("`", "")}\``,
-    band,
-    range === undefined
-      ? undefined
-      : `may move within ${showParameter(parameter, range[0], units)} to ${showParameter(parameter, range[1], units)}`,
+      : `tolerance: ${shown(low)} to ${shown(high)}${shareOfBand(parameter)}`,
+    range === undefined ? undefined : `may move within ${shown(range[0])} to ${shown(range[1])}`,
   ];
 }
 
@@ -79,33 +91,8 @@ const MOST_USES = 8;
 
 /** Names of the statements of a file that use a number, in order; an unnamed one by its keyword. */
 export function usersOf(tree: Tree, name: string): readonly string[] {
-  const users = new Set<string>();
-  for (const statement of tree.statements) {
-    if (!hides(statement, name) && uses(tree, statement, name)) users.add(labelOf(statement));
-  }
-  return [...users];
-}
-
-function uses(tree: Tree, statement: StatementNode, name: string): boolean {
-  const isCase = statement.keyword.text === "case";
-  for (let i = statement.first; i < statement.last; i++) {
-    const { offset, length } = tree.tokens[i];
-    const role = tree.roles[i];
-    if (length !== name.length || (role !== ROLE.reference && !(isCase && role === ROLE.key))) continue;
-    if (tree.text.startsWith(name, offset) && tree.text[offset - 1] !== ".") return true;
-  }
-  return false;
-}
-
-/** A kit whose parameter or end has that name means its own. */
-function hides({ slots }: StatementNode, name: string): boolean {
-  const { parameters, a, b } = slots;
-  const isIt = (slot: typeof a): boolean => slot?.kind === "name" && slot.text === name;
-  return (
-    isIt(a) ||
-    isIt(b) ||
-    (parameters?.kind === "parameters" && parameters.items.some((each) => each.text === name))
-  );
+  const uses = occurrences(tree).filter(({ key, role }) => key === name && role === "reference");
+  return [...new Set(uses.map(({ statement }) => labelOf(statement)))];
 }
 
 function labelOf({ keyword, slots }: StatementNode): string {
