@@ -25,9 +25,9 @@ export function run(call: Call): Promise<number> {
   });
 }
 
-/** An unread file outweighs a failed expectation: the run did not do what it was asked. */
+/** An unread file or a broken rule outweighs a failed expectation: the run did not do what it was asked. */
 export function exitStatus(files: readonly FileOutcome[]): number {
-  if (files.some((file) => !file.readable)) return EXIT.cannotRun;
+  if (files.some((file) => !file.readable || file.report.faults.length > 0)) return EXIT.cannotRun;
   return files.every(holds) ? EXIT.holds : EXIT.fails;
 }
 

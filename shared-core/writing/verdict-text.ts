@@ -131,11 +131,17 @@ function verdictLine(file: Extract<FileOutcome, { readable: true }>, ink: Ink): 
   const verdicts = file.report.cases.flatMap((each) => each.verdicts);
   const held = verdicts.filter((verdict) => verdict.holds === true).length;
   const parts = [
-    ...(verdicts.length ? [`holds ${held} of ${verdicts.length}`] : ["nothing expected"]),
+    verdicts.length ? `holds ${held} of ${verdicts.length}` : noVerdicts(file.report),
     ...counted(file.report.diagnostics),
   ];
   const paint = holds(file) ? ink.good : ink.bad;
   return `${file.path}: ${paint(parts.join(", "))}`;
+}
+
+/** An error in the model leaves its expectations unjudged; that is not the same as expecting nothing. */
+function noVerdicts({ model }: FileReport): string {
+  const waiting = model.tree.statements.filter((statement) => statement.keyword.text === "expect").length;
+  return waiting === 0 ? "nothing expected" : `${waiting} not judged`;
 }
 
 function counted(diagnostics: readonly Diagnostic[]): string[] {

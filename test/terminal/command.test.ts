@@ -80,6 +80,7 @@ describe("thrum check", () => {
     const { status, stdout } = thrum(["check", "models/broken.thrum"]);
     expect(status).toBe(1);
     expect(stdout).toMatch(/^models\/broken\.thrum:8:38: error unit-mismatch .*/m);
+    expect(stdout).toMatch(/^models\/broken\.thrum: 1 not judged, 1 error$/m);
   });
 
   it("reports the others when one file cannot be read, and ends with 2", () => {
@@ -148,6 +149,11 @@ describe("thrum answer", () => {
     expect(readdirSync(join(folder, "out")).sort()).toEqual(["modes.csv", "modes.svg", "run.csv", "run.svg"]);
     expect(stderr).toContain("wrote out/run.csv");
     expect(get("out/run.svg")).toMatch(/^<svg xmlns/);
+  });
+
+  it("tells a folder from a file", () => {
+    const { status, stdout, stderr } = thrum(["answer", "models"]);
+    expect([status, stdout, stderr]).toEqual([2, "", "thrum: models cannot be read: it is a folder\n"]);
   });
 
   it("answers only what is named, and knows the nearest name", () => {
