@@ -18,7 +18,9 @@ import {
   smallSubdiagonal,
 } from "./real-schur.ts";
 
-/** Blocks up to this order go to the plain double shift. */
+/** Whole matrices up to this order go to the plain double shift, which is quicker there; found by trial. */
+const PLAIN = 120;
+/** Active blocks of a larger matrix up to this order do as well. */
 const SMALL = 64;
 /** A sweep is skipped when early deflation took at least this share of its window; LAPACK's 14 %. */
 const SKIP_SHARE = 0.14;
@@ -43,7 +45,7 @@ export function multishiftQr(
   kernel: Kernel,
   zt?: Float64Array,
 ): number {
-  if (n <= SMALL) return doubleShiftQr(h, n, 0, n - 1, zt !== undefined, values, zt);
+  if (n <= PLAIN) return doubleShiftQr(h, n, 0, n - 1, zt !== undefined, values, zt);
   const problem: Problem = { h, n, zt, kernel, scratch: new Float64Array(n * n) };
   for (let r = 2; r < n; r++) h.fill(0, r * n, r * n + r - 1);
   let bottom = n - 1;

@@ -11,7 +11,8 @@
 const EXCEPTIONAL = 10;
 /** Steps allowed in all, for each row. */
 const STEPS_PER_ROW = 30;
-const SMALLEST = 2 ** -1022;
+/** Subdiagonals below this, in matrices of entries about one, count as zero: their squares would underflow. */
+const SMALLEST = 1e-140;
 
 /** Values found, as real and imaginary parts; pairs adjacent, positive imaginary part first. */
 export type SchurValues = { re: Float64Array; im: Float64Array };
@@ -62,11 +63,10 @@ export function doubleShiftQr(
 /** Row of the lowest negligible subdiagonal at or above i, or `lo`. */
 export function smallSubdiagonal(h: Float64Array, n: number, lo: number, hi: number, i: number): number {
   const ulp = Number.EPSILON;
-  const floor = SMALLEST * (n / ulp);
   let k = i;
   for (; k > lo; k--) {
     const below = Math.abs(h[k * n + k - 1]);
-    if (below <= floor) break;
+    if (below <= SMALLEST) break;
     const previous = h[(k - 1) * n + k - 1];
     const own = h[k * n + k];
     let size = Math.abs(previous) + Math.abs(own);
@@ -80,7 +80,7 @@ export function smallSubdiagonal(h: Float64Array, n: number, lo: number, hi: num
     const gap = Math.abs(previous - own);
     const [aa, bb] = Math.abs(own) > gap ? [Math.abs(own), gap] : [gap, Math.abs(own)];
     const s = aa + ab;
-    if (ba * (ab / s) <= Math.max(floor, ulp * (bb * (aa / s)))) break;
+    if (ba * (ab / s) <= Math.max(SMALLEST, ulp * (bb * (aa / s)))) break;
   }
   return k;
 }
