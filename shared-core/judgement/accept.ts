@@ -40,14 +40,18 @@ export function sortAccepted(
   return { said, accepted };
 }
 
+/** Warnings and hints that come with the text. */
+const TEXT_CODES: ReadonlySet<string> = new Set(["loose-note", "version-missing", "unused-number"]);
+
 function unusedAccepts(
   model: Model,
   used: ReadonlySet<NoteNode>,
   done: ReadonlySet<CostClass>,
 ): readonly Diagnostic[] {
   return [...model.accepted.values()].flat().flatMap(({ code, note }) => {
-    const cost = RULES.find((rule) => rule.code === code)?.cost;
-    if (used.has(note) || (cost !== undefined && !done.has(cost))) return [];
+    const cost = TEXT_CODES.has(code) ? "text" : RULES.find((rule) => rule.code === code)?.cost;
+    // What no rule of this version can say is not known to be unused.
+    if (used.has(note) || cost === undefined || (!TEXT_CODES.has(code) && !done.has(cost))) return [];
     return [unusedAccept(model, note, code)];
   });
 }

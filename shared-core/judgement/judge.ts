@@ -1,8 +1,6 @@
 /** Judging a model: every case answered, every rule asked, every expectation held against its limit. */
-
 import type { Analysis } from "../answers/analysis.ts";
 import { analyse } from "../answers/analysis-of.ts";
-import type { Diagnostic } from "../diagnostics/diagnostic.ts";
 import { evaluateExpression, instantiate } from "../model/instantiate.ts";
 import type { Instance, Model, Overrides } from "../model/model.ts";
 import { judgeSteps, judgeWith } from "./judge-with.ts";
@@ -49,5 +47,3 @@ const SOURCES: Sources = {
     return analysis;
   },
 };
-
-export type { Diagnostic };

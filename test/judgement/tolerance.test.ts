@@ -55,6 +55,13 @@ describe("worst case over bands", () => {
     expect(found.trials).toBeLessThan(500);
   });
 
+  test("of hundreds of draws ends, with the worst it has seen", () => {
+    const found = worst((all) => all.reduce((sum, s) => sum + s, 0), 600);
+    expect(found.trials).toBeLessThan(5100);
+    expect(found.excess).toBeCloseTo(600, 6);
+    expect(found.proven).toBe(false);
+  });
+
   test("says why when a corner cannot be computed", () => {
     const explorer = new Explorer(
       fakeTrial(([a]) => (a > 0.9 ? Number.NaN : a), 0, fakeDraws(1)),

@@ -53,6 +53,14 @@ interface Pusher {
  * its growth shows in the modes.
  */
 export function staticInstabilityOf(assembly: Assembly): StaticInstability | undefined {
+  if (!KNOWN.has(assembly)) KNOWN.set(assembly, findInstability(assembly));
+  return KNOWN.get(assembly);
+}
+
+/** Three rules ask for it. */
+const KNOWN = new WeakMap<Assembly, StaticInstability | undefined>();
+
+function findInstability(assembly: Assembly): StaticInstability | undefined {
   const terms = systemTerms(assembly).stiffness;
   const n = assembly.free;
   if (n === 0 || terms.every(({ row, column, value }) => row === column && value >= 0)) return undefined;

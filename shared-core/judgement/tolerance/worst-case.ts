@@ -5,6 +5,8 @@ import { largestAlong } from "./line.ts";
 
 /** Most draws whose corners are all visited: 4096 of them. */
 const MOST_CORNERS = 12;
+/** Trials after which a search ends with the worst it has seen: no model may keep a build server for hours. */
+const MOST_TRIALS = 5000;
 /** Rounds over all draws of a search; each moves every draw to the worst place on its line. */
 const ROUNDS = 4;
 
@@ -80,6 +82,10 @@ function* pointedCorner(explorer: Explorer, expectation: Expectation): Steps<Wor
   const positions: number[] = [];
   for (let draw = 0; draw < nominal.length; draw++) {
     if (yield) return "cancelled";
+    if (explorer.count > MOST_TRIALS) {
+      positions.push(1);
+      continue;
+    }
     const ends = [-1, 1].map((end) =>
       explorer.excess(
         expectation,
@@ -103,7 +109,7 @@ function* flipped(explorer: Explorer, expectation: Expectation, from: Positions)
   );
   for (let round = 0; round < ROUNDS; round++) {
     const before: Worst = worst;
-    for (let draw = 0; draw < from.length; draw++) {
+    for (let draw = 0; draw < from.length && explorer.count <= MOST_TRIALS; draw++) {
       if (yield) return "cancelled";
       if (worst === "cancelled" || "reason" in worst) return worst;
       const other: Positions = worst.positions.map((position, i) => (i === draw ? -position : position));
@@ -124,6 +130,7 @@ function* insideSearch(explorer: Explorer, expectation: Expectation, corner: Wor
   ] as const) {
     for (let draw = 0; draw < nominal.length; draw++) {
       if (yield) return "cancelled";
+      if (explorer.count > MOST_TRIALS) return { ...worst, proven: false };
       const found = largestAlong(explorer, expectation, through, draw, samples);
       if ("reason" in found) return found;
       if (!found.inside) continue;
@@ -146,7 +153,7 @@ function* climb(
   const line = explorer.isDear(expectation) ? DEAR_LINE : LINE;
   for (let round = 0; round < ROUNDS; round++) {
     const before = worst.excess;
-    for (let draw = 0; draw < explorer.draws.length; draw++) {
+    for (let draw = 0; draw < explorer.draws.length && explorer.count <= MOST_TRIALS; draw++) {
       if (yield) return "cancelled";
       const found = largestAlong(explorer, expectation, worst.positions, draw, line);
       if ("reason" in found) return found;
