@@ -1,13 +1,19 @@
 /**
  * Damped modes of a chain: (λ² I + λ C + K) ψ = 0 with C and K symmetric tridiagonal.
  *
- * Method: undamped frequencies by QL, first guesses from each mode's own damping, all values together by
- * Ehrlich-Aberth steps on the determinant (O(n) each), then one or two Rayleigh corrections a value with vectors
- * from the twisted factorisation (Dhillon & Parlett, Linear Algebra Appl. 387, 2004, here complex symmetric).
- * The result is checked: sums of the values and of their squares against traces, every residual, and no value
- * found twice. Where a check fails, nothing is returned and the caller takes the dense way.
+ * Method: undamped frequencies by QL, first guesses from each mode's own damping, all values together on the
+ * determinant (modes-together.ts, O(n) a step), Rayleigh corrections with vectors from the twisted factorisation
+ * (Dhillon & Parlett, Linear Algebra Appl. 387, 2004, here complex symmetric).
  */
-import { ehrlichAberth, type RootItems } from "./ehrlich-aberth.ts";
+import type { Pairs } from "./modal-pairs.ts";
+import {
+  type DeterminantForm,
+  guessMode,
+  rigidStarts,
+  type Starts,
+  solveTogether,
+} from "./modes-together.ts";
+import { maxAbs } from "./products.ts";
 import { implicitQl, sortAscending } from "./tridiagonal-ql.ts";
 
 /** Diagonals (n) and off-diagonals (n − 1) of C and K, scaled so that ‖K‖ is about one. */
@@ -19,10 +25,8 @@ export type ChainQuadratic = {
 };
 
 /** The 2n values, pairs adjacent with the positive imaginary part first, and their vectors as rows. */
-export type ChainModes = { re: Float64Array; im: Float64Array; rowsRe: Float64Array; rowsIm: Float64Array };
+export type ChainModes = Pairs;
 
-/** Newton steps below this relative size leave the rest to the Rayleigh corrections, which square the error. */
-const COARSE = 1e-7;
 /** Corrections allowed for one value. */
 const POLISH_CAP = 6;
 /** Smallest pivot, relative to entries of size one: a zero pivot becomes this instead. */
@@ -32,7 +36,7 @@ const PIVOT_FLOOR = 1e-290;
 export function chainModes(q: ChainQuadratic): ChainModes | undefined {
   const n = q.k.length;
   const parts = connectedParts(q);
-  const out: ChainModes = {
+  const out: Pairs = {
     re: new Float64Array(2 * n),
     im: new Float64Array(2 * n),
     rowsRe: new Float64Array(2 * n * n),
@@ -46,7 +50,9 @@ export function chainModes(q: ChainQuadratic): ChainModes | undefined {
       k: q.k.subarray(first, end),
       kOff: q.kOff.subarray(first, Math.max(first, end - 1)),
     };
-    if (!solvePart(part, n, first, at, out)) return undefined;
+    const twist = new Twist(part);
+    const starts = firstGuesses(part, twist);
+    if (!starts || !solveTogether(twist, starts, out, n, first, at)) return undefined;
     at += 2 * (end - first);
   }
   return out;
@@ -64,119 +70,24 @@ function connectedParts(q: ChainQuadratic): [number, number][] {
   return parts;
 }
 
-/** Solves one connected part into `out`: values from `at` on, vectors at coordinates `first` … */
-function solvePart(q: ChainQuadratic, n: number, first: number, at: number, out: ChainModes): boolean {
-  const size = q.k.length;
-  const twist = new Twist(q);
-  const starts = firstGuesses(q, twist);
-  if (!starts) return false;
-  const { items, rigid, zeros } = starts;
-  if (!ehrlichAberth(items, zeros, COARSE, (re, im, g) => twist.logDerivative(re, im, g))) return false;
-  let t = at;
-  for (let z = 0; z < zeros; z++, t++) {
-    for (let i = 0; i < size; i++) out.rowsRe[t * n + first + i] = rigid[i];
-  }
-  for (let j = 0; j < items.re.length; j++) {
-    const polished = twist.polish(items.re[j], items.im[j]);
-    if (!polished) return false;
-    out.re[t] = twist.re;
-    out.im[t] = twist.im;
-    out.rowsRe.set(twist.vectorRe, t * n + first);
-    out.rowsIm.set(twist.vectorIm, t * n + first);
-    t++;
-    if (items.im[j] === 0) continue;
-    out.re[t] = twist.re;
-    out.im[t] = -twist.im;
-    out.rowsRe.set(twist.vectorRe, t * n + first);
-    for (let i = 0; i < size; i++) out.rowsIm[t * n + first + i] = -twist.vectorIm[i];
-    t++;
-  }
-  return t === at + 2 * size && allThere(q, out, at, t) && allDistinct(out, at, t, zeros);
-}
-
-/** Σλ = −tr C and Σλ² = tr C² − 2 tr K, to what rounding allows: a value found twice for another shows here. */
-function allThere(q: ChainQuadratic, out: ChainModes, at: number, end: number): boolean {
-  const size = q.k.length;
-  let sum = 0;
-  let squares = 0;
-  let scale = 0;
-  for (let t = at; t < end; t++) {
-    sum += out.re[t];
-    squares += (out.re[t] - out.im[t]) * (out.re[t] + out.im[t]);
-    scale = Math.max(scale, Math.abs(out.re[t]), Math.abs(out.im[t]));
-  }
-  let trace = 0;
-  let traceSquares = 0;
-  for (let i = 0; i < size; i++) {
-    trace += q.c[i];
-    traceSquares += q.c[i] * q.c[i] - 2 * q.k[i];
-    if (i + 1 < size) traceSquares += 2 * q.cOff[i] * q.cOff[i];
-  }
-  const tolerance = 1e-13 * size;
-  return (
-    Math.abs(sum + trace) <= tolerance * scale &&
-    Math.abs(squares - traceSquares) <= tolerance * scale * scale
-  );
-}
-
-/**
- * No two values of a connected chain may agree: such a value is defective (its matrix has rank n − 1), and the
- * corrections do not converge on it; agreement within 1e-9 means one of two neighbours was found twice.
- */
-function allDistinct(out: ChainModes, at: number, end: number, zeros: number): boolean {
-  const order = Array.from({ length: end - at - zeros }, (_, t) => at + zeros + t);
-  order.sort((a, b) => out.im[a] - out.im[b] || out.re[a] - out.re[b]);
-  for (let s = 0; s < order.length; s++) {
-    const a = order[s];
-    const near = 1e-9 * (Math.abs(out.re[a]) + Math.abs(out.im[a]));
-    for (let r = s + 1; r < order.length && out.im[order[r]] - out.im[a] <= near; r++) {
-      if (Math.abs(out.re[order[r]] - out.re[a]) <= near) return false;
-    }
-  }
-  return true;
-}
-
-type Starts = { items: RootItems; rigid: Float64Array; zeros: number };
-
-/** Roots of z² + d z + ω² for each undamped mode, d its own damping; a rigid-body mode is set aside exactly. */
+/** First guesses of one part; a rigid-body motion is set aside exactly. */
 function firstGuesses(q: ChainQuadratic, twist: Twist): Starts | undefined {
   const n = q.k.length;
   const values = Float64Array.from(q.k);
   if (!implicitQl(values, Float64Array.from(q.kOff), n)) return undefined;
   sortAscending(values, n);
-  const items: RootItems = { re: [], im: [] };
-  const rigid = new Float64Array(n);
-  let zeros = 0;
+  const items = { re: [], im: [] };
+  let zeroVectors: readonly Float64Array[] | undefined = [];
   for (let j = 0; j < n; j++) {
     twist.undampedVector(values[j]);
-    const { vectorRe: v } = twist;
-    const d = bandForm(q.c, q.cOff, v);
-    // A chain has at most one rigid-body motion, and rounding hides anything softer.
+    const v = twist.vectorRe;
+    // A connected chain has at most one rigid-body motion, and rounding hides anything softer.
     if (j === 0 && Math.abs(values[0]) <= 8 * n * Number.EPSILON) {
-      rigid.set(v);
-      zeros = Math.abs(d) <= 8 * n * Number.EPSILON * maxOf(q.c) ? 2 : 1;
-      if (zeros === 1) {
-        items.re.push(-d);
-        items.im.push(0);
-      }
-      continue;
-    }
-    const inner = 0.25 * d * d - values[j];
-    if (inner < 0) {
-      items.re.push(-0.5 * d);
-      items.im.push(Math.sqrt(-inner));
-    } else {
-      const large = -(0.5 * d + (d >= 0 ? 1 : -1) * Math.sqrt(inner));
-      const small = values[j] / large;
-      items.re.push(large, small === large ? small * 0.999 : small);
-      items.im.push(0, 0);
-    }
+      zeroVectors = rigidStarts([Float64Array.from(v)], (a) => bandForm(q.c, q.cOff, a), maxAbs(q.c), items);
+      if (!zeroVectors) return undefined;
+    } else guessMode(items, values[j], bandForm(q.c, q.cOff, v));
   }
-  return { items, rigid, zeros };
-}
-
-function maxOf(v: Float64Array): number {
-  return v.reduce((most, x) => Math.max(most, Math.abs(x)), 0);
+  return { items, zeroVectors };
 }
 
 /** vᵀ A v for a tridiagonal A. */
@@ -189,16 +100,29 @@ function bandForm(diagonal: Float64Array, off: Float64Array, v: Float64Array): n
   return sum;
 }
 
+function tracesOf(q: ChainQuadratic): DeterminantForm["traces"] {
+  const traces = { c: 0, cSquared: 0, k: 0 };
+  for (let i = 0; i < q.k.length; i++) {
+    traces.c += q.c[i];
+    traces.k += q.k[i];
+    traces.cSquared += q.c[i] * q.c[i] + (i > 0 ? 2 * q.cOff[i - 1] * q.cOff[i - 1] : 0);
+  }
+  return traces;
+}
+
 /** Workspace and results of factorisations of Q(z) = z² I + z C + K from both ends. */
-class Twist {
+class Twist implements DeterminantForm {
+  readonly size: number;
+  readonly traces: DeterminantForm["traces"];
   /** Value after `polish`. */
-  re = 0;
-  im = 0;
+  readonly value = { re: 0, im: 0 };
   /** Vector of the last twisted factorisation, unit 2-norm after `polish`. */
   readonly vectorRe: Float64Array;
   readonly vectorIm: Float64Array;
   private readonly q: ChainQuadratic;
   private readonly n: number;
+  /** Bound of |z|‖C‖ + ‖K‖ for |z| ≤ 1, for judging residuals. */
+  private readonly scale: number;
   private readonly downRe: Float64Array;
   private readonly downIm: Float64Array;
   private readonly upRe: Float64Array;
@@ -207,6 +131,9 @@ class Twist {
   constructor(q: ChainQuadratic) {
     const n = q.k.length;
     this.q = q;
+    this.size = n;
+    this.traces = tracesOf(q);
+    this.scale = 1 + 2 * maxAbs(q.c) + 2 * maxAbs(q.cOff);
     this.n = n;
     this.vectorRe = new Float64Array(n);
     this.vectorIm = new Float64Array(n);
@@ -292,16 +219,26 @@ class Twist {
       if (!(move <= 1e-3 * size) || k < 0) return false;
       x -= moveR;
       if (zi > 0) y -= moveI;
-      // The vector in hand belongs to the value before the move, so the move itself must be rounding.
-      if (move <= 4 * Number.EPSILON * size || (move >= 0.25 * before && move <= 1e-11 * size)) {
-        this.re = x;
-        this.im = y;
+      // The vector in hand belongs to the value before the move, so the move itself must be rounding: of the
+      // value, or (stagnating) of the residual γ against the size of Q.
+      const stuck = move >= 0.25 * before && this.residual() <= 8 * Number.EPSILON * this.scale;
+      if (move <= 4 * Number.EPSILON * size || stuck) {
+        this.value.re = x;
+        this.value.im = y;
         this.normalise();
         return zi === 0 || y > 0;
       }
       before = move;
     }
     return false;
+  }
+
+  /** ‖Q ψ‖ / ‖ψ‖ */
+  private residual(): number {
+    const { n, vectorRe: x, vectorIm: y } = this;
+    let sum = 0;
+    for (let i = 0; i < n; i++) sum += x[i] * x[i] + y[i] * y[i];
+    return Math.sqrt((this.gammaRe * this.gammaRe + this.gammaIm * this.gammaIm) / sum);
   }
 
   private gammaRe = 0;
