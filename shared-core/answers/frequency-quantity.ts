@@ -81,6 +81,35 @@ export function steadyValue(
   out[1] = im;
 }
 
+/**
+ * What the quantity would be if every coordinate moved as far as the one that moves furthest, all in step: the
+ * size against which a value near a pole is only rounding.
+ */
+export function steadyScale({ linear, products }: SteadyQuantity, groups: readonly GroupState[]): number {
+  let sum = 0;
+  for (const group of groups) {
+    const most = furthest(group);
+    sum += termScale(linear, group, most);
+    for (const { factor, a, b } of products) {
+      sum += Math.abs(factor) * termScale(a, group, most) * termScale(b, group, most);
+    }
+  }
+  return sum;
+}
+
+function furthest({ xRe, xIm }: GroupState): number {
+  let most = 0;
+  for (let i = 0; i < xRe.length; i++) most = Math.max(most, Math.abs(xRe[i]), Math.abs(xIm[i]));
+  return most;
+}
+
+function termScale(terms: FlatTerms, { omega }: GroupState, most: number): number {
+  let sum = 0;
+  for (let t = 0; t < terms.count; t++)
+    sum += Math.abs(terms.factor[t]) * omega ** terms.derivative[t] * most;
+  return sum;
+}
+
 function productValue({ products }: SteadyQuantity, groups: readonly GroupState[]): number {
   let sum = 0;
   for (let p = 0; p < products.length; p++) {

@@ -11,7 +11,7 @@ import { findRoot } from "../numerics/roots.ts";
 import type { FrequencyResponse } from "./analysis.ts";
 import type { Peak } from "./answer.ts";
 import { type Pole, sampleFrequencies } from "./frequency-poles.ts";
-import { type SteadyQuantity, steadyValue } from "./frequency-quantity.ts";
+import { type SteadyQuantity, steadyScale, steadyValue } from "./frequency-quantity.ts";
 import { type SampledStates, sampledStates } from "./frequency-samples.ts";
 import type { SteadySolution } from "./frequency-solution.ts";
 
@@ -30,6 +30,8 @@ const BESIDE = 1e-6;
 /** Distance of the two looks by which an undamped pole is found to be seen: a pole doubles the value between them. */
 const LOOK = 1e-7;
 const SEEN = 1.2;
+/** Share of the furthest motion near a pole below which a value is rounding: the mode does not move there. */
+const UNSEEN = 1e-10;
 
 /** Values of one quantity along the axis. */
 export type Reader = (axisHz: number) => Outcome<readonly [number, number]>;
@@ -63,7 +65,7 @@ export function frequencyResponseOf(
   const searchFor = (ref: QuantityRef): Search => {
     const quantity = quantityOf(ref);
     const reader = poleAwareReader(solution.quick, undamped(), quantity);
-    return { reader, quantity, poles: poles(), samples };
+    return { solution: solution.quick, reader, quantity, poles: poles(), samples };
   };
   return {
     at: (quantity, frequencyHz) =>
@@ -87,7 +89,7 @@ export function poleAwareReader(
       ({ atHz, halfWidthHz }) => halfWidthHz === 0 && Math.abs(axisHz - atHz) <= TOO_NEAR * atHz,
     );
     if (pole === undefined) return plain(axisHz);
-    if (seesPole(plain, pole)) return fail(undampedReason(pole));
+    if (seesPole(solution, quantity, pole)) return fail(undampedReason(pole));
     const low = plain(pole.atHz * (1 - BESIDE));
     const high = plain(pole.atHz * (1 + BESIDE));
     if (!low.ok) return low;
@@ -106,15 +108,18 @@ function plainReader(solution: SteadySolution["at"], quantity: SteadyQuantity): 
   };
 }
 
-/** Whether the value grows without bound towards an undamped pole. */
-export function seesPole(reader: Reader, pole: Pole): boolean {
+/** Whether the value grows without bound towards an undamped pole, and by more than rounding does. */
+export function seesPole(solution: SteadySolution["at"], quantity: SteadyQuantity, pole: Pole): boolean {
+  const out = new Float64Array(2);
   const sizeAt = (share: number) => {
-    const got = reader(pole.atHz * (1 + share));
-    return got.ok ? Math.hypot(got.value[0], got.value[1]) : Number.POSITIVE_INFINITY;
+    const states = solution(pole.atHz * (1 + share));
+    if (!states.ok) return Number.POSITIVE_INFINITY;
+    steadyValue(quantity, states.value, out);
+    const size = Math.hypot(out[0], out[1]);
+    return size > UNSEEN * steadyScale(quantity, states.value) ? size : 0;
   };
   const near = Math.max(sizeAt(LOOK), sizeAt(-LOOK));
-  const far = Math.max(sizeAt(2 * LOOK), sizeAt(-2 * LOOK));
-  return near > SEEN * far;
+  return near > 0 && near > SEEN * Math.max(sizeAt(2 * LOOK), sizeAt(-2 * LOOK));
 }
 
 export const undampedReason = ({ name, atHz }: Pole): string =>
@@ -130,6 +135,7 @@ export interface Sample {
 
 /** What a search needs: the quantity, the poles and the states along the axis. */
 interface Search {
+  readonly solution: SteadySolution["at"];
   readonly reader: Reader;
   readonly quantity: SteadyQuantity;
   readonly poles: readonly Pole[];
@@ -165,7 +171,7 @@ const sampleAt = (f: number, re: number, im: number): Sample => ({ f, re, im, si
 
 function largest(search: Search, from: number, to: number): Outcome<Peak> {
   if (!(0 <= from && from <= to)) return fail("the band must rise from a frequency to a higher one");
-  const unbounded = unboundedReason(search.reader, search.poles, from, to);
+  const unbounded = unboundedReason(search, from, to);
   if (unbounded !== undefined) return fail(unbounded);
   const samples = samplesOf(search, from, to);
   return samples.ok ? succeed(polishedPeak(search.reader, samples.value)) : fail(samples.reason);
@@ -173,14 +179,13 @@ function largest(search: Search, from: number, to: number): Outcome<Peak> {
 
 /** Why the quantity has no largest value in the band, if so: an undamped pole that it sees, a body that drifts. */
 export function unboundedReason(
-  reader: Reader,
-  poles: readonly Pole[],
+  { solution, quantity, poles, reader }: Pick<Search, "solution" | "quantity" | "poles" | "reader">,
   from: number,
   to: number,
 ): string | undefined {
   for (const pole of poles) {
     const inside = from * (1 - TOO_NEAR) <= pole.atHz && pole.atHz <= to * (1 + TOO_NEAR);
-    if (pole.halfWidthHz === 0 && inside && seesPole(reader, pole)) return undampedReason(pole);
+    if (pole.halfWidthHz === 0 && inside && seesPole(solution, quantity, pole)) return undampedReason(pole);
   }
   if (from > 0) return undefined;
   const first = reader(from);

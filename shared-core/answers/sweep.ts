@@ -11,7 +11,6 @@ import {
   frequencyResponseOf,
   poleAwareReader,
   polishedPeak,
-  type Reader,
   type Sample,
   unboundedReason,
 } from "./frequency-response.ts";
@@ -112,22 +111,21 @@ export function sweepAnswer(model: SteadyModel, ask: SweepAsk): Outcome<SweepAns
   const peaks = new Map<string, Peak | { reason: string }>();
   ask.of.forEach((ref, q) => {
     series.set(ref.text, { unit: ref.unit, re: table.re[q], im: table.im[q] });
-    peaks.set(
-      ref.text,
-      peakOf(poleAwareReader(solution.quick, poles, quantities[q]), poles, searched, q, ask),
-    );
+    peaks.set(ref.text, peakOf(solution.quick, poles, quantities[q], searched, q, ask));
   });
   return succeed({ kind: "sweep", frequencyHz: table.axis, series, peaks });
 }
 
 function peakOf(
-  reader: Reader,
+  solution: SteadySolution["at"],
   poles: readonly Pole[],
+  quantity: SteadyQuantity,
   { axis, re, im }: Values,
   q: number,
   { fromHz, toHz }: SweepAsk,
 ): Peak | { reason: string } {
-  const reason = unboundedReason(reader, poles, fromHz, toHz);
+  const reader = poleAwareReader(solution, poles, quantity);
+  const reason = unboundedReason({ solution, quantity, poles, reader }, fromHz, toHz);
   if (reason !== undefined) return { reason };
   const samples: Sample[] = [];
   for (let i = 0; i < axis.length; i++) {

@@ -537,29 +537,34 @@ function invariantBasis(
   count: number,
 ): Float64Array | undefined {
   const scale = normOf(a, n);
-  const clusters = clustersOf(roots, bad, scale);
-  const solvers: ((x: Float64Array) => Float64Array)[] = [];
-  for (const cluster of clusters) {
-    const solver = shiftedInverse(a, n, cluster, scale);
-    if (solver === undefined) return undefined;
-    solvers.push(solver);
-  }
   let at = 0;
   const out = new Float64Array(n * count);
-  for (let c = 0; c < clusters.length; c++) {
-    const width = clusters[c].members;
-    let x = startVectors(n, width);
-    let settled = false;
-    for (let sweep = 0; sweep < 40 && !settled; sweep++) {
-      x = solvers[c](x);
-      if (!orthonormalise(x, n, width)) return undefined;
-      settled = invariance(a, x, n, width) <= 1e-13 * scale;
-    }
-    if (!settled && invariance(a, x, n, width) > 1e-11 * scale) return undefined;
+  for (const cluster of clustersOf(roots, bad, scale)) {
+    const width = cluster.members;
+    const x = clusterBasis(a, n, cluster, scale);
+    if (x === undefined) return undefined;
     for (let k = 0; k < width; k++) for (let i = 0; i < n; i++) out[i * count + at + k] = x[i * width + k];
     at += width;
   }
   return out;
+}
+
+/** Near shifts part a cluster from its neighbours quickly but magnify rounding within it; far ones first. */
+const SHIFTS = [1e-2, 1e-3, 1e-4, 1e-6];
+
+function clusterBasis(a: Float64Array, n: number, cluster: Cluster, scale: number): Float64Array | undefined {
+  for (const share of SHIFTS) {
+    const offset = share * (Math.hypot(cluster.re, cluster.im) + 1e-3 * scale);
+    const solver = shiftedInverse(a, n, cluster, offset);
+    if (solver === undefined) continue;
+    let x = startVectors(n, cluster.members);
+    for (let sweep = 0; sweep < 30; sweep++) {
+      x = solver(x);
+      if (!orthonormalise(x, n, cluster.members)) break;
+      if (invariance(a, x, n, cluster.members) <= 1e-13 * scale) return x;
+    }
+  }
+  return undefined;
 }
 
 interface Cluster {
@@ -596,9 +601,8 @@ function shiftedInverse(
   a: Float64Array,
   n: number,
   cluster: Cluster,
-  scale: number,
+  offset: number,
 ): ((x: Float64Array) => Float64Array) | undefined {
-  const offset = 1e-4 * Math.hypot(cluster.re, cluster.im) + 1e-9 * scale;
   const re = cluster.re + offset;
   let matrix: Float64Array;
   if (cluster.im === 0) {
