@@ -1,5 +1,4 @@
 import type { LinearForm } from "../mechanics/assembly.ts";
-import { LineIndex } from "../text/line-index.ts";
 import type { Frame } from "./code.ts";
 import type { Findings } from "./findings.ts";
 import type { Plan, PlannedBind } from "./plan.ts";
@@ -17,6 +16,15 @@ interface Row {
   readonly supports: Map<number, number>;
 }
 
+/** Solved coordinates, and which of them read a free one. */
+interface Solved {
+  readonly rows: Map<number, Row>;
+  readonly readers: Map<number, Set<number>>;
+}
+
+/** Other binds named beside an inconsistent one. */
+const MOST_RELATED = 8;
+
 /** Relative size below which a coefficient is rounding: binds hold a few factors, each good to 1e-16. */
 const ZERO = 1e-12;
 
@@ -25,21 +33,21 @@ const ZERO = 1e-12;
  * be. A bind that says nothing new, or that leaves no motion, is an inconsistent-bind.
  */
 export function bindForms(plan: Plan, frame: Frame, findings: Findings): BoundForms {
-  const solved = new Map<number, Row>();
+  const solved: Solved = { rows: new Map(), readers: new Map() };
   const by = new Map<number, PlannedBind>();
   for (const bind of plan.binds) takeBind(bind, frame, solved, by, findings, plan);
   const freeIndex = new Map<number, number>();
   plan.coordinates.forEach((_, i) => {
-    if (!solved.has(i)) freeIndex.set(i, freeIndex.size);
+    if (!solved.rows.has(i)) freeIndex.set(i, freeIndex.size);
   });
-  const forms = plan.coordinates.map((_, i) => formOf(solved.get(i) ?? unitRow(i), freeIndex));
+  const forms = plan.coordinates.map((_, i) => formOf(solved.rows.get(i) ?? unitRow(i), freeIndex));
   return { free: freeIndex.size, forms };
 }
 
 function takeBind(
   bind: PlannedBind,
   frame: Frame,
-  solved: Map<number, Row>,
+  solved: Solved,
   by: Map<number, PlannedBind>,
   findings: Findings,
   plan: Plan,
@@ -73,8 +81,7 @@ const holdsStill = (bind: PlannedBind, frame: Frame): boolean =>
 
 const unitRow = (index: number): Row => ({ coordinates: new Map([[index, 1]]), supports: new Map() });
 
-const substituted = (index: number, solved: ReadonlyMap<number, Row>): Row =>
-  solved.get(index) ?? unitRow(index);
+const substituted = (index: number, { rows }: Solved): Row => rows.get(index) ?? unitRow(index);
 
 function add(into: Row, row: Row, factor: number): void {
   for (const [index, value] of row.coordinates) {
@@ -94,19 +101,32 @@ function largest(entries: ReadonlyMap<number, number>): number | undefined {
 }
 
 /** `row = 0` solved for one coordinate, and put into what was solved before. */
-function solve(target: number, row: Row, solved: Map<number, Row>): void {
+function solve(target: number, row: Row, solved: Solved): void {
   const pivot = row.coordinates.get(target) ?? 1;
   const expressed: Row = { coordinates: new Map(), supports: new Map() };
-  for (const [index, value] of row.coordinates)
+  for (const [index, value] of row.coordinates) {
     if (index !== target) expressed.coordinates.set(index, -value / pivot);
-  for (const [index, value] of row.supports) expressed.supports.set(index, -value / pivot);
-  for (const each of solved.values()) {
-    const factor = each.coordinates.get(target);
-    if (factor === undefined) continue;
-    each.coordinates.delete(target);
-    add(each, expressed, factor);
   }
-  solved.set(target, expressed);
+  for (const [index, value] of row.supports) expressed.supports.set(index, -value / pivot);
+  for (const reader of solved.readers.get(target) ?? []) {
+    const known = solved.rows.get(reader);
+    const factor = known?.coordinates.get(target);
+    if (known === undefined || factor === undefined) continue;
+    known.coordinates.delete(target);
+    add(known, expressed, factor);
+    note(reader, expressed, solved);
+  }
+  solved.readers.delete(target);
+  solved.rows.set(target, expressed);
+  note(target, expressed, solved);
+}
+
+function note(reader: number, row: Row, { readers }: Solved): void {
+  for (const index of row.coordinates.keys()) {
+    const known = readers.get(index) ?? new Set<number>();
+    known.add(reader);
+    readers.set(index, known);
+  }
 }
 
 function formOf(row: Row, freeIndex: ReadonlyMap<number, number>): LinearForm {
@@ -130,15 +150,16 @@ function sayInconsistent(
   findings: Findings,
 ): void {
   const name = plan.coordinates[bind.coordinate].name;
-  const others = [...new Set(by.values())];
-  const lines = new LineIndex(plan.text);
-  const shown = others.slice(0, 3).map((each) => `line ${lines.lineAt(each.span.start) + 1}`);
+  const others = [...by.values()].slice(0, MOST_RELATED);
   const message =
     held === undefined
       ? `this bind of \`${name}\` says what the others say already, or contradicts them: it fixes no further coordinate`
       : `this bind of \`${name}\` and the others together hold \`${plan.coordinates[held].name}\` at zero`;
   findings.say("inconsistent-bind", bind.span, message, {
-    hint: others.length > 0 ? `take one of them out; the others stand on ${shown.join(", ")}` : undefined,
+    hint:
+      others.length > 0
+        ? "each bind takes one coordinate away from those that move; take one bind out"
+        : undefined,
     related: others.map((each) => ({ span: each.span, message: "with this bind" })),
   });
 }

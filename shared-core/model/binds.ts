@@ -1,5 +1,4 @@
 import type { Expression, PathNode } from "../syntax/tree.ts";
-import { nearest } from "../text/nearest.ts";
 import type { Dimension } from "../units/dimension.ts";
 import { divideDimensions, isNumber, kindOf, NUMBER } from "../units/quantity.ts";
 import { dimensionOf, wordsOf } from "../vocabulary/measures.ts";
@@ -193,11 +192,16 @@ function unknownPlace(node: PathNode, draft: Draft): undefined {
   if (first === undefined) return undefined;
   const entity = draft.main.names.get(first.text);
   if (entity !== undefined) return notLinear(node, draft);
-  const near = nearest(first.text, [...draft.coordinateByName.keys(), ...draft.numbers.scope.numberNames()]);
+  const near = draft.findings.suggest(first.text, boundNames(draft));
   draft.findings.say("unknown-name", first.span, `nothing is called \`${first.text}\``, {
     fixes: near === undefined ? [] : [replaceFix(`Write \`${near}\``, first.span, near)],
   });
   return undefined;
+}
+
+function* boundNames(draft: Draft): Iterable<string> {
+  yield* draft.coordinateByName.keys();
+  yield* draft.numbers.scope.numberNames();
 }
 
 function holdsPlace(node: Expression, draft: Draft): boolean {

@@ -5,7 +5,7 @@ import type { DetailDescription, StatementDescription } from "../vocabulary/desc
 import { detailOf } from "../vocabulary/registry.ts";
 import { type Draft, sayNotYet } from "./draft.ts";
 import { editsFix, type Findings, orList, replaceFix } from "./findings.ts";
-import { type Described, nameSpan } from "./names.ts";
+import { aKeyword, type Described, nameSpan } from "./names.ts";
 
 /** A detail that is given: in the head, on a line of its own, or taken over by `like`. */
 export interface Given {
@@ -26,15 +26,26 @@ export interface GivenDetails {
 
 /** The details of a statement that can be used, those of the element it is `like` included. */
 export function givenDetails(statement: Described, draft: Draft): GivenDetails {
+  const known = draft.given.get(statement);
+  if (known !== undefined) return known;
   const own = ownDetails(statement, draft);
   const like = own.details.get("like");
-  if (like === undefined) return own;
+  if (like === undefined) {
+    draft.given.set(statement, own);
+    return own;
+  }
+  draft.likeOpen.push(statement);
   const other = likeOf(statement, like, draft);
-  if (other === undefined) return { details: own.details, sound: false };
-  const merged = new Map(own.details);
-  for (const [key, given] of other.details) if (!merged.has(key)) merged.set(key, given);
-  return { details: merged, sound: own.sound && other.sound };
+  draft.likeOpen.pop();
+  const details = new Map(own.details);
+  for (const [key, given] of other?.details ?? []) if (!details.has(key)) details.set(key, given);
+  const merged = { details, sound: own.sound && (other?.sound ?? false) };
+  draft.given.set(statement, merged);
+  return merged;
 }
+
+/** Longer chains of `like` are cut; chosen so that following one stays far from the end of the stack. */
+const LONGEST_LIKE = 1500;
 
 function ownDetails({ node, description }: Described, draft: Draft): GivenDetails {
   const details = new Map<string, Given>();
@@ -86,12 +97,7 @@ function sayUnknownDetail(key: NameNode, description: StatementDescription, find
   });
 }
 
-function likeOf(
-  statement: Described,
-  like: Given,
-  draft: Draft,
-  chain: readonly Described[] = [],
-): GivenDetails | undefined {
+function likeOf(statement: Described, like: Given, draft: Draft): GivenDetails | undefined {
   const name = nameItem(like.items[0]);
   if (name === undefined) {
     draft.findings.say(
@@ -101,36 +107,34 @@ function likeOf(
     );
     return undefined;
   }
+  const keyword = statement.node.keyword.text;
   const other = draft.byName.get(name.text);
   if (other === undefined) {
-    const same = draft.statements.filter(({ node }) => node.keyword.text === statement.node.keyword.text);
-    sayUnknownName(
-      name,
-      same.map((each) => each.name ?? ""),
-      draft.findings,
-    );
+    sayUnknownName(name, namesOfKeyword(keyword, draft), draft.findings);
     return undefined;
   }
-  const keyword = statement.node.keyword.text;
   if (other.node.keyword.text !== keyword) {
-    const message = `\`${name.text}\` is a ${other.node.keyword.text}, a ${keyword} can only be like a ${keyword}`;
+    const message = `\`${name.text}\` is ${aKeyword(other.node.keyword.text)}; a ${keyword} can only be like a ${keyword}`;
     draft.findings.say("wrong-kind", name.span, message);
     return undefined;
   }
-  if (other === statement || chain.includes(other)) {
-    draft.findings.say("circular-definition", name.span, `\`${statement.name}\` is like itself`, {
+  const isCircle = draft.likeOpen.includes(other);
+  if (isCircle || draft.likeOpen.length > LONGEST_LIKE) {
+    const message = isCircle
+      ? `\`${other.name}\` is like itself`
+      : `this chain of \`like\` is longer than ${LONGEST_LIKE} elements`;
+    draft.findings.say("circular-definition", name.span, message, {
       related: [{ span: nameSpan(other.node), message: `\`${other.name}\` stands here` }],
     });
     return undefined;
   }
-  const own = ownDetails(other, draft);
-  const further = own.details.get("like");
-  if (further === undefined) return own;
-  const beyond = likeOf(other, further, draft, [...chain, statement]);
-  if (beyond === undefined) return undefined;
-  const merged = new Map(own.details);
-  for (const [key, given] of beyond.details) if (!merged.has(key)) merged.set(key, given);
-  return { details: merged, sound: own.sound && beyond.sound };
+  return givenDetails(other, draft);
+}
+
+function* namesOfKeyword(keyword: string, draft: Draft): Iterable<string> {
+  for (const { node, name } of draft.statements) {
+    if (node.keyword.text === keyword && name !== undefined) yield name;
+  }
 }
 
 /** Says which required detail is missing; true when none is. */
@@ -211,7 +215,7 @@ export function sayUnknownName(
   findings: Findings,
   hint?: string,
 ): void {
-  const near = nearest(name.text, candidates);
+  const near = findings.suggest(name.text, candidates);
   findings.say("unknown-name", name.span, `nothing is called \`${name.text}\``, {
     hint,
     fixes: near === undefined ? [] : [replaceFix(`Write \`${near}\``, name.span, near)],

@@ -1,5 +1,6 @@
 import type { Motion } from "../mechanics/builder.ts";
 import type { Span } from "../text/span.ts";
+import type { GivenDetails } from "./details.ts";
 import type { Findings } from "./findings.ts";
 import type { FileContext, LetTable } from "./lets.ts";
 import type { FileReader } from "./model.ts";
@@ -40,6 +41,10 @@ export interface Draft {
   readonly limits: Map<string, PlannedLimit>;
   /** Names whose statement has an error or is not computed: whatever names them stays quiet. */
   readonly unsound: Set<string>;
+  /** Details of statements as they were read, once. */
+  readonly given: Map<Described, GivenDetails>;
+  /** Statements whose `like` is being followed. */
+  readonly likeOpen: Described[];
   /** Other files that were read. */
   readonly files: Set<string>;
   /** Set by the first error in what moves, joins or drives. */

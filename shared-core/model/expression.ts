@@ -2,7 +2,6 @@
  * One function a kind of node. Longer than other files because they call each other all the way round.
  */
 import type { AsNode, BinaryNode, Expression, NumberNode, PathNode, UnitNode } from "../syntax/tree.ts";
-import { nearest } from "../text/nearest.ts";
 import { describeQuantity } from "../units/describe.ts";
 import { isFault } from "../units/fault.ts";
 import {
@@ -132,7 +131,7 @@ function checkName(node: PathNode, c: ExpressionContext): Checked {
 
 function unknownName(node: PathNode, c: ExpressionContext): void {
   const name = node.names[0];
-  const near = nearest(name.text, c.scope.numberNames());
+  const near = c.findings.suggest(name.text, c.scope.numberNames());
   const fixes = near === undefined ? [] : [replaceFix(`Write \`${near}\``, name.span, near)];
   const isUnit = !isFault(unitOf({ text: name.text, factors: [{ name: name.text, power: 1 }] }));
   const hint = isUnit

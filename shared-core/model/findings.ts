@@ -1,5 +1,6 @@
 import { CODES, type DiagnosticCode } from "../diagnostics/codes.ts";
 import type { Diagnostic, Fix, RelatedPlace, Severity } from "../diagnostics/diagnostic.ts";
+import { nearest } from "../text/nearest.ts";
 import type { Span, TextEdit } from "../text/span.ts";
 
 /** What a diagnostic may have beside its code, place and sentence. */
@@ -11,10 +12,14 @@ export interface Details {
   readonly tag?: "unnecessary";
 }
 
+/** How many mistyped names of one file get a suggestion; looking one up costs as much as there are names. */
+const MOST_SUGGESTIONS = 200;
+
 /** Collects what is said about one file. One mistake, one message: a code is said once at a place. */
 export class Findings {
   readonly list: Diagnostic[] = [];
   readonly #said = new Set<string>();
+  #suggestionsLeft = MOST_SUGGESTIONS;
 
   say(code: DiagnosticCode, span: Span, message: string, details: Details = {}): void {
     const place = `${code} ${span.start} ${span.end}`;
@@ -27,6 +32,13 @@ export class Findings {
   /** Takes over what another collection holds. */
   take(other: Findings): void {
     for (const { code, span, message, ...rest } of other.list) this.say(code, span, message, rest);
+  }
+
+  /** The candidate that a mistyped name most likely meant; none any more in a file nobody typed. */
+  suggest(word: string, candidates: Iterable<string>): string | undefined {
+    if (this.#suggestionsLeft === 0) return undefined;
+    this.#suggestionsLeft--;
+    return nearest(word, candidates);
   }
 
   get hasErrors(): boolean {

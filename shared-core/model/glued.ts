@@ -2,6 +2,7 @@ import type { Expression, NumberNode, UnitNode } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
 import { editsFix, Findings } from "./findings.ts";
 import { type Checked, type ExpressionContext, textOf, type Wanted } from "./typed.ts";
+import { visit } from "./walk.ts";
 
 type Check = (node: Expression, c: ExpressionContext, wanted?: Wanted) => Checked;
 
@@ -140,29 +141,6 @@ function takenApart(literal: NumberNode, c: ExpressionContext): Expression {
     };
   }
   return whole;
-}
-
-function visit(node: Expression, see: (node: Expression) => void): void {
-  see(node);
-  for (const child of childrenOf(node)) visit(child, see);
-}
-
-function childrenOf(node: Expression): readonly Expression[] {
-  switch (node.kind) {
-    case "parenthesis":
-      return [node.inner];
-    case "unary":
-    case "as":
-      return [node.operand];
-    case "binary":
-      return [node.left, node.right];
-    case "call":
-      return [...node.positional, ...node.named.map(({ value }) => value)];
-    case "tuple":
-      return node.items;
-    default:
-      return [];
-  }
 }
 
 function replace(node: Expression, what: Expression, by: Expression): Expression {

@@ -50,7 +50,8 @@ export function frameFor(
 ): Frame {
   const frame = new Float64Array(plan.slots);
   for (const planned of plan.lets[caseIndex] ?? plan.lets[0]) {
-    const nominal = overrides.parameters?.get(planned.name) ?? planned.compute(frame);
+    const replaced = planned.visible ? overrides.parameters?.get(planned.name) : undefined;
+    const nominal = replaced ?? planned.compute(frame);
     const value = evaluate(planned, frame, overrides.draws, nominal);
     if (!Number.isFinite(value) && wrong !== undefined) sayNoNumber(planned, frame, plan, wrong);
     frame[planned.slot] = value;
@@ -246,7 +247,7 @@ class PutModel implements Instance {
     const { plan } = this.model;
     const parameters = new Map<string, ParameterValue>();
     for (const planned of plan.lets[this.caseIndex] ?? plan.lets[0]) {
-      if (!plan.visible.has(`${planned.home ?? ""}#${planned.name}`)) continue;
+      if (!planned.visible) continue;
       parameters.set(planned.name, this.#parameter(planned));
     }
     return parameters;

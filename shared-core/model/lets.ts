@@ -20,6 +20,11 @@ export interface FileContext {
   readonly contextOf: (entity: Entity) => FileContext;
 }
 
+/** Chains are cut short by `understandLets`, so that only a circle can be as long. */
+const LONGEST_CHAIN = 300;
+/** Names shown of a circle. */
+const MOST_SHOWN = 8;
+
 interface LetState {
   readonly state: "busy" | "done";
   readonly slot: number;
@@ -41,6 +46,12 @@ export class LetTable {
   #slots = FIRST_FREE_SLOT;
   /** Lets that are being understood, for the chain in circular-definition. */
   readonly #open: Entity[] = [];
+  readonly #visible: ReadonlySet<Entity>;
+
+  /** `visible`: the lets that the model's own file sees by their names. */
+  constructor(visible: ReadonlySet<Entity>) {
+    this.#visible = visible;
+  }
 
   get slots(): number {
     return this.#slots;
@@ -74,7 +85,7 @@ export class LetTable {
   ): Checked {
     const known = this.#states.get(entity);
     if (known?.state === "done") return known.checked;
-    if (known?.state === "busy") {
+    if (known?.state === "busy" || this.#open.length > LONGEST_CHAIN) {
       if (from !== undefined) this.#sayCircle(entity, from);
       return undefined;
     }
@@ -115,7 +126,7 @@ export class LetTable {
       slot,
       written,
       file: file.file,
-      home: file.file,
+      visible: this.#visible.has(entity),
       reads: slotsRead(number.code),
     };
   }
@@ -133,7 +144,7 @@ export class LetTable {
   }
 
   #sayCircle(entity: Entity, from: { readonly name: NameNode; readonly file: FileContext }): void {
-    const circle = this.#open.slice(this.#open.indexOf(entity));
+    const circle = this.#open.slice(Math.max(0, this.#open.indexOf(entity))).slice(0, MOST_SHOWN);
     const chain = [...circle, entity].map(({ name }) => name).join(" -> ");
     const related = circle.map((each) => ({
       span: nameSpan(each.node),

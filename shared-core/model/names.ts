@@ -45,12 +45,17 @@ export function collectNames(
   findings: Findings,
 ): Map<string, Entity> {
   const names = new Map(used);
+  let index: LineIndex | undefined;
+  const lineAt = (offset: number): number => {
+    index ??= new LineIndex(tree.text);
+    return index.lineAt(offset) + 1;
+  };
   for (const { node, description, name } of statements) {
     if (name === undefined) continue;
     const entity: Entity = { name, keyword: node.keyword.text, description, node };
     const first = names.get(name);
     if (first === undefined) names.set(name, entity);
-    else sayDuplicate(entity, first, names, tree, findings);
+    else sayDuplicate(entity, first, names, lineAt, findings);
   }
   return names;
 }
@@ -59,16 +64,13 @@ function sayDuplicate(
   entity: Entity,
   first: Entity,
   names: ReadonlyMap<string, Entity>,
-  tree: Tree,
+  lineAt: (offset: number) => number,
   findings: Findings,
 ): void {
   const { name, node } = entity;
   const place = nameSpan(node);
   const firstPlace = nameSpan(first.node);
-  const where =
-    first.file === undefined
-      ? `on line ${new LineIndex(tree.text).lineAt(firstPlace.start) + 1}`
-      : `in \`${first.file}\``;
+  const where = first.file === undefined ? `on line ${lineAt(firstPlace.start)}` : `in \`${first.file}\``;
   const free = freeName(name, names);
   const written = nameIn(node, "name");
   const rename = written

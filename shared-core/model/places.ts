@@ -188,8 +188,10 @@ function sayNoPart(first: NameNode, part: NameNode, findings: Findings): void {
   );
 }
 
-function placeNames(draft: Draft): Iterable<string> {
-  return ["ground", ...draft.coordinateByName.keys(), ...draft.supportByName.keys()];
+function* placeNames(draft: Draft): Iterable<string> {
+  yield "ground";
+  yield* draft.coordinateByName.keys();
+  yield* draft.supportByName.keys();
 }
 
 export function placeOfSlot(

@@ -31,10 +31,6 @@ export interface Plan {
   readonly elements: ReadonlyMap<string, number>;
   /** Where each used file is named, for diagnostics that arise in it with numbers. */
   readonly uses: ReadonlyMap<string, Span>;
-  /** `FILE#NAME` of the lets that this file sees by their name. */
-  readonly visible: ReadonlySet<string>;
-  /** Text of the file, for line numbers in messages. */
-  readonly text: string;
   /** For understanding further expressions later on. */
   readonly numbers: NumberContext;
   readonly asked: Asked;
@@ -66,8 +62,8 @@ export interface PlannedLet extends PlannedNumber {
   readonly written: string;
   /** Path of the used file in which its number stands, for diagnostics. */
   readonly file?: string;
-  /** Path of the used file that defines it; a case may give the number in another. */
-  readonly home?: string;
+  /** The model's file sees it by its name: its own, and those of the files that it uses itself. */
+  readonly visible: boolean;
   /** Slots that its number reads. */
   readonly reads: ReadonlySet<number>;
 }

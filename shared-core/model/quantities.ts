@@ -193,13 +193,11 @@ function pathSeries(node: PathNode, draft: Draft, bare: boolean): Series | undef
   return undefined;
 }
 
-function namesWithQuantities(draft: Draft): string[] {
-  return [
-    ...draft.coordinateByName.keys(),
-    ...draft.elements.keys(),
-    ...draft.supportByName.keys(),
-    "ground",
-  ];
+function* namesWithQuantities(draft: Draft): Iterable<string> {
+  yield* draft.coordinateByName.keys();
+  yield* draft.elements.keys();
+  yield* draft.supportByName.keys();
+  yield "ground";
 }
 
 function series(

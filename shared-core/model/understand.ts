@@ -18,6 +18,7 @@ import { Findings } from "./findings.ts";
 import { checkGroup } from "./groups.ts";
 import { instantiate } from "./instantiate.ts";
 import { planJoin } from "./joins.ts";
+import { understandLets } from "./let-order.ts";
 import { type FileContext, LetTable } from "./lets.ts";
 import { planLimit } from "./limits.ts";
 import type { CaseInfo, Entity, FileReader, Model } from "./model.ts";
@@ -82,7 +83,7 @@ function newDraft(
   reader: FileReader,
   files: Set<string>,
 ): Draft {
-  const lets = new LetTable();
+  const lets = new LetTable(new Set(main.names.values()));
   const byName = new Map<string, Described>();
   for (const each of statements) {
     if (each.name !== undefined && main.names.get(each.name)?.node === each.node) byName.set(each.name, each);
@@ -109,6 +110,8 @@ function newDraft(
     assumptions: new Map(),
     limits: new Map(),
     unsound: new Set(),
+    given: new Map(),
+    likeOpen: [],
     files,
     buildable: true,
   };
@@ -123,16 +126,8 @@ function statementsOf(draft: Draft, ...keywords: readonly string[]): Described[]
 }
 
 function planNumbers(draft: Draft, uses: Uses): void {
-  for (const { context, statements } of uses.all) {
-    for (const { name, node } of statements) {
-      const entity = name === undefined ? undefined : context.names.get(name);
-      if (entity?.node === node && entity.keyword === "let") draft.lets.typed(entity, context);
-    }
-  }
-  for (const { name } of statementsOf(draft, "let")) {
-    const entity = name === undefined ? undefined : draft.main.names.get(name);
-    if (entity !== undefined) draft.lets.typed(entity, draft.main);
-  }
+  for (const { context } of uses.all) understandLets(context, draft.lets);
+  understandLets(draft.main, draft.lets);
   for (const statement of statementsOf(draft, "assume")) planAssumption(statement, draft);
   for (const { used } of uses.direct) {
     for (const statement of used.statements) takeLimit(statement, draft, used.context);
@@ -227,15 +222,11 @@ function planOf(draft: Draft, asked: Asked, lets: readonly (readonly PlannedLet[
     limits: [...draft.limits.values()],
     expressions: asked.expressions,
     elements: draft.elements,
-    visible: new Set([...draft.main.names.values()].filter((each) => each.keyword === "let").map(letKey)),
-    text: draft.main.tree.text,
     uses: new Map(uses.direct.map(({ used, span }) => [used.path, span])),
     numbers: draft.numbers,
     asked,
   };
 }
-
-const letKey = ({ name, file }: Entity): string => `${file ?? ""}#${name}`;
 
 /**
  * What is wrong with the numbers as written belongs to the text: it is said at once and leaves no system. Where

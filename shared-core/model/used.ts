@@ -69,6 +69,9 @@ function namesOf(uses: readonly DirectUse[]): Map<string, Entity> {
   return names;
 }
 
+/** Files that use files that use files: deeper is no library that anybody laid out. */
+const DEEPEST_USE = 50;
+
 class Loading {
   readonly done = new Map<string, UsedFile>();
 
@@ -90,6 +93,17 @@ class Loading {
     }
     const known = this.done.get(path);
     if (known !== undefined) return known;
+    if (open.length > DEEPEST_USE) {
+      findings.say(
+        "circular-definition",
+        text.span,
+        `\`${text.text}\` lies more than ${DEEPEST_USE} files deep`,
+        {
+          hint: "use the file with the numbers directly",
+        },
+      );
+      return undefined;
+    }
     this.files.add(path);
     const content = readFile(path, text.text, text.span, this.reader, findings);
     if (content === undefined) return undefined;

@@ -146,7 +146,6 @@ expect fine = peak(sweep, a.displacement) <= 3 mm
 mass a = 3 kg
 spring s1 between a and ground = 3 N/mm
     like = s2
-#          ^^ circular-definition
 spring s2 between a and ground = 3 N/mm
     like = s1
 #          ^^ circular-definition

@@ -33,7 +33,7 @@ function through(text: string): void {
 describe("any text becomes a model", () => {
   it("every prefix of an example, at each end of a line and between", () => {
     for (const text of examples) {
-      for (let end = 0; end < text.length; end += 37) through(text.slice(0, end));
+      for (let end = 0; end < text.length; end += 97) through(text.slice(0, end));
     }
   });
 
@@ -124,6 +124,18 @@ describe("any text becomes a model", () => {
       }),
       { numRuns: 300, seed: 8 },
     );
+  });
+
+  it("long files of one mistake, in time that grows with their length", () => {
+    const many = (line: (i: number) => string) => Array.from({ length: 1000 }, (_, i) => line(i)).join("\n");
+    through(`thrum 1\nmass m = 1 kg\n${many((i) => `let x${i} = unknown${i}`)}`);
+    through(`thrum 1\n${many(() => "mass m = 1 kg")}`);
+    through(
+      `thrum 1\nmass m = 1 kg\n${many((i) => `spring s${i} between m and ground\n    like = s${i + 1}`)}`,
+    );
+    through(`thrum 1\nmass m = 1 kg\n${many((i) => `let x${i} = 3`)}`);
+    through(`thrum 1\n${many((i) => `junction j${i}\nbind j${i} = 2 * j${(i + 1) % 1000}`)}`);
+    through(`thrum 1\nmass m = 1 kg\nmass n = 1 kg\n${many(() => "bind m = 2 * n")}`);
   });
 
   it("nesting as deep as the parser lets through, without repeated work", () => {
