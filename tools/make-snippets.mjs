@@ -7,7 +7,10 @@ import { root } from "./root.mjs";
 const target = join(root, "snippets", "thrum.json");
 const { STATEMENTS, ASKS } = await loadCore("shared-core/vocabulary/registry.ts");
 const snippets = {};
-for (const { keyword, variant, says, snippet } of [...STATEMENTS.filter((s) => s.keyword !== "ask"), ...ASKS]) {
+for (const { keyword, variant, says, snippet } of [
+  ...STATEMENTS.filter((s) => s.keyword !== "ask"),
+  ...ASKS,
+]) {
   const name = variant ? `${keyword} ${variant}` : keyword;
   snippets[name] = { prefix: name, description: says, body: snippet.split("\n") };
 }

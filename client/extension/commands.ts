@@ -22,13 +22,15 @@ export function registerCommands(
 
 async function createModel(): Promise<void> {
   const kinds = [
-    { label: vscode.l10n.t("Machine on mounts"), kind: "mounting" },
-    { label: vscode.l10n.t("Drive line"), kind: "drive-line" },
-    { label: vscode.l10n.t("Bench on a shaking floor"), kind: "bench" },
+    { label: vscode.l10n.t("Machine on mounts"), model: "mounting" },
+    { label: vscode.l10n.t("Drive line"), model: "drive-line" },
+    { label: vscode.l10n.t("Bench on a shaking floor"), model: "bench" },
   ] as const;
-  const chosen = await vscode.window.showQuickPick(kinds, { placeHolder: vscode.l10n.t("What is it a model of?") });
+  const chosen = await vscode.window.showQuickPick(kinds, {
+    placeHolder: vscode.l10n.t("What is it a model of?"),
+  });
   if (!chosen) return;
-  const content = newModel(chosen.kind);
+  const content = newModel(chosen.model);
   const document = await vscode.workspace.openTextDocument({ language: "thrum", content });
   await vscode.window.showTextDocument(document);
 }
@@ -39,7 +41,9 @@ async function chooseUnits(): Promise<void> {
     { label: vscode.l10n.t("SI units"), system: "si" },
     { label: vscode.l10n.t("Inch units"), system: "inch" },
   ];
-  const chosen = await vscode.window.showQuickPick(systems, { placeHolder: vscode.l10n.t("Show numbers in") });
+  const chosen = await vscode.window.showQuickPick(systems, {
+    placeHolder: vscode.l10n.t("Show numbers in"),
+  });
   if (!chosen) return;
   const target = vscode.workspace.workspaceFolders
     ? vscode.ConfigurationTarget.Workspace

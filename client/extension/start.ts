@@ -2,8 +2,8 @@ import * as vscode from "vscode";
 import { registerCommands } from "./commands.ts";
 import type { Connection } from "./connection.ts";
 import { keepRunning } from "./keep-running.ts";
-import { answerFileRequests } from "./read-files.ts";
 import { registerRowPaste } from "./paste-rows.ts";
+import { answerFileRequests } from "./read-files.ts";
 import { registerStatus } from "./status.ts";
 import { registerTests } from "./tests.ts";
 

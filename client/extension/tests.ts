@@ -18,7 +18,14 @@ export function registerTests(client: BaseLanguageClient): vscode.Disposable {
   const tree = new TestTree(controller, client);
   const watcher = vscode.workspace.createFileSystemWatcher("**/*.thrum");
   const run = (request: vscode.TestRunRequest, token: vscode.CancellationToken) => tree.run(request, token);
-  controller.createRunProfile(vscode.l10n.t("Judge"), vscode.TestRunProfileKind.Run, run, true, undefined, true);
+  controller.createRunProfile(
+    vscode.l10n.t("Judge"),
+    vscode.TestRunProfileKind.Run,
+    run,
+    true,
+    undefined,
+    true,
+  );
   controller.resolveHandler = async (item) => {
     await (item === undefined ? tree.findFiles() : tree.refresh(item));
   };
@@ -74,9 +81,17 @@ class TestTree {
     return summary;
   }
 
-  #expectation(file: vscode.TestItem, { name, range, comparison, verdicts }: ExpectationSummary): vscode.TestItem {
+  #expectation(
+    file: vscode.TestItem,
+    { name, range, comparison, verdicts }: ExpectationSummary,
+  ): vscode.TestItem {
     const item = this.#controller.createTestItem(`${file.id}#${name}`, name, file.uri);
-    item.range = new vscode.Range(range.start.line, range.start.character, range.end.line, range.end.character);
+    item.range = new vscode.Range(
+      range.start.line,
+      range.start.character,
+      range.end.line,
+      range.end.character,
+    );
     item.description = comparison;
     if (verdicts.length < 2) return item;
     for (const verdict of verdicts) {

@@ -1,5 +1,5 @@
 import * as vscode from "vscode";
-import { type LanguageClientOptions, type MessageTransports } from "vscode-languageclient";
+import type { LanguageClientOptions, MessageTransports } from "vscode-languageclient";
 import { BrowserMessageReader, BrowserMessageWriter, LanguageClient } from "vscode-languageclient/browser";
 import { serveInPage } from "../../../server/browser.ts";
 import { clientOptions } from "../connection.ts";
