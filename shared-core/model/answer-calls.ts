@@ -11,6 +11,7 @@ import { type Draft, sayNotYet } from "./draft.ts";
 import { check } from "./expression.ts";
 import { orList, replaceFix } from "./findings.ts";
 import { literalOf } from "./fit.ts";
+import { checkGlued } from "./glued.ts";
 import { aKeyword } from "./names.ts";
 import type { PlannedArgument, PlannedAsk, PlannedCall, PlannedExpression } from "./plan.ts";
 import { membersOf, planSeries } from "./quantities.ts";
@@ -292,9 +293,15 @@ export function planAnswerExpression(
   c: ExpressionContext,
   wanted?: Wanted,
 ): PlannedExpression | undefined {
-  const answers = new AnswerCallReader(asked);
-  const typed = check(node, { ...c, answers }, wanted);
-  const planned = typed && { code: typed.code, kind: typed.kind, calls: answers.calls, zero: typed.zero };
+  const readers = new Map<Checked, AnswerCallReader>();
+  const typed = checkGlued(node, c, wanted, (each, inner, wish) => {
+    const answers = new AnswerCallReader(asked);
+    const read = check(each, { ...inner, answers }, wish);
+    readers.set(read, answers);
+    return read;
+  });
+  const calls = readers.get(typed)?.calls ?? [];
+  const planned = typed && { code: typed.code, kind: typed.kind, calls, zero: typed.zero };
   asked.expressions.set(node, planned ?? null);
   return planned;
 }

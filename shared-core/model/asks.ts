@@ -42,7 +42,7 @@ function modes(r: AskReader): Resolve {
 
 function sweep(r: AskReader): Resolve {
   const of = r.quantities("of");
-  const by = r.drives("by", isHarmonic, "drives a sweep: it has no steady rate");
+  const by = r.drives("by", isHarmonic, "drive a sweep: it has no steady rate");
   const [from, to] = [r.planned("from"), r.planned("to")];
   r.ascending(from, to);
   const points = r.count("points");
@@ -67,7 +67,7 @@ const STANDARD_ACCURACY = 1e-6;
 
 function history(r: AskReader): Resolve {
   const of = r.quantities("of");
-  const by = r.drives("by", isTimed, "drives a history: it says too little about time");
+  const by = r.drives("by", isTimed, "drive a history: it says too little about time");
   const lasting = r.optional("lasting");
   const [step, accuracy] = [r.optional("step"), r.optional("accuracy")];
   const start = r.word("start") === "at_rest" ? "at_rest" : "as_written";
@@ -236,7 +236,7 @@ class AskReader {
     const index = draft.driveByName.get(name.text);
     if (index !== undefined && fits(draft.drives[index])) return index;
     if (index !== undefined) {
-      draft.findings.say("wrong-kind", name.span, `\`${name.text}\` is no drive that ${why}`, {
+      draft.findings.say("wrong-kind", name.span, `\`${name.text}\` cannot ${why}`, {
         related: [{ span: nameSpan(draft.drives[index].node), message: `\`${name.text}\` is defined here` }],
       });
       return undefined;

@@ -156,13 +156,15 @@ export function sayMissing(
   detail: DetailDescription,
   findings: Findings,
 ): void {
-  const what = `${node.keyword.text}${name === undefined ? "" : ` ${name}`}`;
+  const what = [node.keyword.text, description.variant, name === description.variant ? undefined : name]
+    .filter((word) => word !== undefined)
+    .join(" ");
   const principal = description.principal === detail.key;
   const example = principal ? `${what} = ${detail.example}` : `${detail.key} = ${detail.example}`;
   const end = node.headSpan.end;
   const line = principal ? ` = ${detail.example}` : `\n    ${detail.key} = ${detail.example}`;
   const canAdd = !node.broken && detail.content.is !== "table";
-  findings.say("missing-detail", nameSpan(node), `\`${what}\` needs its ${detail.key}: ${detail.says}`, {
+  findings.say("missing-detail", nameSpan(node), `\`${what}\` needs \`${detail.key}\`: ${detail.says}`, {
     hint: `as in \`${example}\``,
     fixes: canAdd ? [editsFix(`Add \`${example}\``, [{ span: { start: end, end }, text: line }])] : [],
   });

@@ -7,6 +7,7 @@ import type { Item, RangeNode } from "../syntax/tree.ts";
 import type { Kind } from "../units/dimension.ts";
 import { isFault } from "../units/fault.ts";
 import { RATE } from "../units/quantity.ts";
+import { slipIn } from "../units/slips.ts";
 import { type UnitMeaning, unitOf } from "../units/unit-of.ts";
 import { unitsOf } from "../vocabulary/measures.ts";
 import { type Code, numberFault, reads, VARIABLE_SLOTS } from "./code.ts";
@@ -14,6 +15,7 @@ import { type Given, itemWords, singleValue, wordOf } from "./details.ts";
 import { type Draft, sayNotYet } from "./draft.ts";
 import type { ShapeRule } from "./drive-shapes.ts";
 import { type DriveValues, derivativeOf } from "./drives.ts";
+import { replaceFix } from "./findings.ts";
 import { timeFunction } from "./law.ts";
 import { LawScope } from "./lets.ts";
 import type { Described } from "./names.ts";
@@ -413,11 +415,23 @@ function recordUnit(r: ShapeReader): UnitMeaning | undefined {
   if (isFault(meaning)) return undefined;
   const fits = r.values.wanted.kinds.some((kind) => sameAs(kind, meaning.kind));
   if (fits) return meaning;
-  const { says, units } = r.values.wanted;
-  const span = given.items[0]?.span ?? given.span;
+  const { says, units, kinds } = r.values.wanted;
+  const slip = kinds.map((kind) => slipIn(unit, kind)).find((each) => each !== undefined);
+  if (slip !== undefined) {
+    const place = unit.factors[slip.factorIndex].span;
+    r.draft.findings.say(
+      slip.code,
+      place,
+      `expected the unit of ${says}, found ${unit.text}: ${slip.message}`,
+      {
+        fixes: slip.ratio === 1 ? [replaceFix(`Write \`${slip.to}\``, place, slip.to)] : [],
+      },
+    );
+    return undefined;
+  }
   r.draft.findings.say(
     "unit-mismatch",
-    span,
+    unit.span,
     `expected the unit of ${says} such as ${units.slice(0, 3).join(", ")}, found ${unit.text}, the unit of ${wantedKind(meaning.kind).says}`,
   );
   return undefined;

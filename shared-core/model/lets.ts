@@ -1,4 +1,3 @@
-import type { DiagnosticCode } from "../diagnostics/codes.ts";
 import type { NameNode, Tree } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
 import { FIRST_FREE_SLOT, type Frame, slotsRead } from "./code.ts";
@@ -112,9 +111,10 @@ export class LetTable {
   }
 
   #understand(entity: Entity, file: FileContext, slot: number): PlannedLet | undefined {
-    const value = entity.node.value?.[0];
-    if (entity.node.broken || value?.kind !== "value") {
-      if (!entity.node.broken && value !== undefined) sayNoNumber(value.span, file.findings);
+    const [value, second] = entity.node.value ?? [];
+    if (entity.node.broken || value?.kind !== "value" || second !== undefined) {
+      const wrong = value?.kind === "value" ? second : value;
+      if (!entity.node.broken && wrong !== undefined) sayNoNumber(wrong.span, file.findings);
       return undefined;
     }
     const number = planNumber(value, this.contextFor(file), undefined, entity.name);
@@ -162,8 +162,8 @@ export class LetTable {
   }
 }
 
-export function sayNoNumber(span: Span, findings: Findings, code: DiagnosticCode = "wrong-kind"): void {
-  findings.say(code, span, "one number with its unit belongs here");
+function sayNoNumber(span: Span, findings: Findings): void {
+  findings.say("wrong-kind", span, "a `let` holds one number", { hint: "as in `let mount = 26.5 N/mm`" });
 }
 
 /** The names of a file where numbers are wanted. */

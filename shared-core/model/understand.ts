@@ -51,7 +51,6 @@ export function understand(path: string, source: string | Tree, reader: FileRead
   const expectations = statementsOf(draft, "expect").flatMap((each) => planExpectation(each, asked));
   const cases = planCases(draft);
   sayErrorsOfUsed(uses, findings);
-  for (const { context } of uses.all) if (context.findings.hasErrors) draft.buildable = false;
   noteLostText(draft, parsed.diagnostics);
   sayUnusedNumbers(draft);
   const model: Model = {

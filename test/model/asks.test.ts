@@ -156,12 +156,12 @@ ask sweep
 ask sweep s1
     of = unit.velocity
     by = knock
-#        ^^^^^ wrong-kind \`knock\` is no drive that drives a sweep
+#        ^^^^^ wrong-kind \`knock\` cannot drive a sweep
     from = 3 Hz
     to = 2 Hz
 #        ^^^^ wrong-kind \`to\` is not above \`from\`
 ask sweep s2
-#         ^^ missing-detail \`ask s2\` needs its from
+#         ^^ missing-detail \`ask sweep s2\` needs \`from\`
     of = unit.velocity
     by = imbalanc, mounts
 #        ^^^^^^^^ unknown-name

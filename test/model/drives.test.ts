@@ -212,12 +212,16 @@ motion m4 of floor
     record = "quay.csv"
     unit = kg
 #          ^^ unit-mismatch expected the unit of a displacement, a velocity or an acceleration
+motion m9 of floor
+    record = "quay.csv"
+    unit = g
+#          ^ gram-as-gravity g is gram; standard gravity is gn
 motion m5 of floor
     record = "quay.csv"
     unit = mm/sec
 #             ^^^ unknown-unit
 motion m6 of floor
-#      ^^ missing-detail needs its unit
+#      ^^ missing-detail needs \`unit\`
     record = "quay.csv"
 motion m7 of floor
     record = "short.csv"
@@ -267,7 +271,7 @@ force f4 on unit
     amplitude = 3 N
 #   ^^^^^^^^^ wrong-kind this force is a pulse, and \`amplitude\` belongs to a steady sine
 force f5 on unit
-#     ^^ missing-detail \`force f5\` needs its duration
+#     ^^ missing-detail \`force f5\` needs \`duration\`
     pulse = half_sine
     peak = 3 N
 force f6 on unit

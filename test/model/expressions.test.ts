@@ -89,6 +89,10 @@ let l = if(3, 1, 2)
 #          ^ wrong-kind expected a comparison, found the number 3
 let o = (3 < 4)
 #        ^^^^^ wrong-kind a comparison stands where a number was expected
+let q = 1 kg, 2 kg
+#             ^^^^ wrong-kind a \`let\` holds one number
+let r = 1 Hz to 2 Hz
+#       ^^^^^^^^^^^^ wrong-kind a \`let\` holds one number
 let p = (1, 2)
 #       ^^^^^^ wrong-kind expected one number, found 2 in a tuple
 `);

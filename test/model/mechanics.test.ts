@@ -78,7 +78,7 @@ mass c = 40
 mass d = -3 t
 #        ^^^^ not-positive \`mass\` is to be above zero, found -3 t
 mass f
-#    ^ missing-detail \`mass f\` needs its mass
+#    ^ missing-detail \`mass f\` needs \`mass\`
 mass h = 3 kg
     weight = down
 #            ^^^^ wrong-kind \`weight\` is \`off\`, \`positive\` or \`negative\`, found \`down\`
@@ -101,7 +101,7 @@ spring s5 between a and a = 3 N/mm
 spring s6 between a and bb = 3 N/mm
 #                       ^^ unknown-name
 spring s7 between a and ground
-#      ^^ missing-detail \`spring s7\` needs its stiffness
+#      ^^ missing-detail \`spring s7\` needs \`stiffness\`
 spring s8 between a and ground = 3 N/mm
     damping_ratio = 5 %
 #                   ^^^ wrong-kind \`damping_ratio\` takes a value at a rate
