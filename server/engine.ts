@@ -1,0 +1,84 @@
+/**
+ * What the server and the side that computes numbers say to each other. That side may be a thread of its own, so
+ * everything is plain data; it holds the models with their reports, and answers what needs both.
+ */
+import type {
+  CaseVerdict,
+  Diagnostic,
+  ExpectationSummary,
+  FileContent,
+  Summary,
+  UnitSystem,
+} from "../shared-core/index.ts";
+import type { NumericArgs, NumericFeature } from "./numeric-features.ts";
+
+/** A file that a model read. Its content travels once; afterwards `id` stands for it. */
+export interface ReadFile {
+  readonly path: string;
+  readonly id: number;
+  readonly content?: FileContent;
+}
+
+export interface TextMessage {
+  readonly say: "text";
+  readonly uri: string;
+  /** Counts the states of a model: its text, the files it reads. */
+  readonly serial: number;
+  readonly file: string;
+  readonly text: string;
+  readonly reads: readonly ReadFile[];
+  readonly units: UnitSystem;
+}
+
+export type ToEngine =
+  | TextMessage
+  /** Computes everything about the newest text. One that is open goes before those that are not. */
+  | { readonly say: "judge"; readonly uri: string; readonly serial: number; readonly open: boolean }
+  /** Ends a computation, running or waiting. */
+  | { readonly say: "stop"; readonly uri: string }
+  | { readonly say: "units"; readonly uri: string; readonly units: UnitSystem }
+  | { readonly say: "forget"; readonly uri: string; readonly contents: readonly number[] }
+  | AskMessage;
+
+export interface AskMessage {
+  readonly say: "ask";
+  readonly id: number;
+  readonly uri: string;
+  readonly feature: NumericFeature;
+  readonly args: NumericArgs<NumericFeature>;
+}
+
+/** What is said of a model, as far as it has been computed. */
+export interface Judged {
+  /** `modes`: without answers and expectations, which follow. */
+  readonly upTo: "modes" | "answers";
+  readonly diagnostics: readonly Diagnostic[];
+  readonly accepted: readonly { readonly diagnostic: Diagnostic; readonly reason: string }[];
+  readonly faults: readonly { readonly where: string; readonly case: string; readonly error: string }[];
+  readonly summary: SummaryOfModel;
+}
+
+/** The part of a summary that does not depend on documents and versions. */
+export type SummaryOfModel = Omit<Summary, "protocol" | "uri" | "version" | "expectations"> & {
+  readonly state: string;
+  readonly expectations: readonly (Omit<ExpectationSummary, "verdicts"> & {
+    readonly verdicts: readonly CaseVerdict[];
+  })[];
+};
+
+export type FromEngine =
+  | { readonly say: "started"; readonly uri: string; readonly serial: number }
+  | { readonly say: "judged"; readonly uri: string; readonly serial: number; readonly judged: Judged }
+  /** A computation ended before it was done, and no newer one of this model has taken its place. */
+  | { readonly say: "stopped"; readonly uri: string; readonly serial: number }
+  | { readonly say: "answer"; readonly id: number; readonly value: unknown }
+  | { readonly say: "fault"; readonly id?: number; readonly where: string; readonly error: string }
+  /** The engine broke down and has started anew: it knows nothing any more. `uri` is what it was computing. */
+  | { readonly say: "restarted"; readonly uri?: string; readonly error: string };
+
+export interface Engine {
+  tell(message: ToEngine): void;
+  /** Set once, before the first message. */
+  onSaid: (message: FromEngine) => void;
+  end(): void;
+}

@@ -1,0 +1,243 @@
+/**
+ * The side that computes: holds the models with their reports, judges them step by step, and answers what needs
+ * both. It knows nothing of editors, threads and clocks; who runs it calls `step` as long as there is work, and
+ * looks at its messages in between.
+ */
+import {
+  type Diagnostic,
+  type FileContent,
+  type FileReport,
+  judgeInSteps,
+  LineIndex,
+  type Model,
+  type Steps,
+  stateText,
+  summaryOf,
+  type UnitSystem,
+  understand,
+  type View,
+} from "../shared-core/index.ts";
+import type { AskMessage, FromEngine, Judged, TextMessage, ToEngine } from "./engine.ts";
+import { NUMERIC, type Views } from "./numeric-features.ts";
+
+/** Modes come first where everything together took longer than this the last time, in ms. */
+const AT_ONCE = 40;
+
+export class Numbers {
+  readonly #say: (message: FromEngine) => void;
+  readonly #now: () => number;
+  readonly #entries = new Map<string, Entry>();
+  readonly #contents = new Map<number, FileContent>();
+  /** Models that wait to be judged; those that are open before the others, the newest first. */
+  #waiting: { readonly entry: Entry; readonly serial: number; readonly open: boolean }[] = [];
+  #job: Job | undefined;
+
+  constructor(say: (message: FromEngine) => void, now: () => number) {
+    this.#say = say;
+    this.#now = now;
+  }
+
+  handle(message: ToEngine): void {
+    switch (message.say) {
+      case "text":
+        this.#take(message);
+        break;
+      case "judge":
+        this.#want(message.uri, message.serial, message.open);
+        break;
+      case "stop":
+        this.#stop(message.uri);
+        break;
+      case "units": {
+        const entry = this.#entries.get(message.uri);
+        if (entry) entry.units = message.units;
+        break;
+      }
+      case "forget":
+        this.#drop(message.uri);
+        this.#entries.delete(message.uri);
+        for (const id of message.contents) this.#contents.delete(id);
+        break;
+      case "ask":
+        this.#answer(message);
+        break;
+    }
+  }
+
+  /** Carries the work one step further; false when there is none. */
+  step(): boolean {
+    this.#job ??= this.#next();
+    const job = this.#job;
+    if (job === undefined) return false;
+    try {
+      const step = job.steps.next(false);
+      if (step.done) this.#job = undefined;
+    } catch (error) {
+      this.#job = undefined;
+      this.#fault(`judging ${job.entry.file}`, error);
+      this.#say({ say: "stopped", uri: job.entry.uri, serial: job.serial });
+    }
+    return this.#job !== undefined || this.#waiting.length > 0;
+  }
+
+  #take({ uri, serial, file, text, reads, units }: TextMessage): void {
+    for (const { id, content } of reads) if (content) this.#contents.set(id, content);
+    this.#drop(uri);
+    const before = this.#entries.get(uri);
+    this.#entries.set(uri, {
+      uri,
+      serial,
+      file,
+      text,
+      units,
+      reads: new Map(reads.map(({ path, id }) => [path, id])),
+      whole: before?.whole,
+      took: before?.took ?? Number.POSITIVE_INFINITY,
+    });
+  }
+
+  #want(uri: string, serial: number, open: boolean): void {
+    const entry = this.#entries.get(uri);
+    if (entry === undefined || entry.serial !== serial) return;
+    this.#drop(uri);
+    const place = open ? 0 : this.#waiting.length;
+    this.#waiting.splice(place, 0, { entry, serial, open });
+    // What is open does not wait for what is not.
+    if (open && this.#job && !this.#job.open) {
+      const { entry: other, serial: of } = this.#job;
+      this.#waiting.push({ entry: other, serial: of, open: false });
+      this.#job = undefined;
+    }
+  }
+
+  #stop(uri: string): void {
+    const serial = this.#drop(uri);
+    if (serial !== undefined) this.#say({ say: "stopped", uri, serial });
+  }
+
+  /** Ends the work on a model, running or waiting; hands back what it was about. */
+  #drop(uri: string): number | undefined {
+    const waiting = this.#waiting.find(({ entry }) => entry.uri === uri);
+    this.#waiting = this.#waiting.filter(({ entry }) => entry.uri !== uri);
+    if (this.#job?.entry.uri !== uri) return waiting?.serial;
+    const { serial } = this.#job;
+    this.#job = undefined;
+    return serial;
+  }
+
+  #next(): Job | undefined {
+    const next = this.#waiting.shift();
+    if (next === undefined) return undefined;
+    const { entry, serial, open } = next;
+    this.#say({ say: "started", uri: entry.uri, serial });
+    return { entry, serial, open, steps: this.#work(entry) };
+  }
+
+  *#work(entry: Entry): Steps<void> {
+    const { uri, serial, units } = entry;
+    const model = understood(entry, this.#contents);
+    const start = this.#now();
+    const asks = model.expectations.length > 0 || model.tree.statements.some(isAsk);
+    if (asks && entry.took > AT_ONCE) {
+      const report = yield* judgeInSteps(model, "modes");
+      entry.modes = report;
+      this.#say({ say: "judged", uri, serial, judged: judgedOf(report, "modes", units) });
+    }
+    const report = yield* judgeInSteps(model);
+    entry.whole = { report, serial };
+    entry.modes = undefined;
+    entry.took = this.#now() - start;
+    this.#say({ say: "judged", uri, serial, judged: judgedOf(report, "answers", units) });
+  }
+
+  #answer({ id, uri, feature, args }: AskMessage): void {
+    const entry = this.#entries.get(uri);
+    try {
+      const run = NUMERIC[feature] as (views: Views, ...args: readonly unknown[]) => unknown;
+      const value = entry && run(viewsOf(entry, this.#contents), ...args);
+      this.#say({ say: "answer", id, value });
+    } catch (error) {
+      this.#fault(`${feature} in ${entry?.file ?? uri}`, error, id);
+    }
+  }
+
+  #fault(where: string, error: unknown, id?: number): void {
+    this.#say({ say: "fault", id, where, error: errorText(error) });
+  }
+}
+
+interface Entry {
+  readonly uri: string;
+  readonly serial: number;
+  readonly file: string;
+  readonly text: string;
+  readonly reads: ReadonlyMap<string, number>;
+  units: UnitSystem;
+  model?: Model;
+  lines?: LineIndex;
+  /** Of this text, while its answers are being computed. */
+  modes?: FileReport;
+  /** The newest report with everything, of this text or an earlier one. */
+  whole?: { readonly report: FileReport; readonly serial: number };
+  /** How long everything took the last time, in ms. */
+  took: number;
+}
+
+interface Job {
+  readonly entry: Entry;
+  readonly serial: number;
+  readonly open: boolean;
+  readonly steps: Steps<void>;
+}
+
+const isAsk = ({ keyword }: Model["tree"]["statements"][number]): boolean => keyword.text === "ask";
+
+/** Reads exactly what the server's own model read. */
+function understood(entry: Entry, contents: ReadonlyMap<number, FileContent>): Model {
+  entry.model ??= understand(entry.file, entry.text, {
+    read: (path) =>
+      contents.get(entry.reads.get(path) ?? -1) ?? { ok: false, why: "missing", detail: "it was not read" },
+  });
+  return entry.model;
+}
+
+function viewsOf(entry: Entry, contents: ReadonlyMap<number, FileContent>): Views {
+  entry.lines ??= new LineIndex(entry.text);
+  const { lines, units, whole, modes, serial } = entry;
+  const base = { model: understood(entry, contents), lines, units, others: [] };
+  const view: View = {
+    ...base,
+    report: whole?.report,
+    stale: whole !== undefined && whole.serial !== serial,
+  };
+  return { whole: view, now: modes === undefined ? view : { ...base, report: modes, stale: false } };
+}
+
+function judgedOf(report: FileReport, upTo: Judged["upTo"], units: UnitSystem): Judged {
+  const summary = summaryOf(report, units);
+  return {
+    upTo,
+    diagnostics: report.diagnostics.map(plain),
+    accepted: report.accepted.map(({ diagnostic, reason }) => ({ diagnostic: plain(diagnostic), reason })),
+    faults: report.faults.map(({ where, case: of, error }) => ({ where, case: of, error: errorText(error) })),
+    summary: { ...summary, state: stateText(summary) },
+  };
+}
+
+/** Without what a rule may have left on it beside its fields. */
+function plain({
+  code,
+  severity,
+  message,
+  hint,
+  span,
+  related,
+  fixes,
+  case: of,
+  tag,
+}: Diagnostic): Diagnostic {
+  return { code, severity, message, hint, span, related, fixes, case: of, tag };
+}
+
+export const errorText = (error: unknown): string =>
+  error instanceof Error ? (error.stack ?? error.message) : String(error);

@@ -1,0 +1,66 @@
+/** What is answered where the numbers are: features that look at a report. All of it is plain data. */
+import {
+  answerFiles,
+  type CodeLens,
+  type CsvResult,
+  type Hover,
+  hover,
+  type InlayHint,
+  type InlayKind,
+  inlayHints,
+  type ResolvedLens,
+  resolveLens,
+  type Span,
+  type View,
+} from "../shared-core/index.ts";
+
+/**
+ * `now`: with the newest modes, even while answers are still computed; `whole`: with the newest report that has
+ * everything, though it may be of an earlier text.
+ */
+export interface Views {
+  readonly now: View;
+  readonly whole: View;
+}
+
+export const NUMERIC = {
+  hover: ({ now, whole }: Views, offset: number): Hover | null =>
+    hover(speaksOfAnswers(now, offset) ? whole : now, offset) ?? null,
+
+  inlayHints({ now, whole }: Views, range: Span, kinds: readonly InlayKind[]): readonly InlayHint[] {
+    const early = kinds.filter((kind) => kind !== "margin");
+    const hints = [
+      ...inlayHints(now, range, { kinds: new Set(early) }),
+      ...(kinds.includes("margin") ? inlayHints(whole, range, { kinds: new Set(["margin"]) }) : []),
+    ];
+    return hints.sort((a, b) => a.offset - b.offset);
+  },
+
+  resolveLens: ({ whole }: Views, lens: CodeLens): ResolvedLens => resolveLens(whole, lens),
+
+  csv({ whole }: Views, ask: string, caseName: string | undefined): CsvResult {
+    const { report, units, model } = whole;
+    const first = model.cases[0].name;
+    const found = report?.cases.find(({ name }) => name === (caseName ?? first));
+    if (report === undefined || found === undefined) {
+      return { text: null, refused: caseName ? `there is no case ${caseName}` : "there are no numbers" };
+    }
+    const answer = found.answers.get(ask);
+    if (answer?.ok === false) return { text: null, refused: answer.reason };
+    const [file] = answerFiles({ ...report, cases: [found] }, { asks: [ask], as: "csv", units });
+    return file === undefined
+      ? { text: null, refused: `nothing was asked by the name ${ask}` }
+      : { text: file.text };
+  },
+} as const satisfies Record<string, (views: Views, ...args: never[]) => unknown>;
+
+export type NumericFeature = keyof typeof NUMERIC;
+export type NumericArgs<F extends NumericFeature> =
+  Parameters<(typeof NUMERIC)[F]> extends [Views, ...infer A] ? A : never;
+export type NumericResult<F extends NumericFeature> = ReturnType<(typeof NUMERIC)[F]>;
+
+/** Whether a place belongs to what is asked, expected or varied: its numbers come last. */
+function speaksOfAnswers({ model }: View, offset: number): boolean {
+  const at = model.tree.statements.find(({ span }) => span.start <= offset && offset <= span.end);
+  return at !== undefined && ["ask", "expect", "case"].includes(at.keyword.text);
+}
