@@ -24,10 +24,9 @@ export function askReadout(numbers: Numbers, kind: string, name: string): readon
   const said = series
     .slice(0, LINES)
     .map((each) => peakLine(numbers, each, answer.kind === "sweep" ? "Hz" : "s"));
-  return [
-    lines(...said, moreLine(series.length, "quantities")),
-    { kind: "plot", plot: answerPlot(name, answer, numbers.units) },
-  ];
+  const more = moreLine(series.length, "quantities", "quantity");
+  if (series.length === 0) return [lines("it lists no quantity; expectations may ask it for any")];
+  return [lines(...said, more), { kind: "plot", plot: answerPlot(name, answer.kind, series) }];
 }
 
 function peakLine(numbers: Numbers, { quantity, unit, peak }: ShownSeries, x: "Hz" | "s"): Phrase {
@@ -48,7 +47,7 @@ function modesReadout(numbers: Numbers, { modes, instance }: CaseReport): readon
   const blocks: Block[] = [
     lines(
       ...said,
-      moreLine(elastic.length, "modes"),
+      moreLine(elastic.length, "modes", "mode"),
       free === 0 ? undefined : `${free} free ${free === 1 ? "mode" : "modes"}: nothing holds the whole`,
     ),
   ];
@@ -56,5 +55,7 @@ function modesReadout(numbers: Numbers, { modes, instance }: CaseReport): readon
   return blocks;
 }
 
-const moreLine = (count: number, what: string): Phrase | undefined =>
-  count > LINES ? `and ${count - LINES} more ${what}` : undefined;
+function moreLine(count: number, several: string, one: string): Phrase | undefined {
+  const more = count - LINES;
+  return more > 0 ? `and ${more} more ${more === 1 ? one : several}` : undefined;
+}

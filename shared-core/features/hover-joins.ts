@@ -1,4 +1,5 @@
 /** What joins: its part in the modes, what it carries at rest and in the answers, what stiffening it would do. */
+import type { Peak } from "../answers/answer.ts";
 import type { ElementInfo, Motion, QuantityRef } from "../mechanics/assembly.ts";
 import { NUMBER } from "../units/quantity.ts";
 import { siUnit } from "../units/show.ts";
@@ -161,21 +162,38 @@ function staticSum(numbers: Numbers, elements: readonly number[]): Phrase | unde
 }
 
 function peakLines(numbers: Numbers, index: number): readonly Phrase[] {
-  const element = numbers.asWritten.instance.assembly.elements[index];
-  return answeredAsks(numbers.asWritten).flatMap((ask) => {
-    const said = (["travel", "force"] as const).flatMap((measure) => {
-      const of = quantity(element.name, measure, element.motion, [
-        { of: "element", element: index, measure, factor: 1 },
-      ]);
-      const peak = peakIn(numbers.asWritten, ask, of);
-      return peak === undefined
-        ? []
-        : [`${measureWord(measure, element)} up to ${showPeak(numbers, measure, element, peak, ask.kind)}`];
-    });
-    if (said.length === 0)
-      return [`${nameAmong(numbers, element)}in \`${ask.name}\`: no largest travel or force`];
-    return [`${nameAmong(numbers, element)}in \`${ask.name}\`: ${said.join(", ")}`];
+  const { asWritten } = numbers;
+  const element = asWritten.instance.assembly.elements[index];
+  const of = (measure: "travel" | "force"): QuantityRef =>
+    quantity(element.name, measure, element.motion, [{ of: "element", element: index, measure, factor: 1 }]);
+  return answeredAsks(asWritten).map((ask): Phrase => {
+    const travel = peakIn(asWritten, ask, of("travel"));
+    const force = forceFrom(element, ask.kind, travel) ?? peakIn(asWritten, ask, of("force"));
+    const said = [
+      ...(travel
+        ? [
+            `${measureWord("travel", element)} up to ${showPeak(numbers, "travel", element, travel, ask.kind)}`,
+          ]
+        : []),
+      ...(force
+        ? [`${measureWord("force", element)} up to ${showPeak(numbers, "force", element, force, ask.kind)}`]
+        : []),
+    ];
+    const found = said.length === 0 ? "no largest travel or force" : said.join(", ");
+    return `${nameAmong(numbers, element)}in \`${ask.name}\`: ${found}`;
   });
+}
+
+/** A plain spring needs no second search: its force is k (1 + i eta) times its travel, in time k times it. */
+function forceFrom(
+  element: ElementInfo,
+  kind: "sweep" | "history",
+  travel: Peak | undefined,
+): Peak | undefined {
+  const { stiffness, damping, inertance, preload, lossFactor } = element;
+  if (travel === undefined || damping !== 0 || inertance !== 0 || preload !== 0) return undefined;
+  const factor = kind === "sweep" ? Math.hypot(1, lossFactor) : 1;
+  return { value: Math.abs(stiffness) * factor * travel.value, at: travel.at };
 }
 
 function measureWord(measure: "travel" | "force", { motion }: ElementInfo): string {

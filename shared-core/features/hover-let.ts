@@ -9,7 +9,15 @@ import { occurrences } from "./navigate-names.ts";
 import { type Block, lines, numeric, type Phrase } from "./readout.ts";
 import { saysItself } from "./readout-literal.ts";
 import { elasticModes, modesWorthSaying } from "./readout-modes.ts";
-import { isNothing, type Numbers, showHz, showMove, showParameter, showQuantity } from "./readout-numbers.ts";
+import {
+  currentInstance,
+  isNothing,
+  type Numbers,
+  showHz,
+  showMove,
+  showParameter,
+  showQuantity,
+} from "./readout-numbers.ts";
 import type { View } from "./view.ts";
 
 /** The first modes are always shown, and others that the number moves most. */
@@ -20,12 +28,12 @@ const TEN_PERCENT = 0.1;
 export function valueReadout(view: View, entity: Entity): readonly Block[] {
   const { model, units } = view;
   // Putting the numbers in is cheap, and these belong to the text as it stands even while others are awaited.
-  const instance = instantiate(model, 0);
+  const instance = currentInstance(view);
   const parameter = instance.parameters.get(entity.name);
   const value = parameter === undefined ? [] : valueLines(parameter, computedText(instance, entity), units);
   return [
     lines(...value, entity.file === undefined ? undefined : `from \`${entity.file}\``),
-    lines(...caseLines(model, entity.name, units), ...useLines(view, entity)),
+    lines(...caseLines(model, parameter, units), ...useLines(view, entity)),
   ];
 }
 
@@ -64,11 +72,11 @@ function shareOfBand({ value, low = value, high = value }: ParameterValue): Phra
 }
 
 /** Its value in each case that replaces it, or something that it is made of. */
-function caseLines(model: Model, name: string, units: UnitSystem): readonly Phrase[] {
-  const written = instantiate(model, 0).parameters.get(name)?.value;
+function caseLines(model: Model, written: ParameterValue | undefined, units: UnitSystem): readonly Phrase[] {
+  if (written === undefined) return [];
   return model.cases.slice(1).flatMap((each, i) => {
-    const parameter = instantiate(model, i + 1).parameters.get(name);
-    if (parameter === undefined || parameter.value === written) return [];
+    const parameter = instantiate(model, i + 1).parameters.get(written.name);
+    if (parameter === undefined || parameter.value === written.value) return [];
     return [`case \`${each.name}\`: ${showParameter(parameter, parameter.value, units)}`];
   });
 }

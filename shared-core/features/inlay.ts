@@ -1,12 +1,12 @@
 /** Short readouts behind numbers of the text, where it does not already say them. */
-import { evaluateExpression, instantiate } from "../model/instantiate.ts";
+import { evaluateExpression } from "../model/instantiate.ts";
 import type { Instance } from "../model/model.ts";
 import { fail } from "../numerics/outcome.ts";
 import type { Expression, Item, StatementNode } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
 import { saysItself } from "./readout-literal.ts";
 import { coordinatesOf, heldFrequency } from "./readout-modes.ts";
-import { type Numbers, numbersOf, showHz, showQuantity } from "./readout-numbers.ts";
+import { currentInstance, type Numbers, numbersOf, showHz, showQuantity } from "./readout-numbers.ts";
 import {
   type CaseVerdict,
   marginText,
@@ -54,7 +54,7 @@ export function inlayHints(view: View, range: Span, options: InlayOptions = {}):
     ({ span }) => span.start <= range.end && range.start <= span.end,
   );
   // Values belong to the text as it stands, so they never wait for a report.
-  const instance = kinds.has("value") && statements.length > 0 ? instanceOf(view) : undefined;
+  const instance = kinds.has("value") && statements.length > 0 ? currentInstance(view) : undefined;
   const hints = statements.flatMap((statement) => [
     ...(instance === undefined ? [] : valueHints(view, instance, statement)),
     ...(numbers !== undefined && kinds.has("frequency") ? frequencyHints(numbers, statement) : []),
@@ -68,11 +68,6 @@ export function inlayHints(view: View, range: Span, options: InlayOptions = {}):
 /** Whether a hint would move what stands at the cursor while somebody types there. */
 function pushes({ lines }: View, offset: number, cursor: number | undefined): boolean {
   return cursor !== undefined && offset <= cursor && lines.lineAt(offset) === lines.lineAt(cursor);
-}
-
-function instanceOf({ model, report, stale }: View): Instance {
-  const known = report?.cases[0]?.instance;
-  return known !== undefined && !stale && known.model === model ? known : instantiate(model, 0);
 }
 
 const MASSES: ReadonlySet<string> = new Set(["mass", "inertia", "body", "pendulum"]);

@@ -1,7 +1,8 @@
 import type { CaseReport, FileReport } from "../judgement/report.ts";
 import { writtenUnit } from "../judgement/shown-unit.ts";
 import type { Motion } from "../mechanics/assembly.ts";
-import type { Instance, ParameterValue } from "../model/model.ts";
+import { instantiate } from "../model/instantiate.ts";
+import type { Instance, Model, ParameterValue } from "../model/model.ts";
 import type { Expression } from "../syntax/tree.ts";
 import type { Quantity } from "../units/dimension.ts";
 import { isFault } from "../units/fault.ts";
@@ -31,10 +32,25 @@ export function numbersOf({ report, units, stale }: View): Numbers | undefined {
   return {
     report,
     asWritten,
-    units: unitView(units, writtenUnits(report.model)),
+    units: unitView(units, unitsOf(report.model)),
     system: units,
     stale,
   };
+}
+
+/** A model never changes, so the units that it uses may be kept as long as it is. */
+const UNITS = new WeakMap<Model, ReturnType<typeof writtenUnits>>();
+
+function unitsOf(model: Model): ReturnType<typeof writtenUnits> {
+  const known = UNITS.get(model) ?? writtenUnits(model);
+  UNITS.set(model, known);
+  return known;
+}
+
+/** The text as it stands with its numbers as written, whether or not a report of it is there. */
+export function currentInstance({ model, report, stale }: View): Instance {
+  const known = report?.cases[0]?.instance;
+  return known !== undefined && !stale && known.model === model ? known : instantiate(model, 0);
 }
 
 /** An SI value in the unit of the view: `39 mm`. */
