@@ -12,6 +12,8 @@ export interface LineFound {
 
 /** Offset for a slope, small against the distance of samples, large against rounding. */
 const SLOPE_STEP = 1e-3;
+/** Share of the value below which a change over a slope's step is rounding: the draw does not move it. */
+const NOISE = 1e-10;
 /** Refinement of an interior extreme: a thousandth of the band is closer than any tolerance is known. */
 const CLOSE_ENOUGH = 2e-3;
 /** Cap on evaluations of one refinement. */
@@ -30,36 +32,55 @@ export function largestAlong(
       expectation,
       through.map((other, i) => (i === draw ? position : other)),
     );
-  const points: { readonly position: number; readonly excess: number; readonly rises: number }[] = [];
+  const points: Point[] = [];
   for (const position of samples) {
-    const here = at(position);
-    if ("reason" in here) return here;
-    const step = position > 0 ? -SLOPE_STEP : SLOPE_STEP;
-    const beside = at(position + step);
-    if ("reason" in beside) return beside;
-    points.push({ position, excess: here.excess, rises: Math.sign((beside.excess - here.excess) * step) });
+    const point = withSlope(at, position);
+    if ("reason" in point) return point;
+    points.push(point);
   }
-  let best = points.reduce((most, point) => (point.excess > most.excess ? point : most));
+  let best = points[0].excess >= points[points.length - 1].excess ? points[0] : points[points.length - 1];
   let inside = false;
+  const take = (point: Point): void => {
+    if (!(point.excess > best.excess + point.noise)) return;
+    best = point;
+    inside = true;
+  };
+  points.slice(1, -1).forEach(take);
   for (let i = 1; i < points.length; i++) {
-    if (!(points[i - 1].rises > 0 && points[i].rises < 0)) continue;
-    const refined = minimise(
-      (position) => numberOf(at(position)),
-      points[i - 1].position,
-      points[i].position,
-      {
-        tolerance: CLOSE_ENOUGH,
-        evaluations: EVALUATIONS,
-      },
-    );
+    const [left, right] = [points[i - 1], points[i]];
+    if (!(left.rises > 0 && right.rises < 0)) continue;
+    const refined = minimise((position) => numberOf(at(position)), left.position, right.position, {
+      tolerance: CLOSE_ENOUGH,
+      evaluations: EVALUATIONS,
+    });
     const found = refined.ok ? refined.value : refined.upTo;
-    if (found !== undefined && -found.value > best.excess) {
-      best = { position: found.x, excess: -found.value, rises: 0 };
-      inside = true;
+    if (found !== undefined) {
+      take({ position: found.x, excess: -found.value, rises: 0, noise: left.noise });
     }
   }
   const positions = through.map((other, i) => (i === draw ? best.position : other));
-  return { positions, excess: best.excess, inside: inside || Math.abs(best.position) < 1 };
+  return { positions, excess: best.excess, inside };
+}
+
+interface Point {
+  readonly position: number;
+  readonly excess: number;
+  /** Sign of the slope; 0 where the draw does not move it. */
+  readonly rises: number;
+  /** What rounding may make of the excess. */
+  readonly noise: number;
+}
+
+function withSlope(at: (position: number) => Excess, position: number): Point | { readonly reason: string } {
+  const here = at(position);
+  if ("reason" in here) return here;
+  const step = position > 0 ? -SLOPE_STEP : SLOPE_STEP;
+  const beside = at(position + step);
+  if ("reason" in beside) return beside;
+  const change = beside.excess - here.excess;
+  const noise = NOISE * Math.max(Math.abs(here.value), Math.abs(beside.value));
+  const rises = Math.abs(change) <= noise ? 0 : Math.sign(change * step);
+  return { position, excess: here.excess, rises, noise };
 }
 
 /** A point that cannot be computed is no largest excess; it ends the refinement with the best so far. */
