@@ -42,6 +42,7 @@ export type { Position, Range, Span, TextEdit } from "./text/span.ts";
 export type { View } from "./features/view.ts";
 
 // The text in an editor: where names lead, what they are called, how the text is laid out and coloured.
+export { type CompleteOptions, type Completion, type CompletionKind, complete } from "./features/complete.ts";
 export { type FoldingRange, foldingRanges } from "./features/fold.ts";
 export { formatDocument, formatRange, formatRanges } from "./features/format.ts";
 export { type DocumentLink, documentLinks } from "./features/links.ts";

@@ -39,7 +39,7 @@ function moved(path: string, moves: readonly Move[]): string {
 }
 
 /** A path as it is written in a file. */
-function relativePath(from: string, to: string): string {
+export function relativePath(from: string, to: string): string {
   const [folder, target] = [from.split("/").slice(0, -1), to.split("/")];
   let shared = 0;
   while (shared < folder.length && shared < target.length - 1 && folder[shared] === target[shared]) shared++;
