@@ -104,7 +104,7 @@ function planTolerance(
 ): PlannedTolerance | undefined {
   const tolerance = node.tolerance;
   if (tolerance === undefined) return undefined;
-  const relative = isShare(tolerance.amount, c);
+  const relative = isShare(tolerance.amount);
   const wanted =
     relative || value === undefined ? wantedKind(NUMBER) : wantedKind(value.kind, TOLERANCE_HINT);
   const amount = planExpression(
@@ -131,8 +131,7 @@ function planTolerance(
 const TOLERANCE_HINT = "a tolerance is a share of the value, in %, or a number in the unit of the value";
 
 /** A literal in % or ppm is a share of the value, whatever the value is. */
-const isShare = (node: Expression, _: NumberContext): boolean =>
-  /^(%|ppm)$/.test(literalOf(node)?.unit?.text ?? "");
+const isShare = (node: Expression): boolean => /^(%|ppm)$/.test(literalOf(node)?.unit?.text ?? "");
 
 /** A share by name: `+/- scatter` with `let scatter = 5 %`. */
 function isBareShare(node: Expression, c: NumberContext): boolean {
