@@ -59,7 +59,11 @@ expect low = natural_frequency(1) <= 6 Hz
     ];
     const found = workspaceSymbols(models, "pump").map(({ name, file }) => `${file} ${name}`);
     expect(found).toEqual(["pier/pump.thrum pump", "b.thrum crane_pump"]);
-    expect(workspaceSymbols(models, "ru").map(({ name }) => name)).toEqual(["run_up", "foot.rubber", "crane_pump"]);
+    expect(workspaceSymbols(models, "ru").map(({ name }) => name)).toEqual([
+      "run_up",
+      "foot.rubber",
+      "crane_pump",
+    ]);
     expect(workspaceSymbols(models, "zz")).toEqual([]);
   });
 });
