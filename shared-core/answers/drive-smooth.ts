@@ -29,8 +29,8 @@ export interface SmoothSignal {
 }
 
 const POINTS = 8;
-/** More pieces than this are not made: 400,000 pieces of 8 coefficients are 26 MB. */
-const MOST_PIECES = 400_000;
+/** More pieces than this are not made: 200,000 pieces of 8 coefficients are 13 MB. */
+const MOST_PIECES = 200_000;
 /** Pieces are not halved below this share of the whole; what jumps inside one has no weight in any integral. */
 const LEAST_SHARE = 2 ** -44;
 const FIRST_PIECES = 256;

@@ -135,6 +135,7 @@ export class Motion {
       chunk.count = 0;
     };
     const stride = this.#beginChecks(steps);
+    let reachedBefore = 0;
     rows.set(this.#start, width);
     this.#kick(0, rows, width);
     add(0, 0, 1, 0);
@@ -151,10 +152,6 @@ export class Motion {
       }
       this.#readStep(segment, from);
       advance(this.modal, this.#shapes, propagator.value, this.#inputs, rows, at, at + width);
-      if (!isCalm(rows, at + width, width)) {
-        flush();
-        return fail(`the motion grows beyond all bounds; it was followed until ${from} s`, from);
-      }
       add(to, i, 0, segment);
       const next = grid.segments[i + 1];
       if (i + 1 < steps && next !== segment) {
@@ -165,7 +162,19 @@ export class Motion {
           add(to, i + 1, 1, next);
         }
       }
-      if (chunk.count >= CHUNK_ROWS) flush();
+      if (chunk.count < CHUNK_ROWS && i + 1 < steps) continue;
+      // What has run away stays away, so the last row tells for all before it.
+      const wild = isCalm(rows, chunk.count * width, width)
+        ? chunk.count
+        : firstWild(rows, width, chunk.count);
+      if (wild < chunk.count) {
+        const reached = wild > 0 ? chunk.times[wild - 1] : reachedBefore;
+        chunk.count = wild;
+        flush();
+        return fail(`the motion grows beyond all bounds; it was followed until ${reached} s`, reached);
+      }
+      reachedBefore = to;
+      flush();
     }
     flush();
     return succeed(this.duration);
@@ -314,6 +323,12 @@ export function outputValue(output: ModalOutput, row: Float64Array, inputs: Floa
   for (let k = 0; k < rest.length; k++) sum += rest[k] * row[2 * count + k];
   for (let k = 0; k < direct.length; k++) if (direct[k] !== 0) sum += direct[k] * inputs[k];
   return sum;
+}
+
+/** Index of the first visible row that is not calm, `count` where all are. */
+function firstWild(rows: Float64Array, width: number, count: number): number {
+  for (let r = 0; r < count; r++) if (!isCalm(rows, (r + 1) * width, width)) return r;
+  return count;
 }
 
 function isCalm(rows: Float64Array, at: number, width: number): boolean {

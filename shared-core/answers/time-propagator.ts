@@ -95,19 +95,17 @@ export function advance(
   to: number,
 ): void {
   const { count, rest } = modal;
-  const { expRe, expIm } = step;
-  for (let k = 0; k < count; k++) {
-    const re = rows[from + k];
-    const im = rows[from + count + k];
-    rows[to + k] = expRe[k] * re - expIm[k] * im;
-    rows[to + count + k] = expRe[k] * im + expIm[k] * re;
-  }
+  let fused = 0;
+  if (shapes.length > 0 && shapes[0].order >= 2) {
+    advanceLine(count, step, inputs[0][0], inputs[0][1], rows, from, to);
+    fused = 2;
+  } else advanceFree(count, step, rows, from, to);
   for (let j = 0; j < shapes.length; j++) {
     const { order, omega } = shapes[j];
     const input = inputs[j];
     const powerRe = step.powerRe[j];
     const powerIm = step.powerIm[j];
-    for (let p = 0; p < order; p++) {
+    for (let p = j === 0 ? fused : 0; p < order; p++) {
       const c = input[p];
       if (c === 0) continue;
       const at = p * count;
@@ -119,6 +117,37 @@ export function advance(
     if (omega !== 0) addSine(step, j, input[order], input[order + 1], count, rows, to);
   }
   if (rest > 0) advanceBlock(modal, shapes, step, inputs, rows, from + 2 * count, to + 2 * count);
+}
+
+function advanceFree(count: number, step: Propagator, rows: Float64Array, from: number, to: number): void {
+  const { expRe, expIm } = step;
+  for (let k = 0; k < count; k++) {
+    const re = rows[from + k];
+    const im = rows[from + count + k];
+    rows[to + k] = expRe[k] * re - expIm[k] * im;
+    rows[to + count + k] = expRe[k] * im + expIm[k] * re;
+  }
+}
+
+/** The same with the first input's straight line in one pass: the inner loop of every record. */
+function advanceLine(
+  count: number,
+  step: Propagator,
+  c0: number,
+  c1: number,
+  rows: Float64Array,
+  from: number,
+  to: number,
+): void {
+  const { expRe, expIm } = step;
+  const powerRe = step.powerRe[0];
+  const powerIm = step.powerIm[0];
+  for (let k = 0; k < count; k++) {
+    const re = rows[from + k];
+    const im = rows[from + count + k];
+    rows[to + k] = expRe[k] * re - expIm[k] * im + c0 * powerRe[k] + c1 * powerRe[count + k];
+    rows[to + count + k] = expRe[k] * im + expIm[k] * re + c0 * powerIm[k] + c1 * powerIm[count + k];
+  }
 }
 
 function addSine(

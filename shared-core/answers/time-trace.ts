@@ -4,6 +4,7 @@
  * The grid is fine enough that every root that matters turns by no more than `TURN` a step while it matters:
  * a root's free part decays, so fast damped roots are followed only behind the instants that excite them.
  */
+import { kernelFor } from "../numerics/kernel.ts";
 import type { Outcome } from "../numerics/outcome.ts";
 import { fail, succeed } from "../numerics/outcome.ts";
 import { multiply } from "../numerics/products.ts";
@@ -114,10 +115,26 @@ class OutputTable {
     this.withInputs = this.#direct.some((v) => v !== 0);
   }
 
+  #product(chunk: Chunk): Float64Array {
+    const { count } = this;
+    const width = this.#width;
+    if (count === 1) return dots(chunk.rows, this.#factors, chunk.count, width);
+    const out = new Float64Array(chunk.count * count);
+    kernelFor(Math.min(width, 4 * count)).product(
+      { data: chunk.rows, at: 0, stride: width },
+      { data: this.#factors, at: 0, stride: count },
+      { data: out, at: 0, stride: count },
+      chunk.count,
+      width,
+      count,
+    );
+    return out;
+  }
+
   /** Values of the quantities at the rows of a chunk: count rows of quantities, into `out`. */
   values(chunk: Chunk, out: Float64Array): void {
     const { count } = this;
-    const plain = multiply(chunk.rows, this.#factors, chunk.count, this.#width, count);
+    const plain = this.#product(chunk);
     if (this.withInputs) {
       const directWidth = this.#direct.length / count;
       const direct = multiply(chunk.inputs, this.#direct, chunk.count, directWidth, count);
@@ -137,6 +154,17 @@ class OutputTable {
       }
     }
   }
+}
+
+function dots(rows: Float64Array, factors: Float64Array, count: number, width: number): Float64Array {
+  const out = new Float64Array(count);
+  for (let r = 0; r < count; r++) {
+    let sum = 0;
+    const at = r * width;
+    for (let k = 0; k < width; k++) sum += rows[at + k] * factors[k];
+    out[r] = sum;
+  }
+  return out;
 }
 
 /** Values of quantities along a grid. */
