@@ -1,6 +1,6 @@
 /** Judging the expectations of one case: value, limit, margin, tolerance, what matters and what would cure it. */
 import type { Expectation, HistoryAsk, Instance } from "../model/model.ts";
-import type { Kind } from "../units/dimension.ts";
+import type { Kind, Quantity } from "../units/dimension.ts";
 import { NUMBER } from "../units/quantity.ts";
 import { siUnit } from "../units/show.ts";
 import { cureOf } from "./cure.ts";
@@ -40,7 +40,9 @@ export function* judgeExpectations(
     const influence = followed.get(expectation) ?? [];
     const fails = sides.ok && !sides.value.holds;
     judged.push({
-      verdict: verdictOf(expectation, sides, tolerances.get(expectation), influence[0]),
+      verdict: sides.ok
+        ? verdictOf(expectation, sides.value, tolerances.get(expectation), influence[0])
+        : noVerdict(expectation, sides.reason, trial.evaluate(expectation.right)),
       expectation,
       cure: fails ? yield* cureOf(trial, expectation, influence) : undefined,
       remarks: found,
@@ -52,8 +54,7 @@ export function* judgeExpectations(
 
 /** What stands for an expectation that a fault of Thrum kept from being judged: it does not hold in silence. */
 export function unjudged(expectation: Expectation): Judged {
-  const sides = { ok: false, reason: "a fault of Thrum kept it from being judged" } as const;
-  const verdict = verdictOf(expectation, sides, undefined, undefined);
+  const verdict = noVerdict(expectation, "a fault of Thrum kept it from being judged");
   return { verdict, expectation, remarks: [], explained: false };
 }
 
@@ -70,36 +71,40 @@ function wantsInfluences(
   return !sides.value.holds || thin || !readsHistory(expectation, histories);
 }
 
+/** The limit stands where it is known; the unit is its. */
+function noVerdict(expectation: Expectation, reason: string, limit?: Found<Quantity>): Verdict {
+  const known = limit?.ok ? limit.value : undefined;
+  const kind = known === undefined ? NUMBER : { dimension: known.dimension, rate: known.rate };
+  return {
+    name: expectation.name,
+    expectation,
+    holds: null,
+    reason,
+    value: null,
+    limit: known?.value ?? null,
+    kind,
+    unit: siUnit(kind),
+    margin: null,
+  };
+}
+
 function verdictOf(
   expectation: Expectation,
-  sides: Found<Sides>,
+  sides: Sides,
   tolerance: ToleranceFound | undefined,
   mattersMost: Influence | undefined,
 ): Verdict {
-  const { name } = expectation;
-  if (!sides.ok) {
-    const nothing = { value: null, limit: null, margin: null, holds: null } as const;
-    return {
-      name,
-      expectation,
-      ...nothing,
-      reason: sides.reason,
-      kind: NUMBER,
-      unit: siUnit(NUMBER),
-      tolerance,
-    };
-  }
-  const { value, limit, holds } = sides.value;
+  const { value, limit, holds } = sides;
   const kind: Kind = { dimension: value.dimension, rate: value.rate };
   return {
-    name,
+    name: expectation.name,
     expectation,
     holds,
     value: value.value,
     limit: limit.value,
     kind,
     unit: siUnit(kind),
-    margin: marginOf(sides.value),
+    margin: marginOf(sides),
     tolerance,
     mattersMost,
   };

@@ -101,8 +101,8 @@ export function phasorAt(
 ): Found<readonly [number, number]> {
   const response = steady(trial, ask);
   if (!response.ok) return response;
-  if (!(frequencyHz > 0))
-    return fail(`a steady response needs a frequency above zero, not ${sayRate(frequencyHz)}`);
+  if (!(frequencyHz >= 0))
+    return fail(`a steady response has no frequency below zero, as ${sayRate(frequencyHz)}`);
   return response.value.at(quantity, frequencyHz);
 }
 
