@@ -72,7 +72,8 @@ export {
 } from "./features/tokens.ts";
 
 // A report in a few lines, and a number put back into the text.
-export { type ModelSummary, stateText, summaryOf } from "./features/summary.ts";
+export { stateText, summaryOf } from "./features/summary.ts";
+export type { ModelSummary } from "./features/summary-content.ts";
 export { type WrittenValue, writeValue } from "./features/write-value.ts";
 
 // What server and client say to each other beside the language server protocol.

@@ -1,22 +1,13 @@
 /** A report in a few lines: for a status, a test tree, a list of models. */
 import type { FileReport, Verdict } from "../judgement/report.ts";
 import type { Expectation } from "../model/model.ts";
-import type { CaseVerdict as CaseSummary, ExpectationSummary, Summary } from "../protocol/requests.ts";
 import { LineIndex } from "../text/line-index.ts";
 import { formatNumber, type UnitSystem } from "../units/show.ts";
 import { verdictUnit } from "../writing/verdict-text.ts";
 import { type Numbers, numbersOf, showHz, signed } from "./readout-numbers.ts";
-import {
-  type CaseVerdict,
-  holdsThroughout,
-  limitText,
-  valueText,
-  verdictPhrase,
-} from "./readout-verdicts.ts";
+import { type CaseVerdict, limitText, valueText, verdictPhrase } from "./readout-verdicts.ts";
+import type { CaseVerdict as CaseSummary, ExpectationSummary, ModelSummary } from "./summary-content.ts";
 import type { View } from "./view.ts";
-
-/** What does not depend on documents and versions. */
-export type ModelSummary = Omit<Summary, "protocol" | "uri" | "version">;
 
 /** Expectations are those of the text; their verdicts those of the report, none where it has no numbers for them. */
 export function summaryOf(report: FileReport, units: UnitSystem): ModelSummary {

@@ -2,6 +2,7 @@
  * Requests and notifications beside those of the language server protocol. One version number for all of them;
  * a client that sees another one than its own says so and uses the standard protocol only.
  */
+import type { ModelSummary } from "../features/summary-content.ts";
 import type { Range } from "../text/span.ts";
 
 export const PROTOCOL_VERSION = 1;
@@ -39,41 +40,13 @@ export interface SummaryParams {
   readonly uri: string;
 }
 
-/** One expectation in one case, as the test explorer and the status show it. */
-export interface CaseVerdict {
-  /** "as written" or the name of the case. */
-  readonly case: string;
-  readonly holds: boolean | null;
-  /** `3.95 Hz`; null when it could not be computed. */
-  readonly value: string | null;
-  readonly limit: string | null;
-  readonly unit: string;
-  /** One sentence: what would have to change, or why it could not be computed. */
-  readonly message: string;
-  /** The parameter that matters most, with its effect. */
-  readonly mattersMost?: string;
-}
+export type { CaseVerdict, ExpectationSummary } from "../features/summary-content.ts";
 
-export interface ExpectationSummary {
-  readonly name: string;
-  readonly range: Range;
-  /** `<=` or `>=` with the limit, as it stands in the text. */
-  readonly comparison: string;
-  readonly verdicts: readonly CaseVerdict[];
-}
-
-export interface Summary {
+export interface Summary extends ModelSummary {
   readonly protocol: number;
   readonly uri: string;
   /** Version of the document the numbers belong to. */
   readonly version: number | null;
-  readonly title?: string;
-  readonly cases: readonly string[];
-  /** Elastic natural frequencies as written, as shown. */
-  readonly frequencies: readonly string[];
-  readonly expectations: readonly ExpectationSummary[];
-  readonly errors: number;
-  readonly warnings: number;
 }
 
 export interface StateParams {
