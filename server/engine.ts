@@ -2,14 +2,7 @@
  * What the server and the side that computes numbers say to each other. That side may be a thread of its own, so
  * everything is plain data; it holds the models with their reports, and answers what needs both.
  */
-import type {
-  CaseVerdict,
-  Diagnostic,
-  ExpectationSummary,
-  FileContent,
-  Summary,
-  UnitSystem,
-} from "../shared-core/index.ts";
+import type { Diagnostic, FileContent, ModelSummary, UnitSystem } from "../shared-core/index.ts";
 import type { NumericArgs, NumericFeature } from "./numeric-features.ts";
 
 /** A file that a model read. Its content travels once; afterwards `id` stands for it. */
@@ -58,13 +51,8 @@ export interface Judged {
   readonly summary: SummaryOfModel;
 }
 
-/** The part of a summary that does not depend on documents and versions. */
-export type SummaryOfModel = Omit<Summary, "protocol" | "uri" | "version" | "expectations"> & {
-  readonly state: string;
-  readonly expectations: readonly (Omit<ExpectationSummary, "verdicts"> & {
-    readonly verdicts: readonly CaseVerdict[];
-  })[];
-};
+/** The part of a summary that does not depend on documents and versions, and what a status says of it. */
+export type SummaryOfModel = ModelSummary & { readonly state: string };
 
 export type FromEngine =
   | { readonly say: "started"; readonly uri: string; readonly serial: number }

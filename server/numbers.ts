@@ -10,6 +10,7 @@ import {
   judgeInSteps,
   LineIndex,
   type Model,
+  type ModelSummary,
   type Steps,
   stateText,
   summaryOf,
@@ -17,7 +18,7 @@ import {
   understand,
   type View,
 } from "../shared-core/index.ts";
-import type { AskMessage, FromEngine, Judged, TextMessage, ToEngine } from "./engine.ts";
+import type { AskMessage, FromEngine, Judged, SummaryOfModel, TextMessage, ToEngine } from "./engine.ts";
 import { NUMERIC, type Views } from "./numeric-features.ts";
 
 /** Modes come first where everything together took longer than this the last time, in ms. */
@@ -214,15 +215,19 @@ function viewsOf(entry: Entry, contents: ReadonlyMap<number, FileContent>): View
 }
 
 function judgedOf(report: FileReport, upTo: Judged["upTo"], units: UnitSystem): Judged {
-  const summary = summaryOf(report, units);
   return {
     upTo,
     diagnostics: report.diagnostics.map(plain),
     accepted: report.accepted.map(({ diagnostic, reason }) => ({ diagnostic: plain(diagnostic), reason })),
     faults: report.faults.map(({ where, case: of, error }) => ({ where, case: of, error: errorText(error) })),
-    summary: { ...summary, state: stateText(summary) },
+    summary: withState(summaryOf(report, units)),
   };
 }
+
+export const withState = (summary: ModelSummary): SummaryOfModel => ({
+  ...summary,
+  state: stateText(summary),
+});
 
 /** Without what a rule may have left on it beside its fields. */
 function plain({

@@ -11,6 +11,8 @@ export interface Understood {
   readonly lines: LineIndex;
   readonly said: readonly Diagnostic[];
   readonly reads: ReadonlyMap<string, FileContent>;
+  /** What can be summed up without numbers. */
+  readonly summary: () => SummaryOfModel;
 }
 
 /** One replacement of a text, in offsets of the text before it. */
@@ -36,6 +38,8 @@ export class Session implements Place {
   understood: Understood | undefined;
   numbers: NumbersState = "awaited";
   summary: SummaryOfModel | undefined;
+  /** Rounds of asking the client for files that this text leads to. */
+  rounds = 0;
   /** How long understanding the text took the last time, in ms. */
   cost = 0;
   #content: FileContent | undefined;
@@ -95,6 +99,7 @@ export class Session implements Place {
   withoutNumbers(state: "there" | "stopped"): void {
     this.numbers = state;
     this.#judged = this.understood?.said ?? [];
+    this.summary = this.understood?.summary();
     this.#fromModes = [];
     this.#fromAnswers = [];
     this.#changes = [];

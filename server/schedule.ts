@@ -1,0 +1,370 @@
+/**
+ * Two tiers. What the text alone says is worked out at once, here; numbers are computed aside once typing rests.
+ * Every result carries the serial of the text it belongs to; a late one is dropped, for the newer run will publish.
+ */
+import { judge, LineIndex, type Model, summaryOf, understand, type View } from "../shared-core/index.ts";
+import type { AskMessage, Engine, FromEngine, ReadFile } from "./engine.ts";
+import { errorText, withState } from "./numbers.ts";
+import type { NumericArgs, NumericFeature, NumericResult } from "./numeric-features.ts";
+import type { Change, Session, Understood } from "./session.ts";
+import type { Settings } from "./settings.ts";
+import type { Sources } from "./sources.ts";
+import { nextTurn } from "./turns.ts";
+import { keyOf } from "./uris.ts";
+
+/** Texts that take longer than this, in ms, are worked out when typing rests for as long, at most `LONGEST_REST`. */
+const SWIFT = 40;
+const LONGEST_REST = 400;
+/** A burst of edits that wait to be read counts as one, for at most so long, in ms. */
+const LONGEST_BURST = 25;
+/** Rounds of asking the client for files that lead to more files. */
+const MOST_ROUNDS = 20;
+
+export interface ScheduleHost {
+  readonly sources: Sources;
+  startEngine(): Engine;
+  settingsOf(session: Session): Settings;
+  /** Something about a session is another thing now: text, modes, answers. */
+  changed(session: Session): void;
+  /** Numbers of a session begin or end to be computed. */
+  busy(session: Session, busy: boolean): void;
+  /** A model that is not open was judged. */
+  judgedClosed(uri: string, message: Extract<FromEngine, { say: "judged" }>): void;
+  log(text: string): void;
+}
+
+export class Schedule {
+  readonly #host: ScheduleHost;
+  readonly #sessions = new Map<string, Session>();
+  readonly #texts = new Texts((session) => this.#workOut(session));
+  readonly #timers = new Map<Session, ReturnType<typeof setTimeout>>();
+  readonly #questions = new Map<number, (value: unknown) => void>();
+  /** Which session or closed model uses which content of the engine. */
+  readonly #sent = new Map<number, Set<string>>();
+  #engine: Engine | undefined;
+  #lastQuestion = 0;
+
+  constructor(host: ScheduleHost) {
+    this.#host = host;
+  }
+
+  get sessions(): Iterable<Session> {
+    return this.#sessions.values();
+  }
+
+  session(key: string): Session | undefined {
+    return this.#sessions.get(key);
+  }
+
+  open(session: Session): void {
+    this.#sessions.set(session.key, session);
+    this.touch(session, []);
+  }
+
+  close(session: Session): void {
+    this.#sessions.delete(session.key);
+    this.#texts.forget(session);
+    this.#stopTimer(session);
+    session.close();
+    this.forgetModel(session.uri);
+  }
+
+  /** The text of a session, or a file that it reads, has changed. */
+  touch(session: Session, changes: readonly Change[]): void {
+    session.changed(changes);
+    this.#host.busy(session, false);
+    this.#stopTimer(session);
+    this.#texts.add(session);
+  }
+
+  /** Of the text as it stands now. */
+  current(session: Session): Understood {
+    const { understood } = session;
+    if (understood?.serial === session.serial) return understood;
+    this.#workOut(session);
+    return session.understood as Understood;
+  }
+
+  view(session: Session, others: () => readonly Model[] = () => []): View {
+    const { model, lines } = this.current(session);
+    const { units } = this.#host.settingsOf(session);
+    return {
+      model,
+      lines,
+      units,
+      stale: false,
+      get others() {
+        return others();
+      },
+    };
+  }
+
+  /** Resolves when the numbers of the text as it stands are there, or will not come. Does not wait for typing to rest. */
+  settled(session: Session): Promise<void> {
+    this.current(session);
+    if (session.numbers === "awaited" && this.#timers.has(session)) this.#judge(session);
+    return session.settled();
+  }
+
+  /** Asks the side that computes. undefined where it could not answer, which has been logged. */
+  ask<F extends NumericFeature>(
+    session: Session,
+    feature: F,
+    ...args: NumericArgs<F>
+  ): Promise<NumericResult<F> | undefined> {
+    this.current(session);
+    const id = ++this.#lastQuestion;
+    return new Promise((done) => {
+      this.#questions.set(id, (value) => done(value as NumericResult<F> | undefined));
+      this.engine.tell({
+        say: "ask",
+        id,
+        uri: session.uri,
+        feature,
+        args: args as unknown as AskMessage["args"],
+      });
+    });
+  }
+
+  /** Somebody stops the numbers of the text as it stands. */
+  stop(session: Session): void {
+    this.#stopTimer(session);
+    this.engine.tell({ say: "stop", uri: session.uri });
+  }
+
+  unitsChanged(session: Session): void {
+    this.engine.tell({ say: "units", uri: session.uri, units: this.#host.settingsOf(session).units });
+  }
+
+  /** Judges a model that is not open; `judgedClosed` hears what came of it. */
+  judgeClosed(
+    place: { readonly uri: string; readonly file: string },
+    text: string,
+    understood: Understood,
+  ): void {
+    this.#tellText(place, text, understood, "as-written");
+    this.engine.tell({ say: "judge", uri: place.uri, serial: understood.serial, open: false });
+  }
+
+  forgetModel(uri: string): void {
+    if (this.#engine === undefined) return;
+    const unused: number[] = [];
+    for (const [id, users] of this.#sent) {
+      if (!users.delete(uri) || users.size > 0) continue;
+      unused.push(id);
+      this.#sent.delete(id);
+    }
+    this.#engine.tell({ say: "forget", uri, contents: unused });
+  }
+
+  end(): void {
+    for (const timer of this.#timers.values()) clearTimeout(timer);
+    this.#engine?.end();
+  }
+
+  get engine(): Engine {
+    if (this.#engine === undefined) {
+      this.#engine = this.#host.startEngine();
+      this.#engine.onSaid = (message) => this.#hear(message);
+    }
+    return this.#engine;
+  }
+
+  #workOut(session: Session): void {
+    this.#texts.forget(session);
+    const { serial } = session;
+    const start = performance.now();
+    const text = session.document.getText();
+    const reading = this.#host.sources.reading(session);
+    session.understood = this.#understood(session, text, serial, reading);
+    session.cost = performance.now() - start;
+    if (reading.pending.length > 0) {
+      void this.#fetch(session, reading.pending);
+      return;
+    }
+    session.rounds = 0;
+    this.#tellText(session, text, session.understood, this.#host.settingsOf(session).units);
+    if (session.understood.model.buildable) this.#plan(session);
+    else session.withoutNumbers("there");
+    this.#host.changed(session);
+  }
+
+  #understood(
+    session: Session,
+    text: string,
+    serial: number,
+    reading: Parameters<typeof understand>[2] & Pick<Understood, "reads">,
+  ): Understood {
+    const lines = new LineIndex(text);
+    try {
+      const model = understand(session.file, text, reading);
+      const report = judge(model, { upTo: "text" });
+      for (const { where, error } of report.faults)
+        this.#fault(`${where} in ${session.file}`, session, error);
+      const { units } = this.#host.settingsOf(session);
+      const summary = () => withState(summaryOf(report, units));
+      return { serial, model, lines, said: report.diagnostics, reads: reading.reads, summary };
+    } catch (error) {
+      this.#fault(`understanding ${session.file}`, session, error);
+      const model = session.understood?.model ?? understand(session.file, "", reading);
+      const nothing = { cases: [], frequencies: [], expectations: [], errors: 0, warnings: 0 };
+      const summary = () => withState(nothing);
+      return { serial, model, lines, said: [], reads: reading.reads, summary };
+    }
+  }
+
+  async #fetch(session: Session, pending: readonly string[]): Promise<void> {
+    const { serial } = session;
+    session.rounds++;
+    const more = session.rounds < MOST_ROUNDS && (await this.#host.sources.fetch(pending));
+    if (more && session.serial === serial && this.#sessions.get(session.key) === session)
+      this.touch(session, []);
+  }
+
+  #tellText(
+    { uri, file }: { readonly uri: string; readonly file: string },
+    text: string,
+    { serial, reads }: Understood,
+    units: Settings["units"],
+  ): void {
+    const sent: ReadFile[] = [...reads].map(([path, content]) => {
+      const id = this.#host.sources.idOf(content);
+      const users = this.#sent.get(id);
+      if (users) {
+        users.add(uri);
+        return { path, id };
+      }
+      this.#sent.set(id, new Set([uri]));
+      return { path, id, content };
+    });
+    this.engine.tell({ say: "text", uri, serial, file, text, reads: sent, units });
+  }
+
+  #plan(session: Session): void {
+    const first = session.summary === undefined;
+    const delay = first ? 0 : this.#host.settingsOf(session).delay;
+    this.#stopTimer(session);
+    if (delay === 0) this.#judge(session);
+    else
+      this.#timers.set(
+        session,
+        setTimeout(() => this.#judge(session), delay),
+      );
+  }
+
+  #judge(session: Session): void {
+    this.#stopTimer(session);
+    this.engine.tell({ say: "judge", uri: session.uri, serial: session.serial, open: true });
+  }
+
+  #stopTimer(session: Session): void {
+    clearTimeout(this.#timers.get(session));
+    this.#timers.delete(session);
+  }
+
+  #hear(message: FromEngine): void {
+    if (message.say === "answer" || message.say === "fault") {
+      if (message.say === "fault") this.#host.log(`${message.where}\n${message.error}`);
+      if (message.id === undefined) return;
+      const done = this.#questions.get(message.id);
+      this.#questions.delete(message.id);
+      done?.(message.say === "answer" ? message.value : undefined);
+    } else if (message.say === "restarted") this.#restart(message);
+    else this.#hearOf(message);
+  }
+
+  #hearOf(message: Exclude<FromEngine, { say: "answer" | "fault" | "restarted" }>): void {
+    const session = this.#sessions.get(keyOf(message.uri));
+    if (session === undefined) {
+      if (message.say === "judged") this.#host.judgedClosed(message.uri, message);
+      return;
+    }
+    if (message.serial !== session.serial) return;
+    if (message.say === "started") this.#host.busy(session, true);
+    else if (message.say === "stopped") {
+      session.withoutNumbers("stopped");
+      this.#host.busy(session, false);
+      this.#host.changed(session);
+    } else {
+      for (const { where, error } of message.judged.faults) {
+        this.#host.log(`${where} in ${session.file}, version ${session.document.version}\n${error}`);
+      }
+      session.accept(message.judged);
+      if (message.judged.upTo === "answers") this.#host.busy(session, false);
+      this.#host.changed(session);
+    }
+  }
+
+  /** Everything the engine knew is told again; what broke it is not tried a second time. */
+  #restart({ uri, error }: Extract<FromEngine, { say: "restarted" }>): void {
+    this.#host.log(`the side that computes broke down and was started anew\n${error}`);
+    for (const done of this.#questions.values()) done(undefined);
+    this.#questions.clear();
+    this.#sent.clear();
+    for (const session of this.#sessions.values()) {
+      const { understood, numbers } = session;
+      if (understood === undefined) continue;
+      const { units } = this.#host.settingsOf(session);
+      this.#tellText(session, session.document.getText(), understood, units);
+      if (session.uri === uri && numbers !== "there") {
+        session.withoutNumbers("stopped");
+        this.#host.busy(session, false);
+        this.#host.changed(session);
+      } else if (understood.model.buildable && numbers !== "stopped") this.#judge(session);
+    }
+  }
+
+  #fault(where: string, session: Session, error: unknown): void {
+    this.#host.log(`${where}, version ${session.document.version}\n${errorText(error)}`);
+  }
+}
+
+/** Sessions whose text waits to be worked out, each once however many edits have come. */
+class Texts {
+  readonly #run: (session: Session) => void;
+  /** By session, when its last edit came. */
+  readonly #waiting = new Map<Session, number>();
+  #edits = 0;
+  #running = false;
+
+  constructor(run: (session: Session) => void) {
+    this.#run = run;
+  }
+
+  add(session: Session): void {
+    this.#waiting.delete(session);
+    this.#waiting.set(session, performance.now());
+    this.#edits++;
+    if (!this.#running) void this.#loop();
+  }
+
+  forget(session: Session): void {
+    this.#waiting.delete(session);
+  }
+
+  async #loop(): Promise<void> {
+    this.#running = true;
+    let since = performance.now();
+    while (this.#waiting.size > 0) {
+      const seen = this.#edits;
+      // Messages are handled one a turn: two turns without an edit mean that none waits.
+      await nextTurn();
+      await nextTurn();
+      const now = performance.now();
+      if (seen !== this.#edits && now - since < LONGEST_BURST) continue;
+      const rests = [...this.#waiting].map(([session, at]) => ({
+        session,
+        left: at + restOf(session) - now,
+      }));
+      const due = rests.find(({ left }) => left <= 0);
+      if (due) this.#run(due.session);
+      else if (rests.length > 0) await pause(Math.min(...rests.map(({ left }) => left)));
+      since = performance.now();
+    }
+    this.#running = false;
+  }
+}
+
+const restOf = ({ cost }: Session): number => (cost > SWIFT ? Math.min(cost, LONGEST_REST) : 0);
+
+const pause = (ms: number): Promise<void> => new Promise((done) => setTimeout(done, ms));
