@@ -2,7 +2,6 @@
 import {
   answerFiles,
   type CodeLens,
-  type CsvResult,
   type Hover,
   hover,
   type InlayHint,
@@ -13,6 +12,9 @@ import {
   type Span,
   type View,
 } from "../shared-core/index.ts";
+
+/** The text of a file, or why there is none. */
+export type CsvAnswer = { readonly text: string } | { readonly refused: string };
 
 /**
  * `now`: with the newest modes, even while answers are still computed; `whole`: with the newest report that has
@@ -38,19 +40,17 @@ export const NUMERIC = {
 
   resolveLens: ({ whole }: Views, lens: CodeLens): ResolvedLens => resolveLens(whole, lens),
 
-  csv({ whole }: Views, ask: string, caseName: string | undefined): CsvResult {
+  csv({ whole }: Views, ask: string, caseName: string | undefined): CsvAnswer {
     const { report, units, model } = whole;
     const first = model.cases[0].name;
     const found = report?.cases.find(({ name }) => name === (caseName ?? first));
     if (report === undefined || found === undefined) {
-      return { text: null, refused: caseName ? `there is no case ${caseName}` : "there are no numbers" };
+      return { refused: caseName ? `there is no case ${caseName}` : "there are no numbers" };
     }
     const answer = found.answers.get(ask);
-    if (answer?.ok === false) return { text: null, refused: answer.reason };
+    if (answer?.ok === false) return { refused: answer.reason };
     const [file] = answerFiles({ ...report, cases: [found] }, { asks: [ask], as: "csv", units });
-    return file === undefined
-      ? { text: null, refused: `nothing was asked by the name ${ask}` }
-      : { text: file.text };
+    return file === undefined ? { refused: `nothing was asked by the name ${ask}` } : { text: file.text };
   },
 } as const satisfies Record<string, (views: Views, ...args: never[]) => unknown>;
 

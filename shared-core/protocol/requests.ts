@@ -15,7 +15,7 @@ export const STATE = "thrum/state";
 export const SHEET = "thrum/sheet";
 /** Request: the edit that puts a value into the text, keeping unit and tolerance as written. */
 export const WRITE_VALUE = "thrum/writeValue";
-/** Request: an answer as CSV text. */
+/** Request: an answer as CSV text, as a string; where there is none, an error that says why. */
 export const CSV = "thrum/csv";
 /** Request: rows copied from a table as statements. */
 export const ROWS = "thrum/rows";
@@ -79,12 +79,6 @@ export interface CsvParams {
   readonly case?: string;
 }
 
-export interface CsvResult {
-  readonly text: string | null;
-  /** Why there is none. */
-  readonly refused?: string;
-}
-
 export interface RowsParams {
   readonly uri: string;
   /** Text from the clipboard, columns parted by tabs. */
@@ -109,6 +103,5 @@ export interface FindModelsParams {
   readonly folder: string;
 }
 
-export interface FindModelsResult {
-  readonly uris: readonly string[];
-}
+/** URIs. */
+export type FindModelsResult = readonly string[];
