@@ -62,6 +62,10 @@ export function steadyValue(
   groups: readonly GroupState[],
   out: Float64Array,
 ): void {
+  if (groups.length === 1 && quantity.products.length === 0) {
+    phasor(quantity.linear, groups[0], out);
+    return;
+  }
   let re = 0;
   let im = 0;
   if (quantity.linear.count > 0) {
@@ -79,6 +83,33 @@ export function steadyValue(
   if (quantity.products.length > 0) re += productValue(quantity, groups);
   out[0] = re;
   out[1] = im;
+}
+
+/** Writes the values of quantities that are all single motions of coordinates, as most are, into row `i`. */
+export type PlainWriter = (
+  state: GroupState,
+  i: number,
+  re: readonly Float64Array[],
+  im: readonly Float64Array[],
+) => void;
+
+/** The quick way for tables of many coordinates; undefined where any quantity is more than that. */
+export function plainMotions(quantities: readonly SteadyQuantity[]): PlainWriter | undefined {
+  const single = ({ linear, products }: SteadyQuantity) =>
+    products.length === 0 && linear.count === 1 && linear.support[0] === 0 && linear.loss[0] === 0;
+  if (!quantities.every(single)) return undefined;
+  const index = Int32Array.from(quantities, (q) => q.linear.index[0]);
+  const factor = Float64Array.from(quantities, (q) => q.linear.factor[0]);
+  const derivative = Uint8Array.from(quantities, (q) => q.linear.derivative[0]);
+  return ({ omega, xRe, xIm }, i, re, im) => {
+    for (let q = 0; q < index.length; q++) {
+      const a = xRe[index[q]] * factor[q];
+      const b = xIm[index[q]] * factor[q];
+      const d = derivative[q];
+      re[q][i] = d === 0 ? a : d === 1 ? -omega * b : -omega * omega * a;
+      im[q][i] = d === 0 ? b : d === 1 ? omega * a : -omega * omega * b;
+    }
+  };
 }
 
 /**

@@ -150,8 +150,17 @@ class BandSystem extends Base implements SteadySystem {
     const { re, im } = this.#workspace;
     const qRe = sRe * sRe - sIm * sIm;
     const qIm = 2 * sRe * sIm;
-    for (let p = 0; p < re.length; p++) re[p] = k[p] + sRe * c[p] + qRe * m[p];
-    for (let p = 0; p < im.length; p++) im[p] = sIm * c[p] + qIm * m[p];
+    if (sRe === 0) {
+      for (let p = 0; p < re.length; p++) {
+        re[p] = k[p] + qRe * m[p];
+        im[p] = sIm * c[p];
+      }
+    } else {
+      for (let p = 0; p < re.length; p++) {
+        re[p] = k[p] + sRe * c[p] + qRe * m[p];
+        im[p] = sIm * c[p] + qIm * m[p];
+      }
+    }
     if (this.#lossy) for (let p = 0; p < im.length; p++) im[p] += h[p];
     return factorBand(this.#workspace);
   }

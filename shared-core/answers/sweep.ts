@@ -6,7 +6,7 @@ import type { FrequencyResponse } from "./analysis.ts";
 import type { ModeTable, Peak, SweepAnswer } from "./answer.ts";
 import { modalTransfer } from "./frequency-modal.ts";
 import { growingMode, type Pole, polesOf, sampleFrequencies, withPoles } from "./frequency-poles.ts";
-import { type SteadyQuantity, steadyQuantity, steadyValue } from "./frequency-quantity.ts";
+import { plainMotions, type SteadyQuantity, steadyQuantity, steadyValue } from "./frequency-quantity.ts";
 import {
   frequencyResponseOf,
   poleAwareReader,
@@ -129,7 +129,7 @@ function peakOf(
   if (reason !== undefined) return { reason };
   const samples: Sample[] = [];
   for (let i = 0; i < axis.length; i++) {
-    const size = Math.hypot(re[q][i], im[q][i]);
+    const size = Math.sqrt(re[q][i] * re[q][i] + im[q][i] * im[q][i]);
     if (Number.isFinite(size)) samples.push({ f: axis[i], size, re: re[q][i], im: im[q][i] });
   }
   if (samples.length === 0) return { reason: "it has no finite value in the band" };
@@ -180,10 +180,15 @@ function evaluate(
   const im = quantities.map(() => new Float64Array(axis.length));
   const out = new Float64Array(2);
   const undamped = poles.filter((p) => p.halfWidthHz === 0);
+  const plain = solution.groups.length === 1 ? plainMotions(quantities) : undefined;
   let careful: ReturnType<typeof poleAwareReader>[] | undefined;
   for (let i = 0; i < axis.length; i++) {
     const atPole = undamped.some((p) => Math.abs(axis[i] - p.atHz) <= 1e-9 * p.atHz);
     const states = atPole ? undefined : solution.quick(axis[i]);
+    if (plain !== undefined && states?.ok) {
+      plain(states.value[0], i, re, im);
+      continue;
+    }
     for (let q = 0; q < quantities.length; q++) {
       if (states?.ok) {
         steadyValue(quantities[q], states.value, out);
@@ -223,22 +228,29 @@ function closeDips(
 }
 
 /** Where the straight lines of the complex response beside a local minimum pass nearest to zero. */
-function dipPoints({ axis, re, im }: Values, q: number): number[] {
+function dipPoints(table: Values, q: number): number[] {
+  const { axis } = table;
+  const re = table.re[q];
+  const im = table.im[q];
   const found: number[] = [];
-  const size = (i: number) => Math.hypot(re[q][i], im[q][i]);
-  for (let i = 1; i + 1 < axis.length; i++) {
-    const here = size(i);
-    if (!(here < size(i - 1) && here < size(i + 1))) continue;
-    for (const other of [i - 1, i + 1]) {
-      const dr = re[q][other] - re[q][i];
-      const di = im[q][other] - im[q][i];
-      const square = dr * dr + di * di;
-      const share = square > 0 ? -(re[q][i] * dr + im[q][i] * di) / square : 0;
-      // A dip that the points at hand already show to a tenth needs no more of them.
-      if (!(share > 0.02 && share < 0.98)) continue;
-      const nearest = Math.abs(re[q][i] * di - im[q][i] * dr) / Math.sqrt(square);
-      if (nearest < 0.9 * here) found.push(axis[i] + share * (axis[other] - axis[i]));
+  let before = Number.POSITIVE_INFINITY;
+  let here = re[0] * re[0] + im[0] * im[0];
+  for (let i = 0; i + 1 < axis.length; i++) {
+    const next = re[i + 1] * re[i + 1] + im[i + 1] * im[i + 1];
+    if (i > 0 && here < before && here < next) {
+      for (const other of [i - 1, i + 1]) {
+        const dr = re[other] - re[i];
+        const di = im[other] - im[i];
+        const square = dr * dr + di * di;
+        const share = square > 0 ? -(re[i] * dr + im[i] * di) / square : 0;
+        // A dip that the points at hand already show to a tenth needs no more of them.
+        if (!(share > 0.02 && share < 0.98)) continue;
+        const across = re[i] * di - im[i] * dr;
+        if (across * across < 0.8 * here * square) found.push(axis[i] + share * (axis[other] - axis[i]));
+      }
     }
+    before = here;
+    here = next;
   }
   return found;
 }
@@ -258,8 +270,11 @@ function merged(a: Values, b: Values): Values {
     if (takeA) i++;
     else j++;
   }
-  const pick = (p: Float64Array, r: Float64Array) =>
-    Float64Array.from({ length: count }, (_, k) => (from[k] >= 0 ? p[from[k]] : r[-1 - from[k]]));
+  const pick = (p: Float64Array, r: Float64Array) => {
+    const out = new Float64Array(count);
+    for (let k = 0; k < count; k++) out[k] = from[k] >= 0 ? p[from[k]] : r[-1 - from[k]];
+    return out;
+  };
   return {
     axis: axis.slice(0, count),
     re: a.re.map((column, q) => pick(column, b.re[q])),

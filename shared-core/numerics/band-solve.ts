@@ -157,6 +157,7 @@ function factorTridiagonal(ws: BandWorkspace): boolean {
  */
 export function solveBand(ws: BandWorkspace, xRe: Float64Array, xIm: Float64Array, columns = 1): void {
   if (ws.pivoted && ws.lu) solveBandLu(ws.lu, xRe, xIm, columns);
+  else if (columns === 1 && ws.bandwidth === 1) solveTridiagonal(ws, xRe, xIm);
   else if (columns === 1) solveOne(ws, xRe, xIm);
   else solveMany(ws, xRe, xIm, columns);
 }
@@ -188,6 +189,41 @@ function solveOne(ws: BandWorkspace, xr: Float64Array, xi: Float64Array): void {
     }
     xr[i] = sr;
     xi[i] = si;
+  }
+}
+
+/** The same for bandwidth one, where loops would cost more than the sums. */
+function solveTridiagonal(ws: BandWorkspace, xr: Float64Array, xi: Float64Array): void {
+  const { n, factorRe: fr, factorIm: fi } = ws;
+  let sr = 0;
+  let si = 0;
+  for (let i = 0; i < n; i++) {
+    const lr = fr[2 * i];
+    const li = fi[2 * i];
+    const re = i === 0 ? xr[0] : xr[i] - lr * sr + li * si;
+    const im = i === 0 ? xi[0] : xi[i] - lr * si - li * sr;
+    sr = re;
+    si = im;
+    xr[i] = re;
+    xi[i] = im;
+  }
+  let nr = 0;
+  let ni = 0;
+  for (let i = n - 1; i >= 0; i--) {
+    const dr = fr[2 * i + 1];
+    const di = fi[2 * i + 1];
+    let re = xr[i] * dr - xi[i] * di;
+    let im = xr[i] * di + xi[i] * dr;
+    if (i + 1 < n) {
+      const lr = fr[2 * i + 2];
+      const li = fi[2 * i + 2];
+      re -= lr * nr - li * ni;
+      im -= lr * ni + li * nr;
+    }
+    nr = re;
+    ni = im;
+    xr[i] = re;
+    xi[i] = im;
   }
 }
 
