@@ -60,6 +60,8 @@ export { selectionRanges } from "./features/select.ts";
 export {
   type DocumentSymbol,
   documentSymbols,
+  searchSymbols,
+  symbolIndex,
   type WorkspaceSymbol,
   workspaceSymbols,
 } from "./features/symbols.ts";

@@ -38,28 +38,35 @@ export function documentSymbols({ model }: View): readonly DocumentSymbol[] {
 
 /** Names of several models that hold the letters of the query in order, the best match first, at most 200. */
 export function workspaceSymbols(models: readonly Model[], query: string): readonly WorkspaceSymbol[] {
+  return searchSymbols(models.flatMap(symbolIndex), query);
+}
+
+/** Every name of a model, for searches: far smaller than the model, so that it may be kept. */
+export function symbolIndex(model: Model): readonly WorkspaceSymbol[] {
+  const container = model.title ?? model.file;
+  return documentSymbols({ model } as View).flatMap(({ name, keyword, family, nameSpan, children }) =>
+    [
+      { name, keyword, family, nameSpan },
+      ...children.map((each) => ({ ...each, name: `${name}.${each.name}` })),
+    ]
+      .filter((each) => each.keyword !== "title" && each.keyword !== "use")
+      .map((each) => ({
+        name: each.name,
+        keyword: each.keyword,
+        family: each.family,
+        file: model.file,
+        span: each.nameSpan,
+        container,
+      })),
+  );
+}
+
+/** Of an index, the names that hold the letters of the query in order, the best match first, at most 200. */
+export function searchSymbols(index: readonly WorkspaceSymbol[], query: string): readonly WorkspaceSymbol[] {
   const found: { readonly symbol: WorkspaceSymbol; readonly score: number }[] = [];
-  for (const model of models) {
-    const container = model.title ?? model.file;
-    for (const { name, keyword, family, nameSpan, children } of documentSymbols({ model } as View)) {
-      const named = [
-        { name, keyword, family, nameSpan },
-        ...children.map((each) => ({ ...each, name: `${name}.${each.name}` })),
-      ];
-      for (const each of named) {
-        const score = matchScore(each.name, query);
-        if (score === undefined || each.keyword === "title" || each.keyword === "use") continue;
-        const symbol = {
-          name: each.name,
-          keyword: each.keyword,
-          family: each.family,
-          file: model.file,
-          span: each.nameSpan,
-          container,
-        };
-        found.push({ symbol, score });
-      }
-    }
+  for (const symbol of index) {
+    const score = matchScore(symbol.name, query);
+    if (score !== undefined) found.push({ symbol, score });
   }
   found.sort(
     (a, b) =>
