@@ -5,6 +5,15 @@ import { fileURLToPath } from "node:url";
 import { ensureInstalled } from "./install.mjs";
 import { root } from "./root.mjs";
 
+/** An extension host loads CommonJS and hands out `vscode` itself. */
+const EXTENSION = {
+  target: "es2022",
+  format: "cjs",
+  outExtension: { ".js": ".cjs" },
+  external: ["vscode"],
+  mainFields: ["module", "main"],
+};
+
 /** What ships: one entry a program. Chunks that a program loads only when needed lie beside it. */
 const PROGRAMS = [
   {
@@ -15,6 +24,18 @@ const PROGRAMS = [
     format: "esm",
     splitting: true,
     chunkNames: "chunks/[name]-[hash]",
+  },
+  {
+    entryPoints: { main: "client/extension/node/main.ts" },
+    outdir: "dist/extension",
+    platform: "node",
+    ...EXTENSION,
+  },
+  {
+    entryPoints: { browser: "client/extension/browser/main.ts" },
+    outdir: "dist/extension-browser",
+    platform: "browser",
+    ...EXTENSION,
   },
 ];
 

@@ -1,6 +1,6 @@
 import * as vscode from "vscode";
 import type { BaseLanguageClient } from "vscode-languageclient";
-import { CSV, type CsvParams, newModel } from "../../shared-core/index.ts";
+import { CSV, type CsvParams, NEW_MODELS, newModel } from "../../shared-core/index.ts";
 import type { Supervisor } from "./keep-running.ts";
 
 /** Every command of the manifest that is not the sheet's. */
@@ -21,16 +21,12 @@ export function registerCommands(
 }
 
 async function createModel(): Promise<void> {
-  const kinds = [
-    { label: vscode.l10n.t("Machine on mounts"), model: "mounting" },
-    { label: vscode.l10n.t("Drive line"), model: "drive-line" },
-    { label: vscode.l10n.t("Bench on a shaking floor"), model: "bench" },
-  ] as const;
+  const kinds = NEW_MODELS.map(({ kind, title, says }) => ({ kind, label: title, description: says }));
   const chosen = await vscode.window.showQuickPick(kinds, {
     placeHolder: vscode.l10n.t("What is it a model of?"),
   });
   if (!chosen) return;
-  const content = newModel(chosen.model);
+  const content = newModel(chosen.kind);
   const document = await vscode.workspace.openTextDocument({ language: "thrum", content });
   await vscode.window.showTextDocument(document);
 }
@@ -56,8 +52,14 @@ async function writeCsv(client: BaseLanguageClient, uri?: string, ask?: string):
   const model = uri ?? vscode.window.activeTextEditor?.document.uri.toString();
   if (model === undefined || ask === undefined) return;
   const params: CsvParams = { uri: model, ask };
-  const text = await client.sendRequest<string | null>(CSV, params);
-  if (text === null) return;
+  let text: string;
+  try {
+    text = await client.sendRequest<string>(CSV, params);
+  } catch (error) {
+    // The reason why there is no answer, in the server's words; somebody has asked for it with a click.
+    void vscode.window.showWarningMessage((error as Error).message);
+    return;
+  }
   const from = vscode.Uri.parse(model);
   const target = await vscode.window.showSaveDialog({
     defaultUri: from.with({ path: from.path.replace(/[^/]*$/, `${ask}.csv`) }),

@@ -1,5 +1,9 @@
 import * as vscode from "vscode";
-import type { BaseLanguageClient, LanguageClientOptions } from "vscode-languageclient";
+import {
+  type BaseLanguageClient,
+  type LanguageClientOptions,
+  RevealOutputChannelOn,
+} from "vscode-languageclient";
 import { type InitializationOptions, PROTOCOL_VERSION } from "../../shared-core/index.ts";
 
 /** A language client, and what must be put away with it. */
@@ -26,6 +30,7 @@ export function clientOptions(
     documentSelector: SELECTOR,
     initializationOptions: own,
     outputChannel: output,
+    revealOutputChannelOn: RevealOutputChannelOn.Never,
     diagnosticCollectionName: "thrum",
     synchronize: { configurationSection: "thrum" },
     markdown: { isTrusted: false, supportHtml: false },

@@ -1,6 +1,11 @@
 import * as vscode from "vscode";
-import { type BaseLanguageClient, CloseAction, ErrorAction, State } from "vscode-languageclient";
-import type { Connection } from "./connection.ts";
+import {
+  type BaseLanguageClient,
+  CloseAction,
+  ErrorAction,
+  type ErrorHandler,
+  State,
+} from "vscode-languageclient";
 
 /** Starts the server, and again when it ended by itself. */
 export interface Supervisor {
@@ -8,32 +13,17 @@ export interface Supervisor {
   restart(): Promise<void>;
 }
 
-/** Ends by itself that are answered with a new start, within `WINDOW` ms; then the user is asked. */
-const MOST_RESTARTS = 5;
+/** Pauses before the starts that follow ends within `WINDOW`, in ms; after them the user is asked. */
+const PAUSES = [0, 250, 500, 1000, 2000];
 const WINDOW = 180_000;
 
 /**
- * Sets what happens when the connection is lost: a new start at once, without a word; after several within three
- * minutes one message with a way to start it again. Documents are sent anew by the client.
+ * Sets what happens when the connection is lost: a new start without a word; after several within three minutes
+ * one message with a way to start it again. Documents are sent anew by the client.
  */
-export function keepRunning({ client }: Connection, output: vscode.LogOutputChannel): Supervisor {
+export function keepRunning(client: BaseLanguageClient, output: vscode.LogOutputChannel): Supervisor {
   const ends: number[] = [];
-  client.clientOptions.errorHandler = {
-    error: (error) => {
-      output.error(`The connection to the server: ${error.message}`);
-      return { action: ErrorAction.Continue, handled: true };
-    },
-    closed: () => {
-      const now = Date.now();
-      ends.push(now);
-      while (ends[0] < now - WINDOW) ends.shift();
-      output.warn(`The server ended by itself, ${ends.length} of ${MOST_RESTARTS} within three minutes`);
-      if (ends.length <= MOST_RESTARTS) return { action: CloseAction.Restart, handled: true };
-      void offerRestart(client, output, ends);
-      return { action: CloseAction.DoNotRestart, handled: true };
-    },
-  };
-  return {
+  const supervisor: Supervisor = {
     start: () => client.start(),
     async restart() {
       ends.length = 0;
@@ -41,18 +31,36 @@ export function keepRunning({ client }: Connection, output: vscode.LogOutputChan
       await client.start();
     },
   };
+  const handler: ErrorHandler = {
+    error: (error) => {
+      output.error(`The connection to the server: ${error.message}`);
+      return { action: ErrorAction.Continue, handled: true };
+    },
+    async closed() {
+      const now = Date.now();
+      ends.push(now);
+      while (ends[0] < now - WINDOW) ends.shift();
+      output.warn(`The server ended by itself, ${ends.length} of ${PAUSES.length} within three minutes`);
+      if (ends.length > PAUSES.length) {
+        void offerRestart(supervisor, output, ends.length);
+        return { action: CloseAction.DoNotRestart, handled: true };
+      }
+      await new Promise((resolve) => setTimeout(resolve, PAUSES[ends.length - 1]));
+      return { action: CloseAction.Restart, handled: true };
+    },
+  };
+  client.clientOptions.errorHandler = handler;
+  return supervisor;
 }
 
 async function offerRestart(
-  client: BaseLanguageClient,
+  supervisor: Supervisor,
   output: vscode.LogOutputChannel,
-  ends: number[],
+  times: number,
 ): Promise<void> {
   const [restart, show] = [vscode.l10n.t("Restart"), vscode.l10n.t("Show log")];
-  const message = vscode.l10n.t("The Thrum server ended {0} times within three minutes.", ends.length);
+  const message = vscode.l10n.t("The Thrum server ended {0} times within three minutes.", times);
   const chosen = await vscode.window.showErrorMessage(message, restart, show);
   if (chosen === show) output.show();
-  if (chosen !== restart) return;
-  ends.length = 0;
-  await client.start();
+  if (chosen === restart) await supervisor.restart();
 }

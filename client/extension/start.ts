@@ -13,18 +13,21 @@ export interface Start {
   createConnection(output: vscode.LogOutputChannel): Connection;
 }
 
-/** Everything the extension contributes, on one client. */
-export async function start(context: vscode.ExtensionContext, host: Start): Promise<void> {
+/** Everything the extension contributes, on one client. Does not wait for the server to be up. */
+export function start(context: vscode.ExtensionContext, host: Start): void {
   const output = vscode.window.createOutputChannel("Thrum", { log: true });
   const connection = host.createConnection(output);
-  context.subscriptions.push(output, connection);
-  const supervisor = keepRunning(connection, output);
-  answerFileRequests(connection.client);
+  const { client } = connection;
+  const supervisor = keepRunning(client, output);
+  answerFileRequests(client);
   context.subscriptions.push(
-    registerStatus(connection.client),
-    registerTests(connection.client),
-    registerRowPaste(connection.client),
-    ...registerCommands(connection.client, supervisor, output),
+    output,
+    connection,
+    registerStatus(client),
+    registerTests(client),
+    registerRowPaste(client),
+    ...registerCommands(client, supervisor, output),
   );
-  await supervisor.start();
+  void vscode.commands.executeCommand("setContext", "thrum.active", true);
+  supervisor.start().catch((error) => output.error(error));
 }

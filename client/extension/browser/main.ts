@@ -9,8 +9,8 @@ import { start } from "../start.ts";
 const WORKER_PATIENCE = 3000;
 
 /** The extension where there is no Node: the server is a worker, or runs in the extension's own thread. */
-export function activate(context: vscode.ExtensionContext): Promise<void> {
-  return start(context, {
+export function activate(context: vscode.ExtensionContext): void {
+  start(context, {
     createConnection(output) {
       const options: LanguageClientOptions = clientOptions(context, output);
       const client = new LanguageClient("thrum", "Thrum", () => transports(context, output), options);

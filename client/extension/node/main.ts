@@ -4,9 +4,9 @@ import { clientOptions } from "../connection.ts";
 import { start } from "../start.ts";
 
 /** The extension where there is Node: the server is a process of its own. */
-export function activate(context: vscode.ExtensionContext): Promise<void> {
+export function activate(context: vscode.ExtensionContext): void {
   const module = context.asAbsolutePath("dist/server/main.js");
-  return start(context, {
+  start(context, {
     createConnection(output) {
       const client = new LanguageClient(
         "thrum",
