@@ -44,9 +44,9 @@ export const edited = (text: string, edits: readonly TextEdit[]): string => appl
 
 /** Undamped natural frequencies of a text, Hz; throws where it has an error. */
 export function frequenciesOf(text: string, files: Readonly<Record<string, string>> = {}): readonly number[] {
-  const { report } = viewOf(text, { files, judged: true });
-  const modes = report?.cases[0]?.modes;
-  if (!modes?.ok) throw new Error(report?.diagnostics.map(({ message }) => message).join("\n") ?? "no model");
+  const report = judge(viewOf(text, { files }).model, { upTo: "modes" });
+  const modes = report.cases[0]?.modes;
+  if (!modes?.ok) throw new Error(report.diagnostics.map(({ message }) => message).join("\n"));
   return modes.table.modes.flatMap(({ frequencyHz }) => frequencyHz ?? []);
 }
 
