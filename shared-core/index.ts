@@ -73,6 +73,9 @@ export {
   TOKEN_TYPES,
 } from "./features/tokens.ts";
 
+// Texts to start a new model from.
+export { NEW_MODELS, type NewModelKind, newModel } from "./features/new-model.ts";
+
 // A report in a few lines, and a number put back into the text.
 export { stateText, summaryOf } from "./features/summary.ts";
 export type { ModelSummary } from "./features/summary-content.ts";

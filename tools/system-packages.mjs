@@ -8,6 +8,7 @@ import { root } from "./root.mjs";
 const NEEDED = [
   { command: "git", apt: "git", tests: "test/house" },
   { command: "chromium", apt: "chromium", tests: "test/workbench" },
+  { command: "rg", apt: "ripgrep", tests: "test/workbench" },
   { command: "nvim", apt: "neovim", tests: "test/protocol" },
 ];
 

@@ -5,7 +5,7 @@
 import { spawnSync } from "node:child_process";
 import { existsSync, mkdirSync, readdirSync, renameSync, rmSync, symlinkSync, writeFileSync } from "node:fs";
 import { homedir } from "node:os";
-import { join } from "node:path";
+import { delimiter, join } from "node:path";
 
 const VERSION = "4.100.3";
 
@@ -19,7 +19,10 @@ const complete = join(home, "complete");
 
 /** Installs it when it is not there yet. Throws with the output of the step that failed. */
 export function ensureWorkbench() {
-  if (existsSync(complete)) return;
+  if (existsSync(complete)) {
+    linkSearch(join(home, "node_modules", "code-server", "lib", "vscode"));
+    return;
+  }
   console.error(`Installing the workbench for editor tests into ${home}`);
   mkdirSync(cache, { recursive: true });
   // A half-made folder of an interrupted run is made anew.
@@ -34,12 +37,24 @@ export function ensureWorkbench() {
   npm(editor, ["rebuild", "@vscode/spdlog", "native-watchdog"]);
   symlinkSync("node_modules", join(editor, "node_modules.asar"));
   npm(fresh, ["rebuild", "argon2"]);
+  linkSearch(editor);
   writeFileSync(join(fresh, "complete"), `${VERSION}\n`);
   rmSync(home, { recursive: true, force: true });
   renameSync(fresh, home);
   for (const left of readdirSync(cache)) {
     if (left.startsWith(`workbench-${VERSION}.`)) rmSync(join(cache, left), { recursive: true, force: true });
   }
+}
+
+/** The editor looks for files with ripgrep, which its package would download; the system's own does as well. */
+function linkSearch(editor) {
+  const program = (process.env.PATH ?? "").split(delimiter).map((folder) => join(folder, "rg"));
+  const found = program.find((path) => existsSync(path));
+  if (!found) throw new Error("No ripgrep found: apt-get install -y ripgrep");
+  const folder = join(editor, "node_modules", "@vscode", "ripgrep", "bin");
+  mkdirSync(folder, { recursive: true });
+  rmSync(join(folder, "rg"), { force: true });
+  symlinkSync(found, join(folder, "rg"));
 }
 
 function npm(folder, args) {
