@@ -34,8 +34,11 @@ export function bandLuWorkspace(n: number, bandwidth: number): BandLu {
   };
 }
 
-/** Factors the symmetric lower band `re` + i `im`; returns the first column without a usable pivot, or −1. */
-export function factorBandLu(lu: BandLu, re: Float64Array, im: Float64Array): number {
+/**
+ * Factors the symmetric lower band `re` + i `im`; returns the first column without a usable pivot, or −1. With
+ * `regularise` such a pivot becomes ε instead, which is what inverse iteration wants.
+ */
+export function factorBandLu(lu: BandLu, re: Float64Array, im: Float64Array, regularise = false): number {
   load(lu, re, im);
   const { n, bandwidth: b, re: ur, im: ui, lowerRe, lowerIm, pivot } = lu;
   const width = 3 * b + 1;
@@ -52,13 +55,15 @@ export function factorBandLu(lu: BandLu, re: Float64Array, im: Float64Array): nu
         best = i;
       }
     }
-    if (!(size > floor)) return j;
+    if (!(size > floor) && !regularise) return j;
     pivot[j] = best;
     const right = Math.min(n - 1, j + 2 * b);
     if (best !== j) exchange(ur, ui, j * width - j + b, best * width - best + b, j, right);
     const own = j * width - j + b;
-    const pr = ur[own + j];
-    const pi = ui[own + j];
+    // Only a pivot far below rounding is replaced: a small one is what singles out the wanted vector.
+    const tiny = size < Number.EPSILON * Number.EPSILON;
+    const pr = tiny ? Number.EPSILON : ur[own + j];
+    const pi = tiny ? 0 : ui[own + j];
     const square = pr * pr + pi * pi;
     const ir = pr / square;
     const ii = -pi / square;

@@ -5,6 +5,7 @@
  * determinant (modes-together.ts, O(n) a step), Rayleigh corrections with vectors from the twisted factorisation
  * (Dhillon & Parlett, Linear Algebra Appl. 387, 2004, here complex symmetric).
  */
+import { BandForm } from "./band-quadratic.ts";
 import type { Pairs } from "./modal-pairs.ts";
 import {
   type DeterminantForm,
@@ -14,6 +15,7 @@ import {
   solveTogether,
 } from "./modes-together.ts";
 import { maxAbs } from "./products.ts";
+import type { SymmetricBand } from "./sparse.ts";
 import { implicitQl, sortAscending } from "./tridiagonal-ql.ts";
 
 /** Diagonals (n) and off-diagonals (n − 1) of C and K, scaled so that ‖K‖ is about one. */
@@ -100,6 +102,17 @@ function bandForm(diagonal: Float64Array, off: Float64Array, v: Float64Array): n
   return sum;
 }
 
+function asBand(diagonal: Float64Array, off: Float64Array): SymmetricBand {
+  const n = diagonal.length;
+  if (n === 1) return { n, bandwidth: 0, values: Float64Array.from(diagonal) };
+  const values = new Float64Array(2 * n);
+  for (let i = 0; i < n; i++) {
+    values[2 * i + 1] = diagonal[i];
+    if (i > 0) values[2 * i] = off[i - 1];
+  }
+  return { n, bandwidth: 1, values };
+}
+
 function tracesOf(q: ChainQuadratic): DeterminantForm["traces"] {
   const traces = { c: 0, cSquared: 0, k: 0 };
   for (let i = 0; i < q.k.length; i++) {
@@ -121,6 +134,8 @@ class Twist implements DeterminantForm {
   readonly vectorIm: Float64Array;
   private readonly q: ChainQuadratic;
   private readonly n: number;
+  /** The same as a band, made when inverse iteration is needed. */
+  private band: BandForm | undefined;
   /** Bound of |z|‖C‖ + ‖K‖ for |z| ≤ 1, for judging residuals. */
   private readonly scale: number;
   private readonly downRe: Float64Array;
@@ -192,6 +207,22 @@ class Twist implements DeterminantForm {
     }
     out[0] = sumR;
     out[1] = sumI;
+  }
+
+  damp(x: Float64Array, out: Float64Array): void {
+    const { c, cOff } = this.q;
+    for (let i = 0; i < this.n; i++) {
+      out[i] = c[i] * x[i] + (i > 0 ? cOff[i - 1] * x[i - 1] : 0) + (i + 1 < this.n ? cOff[i] * x[i + 1] : 0);
+    }
+  }
+
+  vectorBeside(re: number, im: number, clean: (x: Float64Array, y: Float64Array) => void): boolean {
+    const { c, cOff, k, kOff } = this.q;
+    this.band ??= new BandForm(asBand(c, cOff), asBand(k, kOff), Math.min(1, this.n - 1));
+    if (!this.band.vectorBeside(re, im, clean)) return false;
+    this.vectorRe.set(this.band.vectorRe);
+    this.vectorIm.set(this.band.vectorIm);
+    return true;
   }
 
   /** Vector of K for an undamped value, real, unit 2-norm. */

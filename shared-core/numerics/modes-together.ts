@@ -2,8 +2,9 @@
  * Damped modes found all together on a determinant that can be evaluated cheaply, and checked.
  *
  * Method: Ehrlich-Aberth steps to a coarse accuracy, a few Rayleigh corrections for each value with its vector, then
- * checks: the sums of the values and of their squares against traces, and no value twice. Where a check fails
- * nothing is returned, and the caller takes the dense way: repeated or defective values end there.
+ * checks: the sums of the values and of their squares against traces, and no mode twice. Vectors of neighbouring
+ * values are made orthogonal to one another, as the exact ones are. Where a check fails nothing is returned, and
+ * the caller takes the dense way: repeated or defective values end there.
  */
 import { ehrlichAberth, type RootItems } from "./ehrlich-aberth.ts";
 import type { Pairs } from "./modal-pairs.ts";
@@ -20,6 +21,13 @@ export type DeterminantForm = {
    * unit 2-norm, in `vectorRe` and `vectorIm`; false where the steps do not settle.
    */
   polish(re: number, im: number): boolean;
+  /**
+   * Inverse iteration at a value whose vectors span more than one dimension to rounding: `clean(x, y)` takes the
+   * known ones out and is applied after every step. True leaves a unit vector of small residual.
+   */
+  vectorBeside(re: number, im: number, clean: (x: Float64Array, y: Float64Array) => void): boolean;
+  /** out = C x */
+  damp(x: Float64Array, out: Float64Array): void;
   readonly value: { re: number; im: number };
   readonly vectorRe: Float64Array;
   readonly vectorIm: Float64Array;
@@ -59,7 +67,8 @@ export function solveTogether(
       for (let i = 0; i < size; i++) out.rowsIm[t * n + first + i] = sign * vectorIm[i];
     }
   }
-  return t === at + 2 * size && allThere(form, out, at, t) && allDistinct(out, at + zeroVectors.length, t);
+  if (t !== at + 2 * size || !allThere(form, out, at, t)) return false;
+  return separateNeighbours(form, out, n, first, at + zeroVectors.length, t);
 }
 
 /** Σλ = −tr C and Σλ² = tr C² − 2 tr K, to what rounding allows: a value found twice for another shows here. */
@@ -80,18 +89,125 @@ function allThere(form: DeterminantForm, out: Pairs, at: number, end: number): b
   );
 }
 
-/** No two values may agree within 1e-9: they are defective, repeated, or one of two neighbours found twice. */
-function allDistinct(out: Pairs, from: number, end: number): boolean {
-  const order = Array.from({ length: end - from }, (_, t) => from + t);
-  order.sort((a, b) => out.im[a] - out.im[b] || out.re[a] - out.re[b]);
-  for (let s = 0; s < order.length; s++) {
-    const a = order[s];
-    const near = 1e-9 * (Math.abs(out.re[a]) + Math.abs(out.im[a]));
-    for (let r = s + 1; r < order.length && out.im[order[r]] - out.im[a] <= near; r++) {
-      if (Math.abs(out.re[order[r]] - out.re[a]) <= near) return false;
+/**
+ * Values closer than this (relative) share their vectors' rounding: a gap g mixes them by about ε/g, and taking the
+ * mixture out again changes their residuals by ε only.
+ */
+const NEIGHBOURS = 1e-6;
+/** A vector that loses all but this share of its length was its neighbour's: found twice, or defective. */
+const INDEPENDENT = 0.05;
+
+/** Makes ψₐᵀ((λₐ + λ_b) I + C) ψ_b vanish between neighbours; false where two of them are one and the same. */
+function separateNeighbours(
+  form: DeterminantForm,
+  out: Pairs,
+  n: number,
+  first: number,
+  from: number,
+  end: number,
+): boolean {
+  const heads: number[] = [];
+  for (let t = from; t < end; t++) if (out.im[t] >= 0) heads.push(t);
+  heads.sort((a, b) => out.im[a] - out.im[b] || out.re[a] - out.re[b]);
+  for (let s = 1; s < heads.length; s++) {
+    const b = heads[s];
+    const near = NEIGHBOURS * (Math.abs(out.re[b]) + Math.abs(out.im[b]));
+    const neighbours: number[] = [];
+    for (let r = s - 1; r >= 0 && out.im[b] - out.im[heads[r]] <= near; r--) {
+      if (Math.abs(out.re[heads[r]] - out.re[b]) <= near) neighbours.push(heads[r]);
     }
+    if (neighbours.length > 0 && !standApart(form, out, n, first, b, neighbours)) return false;
   }
   return true;
+}
+
+/** Takes the neighbours out of mode b, looking for another vector where nothing would be left of it. */
+function standApart(
+  form: DeterminantForm,
+  out: Pairs,
+  n: number,
+  first: number,
+  b: number,
+  neighbours: readonly number[],
+): boolean {
+  const { size, vectorRe, vectorIm } = form;
+  const part = (rows: Float64Array, t: number) => rows.subarray(t * n + first, t * n + first + size);
+  const cleaners = neighbours.map((a) => cleaner(form, part(out.rowsRe, a), part(out.rowsIm, a), out, a, b));
+  const clean = (x: Float64Array, y: Float64Array) => {
+    for (const take of cleaners) take(x, y);
+  };
+  vectorRe.set(part(out.rowsRe, b));
+  vectorIm.set(part(out.rowsIm, b));
+  clean(vectorRe, vectorIm);
+  if (!(toUnit(vectorRe, vectorIm) >= INDEPENDENT) && !form.vectorBeside(out.re[b], out.im[b], clean))
+    return false;
+  out.rowsRe.set(vectorRe, b * n + first);
+  out.rowsIm.set(vectorIm, b * n + first);
+  if (out.im[b] === 0) return true;
+  out.rowsRe.set(vectorRe, (b + 1) * n + first);
+  for (let i = 0; i < size; i++) out.rowsIm[(b + 1) * n + first + i] = -vectorIm[i];
+  return true;
+}
+
+/** A function that takes mode a (its vector given) out of a candidate for mode b. */
+function cleaner(
+  form: DeterminantForm,
+  ar: Float64Array,
+  ai: Float64Array,
+  out: Pairs,
+  a: number,
+  b: number,
+): (x: Float64Array, y: Float64Array) => void {
+  const [cr, ci] = [new Float64Array(form.size), new Float64Array(form.size)];
+  form.damp(ar, cr);
+  form.damp(ai, ci);
+  const own = bilinear(ar, ai, cr, ci, ar, ai, 2 * out.re[a], 2 * out.im[a]);
+  const square = own[0] * own[0] + own[1] * own[1];
+  return (x, y) => {
+    // ((λₐ + λ_b) I + C) ψₐ against the candidate, and the same with 2λₐ against ψₐ itself.
+    const across = bilinear(ar, ai, cr, ci, x, y, out.re[a] + out.re[b], out.im[a] + out.im[b]);
+    const fr = (across[0] * own[0] + across[1] * own[1]) / square;
+    const fi = (across[1] * own[0] - across[0] * own[1]) / square;
+    for (let i = 0; i < x.length; i++) {
+      x[i] -= fr * ar[i] - fi * ai[i];
+      y[i] -= fr * ai[i] + fi * ar[i];
+    }
+  };
+}
+
+/** Scales a complex vector to unit 2-norm; returns the length it had (NaN and 0 are left alone). */
+export function toUnit(x: Float64Array, y: Float64Array): number {
+  let sum = 0;
+  for (let i = 0; i < x.length; i++) sum += x[i] * x[i] + y[i] * y[i];
+  const length = Math.sqrt(sum);
+  if (!(length > 0)) return length;
+  for (let i = 0; i < x.length; i++) {
+    x[i] /= length;
+    y[i] /= length;
+  }
+  return length;
+}
+
+/** (s x + c)ᵀ y for complex vectors, s = sr + i si. */
+function bilinear(
+  xr: Float64Array,
+  xi: Float64Array,
+  cr: Float64Array,
+  ci: Float64Array,
+  yr: Float64Array,
+  yi: Float64Array,
+  sr: number,
+  si: number,
+): [number, number] {
+  let re = 0;
+  let im = 0;
+  for (let i = 0; i < xr.length; i++) {
+    const gr = sr * xr[i] - si * xi[i] + cr[i];
+    const gi = sr * xi[i] + si * xr[i] + ci[i];
+    re += gr * yr[i] - gi * yi[i];
+    im += gr * yi[i] + gi * yr[i];
+  }
+  return [re, im];
 }
 
 /** Adds the roots of z² + d z + ω² (`lambda` = ω²) to the guesses: the mode as if its damping were its own. */

@@ -5,11 +5,11 @@
  * where proportional damping decouples and is solved in closed form; otherwise the state matrix of these
  * coordinates, [0 S; −Λ S⁻¹ −D] with S² = |Λ|, goes to the general eigenproblem. For light damping that matrix
  * is nearly normal, so values carry errors of about n·ε times the largest |λ|, and far less for low modes.
- * A chain (no coordinate coupled to more than two others, no ring) goes to chain-quadratic.ts first, which is far
- * quicker and checks itself.
+ * Chains (no coordinate coupled to more than two others, no ring) and narrow bands go to sparse-damped.ts first,
+ * which is far quicker and checks itself.
  * Linearisation: Tisseur & Meerbergen, The quadratic eigenvalue problem, SIAM Review 43, 2001, §3.4.
  */
-import { chainPairs } from "./chain-damped.ts";
+
 import { factorCholesky, solveLower, solveLowerTransposed } from "./cholesky.ts";
 import { type ComplexMatrix, generalEigen } from "./general-eigen.ts";
 import { diagonalOf, inverseRoots } from "./generalised-eigen.ts";
@@ -18,6 +18,7 @@ import { closedForm, type Pairs } from "./modal-pairs.ts";
 import { pathThrough } from "./ordering.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, maxAbs, transpose } from "./products.ts";
+import { bandPairs, chainPairs } from "./sparse-damped.ts";
 import { symmetricEigen } from "./symmetric-eigen.ts";
 
 export type DampedModes = {
@@ -56,9 +57,15 @@ export function quadraticEigen(
   const damping = reduce(c);
   if (!allFinite(stiffness) || !allFinite(damping)) return fail("a matrix divided by the mass overflows");
   const symmetric = isSymmetric(k, n);
-  const path = symmetric && isSymmetric(c, n) ? pathThrough([damping, stiffness], n) : undefined;
-  const chain = path && chainPairs(damping, stiffness, path, kernel);
-  if (chain) return succeed(arrange(chain, undefined, n, kernel, restore, Math.sqrt(maxAbs(stiffness)) || 1));
+  const both = symmetric && isSymmetric(c, n);
+  const path = both ? pathThrough([damping, stiffness], n) : undefined;
+  const sparse = path
+    ? chainPairs(damping, stiffness, path, kernel)
+    : both
+      ? bandPairs(damping, stiffness, n)
+      : undefined;
+  if (sparse)
+    return succeed(arrange(sparse, undefined, n, kernel, restore, Math.sqrt(maxAbs(stiffness)) || 1));
   const basis = symmetric ? modalBasis(stiffness, n, kernel) : plainBasis(stiffness, n);
   if (!basis.ok) return fail(basis.reason);
   const { shape, lambda, scale } = basis.value;

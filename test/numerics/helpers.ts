@@ -35,10 +35,9 @@ export function product(
 ) {
   const out = new Float64Array(rows * columns);
   for (let i = 0; i < rows; i++) {
-    for (let j = 0; j < columns; j++) {
-      let sum = 0;
-      for (let k = 0; k < inner; k++) sum += a[i * inner + k] * b[k * columns + j];
-      out[i * columns + j] = sum;
+    for (let k = 0; k < inner; k++) {
+      const factor = a[i * inner + k];
+      for (let j = 0; j < columns; j++) out[i * columns + j] += factor * b[k * columns + j];
     }
   }
   return out;

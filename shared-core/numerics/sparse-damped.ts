@@ -1,14 +1,20 @@
 /**
- * Damped modes of a chain given as dense matrices with unit mass: brings the coordinates into the order of the
- * chain, takes proportional damping in closed form and hands the rest to chain-quadratic.ts.
+ * Damped modes of sparse models given as dense matrices with unit mass: brings the coordinates into the order of
+ * the chain or the narrowest band, takes proportional damping of chains in closed form and hands the rest to
+ * chain-quadratic.ts or band-quadratic.ts.
  */
+import { bandModes } from "./band-quadratic.ts";
 import { type ChainQuadratic, chainModes } from "./chain-quadratic.ts";
 import type { Kernel } from "./kernel.ts";
 import { closedForm, type Pairs } from "./modal-pairs.ts";
+import { bandwidthOf, patternOf, reverseCuthillMcKee } from "./ordering.ts";
 import { maxAbs } from "./products.ts";
+import { type SparseMatrix, sparseFromDense, sparseToBand } from "./sparse.ts";
 import { unitScale } from "./symmetric-eigen.ts";
 import { tridiagonalEigen } from "./tridiagonal-eigen.ts";
 
+/** Below this size a band is not looked for. */
+const BAND_SIZE = 40;
 /** Below this size the dense way is as quick. */
 const CHAIN_SIZE = 8;
 /** Departure from C = αI + βK, relative to the terms, that counts as rounding. */
@@ -41,13 +47,37 @@ export function chainPairs(
     chain.kOff[t] = k[i * n + j] * rate * rate;
   }
   const modes = proportional(chain, kernel) ?? chainModes(chain);
-  if (!modes) return undefined;
+  return modes && restored(modes, path, rate);
+}
+
+/**
+ * The same for C and K that a reordering brings into a band narrow enough to be worth it: the work is about
+ * 60 n² b² against 50 n³ of the dense way.
+ */
+export function bandPairs(c: Float64Array, k: Float64Array, n: number): Pairs | undefined {
+  if (n < BAND_SIZE) return undefined;
+  const [sparseC, sparseK] = [sparseFromDense(c, n, n), sparseFromDense(k, n, n)];
+  // A band of half-width b holds at most (2b + 1) n entries; the bound below keeps b under √(n/2).
+  if (sparseK.value.length > 2 * n * Math.sqrt(n)) return undefined;
+  const pattern = patternOf([sparseC, sparseK], n);
+  const order = reverseCuthillMcKee(pattern);
+  const bandwidth = bandwidthOf(pattern, order);
+  if (2 * bandwidth * bandwidth > n) return undefined;
+  const rate = unitScale(Math.sqrt(maxAbs(k)));
+  const scaled = (a: SparseMatrix, factor: number) =>
+    sparseToBand({ ...a, value: a.value.map((v) => v * factor) }, bandwidth, order);
+  const modes = bandModes(scaled(sparseC, rate), scaled(sparseK, rate * rate));
+  return modes && restored(modes, order, rate);
+}
+
+/** Back to the caller's order and unit of time. */
+function restored(modes: Pairs, order: Int32Array, rate: number): Pairs {
   const { re, im, rowsRe, rowsIm } = modes;
   return {
     re: re.map((v) => v / rate),
     im: im.map((v) => v / rate),
-    rowsRe: unpath(rowsRe, path),
-    rowsIm: unpath(rowsIm, path),
+    rowsRe: unpath(rowsRe, order),
+    rowsIm: unpath(rowsIm, order),
   };
 }
 
