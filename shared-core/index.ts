@@ -83,6 +83,7 @@ export { type WrittenValue, writeValue } from "./features/write-value.ts";
 
 // What server and client say to each other beside the language server protocol.
 export * from "./protocol/requests.ts";
+export * from "./protocol/sheet.ts";
 
 // Readouts in an editor: what stands at a place, numbers behind numbers, lines above asks, expectations and cases.
 export { type Hover, hover } from "./features/hover.ts";

@@ -37,6 +37,8 @@ export interface Curve {
   readonly y: ArrayLike<number>;
   /** Which of the picture's line styles; curves of one quantity share it over the panels. */
   readonly style: number;
+  /** Default: an answer. `written`: of the model as it stands, under moved numbers. */
+  readonly role?: "answer" | "written" | "limit";
 }
 
 export interface Mark {
