@@ -52,7 +52,7 @@ function withinFirstCycle(context: RuleContext, ask: HistoryAsk): Finding | unde
   const drives = ask.by.map((index) => context.assembly.drives[index]).filter((drive) => drive !== undefined);
   const lowest = excitedModes(context.analysis, context.assembly, context.modes.value, drives)[0];
   const frequencyHz = lowest?.frequencyHz;
-  if (frequencyHz === undefined || frequencyHz === null || !(ask.lasting * frequencyHz < 1)) return undefined;
+  if (!frequencyHz || !(ask.lasting * frequencyHz < 1)) return undefined;
   return {
     span: lastingSpan(ask),
     message: `\`${ask.name}\` lasts ${time(ask.lasting)}, less than one cycle of mode ${lowest.number} at ${rate(frequencyHz)} (${time(1 / frequencyHz)})`,
