@@ -8,7 +8,7 @@ import { loadCore } from "./load-core.mjs";
 import { root } from "./root.mjs";
 
 const target = join(root, "syntaxes", "thrum.tmLanguage.json");
-const { STATEMENTS } = await loadCore("shared-core/vocabulary/registry.ts");
+const { ASKS, STATEMENTS } = await loadCore("shared-core/vocabulary/registry.ts");
 const { UNIT_TABLE } = await loadCore("shared-core/units/table.ts");
 const { PREFIXES } = await loadCore("shared-core/units/lookup.ts");
 
@@ -50,6 +50,7 @@ function grammar() {
       { include: "#comment" },
       { include: "#note" },
       { include: "#version" },
+      { include: "#question" },
       ...[...families.keys()].map((family) => ({ include: `#${family}` })),
       { include: "#detail" },
       { include: "#row" },
@@ -77,6 +78,16 @@ function grammar() {
           2: { name: "constant.numeric.integer.thrum" },
         },
       },
+      question: {
+        begin: `^(ask)[ \\t]+(${ASKS.map(({ variant }) => variant).join("|")})\\b(?:[ \\t]+([\\p{L}_][\\p{L}\\p{N}_]*))?`,
+        beginCaptures: {
+          1: { name: scopeOf("asks") },
+          2: { name: "constant.other.choice.thrum" },
+          3: { name: "entity.name.thrum" },
+        },
+        end: "$",
+        patterns: [{ include: "#value" }],
+      },
       ...Object.fromEntries(
         [...families].map(([family, keywords]) => [family, statement(scopeOf(family), keywords)]),
       ),
@@ -97,9 +108,9 @@ function grammar() {
           { include: "#comment" },
           { include: "#string" },
           { include: "#number" },
+          { include: "#argument" },
           { include: "#words" },
           { include: "#function" },
-          { include: "#argument" },
           { include: "#constant" },
           { include: "#operator" },
           { include: "#path" },

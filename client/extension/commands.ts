@@ -21,12 +21,12 @@ export function registerCommands(
 }
 
 async function createModel(): Promise<void> {
-  const kinds = NEW_MODELS.map(({ kind, title, says }) => ({ kind, label: title, description: says }));
+  const kinds = NEW_MODELS.map(({ kind, title, says }) => ({ model: kind, label: title, description: says }));
   const chosen = await vscode.window.showQuickPick(kinds, {
     placeHolder: vscode.l10n.t("What is it a model of?"),
   });
   if (!chosen) return;
-  const content = newModel(chosen.kind);
+  const content = newModel(chosen.model);
   const document = await vscode.workspace.openTextDocument({ language: "thrum", content });
   await vscode.window.showTextDocument(document);
 }
