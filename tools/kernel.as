@@ -450,3 +450,196 @@ export function hessenbergQ(q: usize, stride: i32, n: i32, vectors: usize, tau: 
     product(dots, many, tv, width, block, stride, width, many, width, 1, pack);
   }
 }
+
+/**
+ * One merge of divide and conquer: roots and vectors of diag(poles) + ρ z zᵀ (k of them), vectors times the rows in
+ * `packed` (k×size) into `result`. Rows up to `upper` reach into the first `left` columns, those from `skip` on into
+ * the others. `column` (32-bit) says where component j of a vector stands. Returns 1, or 0 at the cap of an
+ * iteration. See divide-and-conquer.ts and secular.ts.
+ */
+export function merge(
+  k: i32, size: i32, left: i32, upper: i32, skip: i32, rho: f64, poles: usize, weights: usize, column: usize,
+  values: usize, packed: usize, result: usize, mix: usize, gaps: usize, work: usize, pack: usize,
+): i32 {
+  const squares = work;
+  const exact = at(work, k + 2 & ~1);
+  for (let j = 0; j < k; j++) {
+    const w = load<f64>(at(weights, j));
+    store<f64>(at(squares, j), w * w);
+    store<f64>(at(exact, j), 1);
+  }
+  for (let i = 0; i < k; i++) {
+    const value = secularRoot(i, k, poles, squares, rho, at(gaps, i * k));
+    if (isNaN<f64>(value)) return 0;
+    store<f64>(at(values, i), value);
+  }
+  for (let i = 0; i < k; i++) {
+    const row = at(gaps, i * k);
+    const pole = load<f64>(at(poles, i));
+    quotients(exact, row, poles, pole, 0, i);
+    store<f64>(at(exact, i), load<f64>(at(exact, i)) * load<f64>(at(row, i)));
+    quotients(exact, row, poles, pole, i + 1, k);
+  }
+  for (let j = 0; j < k; j++) {
+    const root = sqrt<f64>(abs<f64>(load<f64>(at(exact, j))));
+    store<f64>(at(exact, j), load<f64>(at(weights, j)) < 0 ? -root : root);
+  }
+  for (let i = 0; i < k; i++) {
+    const row = at(gaps, i * k);
+    let sum = f64x2.splat(0);
+    let j = 0;
+    for (; j + 1 < k; j += 2) {
+      const x = f64x2.div(v128.load(at(exact, j)), v128.load(at(row, j)));
+      v128.store(at(row, j), x);
+      sum = f64x2.add(sum, f64x2.mul(x, x));
+    }
+    let square = lanes(sum);
+    if (j < k) {
+      const x = load<f64>(at(exact, j)) / load<f64>(at(row, j));
+      store<f64>(at(row, j), x);
+      square += x * x;
+    }
+    const scale = 1 / sqrt<f64>(square);
+    const to = at(mix, i * k);
+    for (let c = 0; c < k; c++) {
+      store<f64>(at(to, load<i32>(column + ((<usize>c) << 2))), load<f64>(at(row, c)) * scale);
+    }
+  }
+  product(mix, k, packed, size, result, size, k, upper, left, 0, pack);
+  product(at(mix, skip), k, at(packed, skip * size + left), size, at(result, left), size, k, k - skip, size - left, 0, pack);
+  return 1;
+}
+
+/** exactⱼ ← exactⱼ · gapⱼ / (poleⱼ − pole) for j from … to − 1. */
+function quotients(exact: usize, row: usize, poles: usize, pole: f64, from: i32, to: i32): void {
+  const pp = f64x2.splat(pole);
+  let j = from;
+  for (; j + 1 < to; j += 2) {
+    const p = at(exact, j);
+    const q = f64x2.div(v128.load(at(row, j)), f64x2.sub(v128.load(at(poles, j)), pp));
+    v128.store(p, f64x2.mul(v128.load(p), q));
+  }
+  if (j < to) {
+    const p = at(exact, j);
+    store<f64>(p, load<f64>(p) * (load<f64>(at(row, j)) / (load<f64>(at(poles, j)) - pole)));
+  }
+}
+
+/** Sums over poles from … to − 1 at one point, left behind by `sums`. */
+let total: f64 = 0;
+let slope: f64 = 0;
+let partials: f64 = 0;
+
+/** Gaps dⱼ − origin − τ into `row`; Σ sⱼ/gap, Σ sⱼ/gap² and the sum of the partial sums in the order from first to last. */
+function sums(d: usize, squares: usize, row: usize, origin: f64, tau: f64, from: i32, to: i32, forwards: bool): void {
+  const oo = f64x2.splat(origin), tt = f64x2.splat(tau), one = f64x2.splat(1);
+  let value = f64x2.splat(0), derivative = value, error = value;
+  // Term j counts in as many partial sums as follow it.
+  const first: f64 = forwards ? <f64>(to - from) : 1;
+  const step: f64 = forwards ? -1 : 1;
+  let count = f64x2.splat(first);
+  count = f64x2.replace_lane(count, 1, first + step);
+  const two = f64x2.splat(2 * step);
+  let j = from;
+  for (; j + 1 < to; j += 2) {
+    const gap = f64x2.sub(f64x2.sub(v128.load(at(d, j)), oo), tt);
+    v128.store(at(row, j), gap);
+    const inverse = f64x2.div(one, gap);
+    const t = f64x2.mul(v128.load(at(squares, j)), inverse);
+    value = f64x2.add(value, t);
+    derivative = f64x2.add(derivative, f64x2.mul(t, inverse));
+    error = f64x2.add(error, f64x2.mul(t, count));
+    count = f64x2.add(count, two);
+  }
+  total = lanes(value);
+  slope = lanes(derivative);
+  partials = lanes(error);
+  if (j < to) {
+    const gap = load<f64>(at(d, j)) - origin - tau;
+    store<f64>(at(row, j), gap);
+    const inverse = 1 / gap;
+    const t = load<f64>(at(squares, j)) * inverse;
+    total += t;
+    slope += t * inverse;
+    partials += t * f64x2.extract_lane(count, 0);
+  }
+}
+
+/** Root i of the secular equation; gaps into `row`. NaN at the cap. */
+function secularRoot(i: i32, k: i32, d: usize, squares: usize, rho: f64, row: usize): f64 {
+  const last = i == k - 1;
+  const own = load<f64>(at(d, i));
+  if (k == 1) {
+    const shift = rho * load<f64>(squares);
+    store<f64>(row, -shift);
+    return own + shift;
+  }
+  let width: f64 = 0;
+  if (last) for (let j = 0; j < k; j++) width += rho * load<f64>(at(squares, j));
+  else width = load<f64>(at(d, i + 1)) - own;
+  const middle = width / 2;
+  sums(d, squares, row, own, middle, 0, k, true);
+  const atMiddle = 1 / rho + total;
+  const right = !last && atMiddle < 0;
+  const origin = right ? load<f64>(at(d, i + 1)) : own;
+  let lo = right ? -middle : atMiddle < 0 ? middle : 0;
+  let hi = right ? 0 : atMiddle < 0 ? width : middle;
+  const p = last ? k - 2 : i;
+  let tau = firstGuess(p, last, right, d, squares, rho, middle, atMiddle, own);
+  if (!(lo < tau && tau < hi)) tau = (lo + hi) / 2;
+  for (let step = 0; step < 120; step++) {
+    sums(d, squares, row, origin, tau, 0, p + 1, true);
+    const psi = total, dpsi = slope;
+    let error = abs<f64>(partials);
+    sums(d, squares, row, origin, tau, p + 1, k, false);
+    const phi = total, dphi = slope;
+    error += abs<f64>(partials);
+    const f = 1 / rho + psi + phi;
+    error += 8 * (abs<f64>(psi) + abs<f64>(phi)) + 3 / rho + abs<f64>(tau) * (dpsi + dphi);
+    if (abs<f64>(f) <= f64.EPSILON * error) return origin + tau;
+    if (f < 0) lo = tau;
+    else hi = tau;
+    const next = tau + rationalStep(f, dpsi, dphi, load<f64>(at(row, p)), load<f64>(at(row, p + 1)), last);
+    const before = tau;
+    tau = lo < next && next < hi ? next : (lo + hi) / 2;
+    if (tau == before || tau == lo || tau == hi) return origin + before;
+  }
+  return NaN;
+}
+
+function rationalStep(f: f64, dpsi: f64, dphi: f64, gapP: f64, gapQ: f64, last: bool): f64 {
+  const c = f - gapP * dpsi - gapQ * dphi;
+  const a = (gapP + gapQ) * f - gapP * gapQ * (dpsi + dphi);
+  const b = gapP * gapQ * f;
+  const root = sqrt<f64>(abs<f64>(a * a - 4 * b * c));
+  let step: f64;
+  if (last) step = a >= 0 ? (a + root) / (2 * c) : (2 * b) / (a - root);
+  else step = a <= 0 ? (a - root) / (2 * c) : (2 * b) / (a + root);
+  return f * step < 0 ? step : -f / (dpsi + dphi);
+}
+
+function firstGuess(
+  p: i32, last: bool, right: bool, d: usize, squares: usize, rho: f64, middle: f64, atMiddle: f64, own: f64,
+): f64 {
+  const dp = load<f64>(at(d, p)), dq = load<f64>(at(d, p + 1));
+  const sp = load<f64>(at(squares, p)), sq = load<f64>(at(squares, p + 1));
+  const span = dq - dp;
+  const c = atMiddle - sp / (dp - own - middle) - sq / (dq - own - middle);
+  if (last) {
+    const a = -c * span + sp + sq;
+    const b = sq * span;
+    const root = sqrt<f64>(max<f64>(0, a * a + 4 * b * c));
+    if (atMiddle <= 0 && c <= sp / (span + rho) + sq / rho) return rho;
+    return a < 0 ? (2 * b) / (root - a) : (a + root) / (2 * c);
+  }
+  if (right) {
+    const a = c * span - sp - sq;
+    const b = sq * span;
+    const root = sqrt<f64>(abs<f64>(a * a + 4 * b * c));
+    return a < 0 ? (2 * b) / (a - root) : -(a + root) / (2 * c);
+  }
+  const a = c * span + sp + sq;
+  const b = sp * span;
+  const root = sqrt<f64>(abs<f64>(a * a - 4 * b * c));
+  return a > 0 ? (2 * b) / (a + root) : (a - root) / (2 * c);
+}

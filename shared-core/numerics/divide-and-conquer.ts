@@ -7,7 +7,6 @@
  * memory. The products fall to the kernel; repeated roots deflate and cost nothing.
  */
 import type { Kernel } from "./kernel.ts";
-import { secularRoot } from "./secular.ts";
 import { implicitQl, rotateRows, sortAscending } from "./tridiagonal-ql.ts";
 
 /** Blocks of up to this many rows go to implicit QL; chosen by trial. */
@@ -182,69 +181,25 @@ function rotateKept(
   const starts = [0, counts[UPPER], counts[UPPER] + counts[BOTH]];
   const column = new Int32Array(k);
   for (let j = 0; j < k; j++) column[j] = starts[kind[kept[j]]]++;
-  if (!secularVectors(k, poles, weights, rho, column, values, mix, result)) return false;
   for (let j = 0; j < k; j++) {
     const from = (lo + kept[j]) * n + lo;
     packed.set(rows.subarray(from, from + size), column[j] * size);
   }
-  const upper = counts[UPPER] + counts[BOTH];
-  const lower = counts[BOTH] + counts[LOWER];
-  const left = middle - lo;
-  const skip = counts[UPPER];
-  const window = (data: Float64Array, at: number, stride: number) => ({ data, at, stride });
-  kernel.product(window(mix, 0, k), window(packed, 0, size), window(result, 0, size), k, upper, left);
-  kernel.product(
-    window(mix, skip, k),
-    window(packed, skip * size + left, size),
-    window(result, left, size),
+  return kernel.merge({
     k,
-    lower,
-    size - left,
-  );
-  return true;
-}
-
-/** Row i of `mix` (k×k) becomes the unit vector of root i, component j at `column[j]`. `gaps` is scratch. */
-function secularVectors(
-  k: number,
-  poles: Float64Array,
-  weights: Float64Array,
-  rho: number,
-  column: Int32Array,
-  values: Float64Array,
-  mix: Float64Array,
-  gaps: Float64Array,
-): boolean {
-  const squares = weights.map((w) => w * w);
-  for (let i = 0; i < k; i++) {
-    values[i] = secularRoot(i, k, poles, squares, rho, gaps, i * k);
-    if (Number.isNaN(values[i])) return false;
-  }
-  // Weights for which the computed roots are exact (Gu & Eisenstat): ẑⱼ² ∝ ∏ᵢ (dⱼ − λᵢ) / ∏ᵢ≠ⱼ (dⱼ − dᵢ).
-  const exact = new Float64Array(k).fill(1);
-  for (let i = 0; i < k; i++) {
-    const at = i * k;
-    const pole = poles[i];
-    for (let j = 0; j < i; j++) exact[j] *= gaps[at + j] / (poles[j] - pole);
-    exact[i] *= gaps[at + i];
-    for (let j = i + 1; j < k; j++) exact[j] *= gaps[at + j] / (poles[j] - pole);
-  }
-  for (let j = 0; j < k; j++) {
-    const root = Math.sqrt(Math.abs(exact[j]));
-    exact[j] = weights[j] < 0 ? -root : root;
-  }
-  for (let i = 0; i < k; i++) {
-    const at = i * k;
-    let square = 0;
-    for (let j = 0; j < k; j++) {
-      const entry = exact[j] / gaps[at + j];
-      gaps[at + j] = entry;
-      square += entry * entry;
-    }
-    const scale = 1 / Math.sqrt(square);
-    for (let j = 0; j < k; j++) mix[at + column[j]] = gaps[at + j] * scale;
-  }
-  return true;
+    poles,
+    weights,
+    rho,
+    column,
+    packed,
+    size,
+    left: middle - lo,
+    upper: counts[UPPER] + counts[BOTH],
+    skip: counts[UPPER],
+    result,
+    values,
+    mix,
+  });
 }
 
 /** Rows and values of both sorts back into place, ascending. */

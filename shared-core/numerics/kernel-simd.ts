@@ -44,6 +44,24 @@ type Exports = {
     work: number,
     pack: number,
   ): void;
+  merge(
+    k: number,
+    size: number,
+    left: number,
+    upper: number,
+    skip: number,
+    rho: number,
+    poles: number,
+    weights: number,
+    column: number,
+    values: number,
+    packed: number,
+    result: number,
+    mix: number,
+    gaps: number,
+    work: number,
+    pack: number,
+  ): number;
 };
 
 const PAGE = 65536;
@@ -119,6 +137,23 @@ export function simdKernel(): Kernel | undefined {
         memory.set(t.tau, pt / 8);
         wasm.backTransform(pr, n, count, pv, stride, n, pt, work, pack);
         rows.set(memory.subarray(pr / 8, pr / 8 + count * n));
+      });
+    },
+    merge: (step) => {
+      const { k, size, poles, weights, column, packed, result, values } = step;
+      const { left, upper, skip, rho } = step;
+      const rows = k * size;
+      const sizes = [k, k, k, k, rows, rows, k * k, k * k, 2 * (k + 2), packRoom(size)];
+      return run(sizes, (wasm, memory, at) => {
+        const [pp, pw, pc, pv, pa, pr, pm, pg, work, pack] = at;
+        memory.set(poles, pp / 8);
+        memory.set(weights, pw / 8);
+        new Int32Array(memory.buffer, pc, k).set(column);
+        memory.set(packed.subarray(0, rows), pa / 8);
+        const done = wasm.merge(k, size, left, upper, skip, rho, pp, pw, pc, pv, pa, pr, pm, pg, work, pack);
+        result.set(memory.subarray(pr / 8, pr / 8 + rows));
+        values.set(memory.subarray(pv / 8, pv / 8 + k));
+        return done === 1;
       });
     },
     hessenberg: (a, n, withQ) => {

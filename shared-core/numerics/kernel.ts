@@ -7,6 +7,7 @@
 import { backTransform } from "./back-transform.ts";
 import { type Hessenberg, hessenberg } from "./hessenberg.ts";
 import { simdKernel } from "./kernel-simd.ts";
+import { type MergeStep, plainMerge } from "./merge-step.ts";
 import { type Tridiagonal, tridiagonalise } from "./tridiagonalise.ts";
 
 /** A rows×columns window of a row-major array: first entry `at`, row distance `stride`. */
@@ -22,6 +23,8 @@ export type Kernel = {
   backTransform(rows: Float64Array, count: number, t: Tridiagonal): void;
   /** See hessenberg.ts; the array given becomes H. */
   hessenberg(a: Float64Array, n: number, withQ: boolean): Hessenberg;
+  /** See merge-step.ts. */
+  merge(step: MergeStep): boolean;
 };
 
 /** Rows of B and columns of C held in the second-level cache at a time; chosen by trial. */
@@ -84,6 +87,7 @@ export const plainKernel: Kernel = {
   tridiagonalise,
   backTransform: (rows, count, t) => backTransform(rows, count, t, plainProduct),
   hessenberg,
+  merge: (step) => plainMerge(step, plainProduct),
 };
 
 let best: Kernel | undefined;

@@ -4,6 +4,11 @@
  * Sums run in a fixed order, so the same input gives the same bits on every host.
  */
 
+import { bestKernel, plainKernel } from "./kernel.ts";
+
+/** Multiply-adds from which copying into the quick kernel pays; found by trial. */
+const KERNEL_WORK = 32 ** 3;
+
 /** True when no entry is NaN or infinite. */
 export function allFinite(values: ArrayLike<number>): boolean {
   for (let i = 0; i < values.length; i++) if (!Number.isFinite(values[i])) return false;
@@ -38,31 +43,10 @@ export function multiply(
   columns: number,
   out: Float64Array = new Float64Array(rows * columns),
 ): Float64Array {
-  out.fill(0, 0, rows * columns);
-  // Four rows of B at a time: each entry of C is loaded and stored a quarter as often.
-  const whole = inner - (inner % 4);
-  for (let i = 0; i < rows; i++) {
-    const at = i * columns;
-    for (let k = 0; k < whole; k += 4) {
-      const p = i * inner + k;
-      const a0 = a[p];
-      const a1 = a[p + 1];
-      const a2 = a[p + 2];
-      const a3 = a[p + 3];
-      const b0 = k * columns;
-      const b1 = b0 + columns;
-      const b2 = b1 + columns;
-      const b3 = b2 + columns;
-      for (let j = 0; j < columns; j++) {
-        out[at + j] += a0 * b[b0 + j] + a1 * b[b1 + j] + a2 * b[b2 + j] + a3 * b[b3 + j];
-      }
-    }
-    for (let k = whole; k < inner; k++) {
-      const factor = a[i * inner + k];
-      const from = k * columns;
-      for (let j = 0; j < columns; j++) out[at + j] += factor * b[from + j];
-    }
-  }
+  const left = { data: a, at: 0, stride: inner };
+  const right = { data: b, at: 0, stride: columns };
+  const kernel = rows * inner * columns < KERNEL_WORK ? plainKernel : bestKernel();
+  kernel.product(left, right, { data: out, at: 0, stride: columns }, rows, inner, columns);
   return out;
 }
 
