@@ -7,6 +7,7 @@ export { judge, judgeInSteps } from "./judgement/judge.ts";
 export type { CaseReport, FileReport, InternalFault, JudgeOptions, Verdict } from "./judgement/report.ts";
 export type { Steps } from "./judgement/steps.ts";
 export type { FileContent, FileReader, Model } from "./model/model.ts";
+export { learnUnits } from "./model/other-units.ts";
 export { understand } from "./model/understand.ts";
 
 // One case of a model with its numbers, and what can be asked of it.
@@ -43,6 +44,13 @@ export type { View } from "./features/view.ts";
 
 // The text in an editor: where names lead, what they are called, how the text is laid out and coloured.
 export { type CompleteOptions, type Completion, type CompletionKind, complete } from "./features/complete.ts";
+export {
+  type CodeAction,
+  type CodeActionKind,
+  codeActions,
+  fixAll,
+  type OfferedAction,
+} from "./features/fixes.ts";
 export { type FoldingRange, foldingRanges } from "./features/fold.ts";
 export { formatDocument, formatRange, formatRanges } from "./features/format.ts";
 export { type DocumentLink, documentLinks } from "./features/links.ts";
@@ -55,8 +63,10 @@ export {
   highlights,
   references,
 } from "./features/navigate.ts";
+export { NEW_MODELS, type NewModelKind, newModel } from "./features/new-model.ts";
 export { type Prepared, prepareRename, type Renamed, rename } from "./features/rename.ts";
 export { selectionRanges } from "./features/select.ts";
+export { type Signature, type SignatureParameter, signatureHelp } from "./features/signature.ts";
 export {
   type DocumentSymbol,
   documentSymbols,
@@ -71,6 +81,7 @@ export {
   semanticTokens,
   TOKEN_MODIFIERS,
   TOKEN_TYPES,
+  type TokenType,
 } from "./features/tokens.ts";
 
 // Texts to start a new model from.

@@ -61,6 +61,18 @@ export function occurrenceAt(tree: Tree, offset: number): Occurrence | undefined
   return holds(first) ? first : undefined;
 }
 
+/** Number, from 1, of a line that holds a name and cannot be read, so that it is not known what it means there. */
+export function unreadableLineWith(tree: Tree, name: string): number | undefined {
+  const index = tree.lines.findIndex(
+    ({ first, last, readable }) =>
+      !readable &&
+      tree.tokens.slice(first, last).some(({ kind, offset, length }) => {
+        return kind === "name" && length === name.length && tree.text.startsWith(name, offset);
+      }),
+  );
+  return index < 0 ? undefined : index + 1;
+}
+
 /** Names that stand for themselves wherever a value stands. */
 export const CONSTANTS: ReadonlySet<string> = new Set(["pi", "e", "t", "travel", "rate"]);
 

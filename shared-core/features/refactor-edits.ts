@@ -100,8 +100,11 @@ export function difference(before: string, after: string): readonly TextEdit[] {
   const most = Math.min(before.length, after.length);
   let start = 0;
   while (start < most && before[start] === after[start]) start++;
+  // A line ending of two characters stays whole.
+  if (before[start - 1] === "\r") start--;
   let behind = 0;
   while (behind < most - start && before.at(-1 - behind) === after.at(-1 - behind)) behind++;
+  if (behind > 0 && before.at(-behind) === "\n") behind--;
   return [{ span: span(start, before.length - behind), text: after.slice(start, after.length - behind) }];
 }
 

@@ -15,7 +15,7 @@ import {
   type SymbolRef,
   symbolAt,
 } from "./navigate.ts";
-import { occurrences } from "./navigate-names.ts";
+import { occurrences, unreadableLineWith } from "./navigate-names.ts";
 import type { View } from "./view.ts";
 
 export type Prepared = { readonly span: Span; readonly name: string } | { readonly refused: string };
@@ -110,7 +110,10 @@ function readsOtherwise(
   symbol: SymbolRef,
   name: string,
 ): string | undefined {
-  const { tree } = places[0];
+  const { tree, file } = places[0];
+  const lost = unreadableLineWith(tree, symbol.occurrence.text);
+  if (lost)
+    return `line ${lost} of \`${file}\` cannot be read, and it holds \`${symbol.occurrence.text}\`; mend it first`;
   const before = occurrences(tree);
   const after = occurrences(parse(applyEdits(tree.text, edits), PARSING).tree);
   const old = symbol.key;

@@ -194,6 +194,11 @@ describe("renaming", () => {
     ["let b| = 2\n", "kN", "`kN` is a unit: behind a number it would be read as that, not as the name"],
     ["let b| = 2\n", "run-up", /starts with a letter/],
     ["let b| = 2\n", "2nd", /starts with a letter/],
+    [
+      "let b| = 2\nmass u == b\n",
+      "c",
+      "line 2 of `pier/pump.thrum` cannot be read, and it holds `b`; mend it first",
+    ],
     ["let b| = 2\n", "", /at least one letter/],
     [
       "spring s between u and gro|und = 2 N/m\n",

@@ -1,0 +1,95 @@
+import type { Expression, NumberNode, StatementNode } from "../syntax/tree.ts";
+import { type Span, span, type TextEdit } from "../text/span.ts";
+import { isFault } from "../units/fault.ts";
+import { knownKind } from "../units/known-kinds.ts";
+import { isNumber } from "../units/quantity.ts";
+import { unitOf } from "../units/unit-of.ts";
+import { childrenOf, type ExpressionPlace, expressionAt, slice } from "./navigate-nodes.ts";
+import { type CodeAction, freeName, linesBefore, linesBehind, nameOf, refused } from "./refactor-edits.ts";
+import type { View } from "./view.ts";
+
+/** Gives the literal under the cursor a name with `let`; its tolerance stays where it is written. */
+export function extractActions({ model }: View, range: Span): readonly CodeAction[] {
+  const { tree } = model;
+  const place = expressionAt(tree, range.start);
+  const literal = place?.chain.at(-1);
+  if (!place || literal?.kind !== "number") return [];
+  const text = slice(tree, literal.span);
+  const title = `Name ${text} with \`let\``;
+  const reason = whyNot(place, literal);
+  if (reason === "whole") return [];
+  if (reason) return [refused(title, "refactor.extract", reason)];
+  const name = freeName(model, nameFor(place, literal));
+  const edits = [...definition(model.tree, name, text), { span: literal.span, text: name }];
+  return [{ title: `Name ${text} with \`let ${name}\``, kind: "refactor.extract", edits, safe: true }];
+}
+
+/** Why a literal cannot be named; `whole` where it is a `let` already. */
+function whyNot(
+  { chain, statement, detail, item }: ExpressionPlace,
+  literal: NumberNode,
+): string | undefined {
+  if (detail?.table?.some(({ cells }) => cells.includes(literal))) return "rows hold numbers, never names";
+  const outer = chain[chain.length - 2];
+  if (outer?.kind === "tuple" && outer.unit && !literal.unit)
+    return "its unit stands behind the parenthesis, for all of them";
+  const whole = item?.kind === "value" && item.expression === literal;
+  if (whole && statement.keyword.text === "let" && !detail) return "whole";
+  if (literal.value === 0 && !literal.unit) return "the number 0 fits any dimension, a name would fit one";
+  if (!literal.unit && standsBesidePi(chain))
+    return "it makes the angular rate of 2 * pi * rate, which a name would not";
+  return undefined;
+}
+
+/** A product holding a literal 2, pi and a rate is the angular rate. */
+function standsBesidePi(chain: readonly Expression[]): boolean {
+  const product = chain.find(
+    (node) => node.kind === "binary" && (node.operator === "*" || node.operator === "/"),
+  );
+  const holdsPi = (node: Expression): boolean =>
+    (node.kind === "path" && node.names[0]?.text === "pi") || childrenOf(node).some(holdsPi);
+  return product !== undefined && holdsPi(product);
+}
+
+/** `mounts_stiffness` for the number of an element, else what kind of number it is. */
+function nameFor({ statement, detail, chain, item }: ExpressionPlace, literal: NumberNode): string {
+  const owner = nameOf(statement);
+  const isWhole = chain.length === 1 && item?.kind === "value" && item.expression === literal;
+  const key = detail?.key.text ?? HEAD_KEYS.get(statement.keyword.text);
+  if (isWhole && owner !== "" && key !== undefined && statement.keyword.text !== "case")
+    return `${owner}_${key}`;
+  const meaning = literal.unit && unitOf(literal.unit);
+  if (!meaning || isFault(meaning)) return "number";
+  if (isNumber(meaning.kind)) return /rad|deg|rev/.test(meaning.text) ? "angle" : "share";
+  const words = knownKind(meaning.kind)?.words ?? "quantity";
+  return words
+    .replace(/^an? /, "")
+    .replace(/ or .*/, "")
+    .replaceAll(" ", "_");
+}
+
+const HEAD_KEYS: ReadonlyMap<string, string> = new Map([
+  ["mass", "mass"],
+  ["inertia", "inertia"],
+  ["body", "mass"],
+  ["pendulum", "mass"],
+  ["spring", "stiffness"],
+  ["damper", "damping"],
+  ["inerter", "inertance"],
+  ["stop", "stiffness"],
+  ["cord", "stiffness"],
+  ["friction", "force"],
+]);
+
+/** Behind the last `let`, else in front of the first statement that uses numbers. */
+function definition(
+  tree: { readonly statements: readonly StatementNode[] } & Parameters<typeof linesBehind>[0],
+  name: string,
+  text: string,
+): TextEdit[] {
+  const line = `let ${name} = ${text}`;
+  const last = tree.statements.findLast(({ keyword }) => keyword.text === "let");
+  if (last) return [linesBehind(tree, last, [line])];
+  const first = tree.statements.find(({ keyword }) => keyword.text !== "title" && keyword.text !== "use");
+  return first ? [linesBefore(tree, first, [line, ""])] : [{ span: span(0, 0), text: `${line}\n` }];
+}
