@@ -21,7 +21,7 @@ import { repeat } from "./watch.ts";
 /** Answers what a file asks: tables and plots or JSON on stdout, what is wrong with the file on stderr. */
 export function run(call: Call): Promise<number> {
   return repeat(call, async () => {
-    const judged = judgeSource(await selectOne(call), call.host);
+    const judged = await judgeSource(await selectOne(call), call.host);
     const [file] = chosenCase(call, [judged]);
     if (file.readable) answer(file, call);
     else call.host.stderr.write(`thrum: ${file.path} cannot be read: ${oneLine(file.reason)}\n`);

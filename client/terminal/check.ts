@@ -18,7 +18,7 @@ export function run(call: Call): Promise<number> {
   return repeat(call, async () => {
     const selection = await select(call);
     const unmatched = reportUnmatched(selection, call.host);
-    const judged = selection.sources.map((source) => judgeSource(source, call.host));
+    const judged = await Promise.all(selection.sources.map((source) => judgeSource(source, call.host)));
     const files = chosenCase(call, judged);
     call.host.stdout.write(call.has("json") ? jsonText(checkJson(files)) : text(files, call));
     return { status: unmatched ? EXIT.cannotRun : exitStatus(files), files: judged.flatMap(filesBehind) };

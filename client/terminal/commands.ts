@@ -110,4 +110,15 @@ export const COMMANDS: readonly Command[] = [
     examples: ["thrum outline examples/ventilation-fan.thrum"],
     load: () => import("./outline.ts"),
   },
+  {
+    name: "serve",
+    operands: "",
+    least: 0,
+    most: 0,
+    says: "Serve an editor: the language server",
+    text: "Speaks the language server protocol on standard input and output until the editor ends it; docs/editors.md says how to set up an editor. Standard error carries what is logged.",
+    options: [{ name: "stdio", says: "talk over standard input and output (needed)" }],
+    examples: ["thrum serve --stdio"],
+    load: () => import("./serve.ts"),
+  },
 ];

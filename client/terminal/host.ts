@@ -7,6 +7,8 @@ export interface Host {
   readonly stdin: Readable;
   readonly stdout: Screen;
   readonly stderr: Screen;
+  /** Starts the language server, which takes standard input and output for itself. */
+  readonly serve?: () => Promise<unknown>;
 }
 
 /** A stream for text, with what is known of the terminal behind it. */

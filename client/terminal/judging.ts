@@ -1,16 +1,22 @@
-import { type FileOutcome, type FileReport, judge, understand } from "../../shared-core/index.ts";
+import {
+  type FileOutcome,
+  type FileReport,
+  judge,
+  learnUnits,
+  type Model,
+  understand,
+} from "../../shared-core/index.ts";
 import { type Call, UnknownWord } from "./call.ts";
 import type { Source } from "./files.ts";
 import type { Host } from "./host.ts";
 import { workspaceReader } from "./workspace.ts";
 
 /** Judges a file. A fault of the program costs this file and is told on stderr; the others go on. */
-export function judgeSource(source: Source, host: Host): FileOutcome {
+export async function judgeSource(source: Source, host: Host): Promise<FileOutcome> {
   const { path, content } = source;
   if (!content.ok) return { readable: false, path, reason: content.detail };
   try {
-    const model = understand(path, content.text, workspaceReader(path, host.cwd));
-    const report = judge(model);
+    const report = judge(await understood(path, content.text, host));
     for (const { where, error } of report.faults) tellFault(host, `${path}, ${where}`, error);
     return { readable: true, path, report };
   } catch (error) {
@@ -21,6 +27,13 @@ export function judgeSource(source: Source, host: Host): FileOutcome {
       reason: "an internal fault of thrum; the details stand on standard error",
     };
   }
+}
+
+/** The model of a text; units that the language does not spell itself are looked up when one is met. */
+async function understood(path: string, text: string, host: Host): Promise<Model> {
+  const read = () => understand(path, text, workspaceReader(path, host.cwd));
+  const model = read();
+  return (await learnUnits(model)) ? read() : model;
 }
 
 function tellFault(host: Host, where: string, error: unknown): void {

@@ -9,7 +9,7 @@ import { writeFiles } from "./write.ts";
 export async function run(call: Call): Promise<number> {
   const folder = needed(call, "to", "DIR");
   const { host } = call;
-  const [file] = chosenCase(call, [judgeSource(await selectOne(call), host)]);
+  const [file] = chosenCase(call, [await judgeSource(await selectOne(call), host)]);
   if (!file.readable) {
     host.stderr.write(`thrum: ${file.path} cannot be read: ${oneLine(file.reason)}\n`);
     return EXIT.cannotRun;

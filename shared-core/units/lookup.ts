@@ -43,7 +43,12 @@ const NEVER_UNITS: ReadonlySet<string> = new Set(["as", "at", "to", "and", "or",
  */
 export function lookupUnit(name: string, other?: UnitResolver): Unit | undefined {
   if (NEVER_UNITS.has(name)) return undefined;
-  return BY_NAME.get(name) ?? prefixed(name) ?? other?.(name);
+  return BY_NAME.get(name) ?? prefixed(name) ?? LEARNED.get(name) ?? other?.(name);
+}
+
+/** Adds a unit that the table does not hold. What a name means never changes: one that is known stays as it is. */
+export function learnUnit(unit: Unit): void {
+  if (lookupUnit(unit.name) === undefined) LEARNED.set(unit.name, unit);
 }
 
 /** Whether a name behind a number is a unit of the table; what the parser asks. */
@@ -54,6 +59,7 @@ export function isUnitName(name: string): boolean {
 /** Names of the table, without prefixes, for suggestions and completion. */
 export const UNIT_NAMES: readonly string[] = UNIT_TABLE.map((unit) => unit.name);
 
+const LEARNED = new Map<string, Unit>();
 const BY_NAME: ReadonlyMap<string, TableUnit> = new Map(UNIT_TABLE.map((unit) => [unit.name, unit]));
 
 function prefixed(name: string): Unit | undefined {
