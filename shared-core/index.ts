@@ -63,7 +63,6 @@ export {
   highlights,
   references,
 } from "./features/navigate.ts";
-export { NEW_MODELS, type NewModelKind, newModel } from "./features/new-model.ts";
 export { type Prepared, prepareRename, type Renamed, rename } from "./features/rename.ts";
 export { selectionRanges } from "./features/select.ts";
 export { type Signature, type SignatureParameter, signatureHelp } from "./features/signature.ts";
