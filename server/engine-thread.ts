@@ -42,7 +42,7 @@ export class ThreadEngine implements Engine {
 
   #start(): Worker {
     // Its standard output must not end up between the messages of the protocol.
-    const worker = new Worker(this.#script, { workerData: THREAD, stdout: true, name: "thrum numbers" });
+    const worker = new Worker(this.#script, { stdout: true, name: "thrum numbers" });
     worker.stdout.pipe(process.stderr, { end: false });
     worker.unref();
     let failed = "";
@@ -93,9 +93,6 @@ export class ThreadEngine implements Engine {
     if (++this.#breakdowns <= MOST_BREAKDOWNS) this.onSaid({ say: "restarted", uri, error });
   }
 }
-
-/** Tells the thread from the program that starts it: both are the same script. */
-export const THREAD = "numbers";
 
 /** The thread's side: works step by step and looks at its messages in between. */
 export function runThread(port: MessagePort): void {

@@ -18,6 +18,7 @@ export interface Host {
   readonly disk?: Disk;
   /** Starts what computes numbers. Called when the first model is there. */
   startEngine(): Engine;
+  readonly version: string;
   /** Where the pages of docs/ lie, ending in `/`, when the client does not say. */
   readonly docs?: string;
 }

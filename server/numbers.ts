@@ -51,7 +51,7 @@ export class Numbers {
         break;
       case "units": {
         const entry = this.#entries.get(message.uri);
-        if (entry) entry.units = message.units;
+        if (entry && entry.units !== message.units) this.#show(entry, message.units);
         break;
       }
       case "forget":
@@ -95,6 +95,14 @@ export class Numbers {
       whole: before?.whole,
       took: before?.took ?? Number.POSITIVE_INFINITY,
     });
+  }
+
+  /** What was said in other units is said again. */
+  #show(entry: Entry, units: UnitSystem): void {
+    entry.units = units;
+    const { uri, serial, whole } = entry;
+    if (whole?.serial !== serial) return;
+    this.#say({ say: "judged", uri, serial, judged: judgedOf(whole.report, "answers", units) });
   }
 
   #want(uri: string, serial: number, open: boolean): void {

@@ -29,11 +29,16 @@ export const NUMERIC = {
   hover: ({ now, whole }: Views, offset: number): Hover | null =>
     hover(speaksOfAnswers(now, offset) ? whole : now, offset) ?? null,
 
-  inlayHints({ now, whole }: Views, range: Span, kinds: readonly InlayKind[]): readonly InlayHint[] {
+  inlayHints(
+    { now, whole }: Views,
+    range: Span,
+    kinds: readonly InlayKind[],
+    cursor: number | undefined,
+  ): readonly InlayHint[] {
     const early = kinds.filter((kind) => kind !== "margin");
     const hints = [
-      ...inlayHints(now, range, { kinds: new Set(early) }),
-      ...(kinds.includes("margin") ? inlayHints(whole, range, { kinds: new Set(["margin"]) }) : []),
+      ...inlayHints(now, range, { kinds: new Set(early), cursor }),
+      ...(kinds.includes("margin") ? inlayHints(whole, range, { kinds: new Set(["margin"]), cursor }) : []),
     ];
     return hints.sort((a, b) => a.offset - b.offset);
   },

@@ -23,13 +23,11 @@ const MOST_ROUNDS = 20;
 export interface ScheduleHost {
   readonly sources: Sources;
   startEngine(): Engine;
-  settingsOf(session: Session): Settings;
+  settingsOf(of: { readonly uri: string }): Settings;
   /** Something about a session is another thing now: text, modes, answers. */
   changed(session: Session): void;
   /** Numbers of a session begin or end to be computed. */
   busy(session: Session, busy: boolean): void;
-  /** A model that is not open was judged. */
-  judgedClosed(uri: string, message: Extract<FromEngine, { say: "judged" }>): void;
   log(text: string): void;
 }
 
@@ -56,17 +54,25 @@ export class Schedule {
     return this.#sessions.get(key);
   }
 
+  /** The session of a document that is open in the editor. */
+  byUri(uri: string): Session | undefined {
+    const session = this.#sessions.get(keyOf(uri));
+    return session?.hidden ? undefined : session;
+  }
+
   open(session: Session): void {
+    this.#sessions.get(session.key)?.close();
     this.#sessions.set(session.key, session);
     this.touch(session, []);
   }
 
   close(session: Session): void {
-    this.#sessions.delete(session.key);
     this.#texts.forget(session);
     this.#stopTimer(session);
     session.close();
-    this.forgetModel(session.uri);
+    if (this.#sessions.get(session.key) !== session) return;
+    this.#sessions.delete(session.key);
+    this.#forget(session.uri);
   }
 
   /** The text of a session, or a file that it reads, has changed. */
@@ -136,17 +142,7 @@ export class Schedule {
     this.engine.tell({ say: "units", uri: session.uri, units: this.#host.settingsOf(session).units });
   }
 
-  /** Judges a model that is not open; `judgedClosed` hears what came of it. */
-  judgeClosed(
-    place: { readonly uri: string; readonly file: string },
-    text: string,
-    understood: Understood,
-  ): void {
-    this.#tellText(place, text, understood, "as-written");
-    this.engine.tell({ say: "judge", uri: place.uri, serial: understood.serial, open: false });
-  }
-
-  forgetModel(uri: string): void {
+  #forget(uri: string): void {
     if (this.#engine === undefined) return;
     const unused: number[] = [];
     for (const [id, users] of this.#sent) {
@@ -254,7 +250,7 @@ export class Schedule {
 
   #judge(session: Session): void {
     this.#stopTimer(session);
-    this.engine.tell({ say: "judge", uri: session.uri, serial: session.serial, open: true });
+    this.engine.tell({ say: "judge", uri: session.uri, serial: session.serial, open: !session.hidden });
   }
 
   #stopTimer(session: Session): void {
@@ -275,11 +271,7 @@ export class Schedule {
 
   #hearOf(message: Exclude<FromEngine, { say: "answer" | "fault" | "restarted" }>): void {
     const session = this.#sessions.get(keyOf(message.uri));
-    if (session === undefined) {
-      if (message.say === "judged") this.#host.judgedClosed(message.uri, message);
-      return;
-    }
-    if (message.serial !== session.serial) return;
+    if (session === undefined || message.serial !== session.serial) return;
     if (message.say === "started") this.#host.busy(session, true);
     else if (message.say === "stopped") {
       session.withoutNumbers("stopped");

@@ -33,15 +33,21 @@ export class Session implements Place {
   readonly key: string;
   readonly folder: string;
   readonly file: string;
+  /** Not open in the editor: looked at for a while, behind the others. */
+  readonly hidden: boolean;
   document: TextDocument;
   serial = 1;
   understood: Understood | undefined;
   numbers: NumbersState = "awaited";
   summary: SummaryOfModel | undefined;
+  /** The serial of which a pulling client has been told something. */
+  pulled = 0;
   /** Rounds of asking the client for files that this text leads to. */
   rounds = 0;
   /** How long understanding the text took the last time, in ms. */
   cost = 0;
+  /** Where the last edit ended, and when. */
+  lastEdit: { readonly end: number; readonly at: number } | undefined;
   #content: FileContent | undefined;
   /** What the newest numbers say, by what it rests on, and what has changed in the text since. */
   #fromModes: readonly Diagnostic[] = [];
@@ -50,12 +56,21 @@ export class Session implements Place {
   #changes: Change[] = [];
   readonly #waiting: (() => void)[] = [];
 
-  constructor(document: TextDocument, { folder, file }: Place) {
+  /** `source`: the text as it was read, of a model that is not open. */
+  constructor(document: TextDocument, { folder, file }: Place, source?: FileContent) {
+    this.hidden = source !== undefined;
+    this.#content = source;
     this.uri = document.uri;
     this.key = keyOf(document.uri);
     this.folder = folder;
     this.file = file;
     this.document = document;
+  }
+
+  /** Where somebody is typing, as far as edits tell. */
+  cursor(): number | undefined {
+    const { lastEdit } = this;
+    return lastEdit && performance.now() - lastEdit.at < TYPING ? lastEdit.end : undefined;
   }
 
   /** As other models read it. */
@@ -69,7 +84,10 @@ export class Session implements Place {
     this.serial++;
     this.numbers = "awaited";
     this.#changes.push(...changes);
-    if (changes.length > 0) this.#content = undefined;
+    const last = changes.at(-1);
+    if (last === undefined) return;
+    this.#content = undefined;
+    this.lastEdit = { end: last.span.start + last.length, at: performance.now() };
   }
 
   /** Numbers of the text as it stands. */
@@ -142,6 +160,9 @@ export class Session implements Place {
     });
   }
 }
+
+/** So long after an edit the cursor is taken to stand there, in ms. */
+export const TYPING = 700;
 
 /** An answer that is not of the text shown says so. */
 const EARLIER = " (before the last edit)";

@@ -2,11 +2,11 @@ import { type CancellationToken, LSPErrorCodes, ResponseError } from "vscode-lan
 import { errorText } from "./numbers.ts";
 
 /** A request that cannot be met for a reason that the user should read. */
-export const refusal = (reason: string): ResponseError<void> =>
+export const refusal = (reason: string): ResponseError<never> =>
   new ResponseError(LSPErrorCodes.RequestFailed, reason);
 
 /** The text has changed while the request was under way: what it found would stand at the wrong places. */
-export const outdated = (): ResponseError<void> =>
+export const outdated = (): ResponseError<never> =>
   new ResponseError(LSPErrorCodes.ContentModified, "the text has changed since");
 
 /**
@@ -15,18 +15,18 @@ export const outdated = (): ResponseError<void> =>
  */
 export function wall(log: (text: string) => void) {
   return <P, R>(name: string, empty: R, handler: (params: P, token: CancellationToken) => R | Promise<R>) =>
-    async (params: P, token: CancellationToken): Promise<R | ResponseError<void>> => {
+    async (params: P, token: CancellationToken): Promise<R | ResponseError<never>> => {
       try {
         if (token.isCancellationRequested) return cancelled();
         const answer = await handler(params, token);
         return token.isCancellationRequested ? cancelled() : answer;
       } catch (error) {
-        if (error instanceof ResponseError) return error;
+        if (error instanceof ResponseError) return error as ResponseError<never>;
         log(`${name} failed\n${errorText(error)}`);
         return empty;
       }
     };
 }
 
-const cancelled = (): ResponseError<void> =>
+const cancelled = (): ResponseError<never> =>
   new ResponseError(LSPErrorCodes.RequestCancelled, "the request was cancelled");

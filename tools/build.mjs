@@ -14,6 +14,8 @@ const EXTENSION = {
   mainFields: ["module", "main"],
 };
 
+const REQUIRE = 'import{createRequire}from"node:module";const require=createRequire(import.meta.url);';
+
 /** What ships: one entry a program. Chunks that a program loads only when needed lie beside it. */
 const PROGRAMS = [
   {
@@ -24,6 +26,24 @@ const PROGRAMS = [
     format: "esm",
     splitting: true,
     chunkNames: "chunks/[name]-[hash]",
+  },
+  {
+    entryPoints: { main: "server/main.ts", thread: "server/thread.ts" },
+    outdir: "dist/server",
+    platform: "node",
+    target: "node20",
+    format: "esm",
+    splitting: true,
+    chunkNames: "chunks/[name]-[hash]",
+    // The protocol's library is CommonJS, and asks for parts of Node as such.
+    banner: { js: REQUIRE },
+  },
+  {
+    entryPoints: { browser: "server/browser-worker.ts" },
+    outdir: "dist/server",
+    platform: "browser",
+    target: "es2022",
+    format: "iife",
   },
   {
     entryPoints: { main: "client/extension/node/main.ts" },
@@ -45,8 +65,8 @@ const COMMON = { bundle: true, minify: true, legalComments: "none", logLevel: "w
 export async function build() {
   ensureInstalled("build");
   const esbuild = await import("esbuild");
+  for (const { outdir } of PROGRAMS) rmSync(join(root, outdir), { recursive: true, force: true });
   for (const program of PROGRAMS) {
-    rmSync(join(root, program.outdir), { recursive: true, force: true });
     await esbuild.build({ absWorkingDir: root, ...COMMON, ...program });
   }
 }

@@ -1,0 +1,116 @@
+import {
+  type CompletionItem,
+  CompletionItemKind,
+  CompletionTriggerKind,
+  InsertTextFormat,
+  MarkupKind,
+  type SignatureHelp,
+} from "vscode-languageserver";
+import {
+  type Completion,
+  type CompletionKind,
+  complete,
+  type LineIndex,
+  signatureHelp,
+} from "../../shared-core/index.ts";
+import { toOffset, toRange } from "../convert.ts";
+import { type Serving, sessionOf } from "../serving.ts";
+import type { Session } from "../session.ts";
+import { keyOf } from "../uris.ts";
+
+/** Never a blank, a comma or a line end: what is typed there is meant. */
+export const COMPLETION_TRIGGERS = [".", '"', "/"];
+export const SIGNATURE_TRIGGERS = ["(", ","];
+
+export function registerCompletion(serving: Serving): void {
+  const { connection, schedule, guard } = serving;
+  connection.onCompletion(
+    guard("textDocument/completion", null, async ({ textDocument, position, context }) => {
+      const session = sessionOf(serving, textDocument);
+      if (session === undefined) return null;
+      const view = schedule.view(session);
+      const offset = toOffset(view.lines, position);
+      const inQuotes = view.lines.lineText(position.line).slice(0, position.character).includes('"');
+      const found = complete(view, offset, {
+        explicit: context?.triggerKind === CompletionTriggerKind.Invoked && !typedLast(session, offset),
+        files: inQuotes ? await filesAround(serving, session) : [],
+      });
+      const items = found.map((each) => toItem(each, view.lines, serving));
+      return { isIncomplete: false, items };
+    }),
+  );
+  connection.onSignatureHelp(
+    guard("textDocument/signatureHelp", null, ({ textDocument, position }): SignatureHelp | null => {
+      const session = sessionOf(serving, textDocument);
+      if (session === undefined) return null;
+      const view = schedule.view(session);
+      const found = signatureHelp(view, toOffset(view.lines, position));
+      if (found === undefined) return null;
+      const { label, documentation, parameters, active } = found;
+      const signature = {
+        label,
+        documentation: { kind: MarkupKind.Markdown, value: documentation },
+        parameters: parameters.map(({ span, documentation: value }) => ({
+          label: [span.start, span.end] as [number, number],
+          documentation: { kind: MarkupKind.Markdown, value },
+        })),
+      };
+      return { signatures: [signature], activeSignature: 0, activeParameter: active };
+    }),
+  );
+}
+
+/** Clients say "invoked" for typing too; an edit that ended right here a moment ago was typing. */
+function typedLast({ lastEdit }: Session, offset: number): boolean {
+  return lastEdit !== undefined && lastEdit.end === offset && performance.now() - lastEdit.at < JUST_NOW;
+}
+const JUST_NOW = 1000;
+
+async function filesAround({ closed }: Serving, session: Session): Promise<readonly string[]> {
+  const files = await closed.files();
+  return files.filter(({ folder }) => keyOf(folder) === keyOf(session.folder)).map(({ file }) => file);
+}
+
+function toItem(found: Completion, lines: LineIndex, { client }: Serving): CompletionItem {
+  const { label, kind, detail, documentation, insert, snippet, insertSpan, replaceSpan, sort, notYet } =
+    found;
+  const usesSnippet = client.snippets && snippet !== undefined;
+  const newText = usesSnippet ? snippet : insert;
+  const replaces =
+    client.capabilities.textDocument?.completion?.completionItem?.insertReplaceSupport === true;
+  const item: CompletionItem = {
+    label,
+    kind: KINDS[kind],
+    sortText: sort,
+    textEdit: replaces
+      ? { newText, insert: toRange(lines, insertSpan), replace: toRange(lines, replaceSpan) }
+      : { newText, range: toRange(lines, insertSpan) },
+    insertTextFormat: usesSnippet ? InsertTextFormat.Snippet : InsertTextFormat.PlainText,
+  };
+  if (detail !== undefined) item.detail = notYet ? `${detail} (read, not yet computed)` : detail;
+  if (documentation !== undefined) item.documentation = { kind: MarkupKind.Markdown, value: documentation };
+  return item;
+}
+
+/** The nearest in the icons that editors show. */
+const KINDS: Readonly<Record<CompletionKind, CompletionItemKind>> = {
+  keyword: CompletionItemKind.Keyword,
+  word: CompletionItemKind.Keyword,
+  moves: CompletionItemKind.Variable,
+  joins: CompletionItemKind.Interface,
+  drives: CompletionItemKind.Event,
+  asks: CompletionItemKind.Method,
+  holds: CompletionItemKind.Value,
+  parameter: CompletionItemKind.Constant,
+  case: CompletionItemKind.EnumMember,
+  limit: CompletionItemKind.Constant,
+  kit: CompletionItemKind.Class,
+  detail: CompletionItemKind.Property,
+  unit: CompletionItemKind.Unit,
+  constant: CompletionItemKind.Constant,
+  function: CompletionItemKind.Function,
+  quantity: CompletionItemKind.Field,
+  component: CompletionItemKind.Field,
+  file: CompletionItemKind.File,
+  tag: CompletionItemKind.Text,
+};

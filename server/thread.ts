@@ -1,0 +1,5 @@
+/** The thread in which numbers are computed; main.ts starts it. */
+import { parentPort } from "node:worker_threads";
+import { runThread } from "./engine-thread.ts";
+
+if (parentPort) runThread(parentPort);
