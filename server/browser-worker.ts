@@ -1,6 +1,9 @@
-/** The server as a worker of a browser. Its first word tells the client that it was not refused. */
+/**
+ * The server where there is no Node. `self` is the scope of a worker; where an editor refuses workers, the client
+ * runs this program with one end of a `MessageChannel` in its place. The first word says that it is there.
+ */
 import { serveOverPort } from "./over-port.ts";
 
-const scope = globalThis as unknown as Worker;
-scope.postMessage("ready");
-serveOverPort(scope);
+const port = self as unknown as Worker | MessagePort;
+port.postMessage("ready");
+serveOverPort(port);

@@ -1,27 +1,33 @@
 /** Packs the extension into dist/thrum.vsix: builds, gathers third-party notices, and takes what `files` lists. */
-import { mkdirSync, readdirSync, readFileSync, statSync, writeFileSync } from "node:fs";
-import { join } from "node:path";
+import { mkdirSync, readdirSync, readFileSync, renameSync, statSync, writeFileSync } from "node:fs";
+import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { build } from "./build.mjs";
 import { root } from "./root.mjs";
 
 export const vsix = join(root, "dist", "thrum.vsix");
 
-/** @returns {Promise<string>} path of the package */
-export async function packExtension({ builds = true } = {}) {
+/**
+ * @param {{ builds?: boolean, to?: string, folder?: string }} [options]  `folder`: a copy to pack instead of the root
+ * @returns {Promise<string>} path of the package
+ */
+export async function packExtension({ builds = true, to = vsix, folder = root } = {}) {
   if (builds) await build();
-  writeFileSync(join(root, "third-party-notices.txt"), notices());
+  // Whole at once: another packing may be reading it.
+  const part = join(folder, `third-party-notices.${process.pid}.txt`);
+  writeFileSync(part, notices());
+  renameSync(part, join(folder, "third-party-notices.txt"));
   const { createVSIX } = await import("@vscode/vsce");
-  mkdirSync(join(root, "dist"), { recursive: true });
+  mkdirSync(dirname(to), { recursive: true });
   await createVSIX({
-    cwd: root,
-    packagePath: vsix,
+    cwd: folder,
+    packagePath: to,
     dependencies: false,
     allowMissingRepository: true,
     rewriteRelativeLinks: false,
     skipLicense: false,
   });
-  return vsix;
+  return to;
 }
 
 /** Licence texts of everything that is bundled: the dependencies and what they bring. */

@@ -6,7 +6,7 @@ import type { UnitResolver } from "./lookup.ts";
  * its own. It takes some 100 ms, so call it once, when a name was not found in the table.
  */
 export async function loadOtherUnits(): Promise<UnitResolver> {
-  const { create, createUnitDependencies, unitDependencies } = await import("mathjs");
+  const { create, createUnitDependencies, unitDependencies } = await import("./mathjs.ts");
   const math = create({ unitDependencies, createUnitDependencies });
   const cache = new Map<string, Unit | undefined>();
   return (name) => {

@@ -1,57 +1,71 @@
 import * as vscode from "vscode";
-import type { LanguageClientOptions, MessageTransports } from "vscode-languageclient";
+import type { MessageTransports } from "vscode-languageclient";
 import { BrowserMessageReader, BrowserMessageWriter, LanguageClient } from "vscode-languageclient/browser";
-import { serveInPage } from "../../../server/browser.ts";
 import { clientOptions } from "../connection.ts";
 import { start } from "../start.ts";
 
-/** How long a worker may take to say that it is there, in ms; a refused one says nothing at all. */
-const WORKER_PATIENCE = 3000;
+/** How long the server may take to say that it is there, in ms; a refused worker says nothing at all. */
+const PATIENCE = 3000;
 
 /** The extension where there is no Node: the server is a worker, or runs in the extension's own thread. */
 export function activate(context: vscode.ExtensionContext): void {
   start(context, {
     createConnection(output) {
-      const options: LanguageClientOptions = clientOptions(context, output);
-      const client = new LanguageClient("thrum", "Thrum", () => transports(context, output), options);
+      const transports = () => connect(context, output);
+      const client = new LanguageClient("thrum", "Thrum", transports, clientOptions(context, output));
       return { client, dispose: () => void client.dispose().catch(() => undefined) };
     },
   });
 }
 
-async function transports(
+async function connect(
   context: vscode.ExtensionContext,
   output: vscode.LogOutputChannel,
 ): Promise<MessageTransports> {
   const program = vscode.Uri.joinPath(context.extensionUri, "dist/server/browser.js");
+  const port = await startWorker(program).catch((error: Error) => {
+    output.info(`No worker for the server (${error.message}); it runs beside the extension`);
+    return startBeside(program);
+  });
+  return { reader: new BrowserMessageReader(port), writer: new BrowserMessageWriter(port) };
+}
+
+async function startWorker(program: vscode.Uri): Promise<Worker> {
+  const worker = new Worker(program.toString(true));
   try {
-    const worker = await startedWorker(program.toString(true));
-    return { reader: new BrowserMessageReader(worker), writer: new BrowserMessageWriter(worker) };
+    await firstWord(worker);
+    return worker;
   } catch (error) {
-    output.info(`No worker for the server (${(error as Error).message}); it runs beside the extension`);
-    const { port1, port2 } = new MessageChannel();
-    serveInPage(port2);
-    return { reader: new BrowserMessageReader(port1), writer: new BrowserMessageWriter(port1) };
+    worker.terminate();
+    throw error;
   }
 }
 
-/** A worker that has said its first word, `ready`. */
-function startedWorker(url: string): Promise<Worker> {
+/** Runs the worker's program in this thread; it speaks through the port that it is given as its scope. */
+async function startBeside(program: vscode.Uri): Promise<MessagePort> {
+  const source = new TextDecoder().decode(await vscode.workspace.fs.readFile(program));
+  const { port1, port2 } = new MessageChannel();
+  const ready = firstWord(port1);
+  new Function("self", source)(port2);
+  await ready;
+  return port1;
+}
+
+/** Resolves when the other side has said its first word, `ready`. */
+function firstWord(port: Worker | MessagePort): Promise<void> {
   return new Promise((resolve, reject) => {
-    const worker = new Worker(url);
-    const late = setTimeout(() => fail("it did not answer"), WORKER_PATIENCE);
-    const fail = (why: string) => {
+    const late = setTimeout(() => end(() => reject(new Error("it did not answer"))), PATIENCE);
+    const refused = (event: Event) =>
+      end(() => reject(new Error((event as ErrorEvent).message || "it was refused")));
+    const end = (then: () => void) => {
       clearTimeout(late);
-      worker.terminate();
-      reject(new Error(why));
+      port.onmessage = null;
+      port.removeEventListener("error", refused);
+      then();
     };
-    worker.onerror = (event) => fail(event.message || "it was refused");
-    worker.onmessage = ({ data }) => {
-      if (data !== "ready") return;
-      clearTimeout(late);
-      worker.onmessage = null;
-      worker.onerror = null;
-      resolve(worker);
+    port.addEventListener("error", refused);
+    port.onmessage = ({ data }: MessageEvent) => {
+      if (data === "ready") end(resolve);
     };
   });
 }
