@@ -1,0 +1,387 @@
+/** Where everything of a drawing stands, in pixels, y downwards; from names and joints only. */
+import type { GraphLink, GraphNode, SystemGraph } from "./graph.ts";
+import { type Block, blocksOf, type Cell } from "./rows.ts";
+import { spread, spreadInside } from "./spread.ts";
+import { LINE_HEIGHT, nameWidth, roomFor, type WordRoom } from "./words.ts";
+
+export interface PlacedNode {
+  readonly node: GraphNode;
+  readonly room: WordRoom;
+  /** Of the symbol. */
+  readonly x: number;
+  readonly y: number;
+  readonly width: number;
+  readonly height: number;
+}
+
+/** Where a link meets a node. */
+export interface Port {
+  readonly x: number;
+  readonly y: number;
+  /** Index of the node in the graph. */
+  readonly node: number;
+  /** Above its node, or below it. */
+  readonly side: "above" | "below";
+  /** Name of a point of a body, written inside beside the port. */
+  readonly point: string;
+}
+
+export interface PlacedLink {
+  readonly link: GraphLink;
+  readonly room: WordRoom;
+  /** Middle of the symbol. */
+  readonly x: number;
+  readonly y: number;
+  /** In the order of `link.ends`. */
+  readonly ports: readonly Port[];
+  /** Level of ground below it, for a link that ends there. */
+  readonly groundY: number;
+}
+
+export interface Layout {
+  readonly width: number;
+  readonly height: number;
+  readonly nodes: readonly PlacedNode[];
+  readonly links: readonly PlacedLink[];
+}
+
+/** Height of every symbol between two nodes. */
+export const SYMBOL = 46;
+/** Half its width. */
+export const SYMBOL_HALF = 13;
+/** From the symbol to its words. */
+const WORDS_GAP = 6;
+const PORT_PAD = 16;
+const WIDEST_NODE = 520;
+const SWEEPS = 12;
+const GAP = 16;
+const MARGIN = 14;
+/** Blocks stand side by side up to this width. */
+const PAGE = 820;
+const BLOCK_GAP = 36;
+
+interface Extent {
+  readonly left: number;
+  readonly right: number;
+}
+
+export function layoutSystem(graph: SystemGraph): Layout {
+  const blocks = blocksOf(graph).map((block) => new BlockLayout(graph, block).place());
+  const nodes: PlacedNode[] = [];
+  const links: PlacedLink[] = [];
+  let [x, y, tallest, widest] = [MARGIN, MARGIN, 0, 0];
+  for (const line of linesOf(blocks)) {
+    tallest = Math.max(...line.map(({ height }) => height));
+    for (const block of line) {
+      // Blocks of a line stand on one level.
+      const [dx, dy] = [x, y + tallest - block.height];
+      nodes.push(...block.nodes.map((node) => ({ ...node, x: node.x + dx, y: node.y + dy })));
+      links.push(...block.links.map((link) => moved(link, dx, dy)));
+      x += block.width + BLOCK_GAP;
+    }
+    widest = Math.max(widest, x - BLOCK_GAP);
+    [x, y] = [MARGIN, y + tallest + BLOCK_GAP];
+  }
+  const height = blocks.length === 0 ? 2 * MARGIN : y - BLOCK_GAP + MARGIN;
+  return { width: widest + MARGIN, height, nodes, links };
+}
+
+function linesOf(blocks: readonly Layout[]): Layout[][] {
+  const lines: Layout[][] = [];
+  let width = Number.POSITIVE_INFINITY;
+  for (const block of blocks) {
+    if (width + block.width > PAGE) {
+      lines.push([]);
+      width = 0;
+    }
+    lines[lines.length - 1].push(block);
+    width += block.width + BLOCK_GAP;
+  }
+  return lines;
+}
+
+function moved(link: PlacedLink, dx: number, dy: number): PlacedLink {
+  const ports = link.ports.map((port) => ({ ...port, x: port.x + dx, y: port.y + dy }));
+  return { ...link, x: link.x + dx, y: link.y + dy, groundY: link.groundY + dy, ports };
+}
+
+/** Height of a node's symbol by keyword; labels stand inside but for junctions and supports. */
+function nodeHeight({ keyword, points }: GraphNode, { lines }: WordRoom): number {
+  if (keyword === "junction") return 18;
+  if (keyword === "support") return 34;
+  if (keyword === "pendulum") return Math.max(64, lines * LINE_HEIGHT + 16);
+  const pointLines = keyword === "body" && points.length > 0 ? 2 * LINE_HEIGHT : 0;
+  return Math.max(34, lines * LINE_HEIGHT + 12) + pointLines;
+}
+
+class BlockLayout {
+  readonly #graph: SystemGraph;
+  readonly #rows: readonly Cell[][];
+  readonly #x = new Map<Cell, number>();
+  readonly #extents = new Map<Cell, Extent>();
+  readonly #rooms = new Map<Cell, WordRoom>();
+  readonly #ports = new Map<Cell, Map<Cell, number[]>>();
+
+  constructor(graph: SystemGraph, block: Block) {
+    this.#graph = graph;
+    this.#rows = block.rows;
+    for (const cell of block.rows.flat()) this.#rooms.set(cell, this.#roomOf(cell));
+    for (const cell of block.rows.flat())
+      if (cell.is === "link") this.#extents.set(cell, this.#linkExtent(cell));
+    for (const cell of block.rows.flat())
+      if (cell.is === "node") this.#extents.set(cell, this.#nodeExtent(cell));
+  }
+
+  place(): Layout {
+    this.#spreadRows();
+    this.#setPorts();
+    const left = Math.min(...this.#all().map((cell) => this.#at(cell) - this.#extent(cell).left));
+    const right = Math.max(...this.#all().map((cell) => this.#at(cell) + this.#extent(cell).right));
+    for (const cell of this.#all()) this.#x.set(cell, this.#at(cell) - left);
+    for (const ports of this.#ports.values()) {
+      for (const list of ports.values()) for (let i = 0; i < list.length; i++) list[i] -= left;
+    }
+    return { width: right - left, ...this.#stack() };
+  }
+
+  #all(): Cell[] {
+    return this.#rows.flat();
+  }
+  #at(cell: Cell): number {
+    return this.#x.get(cell) as number;
+  }
+  #extent(cell: Cell): Extent {
+    return this.#extents.get(cell) as Extent;
+  }
+  #room(cell: Cell): WordRoom {
+    return this.#rooms.get(cell) as WordRoom;
+  }
+
+  #roomOf(cell: Cell): WordRoom {
+    const { name, statement } =
+      cell.is === "node" ? this.#graph.nodes[cell.index] : this.#graph.links[cell.index];
+    return roomFor(name, statement);
+  }
+
+  #linkExtent(cell: Cell): Extent {
+    const { keyword, ends } = this.#graph.links[cell.index];
+    if (keyword === "pendulum") return { left: 8, right: 8 };
+    // What joins two of one layer lies flat and is wider.
+    const level = ends.length > 1 && cell.joined.every(({ row }) => row === cell.joined[0].row);
+    const half = level ? SYMBOL / 2 + 4 : SYMBOL_HALF;
+    return { left: half, right: half + WORDS_GAP + this.#room(cell).width };
+  }
+
+  #nodeExtent(cell: Cell): Extent {
+    const { keyword } = this.#graph.nodes[cell.index];
+    const { width } = this.#room(cell);
+    if (keyword === "junction") return { left: 7, right: 7 + WORDS_GAP + width };
+    const own = keyword === "pendulum" ? width + 62 : width + 20;
+    const sides = [cell.row - 1, cell.row + 1].map((row) => {
+      const links = [...new Set(cell.joined)].filter((link) => link.row === row);
+      return Math.max(Math.min(WIDEST_NODE, this.#spanOf(links)), this.#namedPorts(cell, links));
+    });
+    const half = Math.max(64, own, ...sides) / 2;
+    return { left: half, right: half };
+  }
+
+  /** Width that the names of points take on one side of a body. */
+  #namedPorts(node: Cell, links: readonly Cell[]): number {
+    const ends = links.flatMap((link) => this.#graph.links[link.index].ends);
+    const own = ends.filter((end) => end.node === node.index && end.isPoint);
+    return own.reduce((sum, { at }) => sum + nameWidth(at) + 10, 2 * PORT_PAD);
+  }
+
+  /** Width of a node under which its links of one side could stand straight. */
+  #spanOf(links: readonly Cell[]): number {
+    let span = 2 * PORT_PAD;
+    for (let i = 0; i + 1 < links.length; i++) {
+      span += this.#extent(links[i]).right + this.#extent(links[i + 1]).left + GAP;
+    }
+    return span;
+  }
+
+  #apart(row: readonly Cell[]): number[] {
+    return row.slice(1).map((cell, i) => this.#extent(row[i]).right + this.#extent(cell).left + GAP);
+  }
+
+  #spreadRows(): void {
+    for (const row of this.#rows)
+      this.#set(
+        row,
+        row.map(() => 0),
+      );
+    for (let sweep = 0; sweep < SWEEPS; sweep++) {
+      for (const row of sweep % 2 === 0 ? this.#rows : [...this.#rows].reverse()) {
+        this.#set(
+          row,
+          row.map((cell) => (cell.is === "node" ? this.#wantedByNode(cell) : this.#wantedByLink(cell))),
+        );
+      }
+    }
+    for (let k = 0; k < this.#rows.length; k += 2) {
+      this.#set(
+        this.#rows[k],
+        this.#rows[k].map((cell) => this.#wantedByLink(cell)),
+      );
+    }
+  }
+
+  #set(row: readonly Cell[], wanted: readonly number[]): void {
+    const places = spread(wanted, this.#apart(row));
+    row.forEach((cell, i) => {
+      this.#x.set(cell, places[i]);
+    });
+  }
+
+  /** In the middle above or below what it holds, counting words as part of it. */
+  #wantedByNode(cell: Cell): number {
+    if (cell.joined.length === 0) return this.#at(cell);
+    const places = cell.joined.map((link) => this.#at(link));
+    return (Math.min(...places) + Math.max(...places)) / 2;
+  }
+
+  /** Between its nodes, and where it can stand straight if there is such a place. */
+  #wantedByLink(cell: Cell): number {
+    const spans = cell.joined.map((node) => {
+      const { left, right } = this.#extent(node);
+      const pad = this.#graph.nodes[node.index].keyword === "junction" ? 7 : PORT_PAD;
+      return [this.#at(node) - left + pad, this.#at(node) + (pad === 7 ? 0 : right - pad)] as const;
+    });
+    const middle = spans.reduce((sum, [from, to]) => sum + (from + to) / 2, 0) / spans.length;
+    const from = Math.max(...spans.map(([start]) => start));
+    const to = Math.min(...spans.map(([, end]) => end));
+    return from <= to ? Math.max(from, Math.min(to, middle)) : middle;
+  }
+
+  #setPorts(): void {
+    for (const cell of this.#all()) {
+      if (cell.is !== "node") continue;
+      for (const row of [cell.row - 1, cell.row + 1]) this.#setSide(cell, row);
+    }
+  }
+
+  #setSide(node: Cell, row: number): void {
+    const { keyword } = this.#graph.nodes[node.index];
+    const { left, right } = this.#extent(node);
+    const at = this.#at(node);
+    const wanted = [...new Set(node.joined)]
+      .filter((link) => link.row === row)
+      // A link with both ends on one node meets it left and right of its middle.
+      .flatMap((link) => this.#wantedPorts(node, link))
+      .sort((a, b) => a.x - b.x);
+    const inside: [number, number] =
+      keyword === "junction" ? [at, at] : [at - left + PORT_PAD, at + right - PORT_PAD];
+    const apart = wanted.slice(1).map((port, i) => Math.max(12, port.half + wanted[i].half));
+    const places = spreadInside(
+      wanted.map(({ x }) => x),
+      apart,
+      inside,
+    );
+    wanted.forEach(({ link }, i) => {
+      const mine = this.#ports.get(link) ?? new Map<Cell, number[]>();
+      this.#ports.set(link, mine);
+      mine.set(node, [...(mine.get(node) ?? []), places[i]]);
+    });
+  }
+
+  #wantedPorts(node: Cell, link: Cell): { x: number; half: number; link: Cell }[] {
+    const { ends } = this.#graph.links[link.index];
+    const own = ends.filter((end) => end.node === node.index);
+    const level = ends.length > 1 && link.joined.every(({ row }) => row === node.row);
+    return own.map((end, i) => {
+      const shift = level ? this.#levelShift(link, node, own.length, i) : 0;
+      const half = end.isPoint ? nameWidth(end.at) / 2 + 4 : 0;
+      return { x: this.#at(link) + shift, half, link };
+    });
+  }
+
+  /** Ends of a flat symbol: left for the node further left. */
+  #levelShift(link: Cell, node: Cell, count: number, i: number): number {
+    if (count > 1) return (i === 0 ? -1 : 1) * (SYMBOL / 2 + 2);
+    const others = link.joined.filter((each) => each !== node);
+    const isLeft = others.every((other) => other.order > node.order);
+    return (isLeft ? -1 : 1) * (SYMBOL / 2 + 2);
+  }
+
+  /** Heights from the bottom up, then y downwards. */
+  #stack(): { height: number; nodes: PlacedNode[]; links: PlacedLink[] } {
+    const heights = this.#rows.map((row) =>
+      row.length === 0 ? 0 : row[0].is === "node" ? this.#nodeRow(row) : this.#linkRow(row),
+    );
+    const total = heights.reduce((sum, each) => sum + each, 0);
+    const bottoms: number[] = [];
+    let y = total;
+    for (const height of heights) {
+      bottoms.push(y);
+      y -= height;
+    }
+    const nodes = new Map<Cell, PlacedNode>();
+    for (const cell of this.#all()) {
+      if (cell.is === "node")
+        nodes.set(cell, this.#placedNode(cell, bottoms[cell.row] - heights[cell.row] / 2));
+    }
+    const links = this.#all()
+      .filter(({ is }) => is === "link")
+      .map((cell) => {
+        const { below } = this.#zones(this.#rows[cell.row]);
+        return this.#placedLink(cell, bottoms[cell.row] - below - SYMBOL / 2, bottoms[cell.row], nodes);
+      });
+    return { height: total, nodes: [...nodes.values()], links };
+  }
+
+  #nodeRow(row: readonly Cell[]): number {
+    return Math.max(...row.map((cell) => nodeHeight(this.#graph.nodes[cell.index], this.#room(cell))));
+  }
+
+  #linkRow(row: readonly Cell[]): number {
+    const { below, above } = this.#zones(row);
+    return below + SYMBOL + above;
+  }
+
+  /** Room for the leads below and above the symbols of a row: the further aside they lead, the more. */
+  #zones(row: readonly Cell[]): { below: number; above: number } {
+    const aside = { below: 0, above: 0 };
+    for (const cell of row) {
+      for (const [node, places] of this.#ports.get(cell) ?? []) {
+        const side = node.row < cell.row ? "below" : "above";
+        for (const place of places) aside[side] = Math.max(aside[side], Math.abs(place - this.#at(cell)));
+      }
+    }
+    const zone = (reach: number): number => 14 + Math.min(60, 0.15 * Math.max(0, reach - 30));
+    const top = row[0]?.row === this.#rows.length - 1;
+    const bottom = row[0]?.row === 0;
+    return { below: bottom ? 14 : zone(aside.below), above: top ? 4 : zone(aside.above) };
+  }
+
+  #placedNode(cell: Cell, middle: number): PlacedNode {
+    const node = this.#graph.nodes[cell.index];
+    const { left, right } = this.#extent(cell);
+    const height = nodeHeight(node, this.#room(cell));
+    const at = this.#at(cell);
+    const width = node.keyword === "junction" ? 14 : left + right;
+    return { node, room: this.#room(cell), x: at - left, y: middle - height / 2, width, height };
+  }
+
+  #placedLink(cell: Cell, y: number, groundY: number, nodes: ReadonlyMap<Cell, PlacedNode>): PlacedLink {
+    const link = this.#graph.links[cell.index];
+    const taken = new Map<Cell, number>();
+    const ports = link.ends.map((end): Port => {
+      const node = cell.joined.find(({ index }) => index === end.node) as Cell;
+      const count = taken.get(node) ?? 0;
+      taken.set(node, count + 1);
+      const box = nodes.get(node) as PlacedNode;
+      const side = node.row < cell.row ? "above" : "below";
+      const x = this.#ports.get(cell)?.get(node)?.[count] ?? this.#at(cell);
+      const edge = side === "above" ? box.y : box.y + box.height;
+      return {
+        x,
+        y: box.node.keyword === "junction" ? box.y + box.height / 2 : edge,
+        node: end.node,
+        side,
+        point: end.isPoint ? end.at : "",
+      };
+    });
+    return { link, room: this.#room(cell), x: this.#at(cell), y, ports, groundY };
+  }
+}

@@ -1,0 +1,144 @@
+/** A model as a drawing in trade symbols. */
+import type { Assembly } from "../mechanics/assembly.ts";
+import type { Model } from "../model/model.ts";
+import type { StatementNode } from "../syntax/tree.ts";
+import { type GraphLink, type GraphNode, type SystemGraph, systemGraph } from "./graph.ts";
+import { type Layout, layoutSystem } from "./layout.ts";
+import { round } from "./path.ts";
+import type { Scene, SceneAnchor, SceneItem, Sway } from "./scene.ts";
+import { groundItem, linkItem } from "./scene-links.ts";
+import { nodeItem, pointPortsOf } from "./scene-nodes.ts";
+import { type ShowValue, type Words, wordsFor } from "./words.ts";
+
+/** From here on a drawing tells less than a chart of the coordinates. */
+export const MOST_DRAWN = 30;
+
+/**
+ * Draws what a model consists of, whether or not it can be computed. Its places depend on names and joints only.
+ * @param assembly of the shown case; without it nothing in the drawing can be moved
+ */
+export function systemScene(model: Model, assembly: Assembly | undefined, show: ShowValue): Scene {
+  const graph = systemGraph(model.tree.statements);
+  const coordinates = assembly?.coordinates.map(({ name }) => name) ?? [];
+  const moving = graph.nodes.filter(({ keyword }) => keyword !== "support").length;
+  const description = describe(model, graph);
+  if (Math.max(coordinates.length, moving) > MOST_DRAWN) {
+    return { kind: "chart", width: 0, height: 0, description, coordinates, items: [] };
+  }
+  const layout = layoutSystem(graph);
+  const painter = new Painter({ model, graph, layout, assembly, show });
+  return {
+    kind: "system",
+    width: Math.ceil(layout.width),
+    height: Math.ceil(layout.height),
+    description,
+    coordinates,
+    items: painter.items(),
+  };
+}
+
+interface PainterInput {
+  readonly model: Model;
+  readonly graph: SystemGraph;
+  readonly layout: Layout;
+  readonly assembly: Assembly | undefined;
+  readonly show: ShowValue;
+}
+
+class Painter {
+  readonly #in: PainterInput;
+  readonly #words = new Map<StatementNode, Words>();
+  readonly #sways: readonly (readonly Sway[])[];
+
+  constructor(input: PainterInput) {
+    this.#in = input;
+    this.#sways = input.graph.nodes.map((_, i) => this.#swaysOf(i));
+  }
+
+  items(): SceneItem[] {
+    const { graph, layout } = this.#in;
+    const nodes = layout.nodes.map((placed) => {
+      const index = graph.nodes.indexOf(placed.node);
+      const { node, x, y, width, height } = placed;
+      const anchor = this.#anchor(index, x + width / 2, y + height / 2);
+      const words = this.#wordsOf(node);
+      const pointPorts = pointPortsOf(layout, index);
+      return nodeItem({ placed, words, anchor, pointPorts, says: saying(node, words, "") });
+    });
+    const links = layout.links.map((placed) => {
+      const { link, ports } = placed;
+      const words = this.#wordsOf(link);
+      const anchors = ports.map((port) => this.#anchor(port.node, port.x, port.y));
+      return linkItem({ placed, words, anchors, says: saying(link, words, this.#between(link)) });
+    });
+    const grounds = layout.links.filter(({ link }) => link.grounded).map(groundItem);
+    return [...grounds, ...links, ...nodes];
+  }
+
+  #wordsOf({ name, statement }: GraphNode | GraphLink): Words {
+    const known = this.#words.get(statement);
+    if (known !== undefined) return known;
+    const words = wordsFor(name, statement, this.#in.model.tree.text, this.#in.show);
+    this.#words.set(statement, words);
+    return words;
+  }
+
+  #anchor(node: number, x: number, y: number): SceneAnchor {
+    return { x: round(x), y: round(y), sways: this.#sways[node] };
+  }
+
+  #between({ ends, grounded, keyword }: GraphLink): string {
+    const names = ends.map(({ node, at, isPoint }) => {
+      const { name } = this.#in.graph.nodes[node];
+      return isPoint ? at : at === "" ? name : `${name}.${at}`;
+    });
+    const all = [...new Set(names), ...(grounded ? ["ground"] : [])];
+    if (all.length === 1) return `${keyword === "motion" ? "of" : "on"} ${all[0]}`;
+    return `between ${all.join(" and ")}`;
+  }
+
+  /** How the coordinates of a node move it in the picture. */
+  #swaysOf(index: number): Sway[] {
+    const { name, keyword } = this.#in.graph.nodes[index];
+    const box = this.#in.layout.nodes.find(({ node }) => node === this.#in.graph.nodes[index]);
+    const coordinates = this.#in.assembly?.coordinates ?? [];
+    if (box === undefined) return [];
+    const middle = { aboutX: round(box.x + box.width / 2), aboutY: round(box.y + box.height / 2) };
+    const pivot = { aboutX: round(box.x + 30), aboutY: round(box.y + 4) };
+    return coordinates.flatMap((each, coordinate) => {
+      if (each.owner !== name) return [];
+      const direction = each.name.slice(name.length + 1);
+      const turning = each.motion === "turning" ? "turn" : "";
+      const [dx, dy, turn] =
+        DIRECTIONS[direction] ?? (turning ? [0, 0, 1] : each.motion === "charge" ? [1, 0, 0] : [0, -1, 0]);
+      return [{ coordinate, dx, dy, turn, ...(keyword === "pendulum" ? pivot : middle) }];
+    });
+  }
+}
+
+/** Directions of a body as seen from the side, x to the right, z up, y to the back. */
+const DIRECTIONS: Readonly<Record<string, readonly [number, number, number]>> = {
+  x: [1, 0, 0],
+  y: [0.5, -0.35, 0],
+  z: [0, -1, 0],
+  rx: [0, 0, 0.4],
+  ry: [0, 0, 1],
+  rz: [0.3, 0, 0],
+};
+
+function saying(
+  { keyword, name }: { keyword: string; name: string },
+  { values }: Words,
+  where: string,
+): string {
+  return [`${keyword} ${name}`, ...values, ...(where === "" ? [] : [where])].join(", ");
+}
+
+function describe({ title }: Model, { nodes, links }: SystemGraph): string {
+  const counts = new Map<string, number>();
+  for (const { keyword } of [...nodes, ...links.filter((link) => link.keyword !== "pendulum")]) {
+    counts.set(keyword, (counts.get(keyword) ?? 0) + 1);
+  }
+  const list = [...counts].map(([keyword, count]) => `${count} × ${keyword}`).join(", ");
+  return `${title === undefined ? "The system" : title}: ${list === "" ? "nothing to draw" : list}.`;
+}

@@ -1,0 +1,149 @@
+/** The words of a drawing: what stands beside a symbol and how much room is kept for it. */
+import type { DetailNode, Item, StatementNode } from "../syntax/tree.ts";
+
+/** Ready text for a detail of a statement in the chosen units; undefined: as it is written. */
+export type ShowValue = (statement: StatementNode, key: string) => string | undefined;
+
+export interface Words {
+  readonly name: string;
+  readonly values: readonly string[];
+}
+
+/** Room for text, in pixels. It depends on names and on which details there are, never on numbers. */
+export interface WordRoom {
+  readonly width: number;
+  readonly lines: number;
+}
+
+export const NAME_SIZE = 12;
+export const VALUE_SIZE = 11;
+export const LINE_HEIGHT = 14;
+/** Widths of an average letter of a sans-serif face at these sizes, rounded up. */
+const NAME_LETTER = 7.2;
+const VALUE_LETTER = 6.4;
+const MOST_NAME_LETTERS = 24;
+/** Four digits, an exponent and a unit such as `kg*m^2`. */
+const VALUE_LETTERS = 16;
+
+/** Keys worth a line, the first two that are there. */
+const SHOWN_KEYS: Readonly<Record<string, readonly string[]>> = {
+  mass: ["mass"],
+  inertia: ["inertia"],
+  body: ["mass"],
+  pendulum: ["mass", "length"],
+  spring: ["stiffness", "damping_ratio", "loss_factor", "cubic"],
+  damper: ["damping"],
+  inerter: ["inertance"],
+  stop: ["stiffness", "gap"],
+  cord: ["stiffness", "slack"],
+  friction: ["force"],
+  mount: ["stiffness", "damping"],
+  inductor: ["inductance"],
+  resistor: ["resistance"],
+  capacitor: ["capacitance"],
+  mutual: ["inductance"],
+  transducer: ["factor"],
+  feed: ["stiffness", "damping", "inertance"],
+};
+
+/** What a number means that does not say it by its unit. */
+const PREFIXES: Readonly<Record<string, string>> = {
+  damping_ratio: "ζ ",
+  loss_factor: "η ",
+  cubic: "cubic ",
+  gap: "gap ",
+  slack: "slack ",
+  density: "density ",
+};
+
+const DRIVE_KEYS = [
+  "unbalance",
+  "amplitude",
+  "peak",
+  "step",
+  "impulse",
+  "law",
+  "chirp",
+  "record",
+  "density",
+  "frequency",
+  "speed",
+  "duration",
+];
+const DRIVES: ReadonlySet<string> = new Set(["force", "torque", "voltage", "motion"]);
+const MOST_VALUES = 2;
+
+/** Keys of the details that are shown beside a symbol. */
+export function shownKeys(statement: StatementNode): readonly string[] {
+  const keyword = statement.keyword.text;
+  if (keyword === "bind") return ["bind"];
+  if (keyword === "part") return ["kit"];
+  const keys = SHOWN_KEYS[keyword] ?? (DRIVES.has(keyword) ? DRIVE_KEYS : []);
+  const [principal] = keys;
+  const isThere = (key: string): boolean =>
+    statement.details.some((detail) => detail.key.text === key) ||
+    (key === principal && !DRIVES.has(keyword) && statement.value !== undefined);
+  return keys.filter(isThere).slice(0, MOST_VALUES);
+}
+
+export function roomFor(name: string, statement: StatementNode): WordRoom {
+  const values = shownKeys(statement).length;
+  const nameWidth = Math.min([...name].length, MOST_NAME_LETTERS) * NAME_LETTER;
+  return {
+    width: Math.max(nameWidth, values > 0 ? VALUE_LETTERS * VALUE_LETTER : 0),
+    lines: 1 + values,
+  };
+}
+
+/** Room that a bare name takes. */
+export const nameWidth = (name: string): number =>
+  [...shortened(name, MOST_NAME_LETTERS)].length * NAME_LETTER;
+
+export function wordsFor(name: string, statement: StatementNode, text: string, show: ShowValue): Words {
+  return {
+    name: shortened(name, MOST_NAME_LETTERS),
+    values: shownKeys(statement).map((key) =>
+      shortened(
+        (PREFIXES[key] ?? "") + (show(statement, key) ?? writtenValue(statement, key, text)),
+        VALUE_LETTERS,
+      ),
+    ),
+  };
+}
+
+/** What stands in the text behind a key, on one line; its tolerance left out. */
+export function writtenValue(statement: StatementNode, key: string, text: string): string {
+  const slice = ({ start, end }: { start: number; end: number }): string =>
+    text.slice(start, end).replace(/\s+/g, " ").trim();
+  if (key === "kit") {
+    const kit = statement.slots.kit;
+    return kit === undefined ? "" : slice(kit.span);
+  }
+  const detail = statement.details.find((each: DetailNode) => each.key.text === key);
+  const items = detail === undefined ? (statement.value ?? []) : detail.items;
+  if (items.length > 0) {
+    const count = countText(statement, slice);
+    const shown = items.map((item) => slice(spanOf(item))).join(", ");
+    const prefix = detail === undefined && count !== "" ? `${count} × ` : "";
+    if (key === "bind") return `= ${shown}`;
+    return detail?.component === undefined ? prefix + shown : `${detail.component.text} ${shown}`;
+  }
+  return detail?.table === undefined ? "" : `${detail.table.length} rows`;
+}
+
+function countText(
+  statement: StatementNode,
+  slice: (span: { start: number; end: number }) => string,
+): string {
+  const count = statement.details.find(({ key }) => key.text === "count");
+  return count === undefined ? "" : count.items.map((item) => slice(spanOf(item))).join("");
+}
+
+/** A number without its tolerance and range; anything else whole. */
+const spanOf = (item: Item): { start: number; end: number } =>
+  item.kind === "value" ? item.expression.span : item.span;
+
+export function shortened(text: string, most: number): string {
+  const letters = [...text];
+  return letters.length <= most ? text : `${letters.slice(0, most - 1).join("")}…`;
+}
