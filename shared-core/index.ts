@@ -83,8 +83,9 @@ export {
   type TokenType,
 } from "./features/tokens.ts";
 
-// Texts to start a new model from.
+// Texts to start a new model from, and rows copied from a table as statements.
 export { NEW_MODELS, type NewModelKind, newModel } from "./features/new-model.ts";
+export { type Rows, rowsToStatements } from "./features/rows.ts";
 
 // A report in a few lines, and a number put back into the text.
 export { stateText, summaryOf } from "./features/summary.ts";
