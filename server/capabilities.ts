@@ -23,7 +23,7 @@ export function capabilitiesFor({ capabilities, pullsDiagnostics }: Client): Ser
     documentSymbolProvider: true,
     workspaceSymbolProvider: true,
     codeActionProvider: {
-      codeActionKinds: [CodeActionKind.QuickFix, CodeActionKind.Refactor, CodeActionKind.SourceFixAll],
+      codeActionKinds: [CodeActionKind.QuickFix, CodeActionKind.Refactor, CodeActionKind.Source],
       resolveProvider: false,
     },
     codeLensProvider: { resolveProvider: true },

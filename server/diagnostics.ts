@@ -12,7 +12,7 @@ import {
 } from "vscode-languageserver";
 import type { FileContent } from "../shared-core/index.ts";
 import type { ClosedFile } from "./closed.ts";
-import { toDiagnostic } from "./convert.ts";
+import { type DiagnosticContext, toDiagnostic } from "./convert.ts";
 import { otherFile, type Serving, sessionOf } from "./serving.ts";
 import type { Session } from "./session.ts";
 import { keyOf } from "./uris.ts";
@@ -23,6 +23,23 @@ export const IDENTIFIER = "thrum";
 const REFRESH_EVERY = 50;
 /** While nothing changes, a pull of the whole workspace is answered after so long, in ms. */
 const WORKSPACE_EVERY = 2000;
+
+/** How diagnostics of a model are told to this client. */
+export function diagnosticContext(serving: Serving, session: Session): DiagnosticContext {
+  const { client, docs, schedule } = serving;
+  const { publishDiagnostics: push, diagnostic: pull } = client.capabilities.textDocument ?? {};
+  const can = client.pullsDiagnostics ? { ...push, ...pull } : push;
+  return {
+    uri: session.uri,
+    lines: schedule.current(session).lines,
+    docs,
+    other: (file) => otherFile(serving, session, file),
+    related: can?.relatedInformation === true,
+    tags: can?.tagSupport !== undefined,
+    descriptions: can?.codeDescriptionSupport === true,
+    data: can?.dataSupport === true,
+  };
+}
 
 export class Diagnostics {
   readonly #serving: Serving;
@@ -72,20 +89,7 @@ export class Diagnostics {
   }
 
   #itemsOf(session: Session): Diagnostic[] {
-    const { client, docs, schedule } = this.#serving;
-    const { publishDiagnostics: push, diagnostic: pull } = client.capabilities.textDocument ?? {};
-    const can = client.pullsDiagnostics ? { ...push, ...pull } : push;
-    const { lines } = schedule.current(session);
-    const context = {
-      uri: session.uri,
-      lines,
-      docs,
-      other: (file: string) => otherFile(this.#serving, session, file),
-      related: can?.relatedInformation === true,
-      tags: can?.tagSupport !== undefined,
-      descriptions: can?.codeDescriptionSupport === true,
-      data: can?.dataSupport === true,
-    };
+    const context = diagnosticContext(this.#serving, session);
     return session.diagnostics().map((diagnostic) => toDiagnostic(diagnostic, context));
   }
 

@@ -2,16 +2,22 @@
 import {
   answerFiles,
   type CodeLens,
+  codeActions,
+  type Diagnostic,
   type Hover,
   hover,
   type InlayHint,
   type InlayKind,
   inlayHints,
+  type OfferedAction,
   type ResolvedLens,
   resolveLens,
   type Span,
   type View,
 } from "../shared-core/index.ts";
+
+/** A code action; `cures` is the index of its diagnostic. */
+export type Action = Omit<OfferedAction, "diagnostic"> & { readonly cures?: number };
 
 /** The text of a file, or why there is none. */
 export type CsvAnswer = { readonly text: string } | { readonly refused: string };
@@ -45,6 +51,18 @@ export const NUMERIC = {
 
   resolveLens: ({ whole }: Views, lens: CodeLens): ResolvedLens => resolveLens(whole, lens),
 
+  codeActions(
+    { whole }: Views,
+    range: Span,
+    said: readonly Diagnostic[],
+    only: readonly string[] | undefined,
+  ): readonly Action[] {
+    const actions = codeActions(whole, range, said).filter(({ kind }) => isWanted(kind, only));
+    return actions.map(({ diagnostic, ...action }) =>
+      diagnostic === undefined ? action : { ...action, cures: said.indexOf(diagnostic) },
+    );
+  },
+
   csv({ whole }: Views, ask: string, caseName: string | undefined): CsvAnswer {
     const { report, units, model } = whole;
     const first = model.cases[0].name;
@@ -69,3 +87,8 @@ function speaksOfAnswers({ model }: View, offset: number): boolean {
   const at = model.tree.statements.find(({ span }) => span.start <= offset && offset <= span.end);
   return at !== undefined && ["ask", "expect", "case"].includes(at.keyword.text);
 }
+
+/** A client that wants `refactor` wants `refactor.extract` too. */
+const isWanted = (kind: string, only: readonly string[] | undefined): boolean =>
+  only === undefined ||
+  only.some((wanted) => wanted === "" || kind === wanted || kind.startsWith(`${wanted}.`));

@@ -1,4 +1,5 @@
 import type { Serving } from "../serving.ts";
+import { registerCodeActions } from "./code-actions.ts";
 import { registerCodeLens } from "./code-lens.ts";
 import { registerCompletion } from "./completion.ts";
 import { registerFileMoves } from "./file-moves.ts";
@@ -20,6 +21,7 @@ export function registerFeatures(serving: Serving): void {
 const FEATURES: readonly ((serving: Serving) => void)[] = [
   registerHover,
   registerInlayHints,
+  registerCodeActions,
   registerCodeLens,
   registerCompletion,
   registerNavigation,
