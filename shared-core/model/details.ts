@@ -52,7 +52,8 @@ function ownDetails({ node, description }: Described, draft: Draft): GivenDetail
   let sound = !node.broken;
   const { principal } = description;
   const inHead = principal === undefined ? undefined : detailOf(description, principal);
-  if (inHead !== undefined && node.value !== undefined && node.value.length > 0) {
+  // A head that could not be read to its end holds part of a value, and that has been said.
+  if (inHead !== undefined && node.value !== undefined && node.value.length > 0 && !node.broken) {
     const span = cover(node.value[0].span, node.value[node.value.length - 1].span);
     details.set(inHead.key, { key: inHead.key, description: inHead, items: node.value, span });
   }
@@ -143,7 +144,8 @@ export function hasRequired(statement: Described, given: GivenDetails, draft: Dr
   let complete = true;
   for (const detail of description.details) {
     const broken = node.details.some((each) => each.key.text === detail.key);
-    if (!detail.required || detail.notYet || given.details.has(detail.key) || broken) continue;
+    const lost = node.broken && detail.key === description.principal;
+    if (!detail.required || detail.notYet || given.details.has(detail.key) || broken || lost) continue;
     complete = false;
     sayMissing(statement, detail, draft.findings);
   }
