@@ -10,7 +10,7 @@ import type { Kernel } from "./kernel.ts";
 import { implicitQl, rotateRows, sortAscending } from "./tridiagonal-ql.ts";
 
 /** Blocks of up to this many rows go to implicit QL; chosen by trial. */
-const LEAF = 32;
+const LEAF = 24;
 
 /** Which half a row has its non-zeros in. */
 const UPPER = 0;

@@ -1,5 +1,5 @@
 /**
- * The dense inner loops on WebAssembly SIMD, about four times as fast as the plain ones from n ≈ 64 on.
+ * The dense inner loops on WebAssembly SIMD, about four times as fast as the plain ones from n ≈ 32 on.
  *
  * Arrays are copied into the module's memory and back, which costs n² against n³ of work. Results agree with
  * the plain kernel to rounding: sums run in another order.

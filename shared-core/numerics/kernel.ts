@@ -99,7 +99,7 @@ export function bestKernel(): Kernel {
 }
 
 /** Size from which the kernel's set-up and copying pay; found by trial. */
-const KERNEL_SIZE = 48;
+const KERNEL_SIZE = 32;
 
 /** The kernel for a problem of order n. */
 export function kernelFor(n: number): Kernel {

@@ -12,7 +12,7 @@ import { columnsFromRows, type SymmetricEigen, unitScale } from "./symmetric-eig
 import { implicitQl, sortAscending } from "./tridiagonal-ql.ts";
 
 /** Up to here QL with vectors is quicker; found by trial. */
-const QL_SIZE = 32;
+const QL_SIZE = 24;
 
 /**
  * `diagonal` has n entries; entry i of `offDiagonal` (n−1) couples i and i+1. Both are kept. Values ascending,

@@ -3,7 +3,7 @@
  *
  * Method: implicit QL with Wilkinson's shift (Bowdler, Martin, Reinsch & Wilkinson, Numerische Mathematik 11,
  * 1968), deflation where |e|² ≤ ε²|dᵢ||dᵢ₊₁| and each unreduced block turned so that its smaller end comes
- * first, as LAPACK's dsteqr does: a graded matrix then keeps the relative accuracy of its small values.
+ * first, as LAPACK's dsteqr does: a graded matrix then usually keeps the relative accuracy of its small values.
  */
 
 /** Sweeps allowed for each eigenvalue, on average; LAPACK's figure. */

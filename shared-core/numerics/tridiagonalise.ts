@@ -4,7 +4,7 @@
  * Method: reflections from the last row upwards (Wilkinson & Reinsch, Handbook for Automatic Computation II/2),
  * with the rank-two update of one step and the product with the next reflection's vector done in one pass over
  * the lower triangle, so that the matrix is read once a step. Backward error of order n·ε‖A‖; with the entries
- * graded small to large downwards the small eigenvalues keep their relative accuracy.
+ * steadily graded small to large downwards the small eigenvalues usually keep their relative accuracy.
  */
 
 /** Qᵀ-bearing result: A = Q T Qᵀ with Q = H(n−1) … H(2) H(1). */

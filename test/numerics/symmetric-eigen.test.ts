@@ -56,7 +56,7 @@ function checkDecomposition(a: Float64Array, n: number, factor = 4) {
   return { values, vectors };
 }
 
-const SIZES = [1, 2, 3, 4, 10, 33, 50, 51, 64, 100, 161];
+const SIZES = [1, 2, 3, 4, 10, 24, 28, 29, 33, 51, 64, 100, 161];
 
 describe("symmetric eigenproblem", () => {
   it.each(SIZES)("decomposes a seeded random matrix of %i", (n) => {
@@ -94,7 +94,7 @@ describe("symmetric eigenproblem", () => {
     }
   });
 
-  it.each([6, 20, 48])("keeps small roots of a graded matrix of %i to relative accuracy", (n) => {
+  it.each([6, 10, 13, 20, 27])("keeps small roots of a graded matrix of %i to relative accuracy", (n) => {
     // D B D with B well conditioned and D graded over six decades: the roots are determined to a few n·ε
     // relatively (Demmel & Veselić, 1992). The oracle inverts: the smallest root of A is the largest of A⁻¹
     // = D⁻¹ B⁻¹ D⁻¹, whose own large roots any backward stable method gets to relative accuracy.
