@@ -1,4 +1,5 @@
 import * as vscode from "vscode";
+import { STATE, type StateParams } from "../../shared-core/index.ts";
 import { registerCommands } from "./commands.ts";
 import type { Connection } from "./connection.ts";
 import { keepRunning } from "./keep-running.ts";
@@ -19,12 +20,16 @@ export function start(context: vscode.ExtensionContext, host: Start): void {
   const connection = host.createConnection(output);
   const { client } = connection;
   const supervisor = keepRunning(client, output);
+  // A client keeps one listener a method, and several parts want to hear of the numbers.
+  const states = new vscode.EventEmitter<StateParams>();
+  client.onNotification(STATE, (state: StateParams) => states.fire(state));
   answerFileRequests(client);
   context.subscriptions.push(
     output,
     connection,
-    registerStatus(client),
-    registerTests(client),
+    states,
+    registerStatus(client, states.event),
+    registerTests(client, states.event),
     registerRowPaste(client),
     ...registerCommands(client, supervisor, output),
   );

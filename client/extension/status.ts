@@ -1,17 +1,20 @@
 import * as vscode from "vscode";
 import { type BaseLanguageClient, State } from "vscode-languageclient";
-import { STATE, type StateParams } from "../../shared-core/index.ts";
+import type { StateParams } from "../../shared-core/index.ts";
 import { SELECTOR } from "./connection.ts";
 
 /**
  * What the status bar says of the model in front: its verdict in plain sight, the state of the numbers and the
  * units they are shown in with the language.
  */
-export function registerStatus(client: BaseLanguageClient): vscode.Disposable {
+export function registerStatus(
+  client: BaseLanguageClient,
+  onState: vscode.Event<StateParams>,
+): vscode.Disposable {
   const bar = new StatusBar(client);
   return vscode.Disposable.from(
     bar,
-    client.onNotification(STATE, (state: StateParams) => bar.hear(state)),
+    onState((state) => bar.hear(state)),
     client.onDidChangeState(({ newState }) => bar.serverIs(newState)),
     vscode.workspace.onDidCloseTextDocument(({ uri }) => bar.forget(uri)),
     vscode.window.onDidChangeActiveTextEditor(() => bar.show()),

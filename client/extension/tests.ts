@@ -3,7 +3,6 @@ import { type BaseLanguageClient, State } from "vscode-languageclient";
 import {
   type CaseVerdict,
   type ExpectationSummary,
-  STATE,
   type StateParams,
   SUMMARY,
   type Summary,
@@ -13,7 +12,10 @@ import {
  * Every expectation as a test: file, expectation, and case where there are cases. Ids are made of names, so they
  * stay the same while lines move; the tree follows each edit.
  */
-export function registerTests(client: BaseLanguageClient): vscode.Disposable {
+export function registerTests(
+  client: BaseLanguageClient,
+  onState: vscode.Event<StateParams>,
+): vscode.Disposable {
   const controller = vscode.tests.createTestController("thrum", "Thrum");
   const tree = new TestTree(controller, client);
   const watcher = vscode.workspace.createFileSystemWatcher("**/*.thrum");
@@ -38,7 +40,7 @@ export function registerTests(client: BaseLanguageClient): vscode.Disposable {
     vscode.workspace.onDidOpenTextDocument((document) => {
       if (document.languageId === "thrum" && document.uri.scheme === "file") tree.file(document.uri);
     }),
-    client.onNotification(STATE, (state: StateParams) => {
+    onState((state) => {
       if (state.state === "ready") void tree.changed(vscode.Uri.parse(state.uri).toString());
     }),
   );
