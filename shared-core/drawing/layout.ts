@@ -318,8 +318,7 @@ class BlockLayout {
     }
     const nodes = new Map<Cell, PlacedNode>();
     for (const cell of this.#all()) {
-      if (cell.is === "node")
-        nodes.set(cell, this.#placedNode(cell, bottoms[cell.row] - heights[cell.row] / 2));
+      if (cell.is === "node") nodes.set(cell, this.#placedNode(cell, bottoms[cell.row], heights[cell.row]));
     }
     const links = this.#all()
       .filter(({ is }) => is === "link")
@@ -354,13 +353,13 @@ class BlockLayout {
     return { below: bottom ? 14 : zone(aside.below), above: top ? 4 : zone(aside.above) };
   }
 
-  #placedNode(cell: Cell, middle: number): PlacedNode {
+  /** All of a row are equally high, so that no lead has to pass the corner of a neighbour. */
+  #placedNode(cell: Cell, bottom: number, height: number): PlacedNode {
     const node = this.#graph.nodes[cell.index];
     const { left, right } = this.#extent(cell);
-    const height = nodeHeight(node, this.#room(cell));
     const at = this.#at(cell);
     const width = node.keyword === "junction" ? 14 : left + right;
-    return { node, room: this.#room(cell), x: at - left, y: middle - height / 2, width, height };
+    return { node, room: this.#room(cell), x: at - left, y: bottom - height, width, height };
   }
 
   #placedLink(cell: Cell, y: number, groundY: number, nodes: ReadonlyMap<Cell, PlacedNode>): PlacedLink {
@@ -376,7 +375,7 @@ class BlockLayout {
       const edge = side === "above" ? box.y : box.y + box.height;
       return {
         x,
-        y: box.node.keyword === "junction" ? box.y + box.height / 2 : edge,
+        y: edge,
         node: end.node,
         side,
         point: end.isPoint ? end.at : "",

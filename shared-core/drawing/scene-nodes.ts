@@ -10,6 +10,8 @@ export interface NodeFrame {
   readonly says: string;
   /** Moves with it. */
   readonly anchor: SceneAnchor;
+  /** Sides on which something meets it. */
+  readonly sides: ReadonlySet<Port["side"]>;
   /** Ports at points of a body. */
   readonly pointPorts: readonly Port[];
 }
@@ -51,7 +53,11 @@ function partsOf(frame: NodeFrame): ScenePart[] {
         ),
       ];
     case "junction":
-      return [part(circle(midX, midY, 3.5), "solid")];
+      return [
+        ...(frame.sides.has("above") ? [part(`M${round(midX)},${round(y)}V${round(midY)}`)] : []),
+        ...(frame.sides.has("below") ? [part(`M${round(midX)},${round(midY)}V${round(y + height)}`)] : []),
+        part(circle(midX, midY, 3.5), "solid"),
+      ];
     case "body":
       return [part(rectangle(x, y, width, height, 3), "body"), ...centreMark(x + 15, midY, part)];
     case "pendulum":

@@ -63,7 +63,9 @@ class Painter {
       const anchor = this.#anchor(index, x + width / 2, y + height / 2);
       const words = this.#wordsOf(node);
       const pointPorts = pointPortsOf(layout, index);
-      return nodeItem({ placed, words, anchor, pointPorts, says: saying(node, words, "") });
+      const own = layout.links.flatMap(({ ports }) => ports).filter((port) => port.node === index);
+      const sides = new Set(own.map(({ side }) => side));
+      return nodeItem({ placed, words, anchor, sides, pointPorts, says: saying(node, words, "") });
     });
     const links = layout.links.map((placed) => {
       const { link, ports } = placed;

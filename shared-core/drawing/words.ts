@@ -104,7 +104,7 @@ export function wordsFor(name: string, statement: StatementNode, text: string, s
     name: shortened(name, MOST_NAME_LETTERS),
     values: shownKeys(statement).map((key) =>
       shortened(
-        (PREFIXES[key] ?? "") + (show(statement, key) ?? writtenValue(statement, key, text)),
+        prefixOf(statement, key, text) + (show(statement, key) ?? writtenValue(statement, key, text)),
         VALUE_LETTERS,
       ),
     ),
@@ -122,21 +122,19 @@ export function writtenValue(statement: StatementNode, key: string, text: string
   const detail = statement.details.find((each: DetailNode) => each.key.text === key);
   const items = detail === undefined ? (statement.value ?? []) : detail.items;
   if (items.length > 0) {
-    const count = countText(statement, slice);
     const shown = items.map((item) => slice(spanOf(item))).join(", ");
-    const prefix = detail === undefined && count !== "" ? `${count} × ` : "";
     if (key === "bind") return `= ${shown}`;
-    return detail?.component === undefined ? prefix + shown : `${detail.component.text} ${shown}`;
+    return detail?.component === undefined ? shown : `${detail.component.text} ${shown}`;
   }
   return detail?.table === undefined ? "" : `${detail.table.length} rows`;
 }
 
-function countText(
-  statement: StatementNode,
-  slice: (span: { start: number; end: number }) => string,
-): string {
-  const count = statement.details.find(({ key }) => key.text === "count");
-  return count === undefined ? "" : count.items.map((item) => slice(spanOf(item))).join("");
+/** `4 × ` before the principal number of several in parallel, or what the number means. */
+function prefixOf(statement: StatementNode, key: string, text: string): string {
+  const isPrincipal = SHOWN_KEYS[statement.keyword.text]?.[0] === key;
+  const count = isPrincipal ? writtenValue(statement, "count", text) : "";
+  const hasCount = statement.details.some((detail) => detail.key.text === "count");
+  return (hasCount && count !== "" ? `${count} × ` : "") + (PREFIXES[key] ?? "");
 }
 
 /** A number without its tolerance and range; anything else whole. */

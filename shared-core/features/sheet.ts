@@ -2,7 +2,7 @@ import type { Ruler } from "../drawing/ruler.ts";
 import type { Scene } from "../drawing/scene.ts";
 import type { Range } from "../text/span.ts";
 import type { UnitSystem } from "../units/show.ts";
-import type { CurvePanel, Figure } from "../writing/figure/figure.ts";
+import type { CurvePanel } from "../writing/figure/figure.ts";
 
 /**
  * Everything that the response sheet shows of one file and one case, in the order in which it is read. Numbers
@@ -95,8 +95,6 @@ export interface PlotCard extends CardBase {
   readonly panels: readonly CurvePanel[];
   /** Sweeps: degrees, -180 to 180, and continued over the jumps. */
   readonly phase?: { readonly wrapped: CurvePanel; readonly unwrapped: CurvePanel };
-  /** Whole card as one figure, for copies and prints. */
-  readonly figure: Figure;
   /** `unit.velocity peaks at 12.1 mm/s at 4.1 Hz`, one a quantity. */
   readonly peaks: readonly string[];
   /** A readable selection of rows; CSV has them all. */

@@ -103,18 +103,28 @@ export type FromSheet =
       readonly data: string;
     };
 
-/** Float64 rows as base64, everything else as JSON; what is not finite in plain numbers becomes null. */
+/**
+ * Float64 rows as base64, each once however often it stands in the content; everything else as JSON. What is not
+ * finite in plain numbers becomes null.
+ */
 export function packContent(content: SheetContent): PackedContent {
-  return JSON.stringify(content, (_, value: unknown) =>
-    value instanceof Float64Array ? { [PACKED]: toBase64(value) } : value,
-  );
+  const rows = new Map<Float64Array, number>();
+  const body = JSON.stringify(content, (_, value: unknown) => {
+    if (!(value instanceof Float64Array)) return value;
+    const known = rows.get(value) ?? rows.size;
+    rows.set(value, known);
+    return { [PACKED]: known };
+  });
+  return JSON.stringify({ body, rows: [...rows.keys()].map(toBase64) });
 }
 
 /** The content again; throws on text that `packContent` did not make. */
 export function unpackContent(packed: PackedContent): SheetContent {
-  return JSON.parse(packed, (_, value: unknown) =>
+  const { body, rows } = JSON.parse(packed) as { readonly body: string; readonly rows: readonly string[] };
+  const unpacked = rows.map(fromBase64);
+  return JSON.parse(body, (_, value: unknown) =>
     typeof value === "object" && value !== null && PACKED in value
-      ? fromBase64(String(value[PACKED as keyof typeof value]))
+      ? unpacked[value[PACKED as keyof typeof value]]
       : value,
   ) as SheetContent;
 }

@@ -1,0 +1,219 @@
+/** The frequency ruler of one case. */
+import { isSteady } from "../answers/drive-phasor.ts";
+import { excitesMode, separationFrom } from "../judgement/drives.ts";
+import type { CaseReport, Verdict } from "../judgement/report.ts";
+import { elasticModes } from "../judgement/shapes.ts";
+import { formatNumber } from "../units/show.ts";
+import type { Ruler, RulerDrive, RulerLimit, RulerMode } from "./ruler.ts";
+
+/** Modes shown whether or not anything comes near them. */
+const ALWAYS = 6;
+/** Higher modes are shown up to this multiple of the highest drive or limit. */
+const REACH = 3;
+/** Room at both ends, and the least length of the axis, as frequency ratios. */
+const ROOM = 1.3;
+const SHORTEST = 4;
+
+/** null: there is no elastic mode and no steady drive. */
+export function rulerOf(report: CaseReport): Ruler | null {
+  const drives = steadyDrives(report);
+  const limits = frequencyLimits(report.verdicts);
+  const modes = shownModes(report, [...drives.map(({ toHz }) => toHz), ...limits.map(({ hz }) => hz)]);
+  const all = [
+    ...modes.map(({ hz }) => hz),
+    ...drives.flatMap(({ fromHz, toHz }) => [fromHz, toHz]),
+    ...limits.map(({ hz }) => hz),
+  ].filter((hz) => hz > 0 && Number.isFinite(hz));
+  if (all.length === 0) return null;
+  const { fromHz, toHz } = ends(all);
+  const at = (hz: number): number =>
+    hz > 0 ? Math.max(0, Math.min(1, Math.log(hz / fromHz) / Math.log(toHz / fromHz))) : 0;
+  const band = report.instance.assembly.resonanceBand;
+  return {
+    fromHz,
+    toHz,
+    unit: "Hz",
+    ticks: ticksBetween(fromHz, toHz).map(({ hz, major }) => ({
+      at: at(hz),
+      label: formatNumber(hz),
+      major,
+    })),
+    modes: modes.map((mode) => rulerMode(mode, drives, band, at)),
+    drives: drives.map((drive) => rulerDrive(drive, at)),
+    limits: limits.map(({ hz, ...limit }) => ({ ...limit, at: at(hz) })),
+    separations: separations(modes, drives, limits),
+    description: describe(modes, drives, limits),
+  };
+}
+
+interface ShownMode {
+  readonly number: number;
+  readonly hz: number;
+  readonly damping: number;
+  /** Names of the drives that excite it. */
+  readonly excitedBy: ReadonlySet<string>;
+}
+
+interface ShownDrive {
+  readonly name: string;
+  readonly fromHz: number;
+  readonly toHz: number;
+  readonly order: number;
+}
+
+interface ShownLimit extends Omit<RulerLimit, "at"> {
+  readonly hz: number;
+}
+
+function shownModes(report: CaseReport, others: readonly number[]): ShownMode[] {
+  if (!report.modes.ok) return [];
+  const { table } = report.modes;
+  const { analysis, instance } = report;
+  const highest = REACH * Math.max(0, ...others);
+  return elasticModes(table)
+    .filter(({ number, frequencyHz }) => number <= ALWAYS || frequencyHz <= highest)
+    .map((mode) => {
+      const index = table.modes.indexOf(mode);
+      const exciting = instance.assembly.drives.filter((drive) =>
+        excitesMode(analysis, instance.assembly, drive, index),
+      );
+      return {
+        number: mode.number,
+        hz: mode.frequencyHz,
+        damping: mode.dampingRatio ?? 0,
+        excitedBy: new Set(exciting.map(({ name }) => name)),
+      };
+    });
+}
+
+function steadyDrives({ instance }: CaseReport): ShownDrive[] {
+  return instance.assembly.drives.flatMap((drive) => {
+    const band =
+      drive.bandHz ?? (drive.writtenHz === undefined ? undefined : [drive.writtenHz, drive.writtenHz]);
+    if (band === undefined || !isSteady(drive) || !(Math.min(...band) > 0)) return [];
+    const order = drive.shape.kind === "sine" ? drive.shape.order : 1;
+    return [{ name: drive.name, fromHz: Math.min(...band), toHz: Math.max(...band), order }];
+  });
+}
+
+/** Expectations that compare a frequency of a mode with a number. */
+function frequencyLimits(verdicts: readonly Verdict[]): ShownLimit[] {
+  return verdicts.flatMap(({ name, limit, holds, expectation: { left, operator } }) => {
+    if (left.kind !== "call" || limit === null || !(limit > 0)) return [];
+    const { callee, positional } = left;
+    if (callee.text !== "natural_frequency" && callee.text !== "damped_frequency") return [];
+    const [which] = positional;
+    const side = operator.startsWith("<") ? "below" : "above";
+    return [
+      {
+        id: `limit:${name}`,
+        name,
+        hz: limit,
+        side,
+        mode: which?.kind === "number" ? which.value : null,
+        holds,
+        label: `${side === "below" ? "≤" : "≥"} ${hertz(limit)}`,
+      },
+    ];
+  });
+}
+
+function rulerMode(
+  { number, hz, damping, excitedBy }: ShownMode,
+  drives: readonly ShownDrive[],
+  band: number,
+  at: (hz: number) => number,
+): RulerMode {
+  // Half-power points of the velocity of one oscillator, exact: their distance is twice the damping ratio.
+  const middle = Math.hypot(1, damping);
+  return {
+    id: `mode:${number}`,
+    number,
+    at: at(hz),
+    label: hertz(hz),
+    low: at(hz * (middle - damping)),
+    high: at(hz * (middle + damping)),
+    bandLow: at(hz * (1 - band)),
+    bandHigh: at(hz * (1 + band)),
+    says: `mode ${number}, ${hertz(hz)}, damping ratio ${percent(damping)}`,
+    danger: drives.some(
+      ({ name, fromHz, toHz }) => excitedBy.has(name) && separationFrom([fromHz, toHz], hz) <= band,
+    ),
+  };
+}
+
+function rulerDrive({ name, fromHz, toHz, order }: ShownDrive, at: (hz: number) => number): RulerDrive {
+  const rate = fromHz === toHz ? hertz(fromHz) : `${hertz(fromHz)} to ${hertz(toHz)}`;
+  const label = order === 1 ? name : `${name} (${formatNumber(order)}×)`;
+  return { id: `drive:${name}`, name, from: at(fromHz), to: at(toHz), label, says: `${label}, ${rate}` };
+}
+
+function separations(
+  modes: readonly ShownMode[],
+  drives: readonly ShownDrive[],
+  limits: readonly ShownLimit[],
+): Ruler["separations"] {
+  return modes.flatMap((mode, i) => {
+    const a = `mode:${mode.number}`;
+    const name = `mode ${mode.number}`;
+    const pair = (b: string, what: string, low: number, high: number) => ({
+      a,
+      b,
+      text: apart(what, low, high, name, mode.hz),
+    });
+    return [
+      ...drives.map((drive) => pair(`drive:${drive.name}`, drive.name, drive.fromHz, drive.toHz)),
+      ...limits.map(({ id, name: limit, hz }) => pair(id, limit, hz, hz)),
+      ...modes.slice(i + 1).map(({ number, hz }) => pair(`mode:${number}`, `mode ${number}`, hz, hz)),
+    ];
+  });
+}
+
+/** `imbalance is 12 % above mode 1, ratio 1.12`. */
+function apart(what: string, low: number, high: number, mode: string, hz: number): string {
+  if (low <= hz && hz <= high) return `${what} ${low === high ? "is on" : "runs through"} ${mode}`;
+  const nearest = low > hz ? low : high;
+  const ratio = nearest / hz;
+  return `${what} is ${percent(Math.abs(ratio - 1))} ${ratio > 1 ? "above" : "below"} ${mode}, ratio ${formatNumber(ratio, 3)}`;
+}
+
+function ends(all: readonly number[]): { fromHz: number; toHz: number } {
+  let [fromHz, toHz] = [Math.min(...all) / ROOM, Math.max(...all) * ROOM];
+  if (toHz / fromHz < SHORTEST) {
+    const middle = Math.sqrt(fromHz * toHz);
+    [fromHz, toHz] = [middle / Math.sqrt(SHORTEST), middle * Math.sqrt(SHORTEST)];
+  }
+  return { fromHz, toHz };
+}
+
+/** 1, 2, 5 of every decade are labelled on a long axis, every digit on a short one, decades on a very long one. */
+function ticksBetween(fromHz: number, toHz: number): { hz: number; major: boolean }[] {
+  const decades = Math.log10(toHz / fromHz);
+  const labelled = decades < 1.2 ? [1, 2, 3, 4, 5, 6, 8] : decades < 4 ? [1, 2, 5] : [1];
+  const ticks: { hz: number; major: boolean }[] = [];
+  for (let power = Math.floor(Math.log10(fromHz)); power <= Math.log10(toHz); power++) {
+    for (let digit = 1; digit <= 9; digit++) {
+      const hz = Number(`${digit}e${power}`);
+      if (fromHz <= hz && hz <= toHz) ticks.push({ hz, major: labelled.includes(digit) });
+    }
+  }
+  return ticks;
+}
+
+function describe(
+  modes: readonly ShownMode[],
+  drives: readonly ShownDrive[],
+  limits: readonly ShownLimit[],
+): string {
+  const parts = [
+    ...modes.map(({ number, hz }) => `mode ${number} at ${hertz(hz)}`),
+    ...drives.map(({ name, fromHz, toHz }) =>
+      fromHz === toHz ? `${name} at ${hertz(fromHz)}` : `${name} from ${hertz(fromHz)} to ${hertz(toHz)}`,
+    ),
+    ...limits.map(({ name, label }) => `limit ${name} ${label}`),
+  ];
+  return `${parts.join(", ")}.`;
+}
+
+const hertz = (hz: number): string => `${formatNumber(hz)} Hz`;
+const percent = (share: number): string => `${formatNumber(share * 100, 3)} %`;
