@@ -124,7 +124,7 @@ export function unpackContent(packed: PackedContent): SheetContent {
   const unpacked = rows.map(fromBase64);
   return JSON.parse(body, (_, value: unknown) =>
     typeof value === "object" && value !== null && PACKED in value
-      ? unpacked[value[PACKED as keyof typeof value]]
+      ? unpacked[Number(value[PACKED as keyof typeof value])]
       : value,
   ) as SheetContent;
 }
