@@ -46,6 +46,7 @@ export type { View } from "./features/view.ts";
 export { type CompleteOptions, type Completion, type CompletionKind, complete } from "./features/complete.ts";
 export {
   type CodeAction,
+  type ActionOptions,
   type CodeActionKind,
   codeActions,
   fixAll,

@@ -22,24 +22,35 @@ export interface OfferedAction extends CodeAction {
   readonly preferred?: boolean;
 }
 
+export interface ActionOptions {
+  /** Kinds that are wanted, each with what stands below it (`refactor` takes `refactor.inline`); left out: all. */
+  readonly only?: readonly string[];
+}
+
 /**
  * What can be done at a range: the fixes of the diagnostics that touch it, refactors of what stands there, and what
- * can be done to the whole file. A refused refactor says why in `disabled`.
+ * can be done to the whole file. A refused refactor says why in `disabled`. What is done to the whole file takes
+ * longest: `only: ["quickfix", "refactor"]` leaves it out.
  */
 export function codeActions(
   view: View,
   range: Span,
   diagnostics: readonly Diagnostic[],
+  { only }: ActionOptions = {},
 ): readonly OfferedAction[] {
   const { text } = view.model.tree;
   const touching = diagnostics.filter(({ span: of }) => of.start <= range.end && range.start <= of.end);
-  const all = [
-    ...touching.flatMap((diagnostic) => fixesOf(view, diagnostic)),
-    ...refactors(view, range),
-    ...sourceActions(view, diagnostics),
-  ];
+  const wanted = (kind: string) => !only || only.some((each) => below(kind, each) || below(each, kind));
+  const all: readonly OfferedAction[] = [
+    ...(wanted("quickfix") ? touching.flatMap((diagnostic) => fixesOf(view, diagnostic)) : []),
+    ...(wanted("refactor") ? refactors(view, range) : []),
+    ...(wanted("source") ? sourceActions(view, diagnostics) : []),
+  ].filter(({ kind }) => !only || only.some((each) => below(kind, each)));
   return all.map((action) => ({ ...action, edits: withEndings(text, action.edits) }));
 }
+
+/** Whether a kind is another one or stands below it. */
+const below = (kind: string, other: string): boolean => kind === other || kind.startsWith(`${other}.`);
 
 /** The edits of every safe fix that does not get in another's way. */
 export function fixAll(view: View, diagnostics: readonly Diagnostic[]): readonly TextEdit[] {

@@ -34,7 +34,7 @@ export interface Occurrence {
   readonly inExpression?: boolean;
 }
 
-/** All names of a tree in order of place. `partsOf` tells the kit of a part that is not defined here. */
+/** All names of a tree in order of place. */
 export function occurrences(tree: Tree): readonly Occurrence[] {
   let known = CACHE.get(tree);
   if (known === undefined) {

@@ -97,6 +97,21 @@ describe("fixes", () => {
     expect(new Set(found.map(({ diagnostic }) => diagnostic?.code))).toEqual(new Set(["missing-unit"]));
   });
 
+  it("give the kinds that are asked for, and what stands below them", () => {
+    const { text, offset } = cursorIn("mass  a = 3| kg\nlet b = 3\n");
+    const view = viewOf(text);
+    const kinds = (only?: readonly string[]) => [
+      ...new Set(
+        codeActions(view, { start: offset, end: offset }, said(view), { only }).map(({ kind }) => kind),
+      ),
+    ];
+    expect(kinds(["refactor"])).toEqual(["refactor.extract", "refactor.rewrite"]);
+    expect(kinds(["refactor.extract"])).toEqual(["refactor.extract"]);
+    expect(kinds(["source.tidy"])).toEqual(["source.tidy"]);
+    expect(kinds(["quickfix", "refactor"])).not.toContain("source.tidy");
+    expect(kinds()).toContain("source.sort");
+  });
+
   it("take a number out that nothing uses, comments kept", () => {
     const text = "thrum 1\n> old\nlet a = 3 kg  # of 1998\n\nmass u = 3 kg\n";
     const view = viewOf(text);
