@@ -23,6 +23,7 @@ import { type FileContext, LetTable } from "./lets.ts";
 import { planLimit } from "./limits.ts";
 import type { CaseInfo, Entity, FileReader, Model } from "./model.ts";
 import { collectNames, type Described, describeStatements, nameSpan } from "./names.ts";
+import { withoutConsequences } from "./one-slip.ts";
 import { PARSING } from "./parsing.ts";
 import { planMoving } from "./places.ts";
 import type { Plan, PlannedAsk, PlannedExpression, PlannedLet } from "./plan.ts";
@@ -61,7 +62,7 @@ export function understand(path: string, source: string | Tree, reader: FileRead
     draws: draft.lets.draws,
     cases: cases.map(({ info }) => info),
     expectations,
-    diagnostics: inOrder([...parsed.diagnostics, ...findings.list]),
+    diagnostics: [],
     buildable: draft.buildable,
     accepted: acceptances(tree, findings),
     files: [...files],
@@ -72,7 +73,8 @@ export function understand(path: string, source: string | Tree, reader: FileRead
       uses,
     ),
   };
-  return withNumbersAsWritten({ ...model, diagnostics: inOrder([...parsed.diagnostics, ...findings.list]) });
+  const said = withoutConsequences(tree, statements, parsed.diagnostics, findings.list);
+  return withNumbersAsWritten({ ...model, diagnostics: inOrder([...parsed.diagnostics, ...said]) });
 }
 
 function newDraft(
@@ -155,6 +157,25 @@ function planMechanics(draft: Draft): void {
   }
   for (const statement of statementsOf(draft, "group")) checkGroup(statement, draft);
   for (const statement of familyOf(draft, "drives")) planDrive(statement, draft);
+  sayTooLarge(draft);
+}
+
+/**
+ * Most free coordinates that are computed: a table of all their modes holds their square, 32 MB of numbers here,
+ * and dense damped modes take the cube. Text, names and units are checked for files of any size.
+ */
+const MOST_COORDINATES = 2000;
+
+function sayTooLarge(draft: Draft): void {
+  const free = draft.coordinates.length - draft.binds.length;
+  if (free <= MOST_COORDINATES) return;
+  const moving = familyOf(draft, "moves").filter(({ node }) => node.keyword.text !== "bind");
+  const at = moving[Math.min(MOST_COORDINATES, moving.length - 1)].node;
+  const message = `the model has ${free} free coordinates, at most ${MOST_COORDINATES} are computed`;
+  draft.findings.say("too-large", nameSpan(at), message, {
+    hint: "split it into files, or lump what moves together; the text is checked all the same",
+  });
+  spoil(draft, undefined);
 }
 
 const familyOf = (draft: Draft, family: string): Described[] =>
