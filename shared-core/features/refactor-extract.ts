@@ -1,9 +1,10 @@
-import type { Expression, NumberNode, StatementNode } from "../syntax/tree.ts";
+import type { DetailNode, Expression, Item, NumberNode, StatementNode, Tree } from "../syntax/tree.ts";
 import { type Span, span, type TextEdit } from "../text/span.ts";
 import { isFault } from "../units/fault.ts";
 import { knownKind } from "../units/known-kinds.ts";
 import { isNumber } from "../units/quantity.ts";
 import { unitOf } from "../units/unit-of.ts";
+import { describe, detailOf } from "../vocabulary/registry.ts";
 import { childrenOf, type ExpressionPlace, expressionAt, slice } from "./navigate-nodes.ts";
 import { type CodeAction, freeName, linesBefore, linesBehind, nameOf, refused } from "./refactor-edits.ts";
 import type { View } from "./view.ts";
@@ -33,6 +34,12 @@ function whyNot(
   const outer = chain[chain.length - 2];
   if (outer?.kind === "tuple" && outer.unit && !literal.unit)
     return "its unit stands behind the parenthesis, for all of them";
+  if (outer?.kind === "binary" && outer.operator === "^" && outer.right === literal) {
+    return "the unit of the result depends on an exponent, so it is a plain number";
+  }
+  if (isShareOf(item, literal))
+    return "a tolerance in % is a share of its value; by a name it could be read as a number beside it";
+  if (detail && !takesNumbers(statement, detail)) return `\`${detail.key.text}\` takes no name`;
   const whole = item?.kind === "value" && item.expression === literal;
   if (whole && statement.keyword.text === "let" && !detail) return "whole";
   if (literal.value === 0 && !literal.unit) return "the number 0 fits any dimension, a name would fit one";
@@ -40,6 +47,30 @@ function whyNot(
     return "it makes the angular rate of 2 * pi * rate, which a name would not";
   return undefined;
 }
+
+function isShareOf(item: Item | undefined, literal: NumberNode): boolean {
+  const value = item?.kind === "at" ? item.value : item;
+  const isShare = literal.unit?.text === "%" || literal.unit?.text === "ppm";
+  return value?.kind === "value" && value.tolerance?.amount === literal && isShare;
+}
+
+/** Whether a detail holds expressions, rather than words or numbers that must stand as such. */
+function takesNumbers({ keyword, slots }: StatementNode, { key }: DetailNode): boolean {
+  if (keyword.text === "case") return true;
+  const description = describe(keyword.text, slots.kind?.kind === "name" ? slots.kind.text : undefined);
+  const is = description && detailOf(description, key.text)?.content.is;
+  return is !== undefined && NUMERIC.has(is);
+}
+
+const NUMERIC: ReadonlySet<string> = new Set([
+  "quantity",
+  "at",
+  "law",
+  "tuple",
+  "range",
+  "expressions",
+  "changes",
+]);
 
 /** A product holding a literal 2, pi and a rate is the angular rate. */
 function standsBesidePi(chain: readonly Expression[]): boolean {
@@ -82,11 +113,7 @@ const HEAD_KEYS: ReadonlyMap<string, string> = new Map([
 ]);
 
 /** Behind the last `let`, else in front of the first statement that uses numbers. */
-function definition(
-  tree: { readonly statements: readonly StatementNode[] } & Parameters<typeof linesBehind>[0],
-  name: string,
-  text: string,
-): TextEdit[] {
+function definition(tree: Tree, name: string, text: string): TextEdit[] {
   const line = `let ${name} = ${text}`;
   const last = tree.statements.findLast(({ keyword }) => keyword.text === "let");
   if (last) return [linesBehind(tree, last, [line])];

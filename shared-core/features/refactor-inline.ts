@@ -50,6 +50,9 @@ function whyNot(
   if (elsewhere) return `\`${elsewhere.file}\` uses \`${name}\` too`;
   const spoken = places.find(({ occurrence }) => !occurrence.inExpression || occurrence.statement.broken);
   if (spoken) return `${whereOf(spoken)} speaks of \`${name}\` by its name`;
+  const banded = places.find((place) => isInTolerance(model.tree, place));
+  if (banded)
+    return `a tolerance of ${whereOf(banded)} is written with it, where a share and a number are told apart`;
   if (!value.tolerance && !value.within) return undefined;
   const what = value.tolerance ? "tolerance" : "range";
   if (places.length > 1) {
@@ -61,6 +64,13 @@ function whyNot(
   if (!whole) return `its ${what} cannot stand inside the expression of ${whereOf(places[0])}`;
   if (whole.tolerance || whole.within) return `${whereOf(places[0])} has a tolerance or range of its own`;
   return sharedByCount(places[0], value);
+}
+
+function isInTolerance(tree: Tree, { span: at }: SymbolPlace): boolean {
+  const item = expressionAt(tree, at.start)?.item;
+  const value = item?.kind === "at" ? item.value : item;
+  const tolerance = value?.kind === "value" ? value.tolerance : undefined;
+  return tolerance !== undefined && tolerance.span.start <= at.start && at.end <= tolerance.span.end;
 }
 
 /** With a count each element is drawn for itself, while a `let` is one draw. */

@@ -82,6 +82,12 @@ describe("naming a literal", () => {
       "its unit stands behind the parenthesis, for all of them",
     ],
     ["let w = 2| * pi * 3 Hz\n", "it makes the angular rate of 2 * pi * rate, which a name would not"],
+    ["let a = (3 mm)^2|\n", "the unit of the result depends on an exponent, so it is a plain number"],
+    [
+      "let a = 3.2 +/- 5| %\n",
+      "a tolerance in % is a share of its value; by a name it could be read as a number beside it",
+    ],
+    ["expect a = 1 <= 2\n    tolerance = 99| %\n", "`tolerance` takes no name"],
     ["let w = 3 mm + 0|\n", "the number 0 fits any dimension, a name would fit one"],
   ])("refuses %j", (marked, reason) => {
     expect(textAfter(marked, "with `let")).toBe(`refused: ${reason}`);
@@ -133,6 +139,13 @@ describe("putting a number in the place of its name", () => {
     expect(textAfter(marked, "in its place")).toBe(expected);
   });
 
+  it("keeps the angular rate of 2 * pi * rate", () => {
+    const text = "let f| = 12 Hz\nmass u = 3 kg\nspring s between u and ground = 3 kg * (2*pi*f)^2\n";
+    expect(textAfter(text, "in its place")).toBe(
+      "mass u = 3 kg\nspring s between u and ground = 3 kg * (2*pi*(12 Hz))^2\n",
+    );
+  });
+
   it("takes the last blank line that would be left over", () => {
     expect(textAfter("let a = 1 kg\n\nlet b| = 2 kg\n\nmass u = a + b\n", "in its place")).toBe(
       "let a = 1 kg\n\nmass u = a + 2 kg\n",
@@ -153,6 +166,7 @@ describe("putting a number in the place of its name", () => {
       `${ON_FEET("let k| = 2 N/mm", "k")}expect a = sensitivity(natural_frequency(1), k) <= 1\n`,
       /`expect a` speaks of `k`/,
     ],
+    ["let a| = 5 %\nlet b = 3.2 +/- a\n", /a tolerance of `let b` is written with it/],
     ["let k| = 26.5 N/mm\n", /nothing uses `k`/],
     [
       `${ON_FEET("let k| = 2 N/mm", "k")}spring t between unit and ground = k\n`,
