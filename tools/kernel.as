@@ -23,7 +23,7 @@ function lanes(v: v128): f64 {
 }
 
 /**
- * C = A B (mode 0) or C −= A B (mode 1). `pack` has room for DEPTH × (columns rounded up to 4) numbers.
+ * C = A B (mode 0), C −= A B (mode 1) or C += A B (mode 2). `pack` has room for DEPTH × (columns rounded up to 4) numbers.
  */
 export function product(
   a: usize, aStride: i32, b: usize, bStride: i32, c: usize, cStride: i32,
@@ -36,7 +36,7 @@ export function product(
   for (let k = 0; k < inner; k += DEPTH) {
     const depth = min(DEPTH, inner - k);
     packPanels(at(b, k * bStride), bStride, depth, columns, pack);
-    const how = mode == 1 ? 2 : k == 0 ? 0 : 1;
+    const how = mode == 1 ? 2 : mode == 2 || k > 0 ? 1 : 0;
     for (let i0 = 0; i0 < rows; i0 += HEIGHT) {
       const end = min(i0 + HEIGHT, rows);
       for (let j = 0; j < columns; j += 4) {
@@ -642,4 +642,123 @@ function firstGuess(
   const b = sp * span;
   const root = sqrt<f64>(abs<f64>(a * a - 4 * b * c));
   return a > 0 ? (2 * b) / (a + root) : (a - root) / (2 * c);
+}
+
+/** Columns factored before everything to their right is brought up to date by products. */
+const PANEL: i32 = 24;
+
+/**
+ * LU with partial pivoting of re (and im, unless 0), n×n with row distance `stride`, in place: multipliers below the
+ * diagonal, U above and, inverted where complex, on it. `permutation` (32-bit) takes the row exchanges. Returns the
+ * first column without a pivot above `floor`, or −1. See lu.ts and complex-lu.ts.
+ */
+export function factor(
+  re: usize, im: usize, stride: i32, n: i32, permutation: usize, floor: f64, pack: usize,
+): i32 {
+  for (let k = 0; k < n; k += PANEL) {
+    const end = min(k + PANEL, n);
+    for (let p = k; p < end; p++) {
+      if (!panelColumn(re, im, stride, n, p, end, permutation, floor)) return p;
+    }
+    if (end == n) break;
+    const right = n - end;
+    for (let p = k + 1; p < end; p++) {
+      for (let q = k; q < p; q++) {
+        const l = p * stride + q;
+        const to = p * stride + end;
+        const from = q * stride + end;
+        const lr = load<f64>(at(re, l));
+        axpy(at(re, to), at(re, from), -lr, right);
+        if (im == 0) continue;
+        const li = load<f64>(at(im, l));
+        axpy(at(re, to), at(im, from), li, right);
+        axpy(at(im, to), at(im, from), -lr, right);
+        axpy(at(im, to), at(re, from), -li, right);
+      }
+    }
+    const below = n - end;
+    const l = end * stride + k;
+    const u = k * stride + end;
+    const c = end * stride + end;
+    product(at(re, l), stride, at(re, u), stride, at(re, c), stride, below, end - k, right, 1, pack);
+    if (im == 0) continue;
+    product(at(im, l), stride, at(im, u), stride, at(re, c), stride, below, end - k, right, 2, pack);
+    product(at(re, l), stride, at(im, u), stride, at(im, c), stride, below, end - k, right, 1, pack);
+    product(at(im, l), stride, at(re, u), stride, at(im, c), stride, below, end - k, right, 1, pack);
+  }
+  return -1;
+}
+
+/** y += f x */
+function axpy(y: usize, x: usize, f: f64, count: i32): void {
+  const ff = f64x2.splat(f);
+  let j = 0;
+  for (; j + 1 < count; j += 2) {
+    const p = at(y, j);
+    v128.store(p, f64x2.add(v128.load(p), f64x2.mul(ff, v128.load(at(x, j)))));
+  }
+  if (j < count) store<f64>(at(y, j), load<f64>(at(y, j)) + f * load<f64>(at(x, j)));
+}
+
+function exchange(a: usize, b: usize, count: i32): void {
+  for (let j = 0; j < count; j++) {
+    const kept = load<f64>(at(a, j));
+    store<f64>(at(a, j), load<f64>(at(b, j)));
+    store<f64>(at(b, j), kept);
+  }
+}
+
+/** Pivot, exchange and elimination of column p within its panel; false without a pivot. */
+function panelColumn(
+  re: usize, im: usize, stride: i32, n: i32, p: i32, end: i32, permutation: usize, floor: f64,
+): bool {
+  let best = p;
+  let size: f64 = -1;
+  for (let i = p; i < n; i++) {
+    let s = abs<f64>(load<f64>(at(re, i * stride + p)));
+    if (im != 0) s += abs<f64>(load<f64>(at(im, i * stride + p)));
+    if (size < s) {
+      size = s;
+      best = i;
+    }
+  }
+  if (!(size > floor)) return false;
+  if (best != p) {
+    exchange(at(re, p * stride), at(re, best * stride), n);
+    if (im != 0) exchange(at(im, p * stride), at(im, best * stride), n);
+    const a = permutation + ((<usize>p) << 2), b = permutation + ((<usize>best) << 2);
+    const kept = load<i32>(a);
+    store<i32>(a, load<i32>(b));
+    store<i32>(b, kept);
+  }
+  const row = p * stride;
+  const pr = load<f64>(at(re, row + p));
+  if (im == 0) {
+    const inverse = 1 / pr;
+    for (let i = p + 1; i < n; i++) {
+      const l = load<f64>(at(re, i * stride + p)) * inverse;
+      store<f64>(at(re, i * stride + p), l);
+      axpy(at(re, i * stride + p + 1), at(re, row + p + 1), -l, end - p - 1);
+    }
+    return true;
+  }
+  const pi = load<f64>(at(im, row + p));
+  const square = pr * pr + pi * pi;
+  const ir = pr / square, ii = -pi / square;
+  store<f64>(at(re, row + p), ir);
+  store<f64>(at(im, row + p), ii);
+  for (let i = p + 1; i < n; i++) {
+    const q = i * stride + p;
+    const ar = load<f64>(at(re, q)), ai = load<f64>(at(im, q));
+    const lr = ar * ir - ai * ii, li = ar * ii + ai * ir;
+    store<f64>(at(re, q), lr);
+    store<f64>(at(im, q), li);
+    for (let j = p + 1; j < end; j++) {
+      const ur = load<f64>(at(re, row + j)), ui = load<f64>(at(im, row + j));
+      const to = i * stride + j;
+      store<f64>(at(re, to), load<f64>(at(re, to)) - (lr * ur - li * ui));
+      store<f64>(at(im, to), load<f64>(at(im, to)) - (lr * ui + li * ur));
+    }
+  }
+  return true;
 }

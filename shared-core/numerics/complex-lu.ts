@@ -5,6 +5,7 @@
  * and used for every frequency; neither factoring nor solving allocates then.
  */
 import { equilibrationScales } from "./equilibrate.ts";
+import { kernelFor } from "./kernel.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite } from "./products.ts";
 
@@ -50,66 +51,9 @@ export function factorComplexLu(
       fi[i * n + j] = im[i * n + j] * scale;
     }
   }
-  const singularAt = eliminate(fr, fi, permutation, n);
+  const singularAt = kernelFor(n).factor(fr, fi, n, permutation, n * Number.EPSILON);
   if (singularAt >= 0) return fail(`the matrix is singular to working precision at column ${singularAt + 1}`);
   return succeed(workspace);
-}
-
-/** Eliminates in place; returns the first column without a usable pivot, or −1. */
-function eliminate(fr: Float64Array, fi: Float64Array, permutation: Int32Array, n: number): number {
-  const floor = n * Number.EPSILON;
-  for (let k = 0; k < n; k++) {
-    let best = k;
-    let size = -1;
-    for (let i = k; i < n; i++) {
-      const s = Math.abs(fr[i * n + k]) + Math.abs(fi[i * n + k]);
-      if (size < s) {
-        size = s;
-        best = i;
-      }
-    }
-    if (size <= floor) return k;
-    if (best !== k) swapRows(fr, fi, permutation, n, best, k);
-    const at = k * n;
-    const pr = fr[at + k];
-    const pi = fi[at + k];
-    const square = pr * pr + pi * pi;
-    const ir = pr / square;
-    const ii = -pi / square;
-    fr[at + k] = ir;
-    fi[at + k] = ii;
-    for (let i = k + 1; i < n; i++) {
-      const row = i * n;
-      const ar = fr[row + k];
-      const ai = fi[row + k];
-      if (ar === 0 && ai === 0) continue;
-      const lr = ar * ir - ai * ii;
-      const li = ar * ii + ai * ir;
-      fr[row + k] = lr;
-      fi[row + k] = li;
-      for (let j = k + 1; j < n; j++) {
-        const ur = fr[at + j];
-        const ui = fi[at + j];
-        fr[row + j] -= lr * ur - li * ui;
-        fi[row + j] -= lr * ui + li * ur;
-      }
-    }
-  }
-  return -1;
-}
-
-function swapRows(fr: Float64Array, fi: Float64Array, p: Int32Array, n: number, a: number, b: number): void {
-  for (let j = 0; j < n; j++) {
-    const re = fr[a * n + j];
-    const im = fi[a * n + j];
-    fr[a * n + j] = fr[b * n + j];
-    fi[a * n + j] = fi[b * n + j];
-    fr[b * n + j] = re;
-    fi[b * n + j] = im;
-  }
-  const kept = p[a];
-  p[a] = p[b];
-  p[b] = kept;
 }
 
 /**

@@ -44,6 +44,15 @@ type Exports = {
     work: number,
     pack: number,
   ): void;
+  factor(
+    re: number,
+    im: number,
+    stride: number,
+    n: number,
+    permutation: number,
+    floor: number,
+    pack: number,
+  ): number;
   merge(
     k: number,
     size: number,
@@ -137,6 +146,20 @@ export function simdKernel(): Kernel | undefined {
         memory.set(t.tau, pt / 8);
         wasm.backTransform(pr, n, count, pv, stride, n, pt, work, pack);
         rows.set(memory.subarray(pr / 8, pr / 8 + count * n));
+      });
+    },
+    factor: (re, im, n, permutation, floor) => {
+      const sizes = [n * n, im ? n * n : 0, n, packRoom(n)];
+      return run(sizes, (wasm, memory, [pr, pi, pp, pack]) => {
+        const rows = new Int32Array(memory.buffer, pp, n);
+        memory.set(re, pr / 8);
+        if (im) memory.set(im, pi / 8);
+        rows.set(permutation);
+        const singularAt = wasm.factor(pr, im ? pi : 0, n, n, pp, floor, pack);
+        re.set(memory.subarray(pr / 8, pr / 8 + n * n));
+        im?.set(memory.subarray(pi / 8, pi / 8 + n * n));
+        permutation.set(rows);
+        return singularAt;
       });
     },
     merge: (step) => {

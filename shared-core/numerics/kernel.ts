@@ -5,6 +5,7 @@
  * are deterministic; between them results agree to rounding only.
  */
 import { backTransform } from "./back-transform.ts";
+import { eliminate } from "./eliminate.ts";
 import { type Hessenberg, hessenberg } from "./hessenberg.ts";
 import { simdKernel } from "./kernel-simd.ts";
 import { type MergeStep, plainMerge } from "./merge-step.ts";
@@ -25,6 +26,14 @@ export type Kernel = {
   hessenberg(a: Float64Array, n: number, withQ: boolean): Hessenberg;
   /** See merge-step.ts. */
   merge(step: MergeStep): boolean;
+  /** See eliminate.ts. */
+  factor(
+    re: Float64Array,
+    im: Float64Array | undefined,
+    n: number,
+    permutation: Int32Array,
+    floor: number,
+  ): number;
 };
 
 /** Rows of B and columns of C held in the second-level cache at a time; chosen by trial. */
@@ -88,6 +97,7 @@ export const plainKernel: Kernel = {
   backTransform: (rows, count, t) => backTransform(rows, count, t, plainProduct),
   hessenberg,
   merge: (step) => plainMerge(step, plainProduct),
+  factor: eliminate,
 };
 
 let best: Kernel | undefined;

@@ -2,9 +2,10 @@
  * Real LU with partial pivoting of the equilibrated matrix: P (R A C) = L U.
  *
  * Method: row-oriented outer-product Gaussian elimination (Golub & Van Loan, Matrix Computations, 4th ed.,
- * §3.4.3), four pivots at a time. Error of a solve: ‖x − x̂‖/‖x‖ of order n·ε / reciprocal condition.
+ * §3.4.3), in the kernel. Error of a solve: ‖x − x̂‖/‖x‖ of order n·ε / reciprocal condition.
  */
 import { equilibrationScales } from "./equilibrate.ts";
+import { kernelFor } from "./kernel.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite } from "./products.ts";
 
@@ -53,73 +54,9 @@ export function factorLu(a: Float64Array, n: number, workspace = realLuWorkspace
     }
   }
   workspace.norm = sums.reduce((most, s) => Math.max(most, s), 0);
-  const singularAt = eliminate(factors, permutation, n);
+  const singularAt = kernelFor(n).factor(factors, undefined, n, permutation, n * Number.EPSILON);
   if (singularAt >= 0) return fail(`the matrix is singular to working precision at column ${singularAt + 1}`);
   return succeed(workspace);
-}
-
-/** Eliminates in place; returns the first column without a usable pivot, or −1. */
-function eliminate(f: Float64Array, permutation: Int32Array, n: number): number {
-  const floor = n * Number.EPSILON;
-  const width = 4;
-  for (let k = 0; k < n; k += width) {
-    const end = Math.min(k + width, n);
-    // The panel of up to four columns first, ...
-    for (let p = k; p < end; p++) {
-      let best = p;
-      for (let i = p + 1; i < n; i++) if (Math.abs(f[i * n + p]) > Math.abs(f[best * n + p])) best = i;
-      if (Math.abs(f[best * n + p]) <= floor) return p;
-      if (best !== p) swapRows(f, permutation, n, best, p);
-      const inverse = 1 / f[p * n + p];
-      for (let i = p + 1; i < n; i++) {
-        const factor = f[i * n + p] * inverse;
-        f[i * n + p] = factor;
-        for (let j = p + 1; j < end; j++) f[i * n + j] -= factor * f[p * n + j];
-      }
-    }
-    // ... then its rows of U, then everything below and to the right in one pass.
-    for (let p = k + 1; p < end; p++) {
-      for (let q = k; q < p; q++) {
-        const factor = f[p * n + q];
-        for (let j = end; j < n; j++) f[p * n + j] -= factor * f[q * n + j];
-      }
-    }
-    for (let i = end; i < n; i++) subtractPanel(f, n, i, k, end);
-  }
-  return -1;
-}
-
-function subtractPanel(f: Float64Array, n: number, i: number, k: number, end: number): void {
-  const at = i * n;
-  if (end - k === 4) {
-    const l0 = f[at + k];
-    const l1 = f[at + k + 1];
-    const l2 = f[at + k + 2];
-    const l3 = f[at + k + 3];
-    const u0 = k * n;
-    const u1 = u0 + n;
-    const u2 = u1 + n;
-    const u3 = u2 + n;
-    for (let j = end; j < n; j++) {
-      f[at + j] -= l0 * f[u0 + j] + l1 * f[u1 + j] + l2 * f[u2 + j] + l3 * f[u3 + j];
-    }
-    return;
-  }
-  for (let q = k; q < end; q++) {
-    const factor = f[at + q];
-    for (let j = end; j < n; j++) f[at + j] -= factor * f[q * n + j];
-  }
-}
-
-function swapRows(f: Float64Array, permutation: Int32Array, n: number, a: number, b: number): void {
-  for (let j = 0; j < n; j++) {
-    const kept = f[a * n + j];
-    f[a * n + j] = f[b * n + j];
-    f[b * n + j] = kept;
-  }
-  const kept = permutation[a];
-  permutation[a] = permutation[b];
-  permutation[b] = kept;
 }
 
 /** Solves A X = B with B and X n×columns, row-major; `out` may not be `b`. */

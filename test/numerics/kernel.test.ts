@@ -80,6 +80,23 @@ describe.each([plainKernel, simd])("kernel $name", (kernel) => {
     expect(alone.transposedQ.length).toBe(0);
   });
 
+  it.each([1, 2, 5, 23, 24, 25, 60, 101])("factors real and complex matrices of %i", (n) => {
+    const [re, im] = [randomMatrix(n, n, n), randomMatrix(n, n, n + 1)];
+    for (const imaginary of [undefined, im]) {
+      const [lr, li] = [Float64Array.from(re), imaginary && Float64Array.from(imaginary)];
+      const order = Int32Array.from({ length: n }, (_, i) => i);
+      expect(kernel.factor(lr, li, n, order, n * EPS)).toBe(-1);
+      expect(new Set(order).size).toBe(n);
+      expect(factorError(lr, li, order, re, imaginary, n)).toBeLessThan(4 * n * EPS);
+    }
+  });
+
+  it("names the column without a pivot", () => {
+    const order = Int32Array.of(0, 1, 2);
+    expect(kernel.factor(Float64Array.of(1, 2, 3, 2, 4, 5, 3, 6, 7), undefined, 3, order, 1e-15)).toBe(1);
+    expect(kernel.factor(new Float64Array(4), new Float64Array(4), 2, Int32Array.of(0, 1), 1e-15)).toBe(0);
+  });
+
   it("leaves a triangular matrix as it is", () => {
     const n = 12;
     const a = Float64Array.from({ length: n * n }, (_, p) => (p % n >= Math.floor(p / n) ? 1 + p : 0));
@@ -116,6 +133,35 @@ describe.each([plainKernel, simd])("kernel $name", (kernel) => {
     expect(difference(first, second)).toBe(0);
   });
 });
+
+/** max |P A − L U| */
+function factorError(
+  lr: Float64Array,
+  li: Float64Array | undefined,
+  order: Int32Array,
+  re: Float64Array,
+  im: Float64Array | undefined,
+  n: number,
+): number {
+  let worst = 0;
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < n; j++) {
+      let [sr, si] = [re[order[i] * n + j], im ? im[order[i] * n + j] : 0];
+      for (let k = 0; k <= Math.min(i, j); k++) {
+        let [ar, ai] = k === i ? [1, 0] : [lr[i * n + k], li ? li[i * n + k] : 0];
+        const [br, bi] = [lr[k * n + j], li ? li[k * n + j] : 0];
+        if (k === j && li) {
+          // The diagonal holds 1/u: divide instead.
+          const square = br * br + bi * bi;
+          [ar, ai] = [(ar * br + ai * bi) / square, (ai * br - ar * bi) / square];
+          [sr, si] = [sr - ar, si - ai];
+        } else [sr, si] = [sr - (ar * br - ai * bi), si - (ar * bi + ai * br)];
+      }
+      worst = Math.max(worst, Math.abs(sr) + Math.abs(si));
+    }
+  }
+  return worst;
+}
 
 describe("kernel choice", () => {
   it("is plain for small problems and the best there is for large ones", () => {
