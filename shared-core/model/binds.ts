@@ -194,6 +194,7 @@ function unknownPlace(node: PathNode, draft: Draft): undefined {
   if (entity !== undefined) return notLinear(node, draft);
   const near = draft.findings.suggest(first.text, boundNames(draft));
   draft.findings.say("unknown-name", first.span, `nothing is called \`${first.text}\``, {
+    about: first.text,
     fixes: near === undefined ? [] : [replaceFix(`Write \`${near}\``, first.span, near)],
   });
   return undefined;

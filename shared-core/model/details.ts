@@ -158,6 +158,11 @@ export function sayMissing(
   detail: DetailDescription,
   findings: Findings,
 ): void {
+  // A detail that could not be read, or is none, may be the one that is missing.
+  const unread = node.details.some(
+    ({ broken, key }) => broken || detailOf(description, key.text) === undefined,
+  );
+  if (node.broken || unread) return;
   const what = [node.keyword.text, description.variant, name === description.variant ? undefined : name]
     .filter((word) => word !== undefined)
     .join(" ");
@@ -165,7 +170,7 @@ export function sayMissing(
   const example = principal ? `${what} = ${detail.example}` : `${detail.key} = ${detail.example}`;
   const end = node.headSpan.end;
   const line = principal ? ` = ${detail.example}` : `\n    ${detail.key} = ${detail.example}`;
-  const canAdd = !node.broken && detail.content.is !== "table";
+  const canAdd = detail.content.is !== "table";
   findings.say("missing-detail", nameSpan(node), `\`${what}\` needs \`${detail.key}\`: ${detail.says}`, {
     hint: `as in \`${example}\``,
     fixes: canAdd ? [editsFix(`Add \`${example}\``, [{ span: { start: end, end }, text: line }])] : [],
@@ -221,6 +226,7 @@ export function sayUnknownName(
 ): void {
   const near = findings.suggest(name.text, candidates);
   findings.say("unknown-name", name.span, `nothing is called \`${name.text}\``, {
+    about: name.text,
     hint,
     fixes: near === undefined ? [] : [replaceFix(`Write \`${near}\``, name.span, near)],
   });

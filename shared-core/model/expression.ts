@@ -137,7 +137,11 @@ function unknownName(node: PathNode, c: ExpressionContext): void {
   const hint = isUnit
     ? `\`${name.text}\` is a unit: it stands right behind a number, as in \`3 ${name.text}\``
     : "a number gets a name with `let`";
-  c.findings.say("unknown-name", name.span, `nothing is called \`${name.text}\``, { hint, fixes });
+  c.findings.say("unknown-name", name.span, `nothing is called \`${name.text}\``, {
+    about: name.text,
+    hint,
+    fixes,
+  });
 }
 
 function checkUnary(

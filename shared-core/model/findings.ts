@@ -10,7 +10,12 @@ export interface Details {
   readonly fixes?: readonly Fix[];
   readonly severity?: Severity;
   readonly tag?: "unnecessary";
+  /** What the mistake is about: of several findings with one cause the first is said and names the places of the others. */
+  readonly about?: string;
 }
+
+/** Places of one mistake beyond the first that are listed; more would be a list to read. */
+const MOST_PLACES = 12;
 
 /** How many mistyped names of one file get a suggestion; looking one up costs as much as there are names. */
 const MOST_SUGGESTIONS = 200;
@@ -19,13 +24,21 @@ const MOST_SUGGESTIONS = 200;
 export class Findings {
   readonly list: Diagnostic[] = [];
   readonly #said = new Set<string>();
+  /** Where in the list a cause was said first. */
+  readonly #causes = new Map<string, number>();
   #suggestionsLeft = MOST_SUGGESTIONS;
 
   say(code: DiagnosticCode, span: Span, message: string, details: Details = {}): void {
     const place = `${code} ${span.start} ${span.end}`;
     if (this.#said.has(place)) return;
     this.#said.add(place);
-    const { severity = CODES[code], ...rest } = details;
+    const { severity = CODES[code], about, ...rest } = details;
+    const first = about === undefined ? undefined : this.#causes.get(`${code} ${about}`);
+    if (first !== undefined) {
+      this.list[first] = merged(this.list[first], span, rest.fixes ?? []);
+      return;
+    }
+    if (about !== undefined) this.#causes.set(`${code} ${about}`, this.list.length);
     this.list.push({ code, severity, message, span, ...rest });
   }
 
@@ -44,6 +57,20 @@ export class Findings {
   get hasErrors(): boolean {
     return this.list.some((diagnostic) => diagnostic.severity === "error");
   }
+}
+
+/** One more place of a mistake that was said: it is named, and a fix of the same title cures both. */
+function merged(first: Diagnostic, span: Span, fixes: readonly Fix[]): Diagnostic {
+  const related = first.related ?? [];
+  if (related.length >= MOST_PLACES && fixes.length === 0) return first;
+  const same = (fix: Fix) => fixes.find(({ title }) => title === fix.title)?.edits ?? [];
+  return {
+    ...first,
+    ...(related.length < MOST_PLACES ? { related: [...related, { span, message: "here too" }] } : {}),
+    ...(first.fixes
+      ? { fixes: first.fixes.map((fix) => ({ ...fix, edits: [...fix.edits, ...same(fix)] })) }
+      : {}),
+  };
 }
 
 /** A fix that puts one text in the place of another. */

@@ -24,6 +24,7 @@ import {
   type Wanted,
   wantedKind,
 } from "./typed.ts";
+import { visit } from "./walk.ts";
 
 /**
  * Holds an expression to what is wanted at its place. What fits comes back, an angular rate as a plain 1/s
@@ -94,7 +95,16 @@ function mismatch(node: Expression, typed: Typed, wanted: Wanted, c: ExpressionC
 
 function plainMismatch(node: Expression, typed: Typed, wanted: Wanted, c: ExpressionContext): void {
   const message = `expected ${expected(wanted)}, found ${found(node, typed, c)}`;
-  c.findings.say("unit-mismatch", node.span, message, { hint: wanted.hint });
+  c.findings.say("unit-mismatch", node.span, message, { hint: wanted.hint, about: blamed(node, wanted, c) });
+}
+
+/** A number with a name that is used in several places for the same thing is one mistake: "fan_speed for a rate". */
+function blamed(node: Expression, wanted: Wanted, c: ExpressionContext): string | undefined {
+  const names = new Set<string>();
+  visit(node, (each) => {
+    if (each.kind === "path" && c.scope.holdsNumber(textOf(c, each.span))) names.add(textOf(c, each.span));
+  });
+  return names.size === 1 ? `${[...names][0]} for ${wanted.says}` : undefined;
 }
 
 /** "a stiffness such as N/mm", "a number", "a displacement, a velocity or an acceleration such as mm, mm/s, gn". */
@@ -118,7 +128,11 @@ function bareNumber(node: Expression, typed: Typed, wanted: Wanted, c: Expressio
     return replaceFix(`Write \`${text}\``, node.span, text);
   });
   const message = `expected ${expected(wanted)}, found ${found(node, typed, c)}`;
-  c.findings.say("unit-mismatch", node.span, message, { hint: wanted.hint, fixes });
+  c.findings.say("unit-mismatch", node.span, message, {
+    hint: wanted.hint,
+    fixes,
+    about: blamed(node, wanted, c),
+  });
 }
 
 /** More would be a list to read, not a cure. */

@@ -3,7 +3,7 @@ import type { NameNode, PathNode, StatementNode } from "../syntax/tree.ts";
 import { DIRECTIONS } from "../vocabulary/coordinate-quantities.ts";
 import { type Given, givenDetails, hasRequired, sayUnknownName, singleValue, wordOf } from "./details.ts";
 import { addPlanned, type Draft, sayNotYet, spoil } from "./draft.ts";
-import { type Findings, orList, replaceFix } from "./findings.ts";
+import { Findings, orList, replaceFix } from "./findings.ts";
 import { aKeyword, type Described, nameSpan } from "./names.ts";
 import { planNumber } from "./number.ts";
 import type { Place, PlannedNumber, PlannedStatement } from "./plan.ts";
@@ -62,6 +62,7 @@ function declareCoordinate(
   const { node, description } = statement;
   const numbers = new Map<string, PlannedNumber>();
   const positive = new Set<string>();
+  if (movesOtherwise(statement, details, motion, draft)) return;
   for (const [key, given] of details) {
     if (given.description.content.is !== "quantity") continue;
     const number = planQuantity(given, motion, name, draft);
@@ -96,6 +97,29 @@ function declareCoordinate(
     positive,
   };
   addPlanned(draft, planned);
+}
+
+/**
+ * Whether a `mass` is given as a moment of inertia, or an `inertia` as a mass: that is said here, and as it stays
+ * open how the thing moves, whatever is joined to it stays quiet.
+ */
+function movesOtherwise(
+  { node, name = "" }: Described,
+  details: ReadonlyMap<string, Given>,
+  motion: Motion,
+  draft: Draft,
+): boolean {
+  const keyword = node.keyword.text;
+  const other = { mass: "inertia", inertia: "mass" }[keyword];
+  const given = details.get(keyword);
+  const [item] = given?.items ?? [];
+  if (other === undefined || given === undefined || item?.kind !== "value") return false;
+  const quiet = { ...draft.numbers, findings: new Findings(), newDraw: () => 0 };
+  if (planNumber(item, quiet, wantedOf(other as "mass" | "inertia"), name) === undefined) return false;
+  spoil(draft, name);
+  const hint = other === "inertia" ? "what turns is an `inertia`" : "what slides is a `mass`";
+  if (planQuantity(given, motion, name, draft, { hint }) !== undefined) return false;
+  return true;
 }
 
 /** The number of a detail whose content is a quantity; undefined where it has an error, which has been said. */

@@ -201,6 +201,7 @@ class StatementReader {
   #withoutKeyword(c: Cursor, level: number): boolean {
     const owner = level === 0 ? this.#top : this.#inner;
     const at = span(c.offset, c.offset);
+    if (owner && this.#isNamelessHead(owner, c.word)) return false;
     if (owner && !owner.lost && this.#isDetailOf(owner, c.word)) {
       const edits = [{ span: span(c.line.span.start, c.offset), text: STEP.repeat(level + 1) }];
       const title = "Indent it";
@@ -222,6 +223,11 @@ class StatementReader {
     return true;
   }
 
+  /** `mass = 60 kg` below a mass that has its mass: no detail of it, but a statement that lacks its name. */
+  #isNamelessHead({ node, grammar }: OpenStatement, word: string): boolean {
+    return node.value !== undefined && grammar?.principal === word && this.#state.options.grammar.has(word);
+  }
+
   #kitInKit(c: Cursor, keyword: NameNode): void {
     this.#notes.forget();
     c.failAt(keyword.span, "a kit cannot stand inside a kit");
@@ -235,6 +241,8 @@ class StatementReader {
       ? [{ title: `Write \`${near}\``, edits: [{ span: keyword.span, text: near }], safe: false }]
       : [];
     this.#say(c, keyword.span, `\`${shorten(keyword.text)}\` is not a statement`, fixes);
+    // A misspelt `thrum 1` is no missing one.
+    if (near === "thrum" && level === 0 && !this.#first) this.#versionSeen = true;
     const meant = near ? grammar.get(near) : undefined;
     if (meant && !meant.holdsStatements) this.#head(c, keyword, meant, level);
     else {
