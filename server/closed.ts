@@ -32,11 +32,14 @@ interface Known {
   readonly uses?: readonly string[];
 }
 
+/** URIs of files below a folder that end so; fails with a reason where they cannot be had. */
+export type Find = (folder: string, endings: readonly string[]) => Promise<readonly string[]>;
+
 export class ClosedModels {
   readonly #workspace: Workspace;
   readonly #sources: Sources;
   readonly #schedule: Schedule;
-  readonly #find: (folder: string) => Promise<readonly string[]>;
+  readonly #find: Find;
   readonly #known = new Map<string, Known>();
   /** The most recently needed last. */
   readonly #models = new Map<
@@ -45,12 +48,7 @@ export class ClosedModels {
   >();
   #files: Promise<readonly ClosedFile[]> | undefined;
 
-  constructor(
-    workspace: Workspace,
-    sources: Sources,
-    schedule: Schedule,
-    find: (folder: string) => Promise<readonly string[]>,
-  ) {
+  constructor(workspace: Workspace, sources: Sources, schedule: Schedule, find: Find) {
     this.#workspace = workspace;
     this.#sources = sources;
     this.#schedule = schedule;
@@ -64,8 +62,13 @@ export class ClosedModels {
 
   /** Every model of the workspace folders, open ones among them. */
   files(): Promise<readonly ClosedFile[]> {
-    this.#files ??= this.#search();
+    this.#files ??= this.#search(["thrum"]);
     return this.#files;
+  }
+
+  /** Every file of the workspace folders that may be a record; looked for when somebody types a path. */
+  records(): Promise<readonly ClosedFile[]> {
+    return this.#search(["csv", "tsv"]);
   }
 
   async contentOf({ folder, file }: Pick<ClosedFile, "folder" | "file">): Promise<FileContent> {
@@ -129,10 +132,8 @@ export class ClosedModels {
     }
   }
 
-  async #search(): Promise<readonly ClosedFile[]> {
-    const found = await Promise.all(
-      this.#workspace.folders.map((folder) => this.#find(folder).catch(() => [] as readonly string[])),
-    );
+  async #search(endings: readonly string[]): Promise<readonly ClosedFile[]> {
+    const found = await Promise.all(this.#workspace.folders.map((folder) => this.#find(folder, endings)));
     const keys = new Set<string>();
     const files: ClosedFile[] = [];
     for (const uri of found.flat()) {

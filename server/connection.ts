@@ -14,6 +14,7 @@ import { Diagnostics } from "./diagnostics.ts";
 import { followDocuments } from "./documents.ts";
 import { registerFeatures } from "./features/registry.ts";
 import type { Host } from "./host.ts";
+import { errorText } from "./numbers.ts";
 import { Schedule } from "./schedule.ts";
 import type { Serving } from "./serving.ts";
 import { Session, TYPING } from "./session.ts";
@@ -77,9 +78,15 @@ class Server {
       busy: (session, busy) => this.#status.busy(session, busy),
       log,
     });
-    const closed = new ClosedModels(workspace, this.#sources, schedule, (folder) =>
-      host.disk?.reads(folder) ? host.disk.find(folder) : this.#findModels(folder),
-    );
+    const closed = new ClosedModels(workspace, this.#sources, schedule, async (folder, endings) => {
+      const found = host.disk?.reads(folder)
+        ? host.disk.find(folder, endings)
+        : this.#findModels(folder, endings);
+      return found.catch((error: unknown) => {
+        log(`looking through ${folder}\n${errorText(error)}`);
+        return [];
+      });
+    });
     const docs = client.docs ?? host.docs;
     this.serving = { connection, client, workspace, schedule, closed, settingsOf, guard: wall(log), docs };
     this.#diagnostics = new Diagnostics(this.serving);
@@ -240,8 +247,8 @@ class Server {
     return { ok: false, why: sent?.why ?? "missing", detail: sent?.detail ?? "" };
   }
 
-  async #findModels(folder: string): Promise<readonly string[]> {
-    if (!this.#client.readsFiles) return [];
+  async #findModels(folder: string, endings: readonly string[]): Promise<readonly string[]> {
+    if (!this.#client.readsFiles || !endings.includes("thrum")) return [];
     const found = await this.#connection.sendRequest<unknown>(FIND_MODELS, { folder });
     return Array.isArray(found) ? found.filter((uri) => typeof uri === "string") : [];
   }

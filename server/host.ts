@@ -9,8 +9,8 @@ export interface Disk {
   reader(folder: string, file: string): FileReader;
   /** Another text for another state of a file; empty when it is not there. Far cheaper than reading. */
   stamp(folder: string, path: string): string;
-  /** Every model below a folder, as URIs. */
-  find(folder: string): Promise<readonly string[]>;
+  /** Every file below a folder that ends so, as URIs. */
+  find(folder: string, endings: readonly string[]): Promise<readonly string[]>;
 }
 
 /** What the server runs in. */

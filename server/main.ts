@@ -9,8 +9,6 @@ import { serve } from "./connection.ts";
 import { ThreadEngine } from "./engine-thread.ts";
 import type { Disk } from "./host.ts";
 
-start();
-
 function start(): void {
   const overIpc = process.argv.includes("--node-ipc");
   // The library sends what is logged as messages; whatever else writes to standard output would break them.
@@ -37,12 +35,15 @@ const disk: Disk = {
     const info = statOf(resolve(pathOf(folder) ?? "/", path));
     return info ? `${info.mtimeMs} ${info.size} ${info.ino}` : "";
   },
-  async find(folder) {
+  async find(folder, endings) {
     const cwd = pathOf(folder);
     if (cwd === undefined) return [];
     const { glob } = await import("tinyglobby");
     const options = { cwd, absolute: true, onlyFiles: true, expandDirectories: false, ignore: IGNORED };
-    const found = await glob("**/*.thrum", { ...options, followSymbolicLinks: false });
+    const found = await glob(
+      endings.map((ending) => `**/*.${ending}`),
+      { ...options, followSymbolicLinks: false },
+    );
     return found.sort().map((path) => pathToFileURL(path).href);
   },
 };
@@ -54,3 +55,5 @@ function pathOf(uri: string): string | undefined {
     return undefined;
   }
 }
+
+start();

@@ -14,7 +14,7 @@ import {
   signatureHelp,
 } from "../../shared-core/index.ts";
 import { toOffset, toRange } from "../convert.ts";
-import { type Serving, sessionOf } from "../serving.ts";
+import { ofThisText, type Serving, sessionOf } from "../serving.ts";
 import type { Session } from "../session.ts";
 import { keyOf } from "../uris.ts";
 
@@ -30,10 +30,11 @@ export function registerCompletion(serving: Serving): void {
       if (session === undefined) return null;
       const view = schedule.view(session);
       const offset = toOffset(view.lines, position);
-      const inQuotes = view.lines.lineText(position.line).slice(0, position.character).includes('"');
+      const line = view.lines.lineText(view.lines.lineAt(offset));
+      const files = await ofThisText(session, filesFor(serving, session, line));
       const found = complete(view, offset, {
         explicit: context?.triggerKind === CompletionTriggerKind.Invoked && !typedLast(session, offset),
-        files: inQuotes ? await filesAround(serving, session) : [],
+        files,
       });
       const items = found.map((each) => toItem(each, view.lines, serving));
       return { isIncomplete: false, items };
@@ -66,8 +67,9 @@ function typedLast({ lastEdit }: Session, offset: number): boolean {
 }
 const JUST_NOW = 1000;
 
-async function filesAround({ closed }: Serving, session: Session): Promise<readonly string[]> {
-  const files = await closed.files();
+/** Models behind `use`, records behind a detail whose value is a text. */
+async function filesFor({ closed }: Serving, session: Session, line: string): Promise<readonly string[]> {
+  const files = /^use\b/.test(line) ? await closed.files() : line.includes('"') ? await closed.records() : [];
   return files.filter(({ folder }) => keyOf(folder) === keyOf(session.folder)).map(({ file }) => file);
 }
 
