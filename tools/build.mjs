@@ -61,13 +61,17 @@ const PROGRAMS = [
 
 const COMMON = { bundle: true, minify: true, legalComments: "none", logLevel: "warning" };
 
-/** Builds all programs; throws when one does not build. */
-export async function build() {
+/**
+ * Builds all programs; throws when one does not build.
+ * @param {string} [into]  folder whose dist/ is written
+ */
+export async function build(into = root) {
   ensureInstalled("build");
   const esbuild = await import("esbuild");
-  for (const { outdir } of PROGRAMS) rmSync(join(root, outdir), { recursive: true, force: true });
+  for (const { outdir } of PROGRAMS) rmSync(join(into, outdir), { recursive: true, force: true });
   for (const program of PROGRAMS) {
-    await esbuild.build({ absWorkingDir: root, ...COMMON, ...program });
+    const outdir = join(into, program.outdir);
+    await esbuild.build({ absWorkingDir: root, ...COMMON, ...program, outdir });
   }
 }
 

@@ -1,0 +1,281 @@
+/**
+ * The extension in a real workbench, as a person uses it. One workbench serves all tests of this file, in order; each
+ * opens files of its own.
+ */
+import { execFileSync } from "node:child_process";
+import { readdirSync, readFileSync } from "node:fs";
+import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { Editor } from "./editor.ts";
+import { CASES, UNIT, UNIT_FREQUENCY } from "./models.ts";
+
+let editor: Editor;
+const git = (folder: string, ...args: string[]) =>
+  execFileSync("git", ["-c", "user.name=A", "-c", "user.email=a@b", ...args], { cwd: folder, stdio: "pipe" });
+
+beforeAll(async () => {
+  editor = await Editor.open({
+    files: {
+      "squiggle.thrum": UNIT,
+      "readouts.thrum": UNIT,
+      "names.thrum": UNIT,
+      "fix.thrum": UNIT.replace("damper oil between unit", "damper oil between unti"),
+      "layout.thrum": UNIT.replace("let mount = 400", "let mount  =   400"),
+      "tests.thrum": CASES,
+      "killed.thrum": UNIT,
+      "typed.thrum": "",
+    },
+    settings: { "files.autoSave": "off" },
+    prepare(folder) {
+      git(folder, "init", "-q");
+      git(folder, "add", ".");
+      git(folder, "commit", "-q", "-m", "start");
+    },
+  });
+}, 240_000);
+
+afterAll(() => editor?.close());
+
+const LONG = 120_000;
+
+/** Asks again until it fits; the last answer is compared, so that a failure shows it. */
+async function eventually<T>(
+  ask: () => Promise<T>,
+  fits: (value: T) => boolean,
+  within = 30_000,
+): Promise<T> {
+  const end = Date.now() + within;
+  for (;;) {
+    const value = await ask();
+    if (fits(value) || Date.now() > end) return value;
+    await new Promise((resolve) => setTimeout(resolve, 100));
+  }
+}
+
+describe("an open model", () => {
+  it(
+    "shows a mistake and forgets it when it is cured",
+    async () => {
+      await editor.openFile("squiggle.thrum");
+      await eventually(
+        () => editor.verdict.textContent().catch(() => ""),
+        (text) => text?.includes("holds") === true,
+      );
+      const before = await editor.problems();
+      await editor.goTo(9, 13);
+      await editor.page.keyboard.type("x");
+      await editor.page.locator(".squiggly-error").first().waitFor();
+      expect((await editor.problems()).errors).toBe(before.errors + 1);
+      await editor.page.keyboard.press("Backspace");
+      expect(
+        await eventually(
+          () => editor.problems(),
+          ({ errors }) => errors === before.errors,
+        ),
+      ).toEqual(before);
+      expect(await editor.saved("squiggle.thrum")).toBe(UNIT);
+    },
+    LONG,
+  );
+
+  it(
+    "says its verdict and its natural frequency in the status bar",
+    async () => {
+      const shown = `${UNIT_FREQUENCY.toPrecision(3)} Hz`;
+      expect(
+        await eventually(
+          () => editor.verdict.textContent(),
+          (text) => text?.includes(shown) === true,
+        ),
+      ).toBe(`holds 1 of 2 · ${shown}`);
+    },
+    LONG,
+  );
+});
+
+describe("readouts", () => {
+  it(
+    "show the natural frequency when the pointer rests on a mass",
+    async () => {
+      await editor.openFile("readouts.thrum");
+      await editor.goTo(9, 7);
+      await editor.command("Show or Focus Hover");
+      const hover = editor.page.locator(".monaco-hover:not(.hidden)", { hasText: "Hz" });
+      await hover.first().waitFor();
+      expect(await hover.first().textContent()).toContain(`${UNIT_FREQUENCY.toPrecision(4)} Hz`);
+      await editor.page.keyboard.press("Escape");
+    },
+    LONG,
+  );
+
+  it(
+    "stand behind the mass and above the expectations",
+    async () => {
+      const lines = await eventually(
+        () => editor.lines(),
+        (all) => all.some((line) => line.includes("mass unit") && line.includes("Hz")),
+      );
+      expect(lines.find((line) => line.includes("mass unit"))).toContain(`${UNIT_FREQUENCY.toPrecision(3)}`);
+      await editor.page.locator(".codelens-decoration", { hasText: "fails" }).first().waitFor();
+    },
+    LONG,
+  );
+});
+
+describe("writing", () => {
+  it(
+    "offers what fits at the place",
+    async () => {
+      await editor.openFile("names.thrum");
+      await editor.goTo(10, 45);
+      await editor.page.keyboard.press("End");
+      for (let i = 0; i < "mount".length; i++) await editor.page.keyboard.press("Backspace");
+      await editor.page.keyboard.press("Control+Space");
+      const rows = editor.page.locator(".suggest-widget.visible .monaco-list-row");
+      await rows.first().waitFor();
+      const offered = await rows.evaluateAll((all) => all.map((row) => row.getAttribute("aria-label") ?? ""));
+      expect(offered.some((label) => label.startsWith("mount"))).toBe(true);
+      expect(offered.some((label) => label.startsWith("unit_mass"))).toBe(false);
+      await editor.page.keyboard.press("Escape");
+      await editor.page.keyboard.type("mount");
+      expect(await editor.saved("names.thrum")).toBe(UNIT);
+    },
+    LONG,
+  );
+
+  it(
+    "renames a name at every place",
+    async () => {
+      await editor.goTo(7, 6);
+      await editor.page.keyboard.press("F2");
+      const box = editor.page.locator(".rename-box input, .rename-input");
+      await box.first().waitFor();
+      await box.first().fill("foot");
+      await editor.page.keyboard.press("Enter");
+      await box.first().waitFor({ state: "hidden" });
+      await eventually(
+        () => editor.lines(),
+        (all) => all.some((line) => line.includes("= foot")),
+      );
+      expect(await editor.saved("names.thrum")).toBe(UNIT.replaceAll(/\bmount\b(?!")/g, "foot"));
+    },
+    LONG,
+  );
+
+  it(
+    "cures a misspelt name by a quick fix",
+    async () => {
+      await editor.openFile("fix.thrum");
+      await editor.page.locator(".squiggly-error").first().waitFor();
+      await editor.goTo(11, 23);
+      await editor.page.keyboard.press("Control+.");
+      const action = editor.page.locator(".action-widget .monaco-list-row", { hasText: "unit" });
+      await action.first().waitFor();
+      await editor.page.keyboard.press("Enter");
+      await eventually(
+        () => editor.lines(),
+        (all) => all.some((line) => line.includes("between unit and ground = 400 N*s")),
+      );
+      expect(await editor.saved("fix.thrum")).toBe(UNIT);
+    },
+    LONG,
+  );
+
+  it(
+    "lays out the lines that were changed, and no others",
+    async () => {
+      await editor.openFile("layout.thrum");
+      await editor.goTo(5, 1);
+      await editor.page.keyboard.press("End");
+      await editor.page.keyboard.type("   +/-   2 %");
+      await editor.saved("layout.thrum");
+      await editor.command("Format Modified Lines");
+      const wanted = UNIT.replace("let mount = 400", "let mount  =   400").replace(
+        "= 100 kg",
+        "= 100 kg +/- 2 %",
+      );
+      expect(
+        await eventually(
+          () => editor.saved("layout.thrum"),
+          (text) => text === wanted,
+        ),
+      ).toBe(wanted);
+    },
+    LONG,
+  );
+
+  it("leaves Enter alone: an example typed line by line is that example", async () => {
+    const text = editor.text("transport-crate.thrum");
+    await editor.openFile("typed.thrum");
+    let indent = 0;
+    const lines = text.replace(/\n$/, "").split("\n");
+    for (const line of lines) {
+      const wanted = line.length - line.trimStart().length;
+      if (line !== "") {
+        for (; indent > wanted; indent -= 4) await editor.page.keyboard.press("Backspace");
+        await editor.page.keyboard.type(line.slice(indent));
+        indent = wanted;
+      }
+      await editor.page.keyboard.press("Enter");
+    }
+    expect(await editor.saved("typed.thrum")).toBe(text);
+  }, 300_000);
+});
+
+describe("the test explorer", () => {
+  it(
+    "holds each expectation of a file in each case, and runs them",
+    async () => {
+      await editor.openFile("tests.thrum");
+      await editor.command("Test: Run Tests in Current File");
+      await editor.command("Testing: Focus on Test Explorer View");
+      const rows = editor.page.locator(".test-explorer .monaco-list-row");
+      const labels = () => rows.evaluateAll((all) => all.map((row) => row.getAttribute("aria-label") ?? ""));
+      const found = await eventually(labels, (all) => all.some((label) => label.includes("Failed")));
+      expect(found).toEqual([]);
+    },
+    LONG,
+  );
+});
+
+describe("the server", () => {
+  it(
+    "is back within 3 s when it was killed, with what was written",
+    async () => {
+      await editor.openFile("killed.thrum");
+      const [before, ...others] = serverProcesses();
+      expect(others).toEqual([]);
+      process.kill(before, "SIGKILL");
+      const start = Date.now();
+      await editor.goTo(9, 13);
+      await editor.page.keyboard.type("x");
+      await editor.page.locator(".squiggly-error").first().waitFor();
+      const took = Date.now() - start;
+      expect(serverProcesses()).not.toContain(before);
+      expect(took).toBeLessThan(3000);
+      await editor.page.keyboard.press("Backspace");
+      await editor.saved("killed.thrum");
+    },
+    LONG,
+  );
+});
+
+describe("the whole tour", () => {
+  it("showed no notification", async () => {
+    expect(await editor.notifications()).toEqual([]);
+  });
+});
+
+/** Language servers of this workbench. */
+function serverProcesses(): number[] {
+  return readdirSync("/proc")
+    .filter((name) => /^\d+$/.test(name))
+    .map(Number)
+    .filter((pid) => {
+      try {
+        const words = readFileSync(`/proc/${pid}/cmdline`, "utf8");
+        return words.includes(editor.workbench.extensions) && words.includes("dist/server/main.js");
+      } catch {
+        return false;
+      }
+    });
+}

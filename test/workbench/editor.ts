@@ -1,0 +1,172 @@
+/** A workbench with the packed extension, and what a person does in it. */
+import { cpSync, mkdirSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import type { Browser, Locator, Page } from "playwright-core";
+import { packExtension } from "../../tools/package.mjs";
+import { openBrowser } from "../../tools/workbench/browser.mjs";
+import { launchWorkbench, type Workbench } from "../../tools/workbench/launch.mjs";
+import { root } from "../house/files.ts";
+
+/** How long something may take to be seen on a machine that does much else, in ms. */
+export const PATIENCE = 60_000;
+
+export interface EditorOptions {
+  /** Files of the folder that is opened, beside the examples. */
+  readonly files?: Readonly<Record<string, string>>;
+  readonly settings?: Record<string, unknown>;
+  readonly trust?: boolean;
+  /** Without the part of the extension that needs Node. */
+  readonly browserOnly?: boolean;
+  /** Called before the workbench starts. */
+  readonly prepare?: (folder: string) => void;
+}
+
+export class Editor {
+  readonly folder: string;
+  readonly page: Page;
+  readonly workbench: Workbench;
+  readonly #browser: Browser;
+  readonly #home: string;
+
+  private constructor(home: string, folder: string, workbench: Workbench, browser: Browser, page: Page) {
+    this.#home = home;
+    this.folder = folder;
+    this.workbench = workbench;
+    this.#browser = browser;
+    this.page = page;
+  }
+
+  static async open(options: EditorOptions = {}): Promise<Editor> {
+    const home = mkdtempSync(join(tmpdir(), "thrum-editor-"));
+    const folder = join(home, "works");
+    cpSync(join(root, "examples"), folder, { recursive: true });
+    for (const [name, text] of Object.entries(options.files ?? {})) writeFileSync(join(folder, name), text);
+    options.prepare?.(folder);
+    const vsix = await packed(home, options.browserOnly === true);
+    const { settings, trust } = options;
+    const workbench = await launchWorkbench({ folder, vsix: [vsix], settings, trust });
+    const browser = await openBrowser();
+    const page = await browser.newPage({ viewport: { width: 1360, height: 860 } });
+    page.setDefaultTimeout(PATIENCE);
+    await page.addInitScript(recordNotifications);
+    const editor = new Editor(home, folder, workbench, browser, page);
+    await editor.load();
+    return editor;
+  }
+
+  /** Loads the page, again after a change of settings. */
+  async load(): Promise<void> {
+    await this.page.goto(this.workbench.url);
+    await this.page.locator(".monaco-workbench .explorer-folders-view .monaco-list-row").first().waitFor();
+  }
+
+  async close(): Promise<void> {
+    await this.#browser.close();
+    this.workbench.stop();
+    rmSync(this.#home, { recursive: true, force: true, maxRetries: 5 });
+  }
+
+  /** Runs a command by its title. */
+  async command(title: string): Promise<void> {
+    await this.#pick(`>${title}`);
+  }
+
+  async openFile(name: string): Promise<void> {
+    await this.#pick(name);
+    await this.page.locator(".tab.active", { hasText: name }).waitFor();
+    await this.page.locator(".editor-instance .view-lines .view-line").first().waitFor();
+  }
+
+  /** Line and column from 1. */
+  async goTo(line: number, column = 1): Promise<void> {
+    await this.#pick(`:${line}:${column}`, false);
+  }
+
+  async #pick(text: string, listed = true): Promise<void> {
+    const { page } = this;
+    await page.keyboard.press("F1");
+    const input = page.locator(".quick-input-widget input[type=text]");
+    await input.waitFor();
+    await input.fill(text);
+    if (listed) {
+      const wanted = text.replace(/^>/, "");
+      await page
+        .locator(".quick-input-widget .quick-input-list .monaco-list-row", { hasText: wanted })
+        .first()
+        .waitFor();
+    }
+    await page.keyboard.press("Enter");
+    await input.waitFor({ state: "hidden" });
+  }
+
+  /** Saves the editor in front and returns what the file holds then. */
+  async saved(name: string): Promise<string> {
+    await this.page.keyboard.press("Control+s");
+    await this.page.locator(".tab.active:not(.dirty)").waitFor();
+    return this.text(name);
+  }
+
+  text(name: string): string {
+    return readFileSync(join(this.folder, name), "utf8");
+  }
+
+  write(name: string, text: string): void {
+    writeFileSync(join(this.folder, name), text);
+  }
+
+  /** Errors and warnings that the status bar counts. */
+  async problems(): Promise<{ errors: number; warnings: number }> {
+    const label = (await this.page.locator("#status\\.problems a").getAttribute("aria-label")) ?? "";
+    const count = (word: string) => Number(new RegExp(`${word}: (\\d+)`).exec(label)?.[1] ?? 0);
+    return { errors: count("Errors"), warnings: count("Warnings") };
+  }
+
+  /** The verdict in the status bar. */
+  get verdict(): Locator {
+    return this.page.locator("#thrum\\.thrum\\.thrum\\.verdict");
+  }
+
+  /** Lines of the editor in front that are on the screen, with hints and lenses. */
+  async lines(): Promise<string[]> {
+    const lines = await this.page.locator(".editor-instance .view-lines .view-line").allInnerTexts();
+    return lines.map((line) => line.replaceAll("\u00a0", " "));
+  }
+
+  /** Every notification that was ever shown. */
+  notifications(): Promise<string[]> {
+    return this.page.evaluate(() => (window as unknown as { shown: string[] }).shown);
+  }
+
+  screenshot(path: string): Promise<unknown> {
+    return this.page.screenshot({ path });
+  }
+}
+
+function recordNotifications(): void {
+  const shown: string[] = [];
+  Object.assign(window, { shown });
+  new MutationObserver((changes) => {
+    for (const { addedNodes } of changes) {
+      for (const node of addedNodes) {
+        if (!(node instanceof HTMLElement)) continue;
+        const toast = node.matches(".notification-toast") ? node : node.querySelector(".notification-toast");
+        if (toast) setTimeout(() => shown.push(toast.textContent ?? ""), 200);
+      }
+    }
+  }).observe(document, { childList: true, subtree: true });
+}
+
+/** The extension as it ships, or without its entry for Node; from what has been built. */
+async function packed(home: string, browserOnly: boolean): Promise<string> {
+  const folder = join(home, "package");
+  mkdirSync(folder);
+  const manifest = JSON.parse(readFileSync(join(root, "package.json"), "utf8"));
+  if (browserOnly) delete manifest.main;
+  for (const entry of manifest.files as string[]) {
+    if (entry !== "third-party-notices.txt")
+      cpSync(join(root, entry), join(folder, entry), { recursive: true });
+  }
+  writeFileSync(join(folder, "package.json"), JSON.stringify(manifest));
+  return packExtension({ builds: false, to: join(home, "thrum.vsix"), folder });
+}
