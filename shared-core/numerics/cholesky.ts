@@ -5,6 +5,7 @@
  */
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite } from "./products.ts";
+import { substitute } from "./triangular.ts";
 
 /** The factor of a positive definite matrix. */
 export type Cholesky = {
@@ -43,33 +44,55 @@ export function factorCholesky(a: Float64Array, n: number): Outcome<Cholesky> {
 /** X ← L⁻¹ X in place, X n×columns row-major. */
 export function solveLower(factor: Cholesky, x: Float64Array, columns = 1): void {
   const { n, lower: l } = factor;
-  for (let i = 0; i < n; i++) {
-    const at = i * columns;
-    for (let k = 0; k < i; k++) {
-      const f = l[i * n + k];
-      if (f === 0) continue;
-      const from = k * columns;
-      for (let c = 0; c < columns; c++) x[at + c] -= f * x[from + c];
-    }
-    const pivot = l[i * n + i];
-    for (let c = 0; c < columns; c++) x[at + c] /= pivot;
-  }
+  substitute(x, {
+    n,
+    columns,
+    downwards: true,
+    within: (from, to) => {
+      for (let i = from; i < to; i++) {
+        for (let k = from; k < i; k++) subtractRow(x, columns, i, k, l[i * n + k]);
+        divideRow(x, columns, i, l[i * n + i]);
+      }
+    },
+    coefficients: (start, _end, from) => ({ data: l, at: start * n + from, stride: n }),
+  });
 }
 
 /** X ← L⁻ᵀ X in place, X n×columns row-major. */
 export function solveLowerTransposed(factor: Cholesky, x: Float64Array, columns = 1): void {
   const { n, lower: l } = factor;
-  for (let i = n - 1; i >= 0; i--) {
-    const at = i * columns;
-    const pivot = l[i * n + i];
-    for (let c = 0; c < columns; c++) x[at + c] /= pivot;
-    for (let k = 0; k < i; k++) {
-      const f = l[i * n + k];
-      if (f === 0) continue;
-      const to = k * columns;
-      for (let c = 0; c < columns; c++) x[to + c] -= f * x[at + c];
-    }
-  }
+  substitute(x, {
+    n,
+    columns,
+    downwards: false,
+    within: (from, to) => {
+      for (let i = to - 1; i >= from; i--) {
+        divideRow(x, columns, i, l[i * n + i]);
+        for (let k = from; k < i; k++) subtractRow(x, columns, k, i, l[i * n + k]);
+      }
+    },
+    coefficients: (start, end, from, to) => {
+      // Lᵀ: the block below the diagonal, turned over.
+      const width = to - from;
+      const data = new Float64Array((end - start) * width);
+      for (let k = from; k < to; k++) {
+        for (let i = start; i < end; i++) data[(i - start) * width + k - from] = l[k * n + i];
+      }
+      return { data, at: 0, stride: width };
+    },
+  });
+}
+
+/** Row `to` −= f · row `from`. */
+function subtractRow(x: Float64Array, columns: number, to: number, from: number, f: number): void {
+  if (f === 0) return;
+  const a = to * columns;
+  const b = from * columns;
+  for (let c = 0; c < columns; c++) x[a + c] -= f * x[b + c];
+}
+
+function divideRow(x: Float64Array, columns: number, row: number, pivot: number): void {
+  for (let p = row * columns; p < (row + 1) * columns; p++) x[p] /= pivot;
 }
 
 /** Solves A X = B with B and X n×columns row-major. */

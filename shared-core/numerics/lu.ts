@@ -8,6 +8,7 @@ import { equilibrationScales } from "./equilibrate.ts";
 import { kernelFor } from "./kernel.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite } from "./products.ts";
+import { substitute } from "./triangular.ts";
 
 /** A factored matrix; also the workspace of the next factorisation of the same size. */
 export type RealLu = {
@@ -70,13 +71,36 @@ export function solveLu(
   for (let i = 0; i < n; i++) {
     const row = permutation[i];
     for (let c = 0; c < columns; c++) out[i * columns + c] = b[row * columns + c] * rowScale[row];
-    for (let k = 0; k < i; k++) addRow(out, columns, i, k, -f[i * n + k]);
   }
-  for (let i = n - 1; i >= 0; i--) {
-    for (let k = i + 1; k < n; k++) addRow(out, columns, i, k, -f[i * n + k]);
-    const pivot = f[i * n + i];
-    for (let c = 0; c < columns; c++) out[i * columns + c] /= pivot;
-  }
+  const coefficients = (start: number, _end: number, from: number) => ({
+    data: f,
+    at: start * n + from,
+    stride: n,
+  });
+  substitute(out, {
+    n,
+    columns,
+    downwards: true,
+    within: (from, to) => {
+      for (let i = from; i < to; i++) {
+        for (let k = from; k < i; k++) addRow(out, columns, i, k, -f[i * n + k]);
+      }
+    },
+    coefficients,
+  });
+  substitute(out, {
+    n,
+    columns,
+    downwards: false,
+    within: (from, to) => {
+      for (let i = to - 1; i >= from; i--) {
+        for (let k = i + 1; k < to; k++) addRow(out, columns, i, k, -f[i * n + k]);
+        const pivot = f[i * n + i];
+        for (let c = 0; c < columns; c++) out[i * columns + c] /= pivot;
+      }
+    },
+    coefficients,
+  });
   for (let i = 0; i < n; i++) {
     for (let c = 0; c < columns; c++) out[i * columns + c] *= columnScale[i];
   }

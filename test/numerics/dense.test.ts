@@ -18,7 +18,16 @@ import {
   solveLuTransposed,
   transpose,
 } from "../../shared-core/numerics/dense.ts";
-import { difference, EPS, largest, product, randomMatrix, transposed, unwrap } from "./helpers.ts";
+import {
+  difference,
+  EPS,
+  identityOf,
+  largest,
+  product,
+  randomMatrix,
+  transposed,
+  unwrap,
+} from "./helpers.ts";
 
 const hilbert = (n: number) =>
   Float64Array.from({ length: n * n }, (_, p) => 1 / (Math.floor(p / n) + (p % n) + 1));
@@ -70,6 +79,23 @@ describe("real LU", () => {
       ).toBeLessThan(8 * n * largest(a) * largest(y) * EPS);
     },
   );
+
+  it.each([33, 70, 129])("solves for as many right-hand sides as unknowns, %i", (n) => {
+    const a = randomMatrix(n, n, n);
+    const x = solveLu(unwrap(factorLu(a, n)), identityOf(n), n);
+    const scale = n * largest(a) * largest(x) * EPS;
+    expect(difference(product(a, x, n, n, n), identityOf(n))).toBeLessThan(8 * scale);
+    const one = solveLu(
+      unwrap(factorLu(a, n)),
+      identityOf(n).filter((_, p) => p % n === 0),
+    );
+    expect(
+      difference(
+        one,
+        x.filter((_, p) => p % n === 0),
+      ),
+    ).toBeLessThan(8 * scale * largest(x));
+  });
 
   it("agrees with ml-matrix on a seeded system", () => {
     const n = 12;
@@ -196,6 +222,18 @@ describe("Cholesky", () => {
     solveLower(factor, half, 2);
     solveLowerTransposed(factor, half, 2);
     expect(difference(half, x)).toBe(0);
+  });
+
+  it.each([40, 100])("solves for as many right-hand sides as unknowns, %i", (n) => {
+    const g = randomMatrix(n, n, n);
+    const a = product(g, transposed(g, n, n), n, n, n);
+    for (let i = 0; i < n; i++) a[i * n + i] += 1;
+    const factor = unwrap(factorCholesky(a, n));
+    const x = solveCholesky(factor, identityOf(n), n);
+    expect(difference(product(a, x, n, n, n), identityOf(n))).toBeLessThan(
+      8 * n * EPS * largest(a) * largest(x),
+    );
+    expect(difference(x, transposed(x, n, n))).toBeLessThan(8 * n * EPS * largest(a) * largest(x));
   });
 
   it("names the row that is not positive, whatever the units", () => {
