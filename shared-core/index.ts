@@ -101,3 +101,7 @@ export * from "./protocol/sheet.ts";
 export { type Hover, hover } from "./features/hover.ts";
 export { type InlayHint, type InlayKind, type InlayOptions, inlayHints } from "./features/inlay.ts";
 export { type CodeLens, codeLenses, type LensKind, type ResolvedLens, resolveLens } from "./features/lens.ts";
+
+// The response sheet: everything that it shows, and the drawing as a picture that stands alone.
+export { type SheetChoice, sheetContent } from "./features/sheet-content.ts";
+export { sceneSvg } from "./writing/figure/scene-svg.ts";

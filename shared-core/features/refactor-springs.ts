@@ -157,9 +157,14 @@ function splitParallel(model: Model, spring: StatementNode): readonly CodeAction
   const names = partNames(model, name, parts.length);
   const keeps = terms.length > 1 ? [] : ["count"];
   const lines = parts.flatMap((part, i) => springLines(tree, spring, names[i], endsOf(spring), part, keeps));
-  const named = occurrences(tree).some(({ key, role }) => key === name && role === "reference");
-  const group = named ? [`group ${name} = ${names.join(", ")}`] : [];
-  return [{ title, kind: KIND, edits: [replaced(tree, spring, [...lines, ...group])], safe: true }];
+  const named = occurrences(tree).filter(({ key, role }) => key === name && role === "reference");
+  // A group holds joining elements: the parts stand in it, and elsewhere their own group has the name.
+  const grouped = named.filter(({ statement }) => statement.keyword.text === "group");
+  const group = named.length > grouped.length ? [`group ${name} = ${names.join(", ")}`] : [];
+  const inGroups = grouped.map(({ span }) => ({ span, text: names.join(", ") }));
+  return [
+    { title, kind: KIND, edits: [replaced(tree, spring, [...lines, ...group]), ...inGroups], safe: true },
+  ];
 }
 
 /** More would be a list to scroll through. */
