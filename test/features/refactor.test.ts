@@ -271,6 +271,19 @@ describe("springs side by side", () => {
   });
 });
 
+describe("a spring in a group", () => {
+  it("is split in the group too", () => {
+    const text = `mass u = 3 kg
+spring s| between u and ground = 2 N/mm
+    count = 2
+damper d between u and ground = 2 N*s/m
+group feet = s, d
+`;
+    expect(textAfter(text, "Split")).toContain("group feet = s_1, s_2, d\n");
+    expect(textAfter(text, "Split")).not.toContain("group s =");
+  });
+});
+
 describe("springs one behind the other", () => {
   const CHAIN = (details = "", rest = ""): string =>
     `mass u = 3 kg\njunction middle\nspring upper between u and middle = 300 N/m\n${details}spring low|er between middle and ground = 600 N/m\n${details}${rest}`;
