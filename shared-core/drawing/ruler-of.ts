@@ -174,6 +174,7 @@ function apart(what: string, low: number, high: number, mode: string, hz: number
   if (low <= hz && hz <= high) return `${what} ${low === high ? "is on" : "runs through"} ${mode}`;
   const nearest = low > hz ? low : high;
   const ratio = nearest / hz;
+  if (ratio > 2 || ratio < 0.5) return `${what} is at ${formatNumber(ratio, 3)} times ${mode}`;
   return `${what} is ${percent(Math.abs(ratio - 1))} ${ratio > 1 ? "above" : "below"} ${mode}, ratio ${formatNumber(ratio, 3)}`;
 }
 

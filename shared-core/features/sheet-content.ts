@@ -1,13 +1,13 @@
 /** Everything that the response sheet shows, from a view and what was chosen on the page. */
 import { rulerOf } from "../drawing/ruler-of.ts";
 import { systemScene } from "../drawing/system-scene.ts";
+import { plainCase } from "../judgement/plain-case.ts";
 import type { CaseReport } from "../judgement/report.ts";
 import { currentInstance, type Numbers, numbersOf } from "./readout-numbers.ts";
 import type { SheetContent } from "./sheet.ts";
 import { cardsOf } from "./sheet-cards.ts";
 import { knobsOf, ledgerOf } from "./sheet-ledger.ts";
 import { motionsOf } from "./sheet-motions.ts";
-import { movedReport } from "./sheet-moved.ts";
 import { shownValues } from "./sheet-values.ts";
 import { stateText, summaryOf } from "./summary.ts";
 import type { View } from "./view.ts";
@@ -41,7 +41,9 @@ export function sheetContent(view: View, choice: SheetChoice = {}): SheetContent
   if (numbers === undefined || chosen === undefined) return { ...base, ...withoutNumbers(view) };
   const knobs = knobsThatMove(chosen, choice.knobs ?? {});
   const moved =
-    knobs.size === 0 ? undefined : movedReport(numbers.report.model, caseIndex(numbers, chosen), knobs);
+    knobs.size === 0
+      ? undefined
+      : plainCase(numbers.report.model, caseIndex(numbers, chosen), { parameters: knobs });
   const shown = moved?.instance.sound === true ? moved : chosen;
   return {
     ...base,

@@ -8,8 +8,8 @@ import type { SheetMotion } from "./sheet.ts";
 /** More modes than anybody looks at one by one. */
 const MOST_MODES = 20;
 /** Frames of a history times coordinates; what is longer is played more coarsely. */
-const MOST_VALUES = 12_000;
-const MOST_FRAMES = 600;
+const MOST_VALUES = 6_000;
+const MOST_FRAMES = 400;
 
 export function motionsOf(numbers: Numbers, report: CaseReport): SheetMotion[] {
   return [...modeMotions(numbers, report), ...historyMotions(report)];

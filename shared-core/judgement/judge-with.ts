@@ -124,7 +124,8 @@ function* readAnswers(work: Work, name: string, trial: Trial): Steps<ReadonlyMap
   return answers;
 }
 
-function answerOf(trial: Trial, ask: Ask): AnswerResult {
+/** The answer of one ask that is not of modes. */
+export function answerOf(trial: Trial, ask: Ask): AnswerResult {
   if (ask.kind === "sweep") {
     if (trial.noSteadyAnswer !== undefined) return noAnswer(ask, trial.noSteadyAnswer);
     const sweep = trial.analysis.sweep(ask);
