@@ -29,9 +29,8 @@ export class Numbers {
   readonly #now: () => number;
   readonly #entries = new Map<string, Entry>();
   readonly #contents = new Map<number, FileContent>();
-  /** Models that wait to be judged; those that are open before the others, the newest first. */
-  #waiting: { readonly entry: Entry; readonly serial: number; readonly open: boolean }[] = [];
-  #job: Job | undefined;
+  /** Work to be done, the last first: the newest of what is open; what is not open lies at the bottom. */
+  #jobs: Job[] = [];
 
   constructor(say: (message: FromEngine) => void, now: () => number) {
     this.#say = say;
@@ -65,20 +64,18 @@ export class Numbers {
     }
   }
 
-  /** Carries the work one step further; false when there is none. */
+  /** Carries the work one step further; false when there is none left. */
   step(): boolean {
-    this.#job ??= this.#next();
-    const job = this.#job;
+    const job = this.#jobs.at(-1);
     if (job === undefined) return false;
     try {
-      const step = job.steps.next(false);
-      if (step.done) this.#job = undefined;
+      if (job.steps.next(false).done) this.#drop(job.entry.uri);
     } catch (error) {
-      this.#job = undefined;
+      this.#drop(job.entry.uri);
       this.#fault(`judging ${job.entry.file}`, error);
-      this.#say({ say: "stopped", uri: job.entry.uri, serial: job.serial });
+      this.#say({ say: "stopped", uri: job.entry.uri, serial: job.entry.serial });
     }
-    return this.#job !== undefined || this.#waiting.length > 0;
+    return this.#jobs.length > 0;
   }
 
   #take({ uri, serial, file, text, reads, units }: TextMessage): void {
@@ -109,41 +106,25 @@ export class Numbers {
     const entry = this.#entries.get(uri);
     if (entry === undefined || entry.serial !== serial) return;
     this.#drop(uri);
-    const place = open ? 0 : this.#waiting.length;
-    this.#waiting.splice(place, 0, { entry, serial, open });
-    // What is open does not wait for what is not.
-    if (open && this.#job && !this.#job.open) {
-      const { entry: other, serial: of } = this.#job;
-      this.#waiting.push({ entry: other, serial: of, open: false });
-      this.#job = undefined;
-    }
+    const job = { entry, steps: this.#work(entry) };
+    if (open) this.#jobs.push(job);
+    else this.#jobs.unshift(job);
   }
 
   #stop(uri: string): void {
-    const serial = this.#drop(uri);
-    if (serial !== undefined) this.#say({ say: "stopped", uri, serial });
+    const dropped = this.#drop(uri);
+    if (dropped) this.#say({ say: "stopped", uri, serial: dropped.entry.serial });
   }
 
-  /** Ends the work on a model, running or waiting; hands back what it was about. */
-  #drop(uri: string): number | undefined {
-    const waiting = this.#waiting.find(({ entry }) => entry.uri === uri);
-    this.#waiting = this.#waiting.filter(({ entry }) => entry.uri !== uri);
-    if (this.#job?.entry.uri !== uri) return waiting?.serial;
-    const { serial } = this.#job;
-    this.#job = undefined;
-    return serial;
-  }
-
-  #next(): Job | undefined {
-    const next = this.#waiting.shift();
-    if (next === undefined) return undefined;
-    const { entry, serial, open } = next;
-    this.#say({ say: "started", uri: entry.uri, serial });
-    return { entry, serial, open, steps: this.#work(entry) };
+  /** Ends the work on a model, begun or not; hands back what it was. */
+  #drop(uri: string): Job | undefined {
+    const at = this.#jobs.findIndex(({ entry }) => entry.uri === uri);
+    return at < 0 ? undefined : this.#jobs.splice(at, 1)[0];
   }
 
   *#work(entry: Entry): Steps<void> {
     const { uri, serial, units } = entry;
+    this.#say({ say: "started", uri, serial });
     const model = understood(entry, this.#contents);
     const start = this.#now();
     const asks = model.expectations.length > 0 || model.tree.statements.some(isAsk);
@@ -194,8 +175,6 @@ interface Entry {
 
 interface Job {
   readonly entry: Entry;
-  readonly serial: number;
-  readonly open: boolean;
   readonly steps: Steps<void>;
 }
 

@@ -23,6 +23,7 @@ export class Status {
   changed(session: Session): void {
     if (session.hidden) return;
     if (session.numbers === "there" || session.numbers === "stopped") this.#send(session, "ready");
+    else if (session.numbers === "modes") this.#send(session, "busy");
     else if (session.summary === undefined) this.#send(session, "warming");
   }
 
