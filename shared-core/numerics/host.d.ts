@@ -11,5 +11,4 @@ declare namespace WebAssembly {
     readonly buffer: ArrayBuffer;
     grow(pages: number): number;
   }
-  function validate(bytes: Uint8Array): boolean;
 }

@@ -84,9 +84,11 @@ const KEPT_BYTES = 16 * 2 ** 20;
 /** The SIMD kernel, or undefined where the host lacks WebAssembly or its SIMD. */
 export function simdKernel(): Kernel | undefined {
   if (typeof WebAssembly === "undefined") return undefined;
-  const bytes = decodeBase64(KERNEL_MODULE);
-  if (!WebAssembly.validate(bytes)) return undefined;
-  const compiled = new WebAssembly.Module(bytes);
+  const compiled = compile(decodeBase64(KERNEL_MODULE));
+  return compiled && kernelOf(compiled);
+}
+
+function kernelOf(compiled: WebAssembly.Module): Kernel {
   let kept: Exports | undefined;
   /** Runs with an instance that has room for the given areas (in numbers) and the address of each. */
   function run<T>(
@@ -208,6 +210,15 @@ export function simdKernel(): Kernel | undefined {
   };
 }
 
+/** Compiling is the only test for SIMD that does not compile twice. */
+function compile(bytes: Uint8Array<ArrayBuffer>): WebAssembly.Module | undefined {
+  try {
+    return new WebAssembly.Module(bytes);
+  } catch {
+    return undefined;
+  }
+}
+
 /** Scratch of backTransform in numbers; the module's own formula with its block of 48. */
 function roomFor(count: number, n: number): number {
   const block = 48;
@@ -244,13 +255,14 @@ function copyOut(to: Window, memory: Float64Array, from: number, rows: number, c
 const ALPHABET = "ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz0123456789+/";
 
 function decodeBase64(text: string): Uint8Array<ArrayBuffer> {
-  const length = text.length;
+  const digit = new Uint8Array(128);
+  for (let i = 0; i < 64; i++) digit[ALPHABET.charCodeAt(i)] = i;
   const padding = text.endsWith("==") ? 2 : text.endsWith("=") ? 1 : 0;
-  const out = new Uint8Array((length / 4) * 3 - padding);
+  const out = new Uint8Array((text.length / 4) * 3 - padding);
   let at = 0;
-  for (let i = 0; i < length; i += 4) {
+  for (let i = 0; i < text.length; i += 4) {
     let word = 0;
-    for (let k = 0; k < 4; k++) word = word * 64 + Math.max(0, ALPHABET.indexOf(text[i + k]));
+    for (let k = 0; k < 4; k++) word = word * 64 + digit[text.charCodeAt(i + k)];
     for (let shift = 16; shift >= 0 && at < out.length; shift -= 8) out[at++] = (word >> shift) & 255;
   }
   return out;
