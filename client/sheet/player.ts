@@ -1,0 +1,144 @@
+import type { SheetMotion } from "../../shared-core/index.ts";
+import { Choices, html, wordButton } from "./dom.ts";
+import type { Page } from "./page.ts";
+import { poseOf } from "./sway.ts";
+
+/** Cycles a second of a mode at speed 1; slow enough to follow with the eye. */
+const CYCLES = 0.5;
+const STILL = "";
+
+export interface Stage {
+  /** undefined: at rest. */
+  show(pose: Float64Array | undefined): void;
+  coordinates(): number;
+}
+
+/** Sets a drawing in motion: which motion, how fast, where in it. Nothing moves unless somebody asks. */
+export class Player {
+  readonly element: HTMLElement;
+  readonly #page: Page;
+  readonly #stage: Stage;
+  readonly #motions: Choices<string>;
+  readonly #play: HTMLButtonElement;
+  readonly #speed: HTMLInputElement;
+  readonly #place: HTMLInputElement;
+  readonly #where = html("output", { class: "number" });
+  readonly #controls: HTMLElement;
+  #all: readonly SheetMotion[] = [];
+  #motion: SheetMotion | undefined;
+  #at = 0;
+  #frame: number | undefined;
+  #last = 0;
+
+  constructor(page: Page, stage: Stage) {
+    this.#page = page;
+    this.#stage = stage;
+    this.#motions = new Choices("moving", (id) => this.choose(id, true));
+    this.#play = wordButton("play", () => (this.playing ? this.pause() : this.play()), {
+      class: "word play",
+    });
+    this.#speed = slider("speed", { min: -3, max: 3, step: 0.25, value: 0 });
+    this.#place = slider("place in the motion", { min: 0, max: 1, step: 0.001, value: 0 });
+    this.#place.addEventListener("input", () => {
+      this.pause();
+      this.#move(Number(this.#place.value));
+    });
+    this.#speed.addEventListener("input", () => this.#sayPlace());
+    this.#controls = html(
+      "span",
+      { class: "controls" },
+      this.#play,
+      this.#place,
+      this.#where,
+      html("label", { class: "choice" }, html("span", {}, "speed"), this.#speed),
+    );
+    this.element = html("div", { class: "player" }, this.#motions.element, this.#controls);
+  }
+
+  get playing(): boolean {
+    return this.#frame !== undefined;
+  }
+
+  update(motions: readonly SheetMotion[]): void {
+    this.#all = motions;
+    this.element.hidden = motions.length === 0;
+    const known = motions.find(({ id }) => id === this.#page.kept.motion);
+    this.#motion = known;
+    this.#motions.update(
+      [{ value: STILL, text: "nothing" }, ...motions.map(({ id, label }) => ({ value: id, text: label }))],
+      known?.id ?? STILL,
+    );
+    this.#controls.hidden = known === undefined;
+    if (known === undefined) this.pause();
+    this.#move(this.#at);
+  }
+
+  /** `starts`: it also begins to move, unless motion is unwelcome here; the extreme is shown then. */
+  choose(id: string, starts: boolean): void {
+    this.#page.keep({ motion: id });
+    this.#at = 0;
+    this.update(this.#all);
+    if (this.#motion === undefined) return;
+    this.#page.announce(this.#motion.label);
+    if (starts && !reducedMotion()) this.play();
+  }
+
+  play(): void {
+    if (this.#motion === undefined || this.playing) return;
+    this.#play.textContent = "pause";
+    this.#last = performance.now();
+    if (this.#motion.kind === "history" && this.#at >= 1) this.#at = 0;
+    this.#frame = requestAnimationFrame((now) => this.#step(now));
+  }
+
+  pause(): void {
+    if (this.#frame !== undefined) cancelAnimationFrame(this.#frame);
+    this.#frame = undefined;
+    this.#play.textContent = "play";
+  }
+
+  #step(now: number): void {
+    const motion = this.#motion;
+    if (motion === undefined) return this.pause();
+    const passed = Math.min(0.1, Math.max(0, (now - this.#last) / 1000)) * this.#factor();
+    this.#last = now;
+    const share = motion.kind === "mode" ? passed * CYCLES : passed / Math.max(1e-9, lengthOf(motion));
+    this.#move((this.#at + share) % 1);
+    this.#frame = requestAnimationFrame((next) => this.#step(next));
+  }
+
+  #move(at: number): void {
+    this.#at = at;
+    this.#place.value = String(at);
+    this.#sayPlace();
+    this.#stage.show(this.#motion && poseOf(this.#motion, this.#stage.coordinates(), at));
+  }
+
+  #sayPlace(): void {
+    const motion = this.#motion;
+    if (motion === undefined) return;
+    const where =
+      motion.kind === "mode"
+        ? `${Math.round(360 * this.#at)}°`
+        : `${(this.#at * lengthOf(motion)).toFixed(3)} s`;
+    this.#where.textContent = where;
+    this.#place.setAttribute("aria-valuetext", where);
+    this.#speed.setAttribute("aria-valuetext", `${this.#factor().toPrecision(2)} times`);
+  }
+
+  /** Speeds double and halve. */
+  #factor(): number {
+    return 2 ** Number(this.#speed.value);
+  }
+}
+
+export const reducedMotion = (): boolean =>
+  document.body.classList.contains("vscode-reduce-motion") ||
+  matchMedia("(prefers-reduced-motion: reduce)").matches;
+
+const lengthOf = ({ frames, stepS }: Extract<SheetMotion, { kind: "history" }>): number =>
+  Math.max(0, frames - 1) * stepS;
+
+function slider(label: string, attributes: Record<string, number>): HTMLInputElement {
+  return html("input", { type: "range", "aria-label": label, ...attributes });
+}

@@ -1,0 +1,116 @@
+import { DASHES, type Scale } from "../../shared-core/index.ts";
+import type { Drawn, Geometry, PanelBox } from "./plot-layout.ts";
+import { firstFrom } from "./pyramid.ts";
+
+export interface CurveInk {
+  readonly colour: string;
+  readonly width: number;
+  readonly dash: string;
+}
+
+/** Columns a pixel into which long curves are gathered; what is left out could not be told apart. */
+const COLUMNS = 1;
+/** Samples a pixel from which on a curve is gathered. */
+const DENSE = 3;
+
+export interface CurvePlace {
+  readonly geometry: Geometry;
+  readonly box: PanelBox;
+  readonly x: Scale;
+  readonly y: Scale;
+}
+
+/** Paints curves of one panel; what does not fit is cut off at its box. */
+export function paintCurves(
+  context: CanvasRenderingContext2D,
+  curves: readonly Drawn[],
+  place: CurvePlace,
+  inkOf: (drawn: Drawn) => CurveInk,
+): void {
+  const { left, right } = place.geometry;
+  context.save();
+  context.beginPath();
+  context.rect(left, place.box.top - 1, right - left, place.box.height + 2);
+  context.clip();
+  context.lineJoin = "round";
+  for (const drawn of curves) {
+    const { colour, width, dash } = inkOf(drawn);
+    context.strokeStyle = colour;
+    context.lineWidth = width;
+    context.setLineDash(dash === "" ? [] : dash.split(" ").map(Number));
+    context.beginPath();
+    trace(context, drawn, place);
+    context.stroke();
+  }
+  context.restore();
+}
+
+export const dashOf = (style: number): string => DASHES[style % DASHES.length];
+
+function trace(context: CanvasRenderingContext2D, drawn: Drawn, place: CurvePlace): void {
+  const { x } = drawn.curve;
+  const first = Math.max(0, firstFrom(x, place.x.from) - 1);
+  const last = Math.min(x.length, firstFrom(x, place.x.to) + 1);
+  const columns = Math.ceil((place.geometry.right - place.geometry.left) * COLUMNS);
+  if (last - first > DENSE * columns) traceColumns(context, drawn, place, [first, last, columns]);
+  else traceSamples(context, drawn, place, [first, last]);
+}
+
+function traceSamples(
+  context: CanvasRenderingContext2D,
+  { curve }: Drawn,
+  { geometry: { left, right }, box, x, y }: CurvePlace,
+  [first, last]: readonly [number, number],
+): void {
+  let open = false;
+  for (let i = first; i < last; i++) {
+    const height = upright(y, box, curve.y[i]);
+    const across = left + x.place(curve.x[i]) * (right - left);
+    if (!Number.isFinite(height) || !Number.isFinite(across)) {
+      open = false;
+      continue;
+    }
+    if (open) context.lineTo(across, height);
+    else context.moveTo(across, height);
+    open = true;
+  }
+}
+
+/** Of each column the lowest and the highest value: no peak is lost, however narrow. */
+function traceColumns(
+  context: CanvasRenderingContext2D,
+  { curve, heights }: Drawn,
+  { geometry: { left, right }, box, x, y }: CurvePlace,
+  [first, last, columns]: readonly [number, number, number],
+): void {
+  const pair = new Float64Array(2);
+  const ratio = x.kind === "log" ? Math.log(x.to / x.from) : 0;
+  let [from, open] = [first, false];
+  for (let column = 0; column < columns && from < last; column++) {
+    const share = (column + 1) / columns;
+    const end = x.kind === "log" ? x.from * Math.exp(ratio * share) : x.from + share * (x.to - x.from);
+    const to = column === columns - 1 ? last : Math.min(last, firstFrom(curve.x, end));
+    if (to <= from) continue;
+    heights.extremes(from, to, pair);
+    if (pair[0] <= pair[1]) {
+      const across = left + ((column + 0.5) / columns) * (right - left);
+      const [low, high] = [upright(y, box, pair[0]), upright(y, box, pair[1])];
+      const start = upright(y, box, curve.y[from]);
+      if (open && Number.isFinite(start)) context.lineTo(across, start);
+      else context.moveTo(across, low);
+      context.lineTo(across, low);
+      context.lineTo(across, high);
+      const leave = upright(y, box, curve.y[to - 1]);
+      if (Number.isFinite(leave)) context.lineTo(across, leave);
+      open = true;
+    } else open = false;
+    from = to;
+  }
+}
+
+/** Pixel of a value; what a log axis cannot show lies at its bottom. NaN stays NaN: a gap. */
+function upright(y: Scale, box: PanelBox, value: number): number {
+  if (Number.isNaN(value)) return Number.NaN;
+  const share = y.kind === "log" && value <= 0 ? -0.1 : y.place(value);
+  return box.top + (1 - Math.max(-0.1, Math.min(1.1, share))) * box.height;
+}

@@ -1,0 +1,82 @@
+/** The other side of a sheet without an editor: holds a text, computes what the page asks for, keeps what it says. */
+import { readFileSync } from "node:fs";
+import { join } from "node:path";
+import {
+  type FromSheet,
+  judge,
+  LineIndex,
+  packContent,
+  readFromSheet,
+  SHEET_VERSION,
+  sheetContent,
+  type ToSheet,
+  type UnitSystem,
+  understand,
+  type View,
+} from "../../../shared-core/index.ts";
+import { root } from "../../house/files.ts";
+
+const NO_FILES = { read: () => ({ ok: false, why: "missing", detail: "no other files here" }) as const };
+
+export interface Choice {
+  readonly case?: string;
+  readonly units?: UnitSystem;
+  readonly knobs?: Readonly<Record<string, number>>;
+}
+
+export const example = (name: string): string => readFileSync(join(root, "examples", `${name}.thrum`), "utf8");
+
+export class SheetHost {
+  readonly file: string;
+  /** Everything the page has said, oldest first. */
+  readonly said: FromSheet[] = [];
+  /** What the page said that was no message. */
+  readonly strange: unknown[] = [];
+  post: (message: ToSheet) => Promise<void> = async () => undefined;
+  #view: View;
+  #version = 1;
+
+  constructor(file: string, text: string) {
+    this.file = file;
+    this.#view = viewOf(file, text);
+  }
+
+  hear(data: unknown): void {
+    const message = readFromSheet(data);
+    if (message === undefined) {
+      this.strange.push(data);
+      return;
+    }
+    this.said.push(message);
+    if (message.type === "ready") void this.show({});
+    if (message.type === "show") void this.show(message);
+  }
+
+  last<T extends FromSheet["type"]>(type: T): Extract<FromSheet, { type: T }> | undefined {
+    return this.said.findLast((message) => message.type === type) as never;
+  }
+
+  message(choice: Choice): ToSheet {
+    const view = { ...this.#view, units: choice.units ?? "as-written" } as const;
+    const content = packContent(sheetContent(view, choice));
+    return { type: "content", protocol: SHEET_VERSION, uri: `file:///${this.file}`, version: this.#version, content };
+  }
+
+  show(choice: Choice): Promise<void> {
+    return this.post(this.message(choice));
+  }
+
+  /** Another text; a broken one keeps the numbers of the last that could be computed. */
+  edit(text: string): Promise<void> {
+    const next = viewOf(this.file, text);
+    this.#view = next.report ? next : { ...next, report: this.#view.report, stale: true };
+    this.#version++;
+    return this.show({});
+  }
+}
+
+function viewOf(file: string, text: string): View {
+  const model = understand(file, text, NO_FILES);
+  const report = model.buildable ? judge(model) : undefined;
+  return { model, lines: new LineIndex(text), units: "as-written", stale: false, others: [], ...(report && { report }) };
+}
