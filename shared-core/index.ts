@@ -105,3 +105,9 @@ export { type CodeLens, codeLenses, type LensKind, type ResolvedLens, resolveLen
 // The response sheet: everything that it shows, and the drawing as a picture that stands alone.
 export { type SheetChoice, sheetContent } from "./features/sheet-content.ts";
 export { sceneSvg } from "./writing/figure/scene-svg.ts";
+
+// What a page needs to paint figures itself: the figure as data, its scales and dashes, numbers for people.
+export { formatNumber } from "./units/show.ts";
+export { type Axis, type CurvePanel, DASHES, type Figure } from "./writing/figure/figure.ts";
+export { figureSvg } from "./writing/figure/svg.ts";
+export { type Scale, scaleBetween, scaleOver, tickLabel } from "./writing/scales.ts";
