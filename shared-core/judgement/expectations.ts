@@ -3,7 +3,7 @@ import type { Expectation, HistoryAsk, Instance } from "../model/model.ts";
 import type { Kind, Quantity } from "../units/dimension.ts";
 import { NUMBER } from "../units/quantity.ts";
 import { siUnit } from "../units/show.ts";
-import { cureOf } from "./cure.ts";
+import { curesOf } from "./cure.ts";
 import { names } from "./expression-nodes.ts";
 import type { Found } from "./found.ts";
 import { type Influence, influences, readsHistory } from "./matters-most.ts";
@@ -44,7 +44,7 @@ export function* judgeExpectations(
         ? verdictOf(expectation, sides.value, tolerances.get(expectation), influence[0])
         : noVerdict(expectation, sides.reason, trial.evaluate(expectation.right)),
       expectation,
-      cure: fails ? yield* cureOf(trial, expectation, influence) : undefined,
+      cures: fails ? yield* curesOf(trial, expectation, influence) : [],
       remarks: found,
       explained: sides.ok || found.length > 0 || isExplained(trial, expectation, sides.reason),
     });
@@ -55,7 +55,7 @@ export function* judgeExpectations(
 /** What stands for an expectation that a fault of Thrum kept from being judged: it does not hold in silence. */
 export function unjudged(expectation: Expectation): Judged {
   const verdict = noVerdict(expectation, "a fault of Thrum kept it from being judged");
-  return { verdict, expectation, remarks: [], explained: false };
+  return { verdict, expectation, cures: [], remarks: [], explained: false };
 }
 
 /** A history is integrated anew for every parameter: only where the expectation is in trouble. */

@@ -54,8 +54,8 @@ export interface RuleContext {
 export interface Judged {
   readonly verdict: Verdict;
   readonly expectation: Expectation;
-  /** The `let` and the value of it at which the expectation would hold, when one was found. */
-  readonly cure?: Cure;
+  /** What would make a failing expectation hold, each `let` alone, the one that has to move least first. */
+  readonly cures: readonly Cure[];
   /** What its functions found out about the asks they read. */
   readonly remarks: readonly Remark[];
   /** True when what kept it from being computed is said elsewhere as an error or a warning. */

@@ -32,7 +32,9 @@ describe("an expectation", () => {
       "`held` fails: `natural_frequency(1)` is 9.49 Hz, at most 9 Hz wanted, 5.45 % beyond it",
     );
     // k = m (2 pi f)^2 = 180 (2 pi 9)^2 = 575.6 N/mm; closed form, rounded to the side that holds
-    expect(said.hint).toBe("it would hold with `feet` at most 575 N/mm (now 640 N/mm), all else as it is");
+    expect(said.hint).toBe(
+      "it would hold with `feet` at most 575 N/mm (now 640 N/mm), or with `heavy` at least 201 kg (now 180 kg), all else as it is",
+    );
     expect(said.fixes?.[0]).toMatchObject({ title: "Set feet to 575 N/mm", safe: false });
   });
 
@@ -43,6 +45,20 @@ describe("an expectation", () => {
     const source = report.model.tree.text;
     const cured = source.slice(0, edit.span.start) + edit.text + source.slice(edit.span.end);
     expect(judged(cured.replace("thrum 1\n", "")).cases[0].verdicts[0].holds).toBe(true);
+  });
+
+  test("names each parameter that cures it alone, the one that moves least first", () => {
+    const text = pump("expect held = separation(1, 9.4 Hz) >= 30 %");
+    // f = sqrt(k/m) / 2 pi = 9.49 Hz. |9.4/f - 1| >= 0.3 wants f <= 9.4/1.3 Hz or f >= 9.4/0.7 Hz: the shorter way is
+    // down, over the resonance. k <= m (2 pi 9.4/1.3)^2 = 371.5 N/mm, m >= k / (2 pi 9.4/1.3)^2 = 310.1 kg.
+    const report = judged(text);
+    const [said] = saidOf(report, "expectation-fails");
+    expect(said.hint).toBe(
+      "it would hold with `feet` at most 371 N/mm (now 640 N/mm), or with `heavy` at least 311 kg (now 180 kg), all else as it is",
+    );
+    const source = report.model.tree.text;
+    expect(said.related?.map(({ span }) => source.slice(span.start, span.end))).toEqual(["feet", "heavy"]);
+    expect(said.fixes?.map(({ title }) => title)).toEqual(["Set feet to 371 N/mm", "Set heavy to 311 kg"]);
   });
 
   test("within a band is two", () => {

@@ -1,4 +1,4 @@
-import type { Fix } from "../../diagnostics/diagnostic.ts";
+import type { Fix, RelatedPlace } from "../../diagnostics/diagnostic.ts";
 import { formatNumber } from "../../units/show.ts";
 import { unitOf } from "../../units/unit-of.ts";
 import { nameSpan, statementOf } from "../places.ts";
@@ -19,7 +19,7 @@ export const expectationFails: Rule = {
 };
 
 function fails(context: RuleContext, judged: Judged): Finding {
-  const { verdict, expectation, cure } = judged;
+  const { verdict, expectation, cures } = judged;
   const { instance } = context;
   const value = showAs(
     { ...verdict.kind, value: verdict.value ?? 0 },
@@ -28,35 +28,39 @@ function fails(context: RuleContext, judged: Judged): Finding {
     expectation.left,
   );
   const by = verdict.margin === null ? "" : `, ${percent(-verdict.margin)} beyond it`;
-  const parameter = cure === undefined ? undefined : statementOf(context.model, cure.parameter);
   return {
     span: expectation.comparison.span,
     message: `\`${verdict.name}\` fails: \`${leftText(context, judged)}\` is ${value}, ${limitText(context, judged)} wanted${by}`,
     hint: hintOf(context, judged),
-    related:
-      parameter === undefined || cure === undefined
-        ? undefined
-        : [
-            {
-              span: nameSpan(parameter),
-              message: `\`${cure.parameter}\` matters most among what can cure it`,
-            },
-          ],
-    fixes: cure === undefined ? undefined : fixesFor(context, cure),
+    related: cures.flatMap((cure) => placeOf(context, cure)),
+    fixes: cures.flatMap((cure) => fixesFor(context, cure)),
   };
 }
 
-function hintOf({ instance }: RuleContext, { cure, verdict }: Judged): string | undefined {
-  if (cure !== undefined) {
-    const { value } = roundedCure(instance, cure);
-    const now = instance.parameters.get(cure.parameter)?.value ?? 0;
-    return `it would hold with \`${cure.parameter}\` ${cure.side} ${showParameter(instance, cure.parameter, value)} (now ${showParameter(instance, cure.parameter, now)}), all else as it is`;
+function hintOf({ instance }: RuleContext, { cures, verdict }: Judged): string | undefined {
+  if (cures.length > 0) {
+    const ways = cures.map((cure) => `with ${cureText(instance, cure)}`).join(", or ");
+    return `it would hold ${ways}, all else as it is`;
   }
   if (verdict.mattersMost === undefined) {
     return "no let moves it: name the number that may change as a let to be told the value it needs";
   }
   const { name, sensitivity } = verdict.mattersMost;
   return `\`${name}\` matters most, ${percent(sensitivity / 100)} for each 1 % of it, and does not cure it within a factor of ten`;
+}
+
+/** "`mount` at most 3.05 kN/mm (now 4.4 kN/mm)". */
+function cureText(instance: RuleContext["instance"], cure: Cure): string {
+  const { parameter, side } = cure;
+  const { value } = roundedCure(instance, cure);
+  const now = instance.parameters.get(parameter)?.value ?? 0;
+  return `\`${parameter}\` ${side} ${showParameter(instance, parameter, value)} (now ${showParameter(instance, parameter, now)})`;
+}
+
+function placeOf({ model }: RuleContext, { parameter }: Cure): readonly RelatedPlace[] {
+  const statement = statementOf(model, parameter);
+  if (statement === undefined) return [];
+  return [{ span: nameSpan(statement), message: `\`${parameter}\` can cure it alone` }];
 }
 
 function notJudged(context: RuleContext, judged: Judged): Finding {
@@ -84,11 +88,11 @@ function roundedCure(
 }
 
 /** Writes the value into the `let`, when that is a plain number and the case does not replace it. */
-function fixesFor({ model, instance }: RuleContext, cure: Cure): readonly Fix[] | undefined {
+function fixesFor({ model, instance }: RuleContext, cure: Cure): readonly Fix[] {
   const statement = statementOf(model, cure.parameter);
-  if (statement === undefined || instance.caseIndex !== 0) return undefined;
+  if (statement === undefined || instance.caseIndex !== 0) return [];
   const item = statement.value?.[0];
-  if (item?.kind !== "value" || item.expression.kind !== "number") return undefined;
+  if (item?.kind !== "value" || item.expression.kind !== "number") return [];
   const found = item.expression;
   const { text } = roundedCure(instance, cure);
   const unit = found.unit === undefined ? "" : ` ${found.unit.text}`;
