@@ -1,9 +1,10 @@
 import type { HistoryAnswer, ModeTable, SweepAnswer } from "../answers/answer.ts";
-import { kindOfText } from "../model/inspect.ts";
 import type { Model } from "../model/model.ts";
 import type { StatementNode } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
-import { RATE } from "../units/quantity.ts";
+import type { Kind } from "../units/dimension.ts";
+import { unitFromText } from "../units/known-kinds.ts";
+import { NUMBER } from "../units/quantity.ts";
 import { unitToShow } from "../units/show.ts";
 import { type CodeAction, freeName, linesBehind, nameOf, refused, statementAt } from "./refactor-edits.ts";
 import type { View } from "./view.ts";
@@ -47,15 +48,18 @@ function ofPeaks(view: View, ask: string, answer: SweepAnswer | HistoryAnswer): 
   return [...answer.peaks].slice(0, MOST_OFFERS).map(([quantity, peak]) => {
     const call = `peak(${ask}, ${quantity})`;
     if ("reason" in peak) return refused(`Expect today's ${call}`, KIND, peak.reason);
-    const kind = kindOfText(view.model, quantity) ?? RATE;
-    // A turning speed is held in rad/s in answers, in Hz where it is shown.
-    const value = kind.rate ? peak.value / (2 * Math.PI) : peak.value;
-    const { text, factor } = unitToShow({ ...kind, value }, { system: view.units });
-    const limit = `${rounded(Math.abs(value) / factor, "up")}${text === "1" ? "" : ` ${text}`}`;
+    const si = meaningOf(answer.series.get(quantity)?.unit ?? "1");
+    const value = { ...si.kind, value: Math.abs(peak.value) * si.factor };
+    const { text, factor } = unitToShow(value, { system: view.units });
+    const limit = `${rounded(value.value / factor, "up")}${text === "1" ? "" : ` ${text}`}`;
     const name = `${ask}_${quantity.replaceAll(/[^\p{L}\p{M}\d_]+/gu, "_")}`;
     return expectation(view, name, `${call} <= ${limit}`);
   });
 }
+
+/** Unit of an answer: SI, rad/s for a turning speed, 1 for a bare number. */
+const meaningOf = (unit: string): { readonly kind: Kind; readonly factor: number } =>
+  unit === "1" ? { kind: NUMBER, factor: 1 } : unitFromText(unit);
 
 function expectation({ model }: View, wanted: string, text: string): CodeAction {
   const { tree } = model;

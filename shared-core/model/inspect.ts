@@ -48,7 +48,8 @@ export function kindOfExpression(model: Model, node: Expression, tree = model.tr
   if (node.kind === "path" && node.names.length > 1) return planSeries(node, draft)?.kind;
   const asked = { ...plan.asked, draft, expressions: new Map() };
   const planned = planAnswerExpression(node, asked, { ...plan.numbers, findings, tree, root: node });
-  return planned?.zero ? undefined : planned?.kind;
+  if (planned?.zero) return undefined;
+  return planned?.kind ?? planSeries(node, draft)?.kind;
 }
 
 /** As `kindOfExpression`, of a text that may stand in the file. */

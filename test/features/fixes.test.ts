@@ -164,7 +164,7 @@ describe("every feature, on any text", () => {
     (file) => {
       const view = viewOf(readFileSync(`examples/${file}`, "utf8"));
       whole(view);
-      for (let offset = 0; offset <= view.model.tree.text.length; offset += 31) run(view, offset);
+      for (let offset = 0; offset <= view.model.tree.text.length; offset += 61) run(view, offset);
     },
   );
 

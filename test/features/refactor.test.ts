@@ -451,6 +451,28 @@ describe("today's answer as an expectation", () => {
     expect(titles(text, true).filter((each) => each.startsWith("Expect peak("))).toHaveLength(2);
   });
 
+  it("holds turning speeds and differences in their own units", () => {
+    const text = `inertia a = 3 kg*m^2
+inertia b = 2 kg*m^2
+spring s between a and ground = 900 N*m/rad
+    loss_factor = 8 %
+spring u between a and b = 900 N*m/rad
+    loss_factor = 8 %
+torque f on b
+    amplitude = 30 N*m
+ask sweep| run
+    of = a.speed, a.angle - b.angle
+    from = 0.5 Hz
+    to = 9 Hz
+`;
+    for (const quantity of ["a.speed", "a.angle - b.angle"]) {
+      const after = textAfter(text, `Expect peak(run, ${quantity})`, true);
+      expect(verdicts(after)).toEqual([expect.stringMatching(/ true$/)]);
+      const value = viewOf(after, { judged: true }).report?.cases[0].verdicts[0];
+      expect((value?.value ?? 0) / (value?.limit ?? 1)).toBeGreaterThan(0.98);
+    }
+  });
+
   it("waits for the answer", () => {
     expect(textAfter(MODEL.replace("ASK", "ask mo|des"), "Expect today's")).toMatch(/not computed yet/);
   });
