@@ -15,12 +15,12 @@ export interface WordRoom {
   readonly lines: number;
 }
 
-export const NAME_SIZE = 12;
-export const VALUE_SIZE = 11;
 export const LINE_HEIGHT = 14;
-/** Widths of an average letter of a sans-serif face at these sizes, rounded up. */
+/** Widths of an average letter of a sans-serif face, names at 12 px and values at 11, rounded up. */
 const NAME_LETTER = 7.2;
 const VALUE_LETTER = 6.4;
+const WIDE: ReadonlySet<string> = new Set("mwMWOQGCD");
+const WIDE_LETTER = 11.5;
 const MOST_NAME_LETTERS = 24;
 /** Four digits, an exponent and a unit such as `kg*m^2`. */
 const VALUE_LETTERS = 16;
@@ -88,16 +88,17 @@ export function shownKeys(statement: StatementNode): readonly string[] {
 
 export function roomFor(name: string, statement: StatementNode): WordRoom {
   const values = shownKeys(statement).length;
-  const nameWidth = Math.min([...name].length, MOST_NAME_LETTERS) * NAME_LETTER;
   return {
-    width: Math.max(nameWidth, values > 0 ? VALUE_LETTERS * VALUE_LETTER : 0),
+    width: Math.max(nameWidth(name), values > 0 ? VALUE_LETTERS * VALUE_LETTER : 0),
     lines: 1 + values,
   };
 }
 
 /** Room that a bare name takes. */
-export const nameWidth = (name: string): number =>
-  [...shortened(name, MOST_NAME_LETTERS)].length * NAME_LETTER;
+export function nameWidth(name: string): number {
+  const letters = [...shortened(name, MOST_NAME_LETTERS)];
+  return letters.reduce((sum, letter) => sum + (WIDE.has(letter) ? WIDE_LETTER : NAME_LETTER), 0);
+}
 
 export function wordsFor(name: string, statement: StatementNode, text: string, show: ShowValue): Words {
   return {
