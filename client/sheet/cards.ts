@@ -66,7 +66,7 @@ export class Cards {
       kind: familyOf(card) as string,
       element,
       update: (next, content) => {
-        title.textContent = next.title;
+        title.replaceChildren(...titleParts(next));
         update(next, content);
       },
       recolour: () => body.recolour(),
@@ -99,6 +99,17 @@ export class Cards {
     };
   }
 }
+
+/** `sweep run_up`: the kind in words, the name as it stands in the text. */
+function titleParts({ title, name }: SheetCard): Node[] {
+  if (!title.endsWith(` ${name}`)) return [document.createTextNode(capital(title))];
+  return [
+    document.createTextNode(capital(title.slice(0, -name.length))),
+    html("span", { class: "name" }, name),
+  ];
+}
+
+const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
 
 /** A sweep becomes no other section when it turns into a history. */
 const familyOf = (card: SheetCard | undefined): string | undefined =>

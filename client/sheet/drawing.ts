@@ -66,6 +66,8 @@ export class Drawing {
 
   #drawSystem(scene: Scene): void {
     const picture = new ScenePicture(scene, { labels: true });
+    picture.element.style.maxWidth = `${scene.width}px`;
+    picture.element.style.minWidth = `${LEAST_SIZE * scene.width}px`;
     this.#picture = picture;
     this.#bars = undefined;
     const named = new Map<string, SVGGElement[]>();
@@ -127,6 +129,8 @@ export class Drawing {
   }
 }
 
+/** A narrow page shrinks the drawing so far; then it scrolls, for words must stay readable. */
+const LEAST_SIZE = 0.75;
 const CHART = { width: 800, height: 160 };
 
 /** A bar a coordinate, to both sides of the middle. */

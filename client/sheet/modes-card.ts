@@ -71,7 +71,7 @@ function shapePicture(scene: Scene, shape: Float64Array): SVGSVGElement {
   for (const group of rest.groups) group.classList.add("ghost");
   picture.element.prepend(...rest.groups);
   picture.element.setAttribute("class", "scene shape");
-  const [side, up] = [REACH + 6, REACH + 6];
+  const [side, up] = [6, REACH];
   picture.element.setAttribute(
     "viewBox",
     `${-side} ${-up} ${scene.width + 2 * side} ${scene.height + 2 * up}`,

@@ -99,7 +99,10 @@ export class Player {
 
   #step(now: number): void {
     const motion = this.#motion;
-    if (motion === undefined) return this.pause();
+    if (motion === undefined) {
+      this.pause();
+      return;
+    }
     const passed = Math.min(0.1, Math.max(0, (now - this.#last) / 1000)) * this.#factor();
     this.#last = now;
     const share = motion.kind === "mode" ? passed * CYCLES : passed / Math.max(1e-9, lengthOf(motion));

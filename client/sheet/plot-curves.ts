@@ -18,6 +18,8 @@ export interface CurvePlace {
   readonly box: PanelBox;
   readonly x: Scale;
   readonly y: Scale;
+  /** An angle: a leap over half the axis comes from its winding up, and is no part of the curve. */
+  readonly wraps: boolean;
 }
 
 /** Paints curves of one panel; what does not fit is cut off at its box. */
@@ -59,10 +61,10 @@ function trace(context: CanvasRenderingContext2D, drawn: Drawn, place: CurvePlac
 function traceSamples(
   context: CanvasRenderingContext2D,
   { curve }: Drawn,
-  { geometry: { left, right }, box, x, y }: CurvePlace,
+  { geometry: { left, right }, box, x, y, wraps }: CurvePlace,
   [first, last]: readonly [number, number],
 ): void {
-  let open = false;
+  let [open, before] = [false, 0];
   for (let i = first; i < last; i++) {
     const height = upright(y, box, curve.y[i]);
     const across = left + x.place(curve.x[i]) * (right - left);
@@ -70,7 +72,9 @@ function traceSamples(
       open = false;
       continue;
     }
-    if (open) context.lineTo(across, height);
+    const leaps = wraps && Math.abs(height - before) > box.height / 2;
+    before = height;
+    if (open && !leaps) context.lineTo(across, height);
     else context.moveTo(across, height);
     open = true;
   }

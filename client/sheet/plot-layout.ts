@@ -35,7 +35,7 @@ export interface Geometry {
 }
 
 export const MARGIN = { left: 62, right: 16, top: 16, bottom: 40 };
-const GAP = 18;
+const GAP = 28;
 /** Height of a panel of share 1, in pixels. */
 const SHARE = 92;
 

@@ -149,8 +149,9 @@ export class Plot {
     if (context === null) return;
     context.setTransform(dense, 0, 0, dense, 0, 0);
     context.clearRect(0, 0, width, height);
-    this.#data.forEach(({ curves }, i) => {
-      const place = { geometry, box: geometry.panels[i], x, y: y[i] };
+    this.#data.forEach(({ curves, panel }, i) => {
+      const wraps = panel.y.unit === "deg" && panel.y.to !== undefined;
+      const place = { geometry, box: geometry.panels[i], x, y: y[i], wraps };
       paintCurves(context, curves, place, ({ curve }) => this.#ink(curve));
     });
   }

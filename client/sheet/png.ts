@@ -48,7 +48,10 @@ export function standalone(picture: SVGSVGElement): string {
   const copy = picture.cloneNode(true) as SVGSVGElement;
   const [from, to] = [picture.querySelectorAll("*"), copy.querySelectorAll("*")];
   from.forEach((element, i) => {
-    if (element.classList.contains("hit")) return to[i].remove();
+    if (element.classList.contains("hit")) {
+      to[i].remove();
+      return;
+    }
     const style = getComputedStyle(element);
     for (const name of INKED) to[i].setAttribute(name, style.getPropertyValue(name));
     for (const name of ["class", "id", "role", "aria-selected"]) to[i].removeAttribute(name);

@@ -33,7 +33,7 @@ export class Roving {
       "aria-label": options.label,
     });
     this.element.addEventListener("keydown", (event) => this.#key(event));
-    this.element.addEventListener("focus", () => this.#stand(this.#at < 0 ? 0 : this.#at));
+    this.element.addEventListener("focus", () => this.#stand(Math.max(0, this.#at)));
     this.element.addEventListener("blur", () => this.#mark(undefined));
     this.element.addEventListener("pointerleave", () => this.#options.over(null));
   }

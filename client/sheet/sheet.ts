@@ -80,8 +80,8 @@ export class Sheet {
   hear(data: unknown): void {
     const message = readToSheet(data);
     if (message === undefined) return;
-    if (message.protocol !== SHEET_VERSION) return this.#outdated();
-    if (message.type === "content") this.#receive(message);
+    if (message.protocol !== SHEET_VERSION) this.#outdated();
+    else if (message.type === "content") this.#receive(message);
     else if (message.type === "highlight") this.#highlight(message.names);
     else this.#state(message);
   }
@@ -101,7 +101,8 @@ export class Sheet {
       content = unpackContent(message.content);
     } catch {
       // The page and its host are of different versions, or the text was cut on its way.
-      return this.#head.notice("The content of this sheet cannot be read. Close it and open it again.");
+      this.#head.notice("The content of this sheet cannot be read. Close it and open it again.");
+      return;
     }
     this.#failed = undefined;
     this.#page.keep({ uri: message.uri, case: content.case, units: content.units });

@@ -24,7 +24,8 @@ export interface Choice {
   readonly knobs?: Readonly<Record<string, number>>;
 }
 
-export const example = (name: string): string => readFileSync(join(root, "examples", `${name}.thrum`), "utf8");
+export const example = (name: string): string =>
+  readFileSync(join(root, "examples", `${name}.thrum`), "utf8");
 
 export class SheetHost {
   readonly file: string;
@@ -59,7 +60,13 @@ export class SheetHost {
   message(choice: Choice): ToSheet {
     const view = { ...this.#view, units: choice.units ?? "as-written" } as const;
     const content = packContent(sheetContent(view, choice));
-    return { type: "content", protocol: SHEET_VERSION, uri: `file:///${this.file}`, version: this.#version, content };
+    return {
+      type: "content",
+      protocol: SHEET_VERSION,
+      uri: `file:///${this.file}`,
+      version: this.#version,
+      content,
+    };
   }
 
   show(choice: Choice): Promise<void> {
@@ -78,5 +85,12 @@ export class SheetHost {
 function viewOf(file: string, text: string): View {
   const model = understand(file, text, NO_FILES);
   const report = model.buildable ? judge(model) : undefined;
-  return { model, lines: new LineIndex(text), units: "as-written", stale: false, others: [], ...(report && { report }) };
+  return {
+    model,
+    lines: new LineIndex(text),
+    units: "as-written",
+    stale: false,
+    others: [],
+    ...(report && { report }),
+  };
 }

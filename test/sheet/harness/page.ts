@@ -6,7 +6,7 @@ import type { Browser, BrowserContextOptions, Page } from "playwright-core";
 import type { ToSheet } from "../../../shared-core/index.ts";
 import { root } from "../../house/files.ts";
 import type { SheetHost } from "./host.ts";
-import { type ThemeKind, THEMES } from "./themes.ts";
+import { THEMES, type ThemeKind } from "./themes.ts";
 
 const ORIGIN = "http://sheet.test";
 const NONCE = "harness";
@@ -44,7 +44,11 @@ export interface Harness {
 }
 
 /** Opens a sheet and waits for its first content. */
-export async function openSheet(browser: Browser, host: SheetHost, options: HarnessOptions = {}): Promise<Harness> {
+export async function openSheet(
+  browser: Browser,
+  host: SheetHost,
+  options: HarnessOptions = {},
+): Promise<Harness> {
   const { theme = "vscode-light", state, ...context } = options;
   const page = await browser.newPage({ viewport: { width: 960, height: 900 }, ...context });
   const faults: string[] = [];
@@ -59,7 +63,11 @@ export async function openSheet(browser: Browser, host: SheetHost, options: Harn
   await page.route(`${ORIGIN}/**`, (route) => {
     const file = files[new URL(route.request().url()).pathname];
     if (file === undefined) return route.fulfill({ status: 404, body: "" });
-    return route.fulfill({ contentType: file[0], body: file[1], headers: { "content-security-policy": POLICY } });
+    return route.fulfill({
+      contentType: file[0],
+      body: file[1],
+      headers: { "content-security-policy": POLICY },
+    });
   });
   await page.exposeFunction("toHost", (message: unknown) => host.hear(message));
   host.post = (message: ToSheet) =>
