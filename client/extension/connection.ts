@@ -11,10 +11,16 @@ export interface Connection extends vscode.Disposable {
   readonly client: BaseLanguageClient;
 }
 
-/** Schemes whose documents are models; the old side of a comparison (`git:`) is not one. */
-const SCHEMES = ["file", "untitled", "vscode-vfs", "vscode-test-web", "memfs"];
+/** Schemes of files that are models; the old side of a comparison (`git:`) is not one. */
+export const FILE_SCHEMES: readonly string[] = [
+  "file",
+  "vscode-remote",
+  "vscode-vfs",
+  "vscode-test-web",
+  "memfs",
+];
 
-export const SELECTOR = SCHEMES.map((scheme) => ({ language: "thrum", scheme }));
+export const SELECTOR = [...FILE_SCHEMES, "untitled"].map((scheme) => ({ language: "thrum", scheme }));
 
 /** Options that do not depend on where the server runs. */
 export function clientOptions(

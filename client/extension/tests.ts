@@ -7,6 +7,7 @@ import {
   SUMMARY,
   type Summary,
 } from "../../shared-core/index.ts";
+import { FILE_SCHEMES } from "./connection.ts";
 
 /**
  * Every expectation as a test: file, expectation, and case where there are cases. Ids are made of names, so they
@@ -32,14 +33,13 @@ export function registerTests(
     await (item === undefined ? tree.findFiles() : tree.refresh(item));
   };
   controller.refreshHandler = () => tree.findFiles();
+  for (const document of vscode.workspace.textDocuments) tree.opened(document);
   return vscode.Disposable.from(
     controller,
     watcher,
     watcher.onDidCreate((uri) => tree.file(uri)),
     watcher.onDidDelete((uri) => controller.items.delete(uri.toString())),
-    vscode.workspace.onDidOpenTextDocument((document) => {
-      if (document.languageId === "thrum" && document.uri.scheme === "file") tree.file(document.uri);
-    }),
+    vscode.workspace.onDidOpenTextDocument((document) => tree.opened(document)),
     onState((state) => {
       if (state.state === "ready") void tree.changed(vscode.Uri.parse(state.uri).toString());
     }),
@@ -66,6 +66,10 @@ class TestTree {
     item.canResolveChildren = true;
     this.#controller.items.add(item);
     return item;
+  }
+
+  opened({ languageId, uri }: vscode.TextDocument): void {
+    if (languageId === "thrum" && FILE_SCHEMES.includes(uri.scheme)) this.file(uri);
   }
 
   async findFiles(): Promise<void> {
