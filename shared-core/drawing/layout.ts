@@ -53,7 +53,8 @@ export const SYMBOL_HALF = 13;
 const WORDS_GAP = 6;
 const PORT_PAD = 16;
 const WIDEST_NODE = 520;
-const SWEEPS = 12;
+/** Rounds in which rows pull each other straight; with more the examples change by less than a pixel. */
+const SWEEPS = 40;
 const GAP = 16;
 const MARGIN = 14;
 /** Blocks stand side by side up to this width. */
@@ -211,8 +212,11 @@ class BlockLayout {
         row,
         row.map(() => 0),
       );
+    const widest = this.#widestRow();
     for (let sweep = 0; sweep < SWEEPS; sweep++) {
       for (const row of sweep % 2 === 0 ? this.#rows : [...this.#rows].reverse()) {
+        // In the end one row stands still, or all would wander, and those far from it lag behind.
+        if (sweep >= SWEEPS / 2 && row === widest) continue;
         this.#set(
           row,
           row.map((cell) => (cell.is === "node" ? this.#wantedByNode(cell) : this.#wantedByLink(cell))),
@@ -225,6 +229,13 @@ class BlockLayout {
         this.#rows[k].map((cell) => this.#wantedByLink(cell)),
       );
     }
+  }
+
+  #widestRow(): Cell[] | undefined {
+    const widths = this.#rows.map((row) =>
+      row.reduce((sum, cell) => sum + this.#extent(cell).left + this.#extent(cell).right, 0),
+    );
+    return this.#rows[widths.indexOf(Math.max(...widths))];
   }
 
   #set(row: readonly Cell[], wanted: readonly number[]): void {
