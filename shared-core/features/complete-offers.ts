@@ -159,6 +159,18 @@ export function quantityOffers(
   });
 }
 
+/** Arguments that are written with their names: `at: 20 Hz`. */
+export const argumentOffers = (
+  parameters: readonly { readonly name: string; readonly says: string }[],
+): readonly Offer[] =>
+  parameters.map(({ name, says }) => ({
+    label: name,
+    kind: "word",
+    detail: says,
+    insert: `${name}: `,
+    rank: 0,
+  }));
+
 export const wordOffers = (words: readonly string[], detail?: string): readonly Offer[] =>
   words.map((label) => ({ label, kind: "word", detail, rank: 0 }));
 

@@ -33,6 +33,8 @@ export interface OpenCall {
   readonly argument?: string;
   /** Where its first argument starts; the texts of the arguments in front. */
   readonly before: readonly string[];
+  /** Names of those that were given by name. */
+  readonly named: readonly string[];
 }
 
 interface Frame {
@@ -41,6 +43,7 @@ interface Frame {
   index: number;
   argument?: string;
   before: string[];
+  named: string[];
   start: number;
   operand: boolean;
   product: boolean;
@@ -202,6 +205,7 @@ class ValueReader {
       this.#itemStart = word.end;
       top.part = "value";
     } else top.before.push(text);
+    if (top.argument !== undefined) top.named.push(top.argument);
     top.index++;
     top.argument = undefined;
     this.#restart(top, word.end);
@@ -230,12 +234,23 @@ class ValueReader {
 }
 
 function frame(kind: Frame["kind"], start: number, callee?: string): Frame {
-  return { kind, callee, index: 0, before: [], start, operand: true, product: false, part: "value" };
+  return {
+    kind,
+    callee,
+    index: 0,
+    before: [],
+    named: [],
+    start,
+    operand: true,
+    product: false,
+    part: "value",
+  };
 }
 
-const openCall = ({ callee, index, argument, before }: Frame): OpenCall => ({
+const openCall = ({ callee, index, argument, before, named }: Frame): OpenCall => ({
   callee: callee ?? "",
   index,
   argument,
   before,
+  named,
 });

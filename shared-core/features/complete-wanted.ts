@@ -7,7 +7,7 @@ import type { Kind } from "../units/dimension.ts";
 import { KNOWN_KINDS, knownKind } from "../units/known-kinds.ts";
 import { isNumber, NUMBER, RATE, sameKind } from "../units/quantity.ts";
 import type { DetailContent, Measure } from "../vocabulary/description.ts";
-import { argumentKinds, type ParameterDescription } from "../vocabulary/functions.ts";
+import { argumentKinds, functionOf, type ParameterDescription } from "../vocabulary/functions.ts";
 import { dimensionOf, unitsOf } from "../vocabulary/measures.ts";
 import { type Candidate, coordinates, elements, motionsOf, type Names, visible } from "./complete-names.ts";
 import { type OpenCall, parameterOf, type ValuePlace } from "./complete-value.ts";
@@ -19,6 +19,12 @@ export type Wanted =
   | { readonly is: "quantities"; readonly bare: boolean }
   | { readonly is: "words"; readonly words: readonly string[] }
   | { readonly is: "unit"; readonly units: readonly string[] }
+  /** Arguments that are written with their names, beside numbers where those fit too. */
+  | {
+      readonly is: "arguments";
+      readonly parameters: readonly { readonly name: string; readonly says: string }[];
+      readonly number?: WantedNumber;
+    }
   | { readonly is: "file" }
   | { readonly is: "nothing" };
 
@@ -53,6 +59,7 @@ export function wantedAt(context: ValueContext, place: ValuePlace): Wanted {
   const { call } = place;
   if (call) return wantedInCall(context, place, call);
   if (place.part === "tolerance") return toleranceOf(context, place);
+  if (context.content.is === "bind") return byContent(context, place);
   if (place.sibling || place.inProduct) return number(context, kindsBeside(context, place));
   return place.part === "at" ? number(context, [RATE]) : byContent(context, place);
 }
@@ -136,7 +143,7 @@ function byContent(context: ValueContext, place: ValuePlace): Wanted {
     case "like":
       return number(context, [content.kind]);
     case "bind":
-      return { is: "names", candidates: coordinates(names) };
+      return number(context, undefined, { units: [], also: coordinates(names) });
   }
 }
 
@@ -185,7 +192,7 @@ function namesFor(
 function wantedInCall(context: ValueContext, place: ValuePlace, call: OpenCall): Wanted {
   const parameter = parameterOf(call);
   if (place.sibling || place.inProduct) return number(context, kindsBeside(context, place));
-  if (parameter === undefined) return number(context, undefined);
+  if (parameter === undefined) return namedOrNumber(context, call);
   const { content } = parameter;
   const { names } = context;
   const of = (test: (each: Candidate) => boolean): Wanted => ({
@@ -218,6 +225,23 @@ function wantedInCall(context: ValueContext, place: ValuePlace, call: OpenCall):
     case "expression":
       return number(context, undefined);
   }
+}
+
+/** Behind the last argument in order come those with names; a kit takes its parameters either way. */
+function namedOrNumber(context: ValueContext, call: OpenCall): Wanted {
+  const any = number(context, undefined);
+  if (call.argument !== undefined) return any;
+  const given = new Set(call.named);
+  const fn = functionOf(call.callee);
+  if (fn) {
+    const parameters = fn.parameters.filter(({ name, named }) => named && !given.has(name));
+    return parameters.length > 0 ? { is: "arguments", parameters } : NOTHING;
+  }
+  const kit = context.names.model.entities.get(call.callee)?.node.slots.parameters;
+  if (kit?.kind !== "parameters" || any.is !== "number") return any;
+  const rest = kit.items.slice(given.size > 0 ? 0 : call.index).filter(({ text }) => !given.has(text));
+  const parameters = rest.map(({ text }) => ({ name: text, says: "a parameter of the kit" }));
+  return { is: "arguments", parameters, number: any.number };
 }
 
 const kindOfAsk = ({ model }: Names, name: string): string | undefined =>

@@ -1,5 +1,5 @@
 /** Completion: finds out what is being typed and offers what fits there, and nothing else. */
-import { shapeOf } from "../model/drive-shapes.ts";
+import { SHAPES } from "../model/drive-shapes.ts";
 import { placeAt } from "../syntax/search.ts";
 import type { StatementNode } from "../syntax/tree.ts";
 import { type Span, span } from "../text/span.ts";
@@ -18,6 +18,7 @@ import {
   withQuantities,
 } from "./complete-names.ts";
 import {
+  argumentOffers,
   type Completion,
   candidateOffers,
   componentOffers,
@@ -32,7 +33,7 @@ import {
   wordOffers,
 } from "./complete-offers.ts";
 import { noteOffers, noteSpan, quotedOffers, textOffers } from "./complete-text.ts";
-import type { ValuePlace } from "./complete-value.ts";
+import { parameterOf, type ValuePlace } from "./complete-value.ts";
 import { unitsFor, type ValueContext, type Wanted, wantedAt } from "./complete-wanted.ts";
 import type { View } from "./view.ts";
 
@@ -152,8 +153,12 @@ function lineStart(
     );
   if (line.indent > 0) return [];
   const { version } = view.model.tree;
+  const isHere =
+    version !== undefined &&
+    line.line.span.start <= version.span.start &&
+    version.span.end <= line.line.span.end;
   const isFirst =
-    !version && view.model.tree.lines.slice(0, line.index).every(({ role }) => role === "blank");
+    (!version || isHere) && view.model.tree.lines.slice(0, line.index).every(({ role }) => role === "blank");
   const start: Offer[] = isFirst
     ? [{ label: "thrum 1", kind: "keyword", detail: "the version of the language", rank: 0 }]
     : [];
@@ -176,14 +181,25 @@ function keyOffers(statement: StatementNode, line: TypedLine, names: Names): rea
   }
   const description = descriptionOf(statement);
   if (description === undefined) return [];
-  const shape = description.family === "drives" ? shapeOf(keys) : undefined;
+  const shaped = description.family === "drives" ? keysOfShapes(keys) : undefined;
   const motions = motionsOf(statement, names);
   const fitting = description.details.filter(({ key, whenMotion }) => {
     if (keys.has(key) || (statement.value && key === description.principal)) return false;
-    if (shape && !shape.takes.includes(key)) return false;
+    if (shaped && !shaped.has(key)) return false;
     return !whenMotion || whenMotion.some((motion) => motions.includes(motion));
   });
   return detailOffers(fitting, motions, line.behind);
+}
+
+/** Details of the shapes that the given ones can still make; undefined: none is given, and all can be made. */
+function keysOfShapes(given: ReadonlySet<string>): ReadonlySet<string> | undefined {
+  if (given.size === 0) return undefined;
+  const open = SHAPES.filter(({ takes }) => [...given].every((key) => takes.includes(key)));
+  const keys = new Set(open.flatMap(({ takes }) => takes));
+  // A chirp takes the one or the other.
+  if (given.has("unbalance")) keys.delete("amplitude");
+  if (given.has("amplitude")) keys.delete("unbalance");
+  return keys;
 }
 
 function inDetail(typing: Typing, statement: StatementNode, names: Names): readonly Offer[] {
@@ -273,6 +289,11 @@ function wantedOffers(
     }
     case "names":
       return candidateOffers(wanted.candidates, names);
+    case "arguments":
+      return [
+        ...argumentOffers(wanted.parameters),
+        ...(wanted.number ? numberOffers(wanted.number, names, statement) : []),
+      ];
     case "quantities":
       return candidateOffers(
         wanted.bare ? [...new Set([...withQuantities(names), ...elements(names)])] : withQuantities(names),
@@ -304,7 +325,14 @@ function memberOffers({ content }: ValueContext, { path, call }: ValuePlace, nam
 function operatorOffers({ content, names, keyword }: ValueContext, place: ValuePlace): readonly Offer[] {
   if (place.itemWords.length === 0) return [];
   const { part, call, itemWords, inProduct } = place;
-  if (call) return wordOffers([...(call.callee === "if" && call.index === 0 ? ["and", "or"] : []), "as"]);
+  if (call) {
+    const isRange = parameterOf(call)?.content.is === "range";
+    return wordOffers([
+      ...(isRange ? ["to"] : []),
+      ...(call.callee === "if" && call.index === 0 ? ["and", "or"] : []),
+      "as",
+    ]);
+  }
   const has = (word: string) => itemWords.includes(word);
   if (part === "tolerance")
     return wordOffers(

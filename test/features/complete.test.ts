@@ -1,9 +1,10 @@
-import { readFileSync } from "node:fs";
+import { readdirSync, readFileSync } from "node:fs";
 import { describe, expect, it } from "vitest";
 import { type CompleteOptions, type Completion, complete } from "../../shared-core/features/complete.ts";
 import type { Motion } from "../../shared-core/mechanics/builder.ts";
 import { PARSING } from "../../shared-core/model/parsing.ts";
 import { parse } from "../../shared-core/syntax/parser.ts";
+import { ROLE } from "../../shared-core/syntax/tree.ts";
 import type { Kind } from "../../shared-core/units/dimension.ts";
 import { unitFromText } from "../../shared-core/units/known-kinds.ts";
 import { NUMBER, sameKind } from "../../shared-core/units/quantity.ts";
@@ -411,6 +412,10 @@ describe("calls", () => {
     ["expect x = static_force(|", ["mounts", "oil", "shaft_line"]],
     ["expect x = below(run_up, unit.velocity, |", ["zone"]],
     ["expect x = period(|", ["bob"]],
+    ["expect x = value(run_up, unit.velocity, |", ["at"]],
+    ["expect x = value(run_up, unit.velocity, at: 3 Hz, |", []],
+    ["expect x = clear_of_modes(3 Hz, |", ["orders"]],
+    ["let x = shaft(80 GPa, 3 mm, 1 m, |", ["bore"]],
     ["expect x = effective_mass(1, |", ["line", "turn", "x", "y", "z", "rx", "ry", "rz"]],
     ["expect x = sensitivity(natural_frequency(1), |", Object.keys(UNITS)],
   ])("%s", (line, expected) => {
@@ -453,6 +458,7 @@ describe("words", () => {
     ["spring x between unit and slab = 3 N/mm\n    damping_ratio = 5 % |", ["at"]],
     ["force x on unit\n    speed = a_rate |", ["to", "within", "as"]],
     ["mass x = a_mass |", ["within", "as"]],
+    ["expect x = clear_of_modes(3 Hz |", ["to", "as"]],
   ])("%s", (line, expected) => {
     expect(ofKind(offered(SETUP + line), "word")).toEqual(expected);
   });
@@ -500,7 +506,10 @@ describe("files, notes, cases", () => {
 describe("manners", () => {
   it("leaves out details that are there, and those of another shape", () => {
     const keys = labels(`${SETUP}force x on unit\n    unbalance = 3 kg*m\n    |`);
-    expect(keys.sort()).toEqual(["phase", "speed", "turning"]);
+    expect(keys.sort()).toEqual(["chirp", "lasting", "phase", "speed", "turning"]);
+    expect(labels(`${SETUP}force x on unit\n    speed = 3 Hz\n    |`).sort()).toEqual([
+      ...["amplitude", "frequency", "order", "phase", "turning", "unbalance"],
+    ]);
     expect(labels(`${SETUP}mass x = 3 kg\n    |`)).not.toContain("mass");
     expect(labels(`${SETUP}mass x\n    |`)[0]).toBe("mass");
   });
@@ -535,6 +544,26 @@ describe("manners", () => {
     const all = offered(`${SETUP}expect x = |`);
     expect(new Set(all.map(({ label }) => label)).size).toBe(all.length);
     expect(all.map(({ sort }) => sort)).toEqual(all.map(({ sort }) => sort).sort());
+  });
+
+  it("offers the word that stands there, all over the examples", () => {
+    const without: string[] = [];
+    for (const file of readdirSync("examples").filter((each) => each.endsWith(".thrum"))) {
+      const text = readFileSync(`examples/${file}`, "utf8");
+      const view = viewOf(text);
+      const { tokens, roles } = view.model.tree;
+      for (const [i, { kind, offset, length }] of tokens.entries()) {
+        const inUnit = roles[i] === ROLE.unit && roles[i - 1] === ROLE.unit;
+        if (kind !== "name" || roles[i] === ROLE.definition || inUnit) continue;
+        const word = text.slice(offset, offset + length);
+        const found = complete(view, offset + 1, { explicit: true }).some(({ label }) => {
+          return roles[i] === ROLE.unit ? text.startsWith(label, offset) : label.split(/[ .]/)[0] === word;
+        });
+        if (!found) without.push(`${file}: ${/\S+/.exec(text.slice(offset))?.[0]}`);
+      }
+    }
+    // A unit that is spelt unlike those of the list is typed by hand.
+    expect(new Set(without)).toEqual(new Set(["pump-line.thrum: lbm*ft^2"]));
   });
 
   it("never throws, at any offset and for any prefix of an example", () => {
