@@ -2,12 +2,12 @@
 import { derivatives } from "../model/derivatives.ts";
 import { instantiate } from "../model/instantiate.ts";
 import type { Entity, Instance, Model, ParameterValue } from "../model/model.ts";
+import { saysItself } from "../syntax/says-itself.ts";
 import type { StatementNode, Tree } from "../syntax/tree.ts";
 import { formatNumber, type UnitSystem } from "../units/show.ts";
 import { equalities } from "./hover-unit.ts";
 import { occurrences } from "./navigate-names.ts";
 import { type Block, lines, numeric, type Phrase } from "./readout.ts";
-import { saysItself } from "./readout-literal.ts";
 import { elasticModes, modesWorthSaying } from "./readout-modes.ts";
 import {
   currentInstance,

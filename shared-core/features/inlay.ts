@@ -2,9 +2,9 @@
 import { evaluateExpression } from "../model/instantiate.ts";
 import type { Instance } from "../model/model.ts";
 import { fail } from "../numerics/outcome.ts";
+import { saysItself } from "../syntax/says-itself.ts";
 import type { Expression, Item, StatementNode } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
-import { saysItself } from "./readout-literal.ts";
 import { coordinatesOf, heldFrequency } from "./readout-modes.ts";
 import { currentInstance, type Numbers, numbersOf, showHz, showQuantity } from "./readout-numbers.ts";
 import {

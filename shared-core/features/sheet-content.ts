@@ -1,14 +1,14 @@
 /** Everything that the response sheet shows, from a view and what was chosen on the page. */
 import { rulerOf } from "../drawing/ruler-of.ts";
+import { shownValues } from "../drawing/shown-values.ts";
 import { systemScene } from "../drawing/system-scene.ts";
 import { plainCase } from "../judgement/plain-case.ts";
 import type { CaseReport } from "../judgement/report.ts";
-import { currentInstance, type Numbers, numbersOf } from "./readout-numbers.ts";
+import { currentInstance, type Numbers, numbersOf, show } from "./readout-numbers.ts";
 import type { SheetContent } from "./sheet.ts";
 import { cardsOf } from "./sheet-cards.ts";
 import { knobsOf, ledgerOf } from "./sheet-ledger.ts";
 import { motionsOf } from "./sheet-motions.ts";
-import { shownValues } from "./sheet-values.ts";
 import { stateText, summaryOf } from "./summary.ts";
 import type { View } from "./view.ts";
 
@@ -52,7 +52,7 @@ export function sheetContent(view: View, choice: SheetChoice = {}): SheetContent
     scene: systemScene(
       view.stale ? numbers.report.model : model,
       shown.instance.assembly,
-      shownValues(shown.instance, numbers.units, view.units),
+      shownValues(shown.instance, view.units, (si, value) => show(numbers, si, value)),
     ),
     ruler: rulerOf(shown),
     motions: motionsOf(numbers, shown),

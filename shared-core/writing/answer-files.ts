@@ -1,10 +1,15 @@
+import { rulerOf } from "../drawing/ruler-of.ts";
+import { shownValues } from "../drawing/shown-values.ts";
+import { systemScene } from "../drawing/system-scene.ts";
 import type { CaseReport, FileReport } from "../judgement/report.ts";
 import type { UnitSystem } from "../units/show.ts";
 import { answerCsv, modesCsv } from "./answer-csv.ts";
 import { historyFigure, modesFigure, sweepFigure } from "./figure/answer-figures.ts";
+import { rulerSvg } from "./figure/ruler-svg.ts";
+import { sceneSvg } from "./figure/scene-svg.ts";
 import { figureSvg } from "./figure/svg.ts";
 import type { TextFile } from "./system-files.ts";
-import { type UnitView, unitView } from "./units/unit-view.ts";
+import { inUnit, type UnitView, unitView } from "./units/unit-view.ts";
 import { writtenUnits } from "./units/written-units.ts";
 
 export interface AnswerFilesOptions {
@@ -15,16 +20,38 @@ export interface AnswerFilesOptions {
 
 const PICTURE = { width: 720, height: 460 };
 
-/** One file for each answered ask and case: `run_up.csv`, `run_up.winter.csv`. CSV is SI; pictures are in `units`. */
+/**
+ * One file for each answered ask and case: `run_up.csv`, `run_up.winter.csv`. CSV is SI; pictures are in `units`, and
+ * with them come the system (`drawing.svg`) and its frequencies (`ruler.svg`).
+ */
 export function answerFiles(report: FileReport, options: AnswerFilesOptions): TextFile[] {
   const units = unitView(options.units, writtenUnits(report.model));
   return report.cases.flatMap((each) => {
     const suffix = each.name === report.model.cases[0].name ? "" : `.${each.name}`;
-    return [...contents(each, options, units)].map(([ask, text]) => ({
-      name: `${ask}${suffix}.${options.as}`,
-      text,
-    }));
+    const answers = contents(each, options, units);
+    const pictures = options.as === "svg" ? systemPictures(report, each, options.units, units) : new Map();
+    // An ask may be called like a picture; the answer keeps its name.
+    const free = [...pictures].map(([name, text]) => [answers.has(name) ? `${name}_` : name, text]);
+    return [...free, ...answers].map(([name, text]) => ({ name: `${name}${suffix}.${options.as}`, text }));
   });
+}
+
+/** The drawing, where the system is small enough to be drawn, and the frequency ruler, where there are modes. */
+function systemPictures(
+  { model }: FileReport,
+  each: CaseReport,
+  system: UnitSystem,
+  units: UnitView,
+): Map<string, string> {
+  const show = (si: string, value: number): string => inUnit(value, units.unitFor(si, Math.abs(value)));
+  const { assembly } = each.instance;
+  const scene = systemScene(model, assembly, shownValues(each.instance, system, show));
+  const ruler = rulerOf(each);
+  const title = model.title ?? model.file;
+  return new Map([
+    ...(scene.kind === "system" ? [["drawing", sceneSvg(scene, title)] as const] : []),
+    ...(ruler === null ? [] : [["ruler", rulerSvg(ruler, title, PICTURE.width)] as const]),
+  ]);
 }
 
 function contents(each: CaseReport, { asks, as }: AnswerFilesOptions, units: UnitView): Map<string, string> {

@@ -1,4 +1,4 @@
-import type { Expression } from "../syntax/tree.ts";
+import type { Expression } from "./tree.ts";
 
 /** Whether the text shows the number as it is: a literal, with its sign or its unit behind `as`. */
 export function saysItself(expression: Expression): boolean {

@@ -1,27 +1,41 @@
 /** Values beside the symbols of a drawing, in the chosen units. */
-import type { ShowValue } from "../drawing/words.ts";
 import type { DriveShape, ElementInfo } from "../mechanics/assembly.ts";
-import type { Instance } from "../model/model.ts";
+import type { Instance, ParameterValue } from "../model/model.ts";
+import { saysItself } from "../syntax/says-itself.ts";
 import type { Expression, Item, StatementNode } from "../syntax/tree.ts";
-import type { UnitSystem } from "../units/show.ts";
-import { inUnit, type UnitView } from "../writing/units/unit-view.ts";
-import { saysItself } from "./readout-literal.ts";
-import { showParameter } from "./readout-numbers.ts";
+import { isFault } from "../units/fault.ts";
+import { isNumber } from "../units/quantity.ts";
+import { formatQuantity, type UnitSystem } from "../units/show.ts";
+import { unitOf } from "../units/unit-of.ts";
+import type { ShowValue } from "./words.ts";
 
-/** Literals stay as written while the units are; everything else is put in numbers where there are some. */
-export function shownValues(instance: Instance, units: UnitView, system: UnitSystem): ShowValue {
+/**
+ * Literals stay as written while the units are; everything else is put in numbers where there are some.
+ * @param show an SI value with its unit as people see it; the SI unit as text
+ */
+export function shownValues(
+  instance: Instance,
+  system: UnitSystem,
+  show: (si: string, value: number) => string,
+): ShowValue {
   return (statement, key) => {
     const expression = expressionOf(statement, key);
     if (expression === undefined) return undefined;
     if (system === "as-written" && saysItself(expression)) return undefined;
     const parameter =
       expression.kind === "path" ? instance.parameters.get(expression.names[0].text) : undefined;
-    if (parameter !== undefined) return showParameter(parameter, parameter.value, system);
+    if (parameter !== undefined) return parameterText(parameter, system);
     const found = computedValue(statement, key, instance);
-    return found === undefined
-      ? undefined
-      : inUnit(found.value, units.unitFor(found.si, Math.abs(found.value)));
+    return found === undefined ? undefined : show(found.si, found.value);
   };
+}
+
+/** In the unit it is written in, or in that of the system; the spelling of a rate is no question of the system. */
+function parameterText(parameter: ParameterValue, system: UnitSystem): string {
+  const meaning = parameter.unitNode === undefined ? undefined : unitOf(parameter.unitNode);
+  const unit = meaning === undefined || isFault(meaning) ? undefined : meaning;
+  const kept = system === "as-written" || parameter.rate || isNumber(parameter);
+  return formatQuantity(parameter, kept && unit ? { unit } : { system });
 }
 
 function expressionOf(statement: StatementNode, key: string): Expression | undefined {
