@@ -10,6 +10,7 @@
  */
 import type { FlatForms } from "../mechanics/flat-forms.ts";
 import { flatForms, formValues } from "../mechanics/flat-forms.ts";
+import type { Reduction } from "../mechanics/massless.ts";
 import type { StateInput, StateSpace } from "../mechanics/state-space.ts";
 import { factorLu, solveLu } from "../numerics/lu.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
@@ -69,29 +70,64 @@ export function modalStates(
   });
 }
 
-/** Where the relaxing places stand under springs alone, a unit of each inertial coordinate: G, d x m. */
+/**
+ * Where the relaxing places stand for a unit of each inertial coordinate, G, d x m: under springs alone, and where
+ * there are none where the dampers would draw them. A free motion then strains neither.
+ */
 function heldPlaces({ reduction }: StateSpace): Outcome<Float64Array> {
-  const { inertial: m, relaxing: d, stiffness } = reduction;
-  const own = new Float64Array(d * d);
-  const pull = new Float64Array(d * m);
-  const sprung = new Uint8Array(d);
-  for (const { form, value } of stiffness) {
+  const { inertial: m, relaxing: d, stiffness, damping } = reduction;
+  const held = new Float64Array(d * m);
+  const sprung = new Set<number>();
+  for (const { form } of stiffness) for (const i of form.coordinates) if (i >= m) sprung.add(i - m);
+  const places = Array.from({ length: d }, (_, k) => k);
+  const bySprings = placesUnder(
+    stiffness,
+    m,
+    places.filter((k) => sprung.has(k)),
+    held,
+  );
+  if (bySprings !== undefined) return fail(bySprings);
+  const byDampers = placesUnder(
+    damping,
+    m,
+    places.filter((k) => !sprung.has(k)),
+    held,
+  );
+  return byDampers === undefined ? succeed(held) : fail(byDampers);
+}
+
+/** Solves for the rows of some places, those of the others as they stand; a reason where terms cancel. */
+function placesUnder(
+  terms: Reduction["stiffness"],
+  m: number,
+  places: readonly number[],
+  held: Float64Array,
+): string | undefined {
+  const count = places.length;
+  if (count === 0) return undefined;
+  const position = new Map(places.map((k, p) => [k + m, p]));
+  const own = new Float64Array(count * count);
+  const pull = new Float64Array(count * m);
+  for (const { form, value } of terms) {
     form.coordinates.forEach((i, p) => {
-      if (i < m) return;
-      sprung[i - m] = 1;
+      const row = position.get(i);
+      if (row === undefined) return;
       form.coordinates.forEach((j, q) => {
         const entry = value * form.factors[p] * form.factors[q];
-        if (j < m) pull[(i - m) * m + j] -= entry;
-        else own[(i - m) * d + j - m] += entry;
+        const column = position.get(j);
+        if (column !== undefined) own[row * count + column] += entry;
+        else if (j < m) pull[row * m + j] -= entry;
+        else for (let c = 0; c < m; c++) pull[row * m + c] -= entry * held[(j - m) * m + c];
       });
     });
   }
-  if (d === 0) return succeed(pull);
-  // A place that feels dampers only stays where it is.
-  for (let k = 0; k < d; k++) if (!sprung[k]) own[k * d + k] = 1;
-  const lu = factorLu(own, d);
-  if (!lu.ok) return fail("springs of both signs cancel at a place without inertia");
-  return succeed(solveLu(lu.value, pull, m));
+  const lu = factorLu(own, count);
+  if (!lu.ok) return "springs or dampers of both signs cancel at a place without inertia";
+  const solved = solveLu(lu.value, pull, m);
+  places.forEach((k, p) => {
+    held.set(solved.subarray(p * m, (p + 1) * m), k * m);
+  });
+  return undefined;
 }
 
 function transformation(basis: ModalBasis, held: Float64Array, m: number, d: number): Float64Array {

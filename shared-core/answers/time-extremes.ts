@@ -64,11 +64,16 @@ export function extreme(trace: Trace, column: number, prober: Prober, sign: 1 | 
   const margin = PARABOLA_ERROR * (high - low);
   const candidates = turningRows(trace, y, sign, sign * y[best] - margin);
   for (const { row } of candidates.slice(0, MOST_POLISHED)) {
+    // Rows of one instant, before and after a jump, share the intervals on both sides.
+    let first = row;
+    let last = row;
+    while (first > 0 && times[first - 1] === times[row]) first--;
+    while (last + 1 < count && times[last + 1] === times[row]) last++;
     for (const [from, to] of [
-      [row - 1, row],
-      [row, row + 1],
+      [first - 1, first],
+      [last, last + 1],
     ]) {
-      if (from < 0 || to >= count || !(times[to] > times[from])) continue;
+      if (from < 0 || to >= count) continue;
       const found = turnBetween(prober, times[from], times[to], sign);
       if (found !== undefined && sign * found.value > sign * peak.value) peak = found;
     }
