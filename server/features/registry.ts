@@ -10,6 +10,7 @@ import { registerNavigation } from "./navigation.ts";
 import { registerOwnRequests } from "./own-requests.ts";
 import { registerRename } from "./rename.ts";
 import { registerSemanticTokens } from "./semantic-tokens.ts";
+import { registerSheet } from "./sheet.ts";
 import { registerStructure } from "./structure.ts";
 import { registerSymbols } from "./symbols.ts";
 
@@ -32,4 +33,5 @@ const FEATURES: readonly ((serving: Serving) => void)[] = [
   registerFormatting,
   registerFileMoves,
   registerOwnRequests,
+  registerSheet,
 ];
