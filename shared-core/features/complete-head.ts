@@ -21,6 +21,11 @@ export function headSpot({ grammar }: StatementDescription, words: readonly Word
   const spot = walk(grammar.head, words);
   if (!Array.isArray(spot)) return spot as HeadSpot;
   const rest = spot as readonly Word[];
+  const last = grammar.head.at(-1);
+  if (rest.length === 0 && last?.kind === "tuple") {
+    // Its unit may stand behind the parenthesis.
+    return { is: "inside", part: last, words: words.slice(words.findLastIndex(({ text }) => text === "(")) };
+  }
   if (grammar.value === "none") return LOST;
   if (rest.length === 0) return { is: "equals" };
   return rest[0].text === "=" ? { is: "value", words: rest.slice(1) } : LOST;

@@ -19,6 +19,8 @@ export interface ValuePlace {
   readonly sibling?: Span;
   /** True in a product, where an operand may have any kind. */
   readonly inProduct: boolean;
+  /** Where a unit for all of a tuple may stand. */
+  readonly behindTuple: boolean;
   /** What part of `VALUE +/- TOLERANCE within A to B`, `X at Y` it is. */
   readonly part: "value" | "tolerance" | "within" | "at";
   /** Items of the list in front, separated by commas, as they are written. */
@@ -70,6 +72,9 @@ class ValueReader {
   readonly #frames: Frame[];
   readonly #listed: string[] = [];
   #unitWanted = false;
+  #value: Span | undefined;
+  /** True right behind the parenthesis of a tuple. */
+  #behindTuple = false;
   #itemStart: number;
   #index = 0;
   readonly #words: readonly Word[];
@@ -98,6 +103,7 @@ class ValueReader {
       call: call.kind === "call" ? openCall(call) : undefined,
       path,
       sibling: holder?.product ? undefined : holder?.sibling,
+      behindTuple: this.#behindTuple,
       inProduct: inside.some(({ product }) => product),
       part: this.#frames[0].part,
       listed: this.#listed,
@@ -110,6 +116,7 @@ class ValueReader {
   }
 
   #word(word: Word): void {
+    this.#behindTuple = false;
     if (isUnitWord(word)) {
       this.#unitWanted = false;
       return;
@@ -124,14 +131,15 @@ class ValueReader {
     switch (word.text) {
       case "from":
       case "to":
-        if (!top.operand) top.sibling = this.#since(top);
+        // Both ends of a range have the kind of the value in front of it.
+        if (!top.operand && top.part !== "within") top.sibling = this.#since(top);
         this.#restart(top, word.end, top.sibling);
         break;
       case "at":
       case "within":
         if (top.operand) break;
         top.part = word.text;
-        this.#restart(top, word.end, word.text === "within" ? this.#since(top) : undefined);
+        this.#restart(top, word.end, word.text === "within" ? this.#valueOf(top) : undefined);
         break;
       case "and":
       case "or":
@@ -152,7 +160,7 @@ class ValueReader {
         this.#open(word, top);
         break;
       case ")":
-        if (this.#frames.length > 1) this.#frames.pop();
+        this.#close();
         this.#top().operand = false;
         break;
       case ",":
@@ -165,7 +173,7 @@ class ValueReader {
       case "+/-":
       case "±":
         top.part = "tolerance";
-        this.#restart(top, word.end, this.#since(top));
+        this.#restart(top, word.end, this.#valueOf(top));
         break;
       case "+":
       case "-":
@@ -198,11 +206,17 @@ class ValueReader {
     this.#frames.push(frame(isCall ? "call" : "group", word.end, isCall ? before.text : undefined));
   }
 
+  #close(): void {
+    const closed = this.#frames.length > 1 ? this.#frames.pop() : undefined;
+    this.#behindTuple = closed?.kind === "group" && closed.index > 0;
+  }
+
   #comma(word: Word, top: Frame): void {
     const text = this.#text.slice(top.start, word.start).trim();
     if (top.kind === "root") {
       this.#listed.push(this.#text.slice(this.#itemStart, word.start).trim());
       this.#itemStart = word.end;
+      this.#value = undefined;
       top.part = "value";
     } else top.before.push(text);
     if (top.argument !== undefined) top.named.push(top.argument);
@@ -221,6 +235,12 @@ class ValueReader {
   #since(top: Frame): Span {
     const before = this.#words[this.#index - 1];
     return { start: top.start, end: before?.end ?? top.start };
+  }
+
+  /** The value in front of its tolerance and range. */
+  #valueOf(top: Frame): Span {
+    this.#value ??= this.#since(top);
+    return this.#value;
   }
 
   #pathBefore(): string[] {

@@ -104,14 +104,15 @@ function behindNumber(typing: Typing, unit: UnitRun): readonly Offer[] {
   const behind = { ...place, next: "operator" as const, itemWords: ["0"] };
   const wanted = wantedAt(context, place);
   const units =
-    wanted.is === "number"
-      ? wanted.number.units
+    wanted.is === "number" || wanted.is === "arguments"
+      ? (wanted.number?.units ?? [])
       : wanted.is === "words"
         ? ["%"]
         : wanted.is === "unit"
           ? wanted.units
           : [];
-  const known = wanted.is === "number" && wanted.number.kinds === undefined ? unitsUsed(line, units) : units;
+  const isAny = "number" in wanted && wanted.number !== undefined && wanted.number.kinds === undefined;
+  const known = isAny ? unitsUsed(line, units) : units;
   return [
     ...unitOffers(known, unit.blank ? "" : " "),
     ...(unit.blank ? operatorOffers(context, behind) : []),
@@ -271,6 +272,7 @@ function valueOffers(
 ): readonly Offer[] {
   if (place.next === "member") return memberOffers(context, place, names);
   if (place.next === "unit") return unitOffers(unitsFor(undefined), "");
+  if (place.behindTuple) return tupleUnits(context, place);
   if (place.next === "operator") return operatorOffers(context, place);
   const wanted = wantedAt(context, place);
   return wantedOffers(wanted, context, names, typing);
@@ -308,6 +310,11 @@ function wantedOffers(
     case "nothing":
       return [];
   }
+}
+
+function tupleUnits(context: ValueContext, place: ValuePlace): readonly Offer[] {
+  const wanted = wantedAt(context, place);
+  return wanted.is === "number" ? unitOffers(wanted.number.units, "") : [];
 }
 
 /** Behind a dot: directions, quantities, or the inner names of a part. */

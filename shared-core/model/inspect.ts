@@ -32,11 +32,11 @@ export function motionOf(model: Model, name: string): Motion | undefined {
   return support === undefined ? draft.plannedByName.get(name)?.motion : draft.supports[support].motion;
 }
 
-/** Whether a drive can drive an ask of that kind. */
+/** Whether a drive can drive an ask of that kind; of one that is not understood or not computed, nothing is held against it. */
 export function drivesAsk(model: Model, drive: string, askKind: string): boolean {
   const { draft } = model.plan.asked;
   const planned = draft.drives[draft.driveByName.get(drive) ?? -1];
-  if (planned === undefined) return false;
+  if (planned === undefined) return true;
   return askKind === "sweep" ? isHarmonic(planned) : askKind !== "history" || isTimed(planned);
 }
 

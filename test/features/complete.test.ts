@@ -277,6 +277,10 @@ describe("units behind a number", () => {
     ["force x on unit\n    law = 500 |", ["N", "kN", "lbf", "kip"]],
     ["case x\n    a_length = 3 |", ["mm", "m", "um", "in", "ft", "mil"]],
     ["limit x\n    rows =\n        3 |", ["Hz", "rpm", "rad/s", "cpm", "rev/s", "deg/s", "kHz"]],
+    ["let x = 3 N/mm +/- 12 % within 3 N/mm to 7 |", ["N/mm", "kN/m", "N/m", "MN/m", "lbf/in", "GN/m"]],
+    ["point x on genset at (0, 0, 0) |", ["mm", "m", "um", "in", "ft", "mil"]],
+    ["body x = 2 t\n    inertia = (310, 840, 760) k|", ["kg*m^2", "kg*mm^2", "lbm*in^2", "slug*ft^2"]],
+    ["mount x between genset and ground at (0, 0, 0) m\n    turned = (0, 30, 0) |", ["deg", "rad", "mrad"]],
     ["assume gravity = 9.81 |", ["m/s^2", "gn", "mm/s^2", "in/s^2"]],
     ["point x on genset at (0.4 |", ["mm", "m", "um", "in", "ft", "mil"]],
   ])("%s", (line, units) => {
@@ -548,9 +552,14 @@ describe("manners", () => {
 
   it("offers the word that stands there, all over the examples", () => {
     const without: string[] = [];
-    for (const file of readdirSync("examples").filter((each) => each.endsWith(".thrum"))) {
-      const text = readFileSync(`examples/${file}`, "utf8");
-      const view = viewOf(text);
+    const texts = readdirSync("examples").flatMap((each) =>
+      each.endsWith(".thrum") ? [[each, readFileSync(`examples/${each}`, "utf8"), {}] as const] : [],
+    );
+    const described = [...STATEMENTS, ...ASKS].map(
+      ({ keyword, variant, example, exampleFiles }) => [variant ?? keyword, example, exampleFiles] as const,
+    );
+    for (const [file, text, files] of [...texts, ...described]) {
+      const view = viewOf(text, { file: "x.thrum", files });
       const { tokens, roles } = view.model.tree;
       for (const [i, { kind, offset, length }] of tokens.entries()) {
         const inUnit = roles[i] === ROLE.unit && roles[i - 1] === ROLE.unit;
