@@ -5,6 +5,7 @@ import type { Connection } from "./connection.ts";
 import { keepRunning } from "./keep-running.ts";
 import { registerRowPaste } from "./paste-rows.ts";
 import { answerFileRequests } from "./read-files.ts";
+import { registerSheet } from "./sheet.ts";
 import { registerStatus } from "./status.ts";
 import { registerTests } from "./tests.ts";
 
@@ -31,6 +32,7 @@ export function start(context: vscode.ExtensionContext, host: Start): void {
     registerStatus(client, states.event),
     registerTests(client, states.event),
     registerRowPaste(client),
+    registerSheet(context, client, states.event),
     ...registerCommands(client, supervisor, output),
   );
   void vscode.commands.executeCommand("setContext", "thrum.active", true);

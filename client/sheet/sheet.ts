@@ -83,6 +83,7 @@ export class Sheet {
     if (message.protocol !== SHEET_VERSION) this.#outdated();
     else if (message.type === "content") this.#receive(message);
     else if (message.type === "highlight") this.#highlight(message.names);
+    else if (message.type === "reveal") this.#cards.show(message.name);
     else this.#state(message);
   }
 

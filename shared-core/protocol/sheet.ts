@@ -72,7 +72,9 @@ export type ToSheet =
       readonly text: string;
     }
   /** The cursor stands in these statements; none: nowhere. */
-  | { readonly type: "highlight"; readonly protocol: number; readonly names: readonly string[] };
+  | { readonly type: "highlight"; readonly protocol: number; readonly names: readonly string[] }
+  /** Bring what the sheet shows of this statement into sight. */
+  | { readonly type: "reveal"; readonly protocol: number; readonly name: string };
 
 /** From the page. */
 export type FromSheet =
@@ -140,7 +142,8 @@ export function readToSheet(message: unknown): ToSheet | undefined {
     (it.type === "state" && texts(it, "state", "text") && STATES.has(it.state as string)) ||
     (it.type === "highlight" &&
       Array.isArray(it.names) &&
-      it.names.every((name) => typeof name === "string"));
+      it.names.every((name) => typeof name === "string")) ||
+    (it.type === "reveal" && texts(it, "name"));
   return known ? (message as ToSheet) : undefined;
 }
 

@@ -55,6 +55,7 @@ describe("messages", () => {
       { type: "content", protocol, uri: "file:///a", version: 3, content: "{}" },
       { type: "state", protocol, state: "busy", text: "" },
       { type: "highlight", protocol, names: ["a"] },
+      { type: "reveal", protocol, name: "run_up" },
     ];
     for (const message of to) expect(readToSheet(message)).toBe(message);
   });
