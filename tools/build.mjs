@@ -46,6 +46,16 @@ const PROGRAMS = [
     format: "iife",
   },
   {
+    entryPoints: [
+      { in: "client/sheet/main.ts", out: "sheet" },
+      { in: "client/sheet/sheet.css", out: "sheet" },
+    ],
+    outdir: "dist/sheet",
+    platform: "browser",
+    target: "es2022",
+    format: "iife",
+  },
+  {
     entryPoints: { main: "client/extension/node/main.ts" },
     outdir: "dist/extension",
     platform: "node",
