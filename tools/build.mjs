@@ -28,22 +28,25 @@ const PROGRAMS = [
     chunkNames: "chunks/[name]-[hash]",
   },
   {
+    entryPoints: { core: "server/core.ts" },
+    outdir: "dist/server",
+    platform: "browser",
+    target: "es2022",
+    format: "iife",
+    globalName: "thrumCore",
+    outExtension: { ".js": ".cjs" },
+    footer: { js: 'if(typeof module==="object")module.exports=thrumCore;' },
+    plugins: [partsOfMathjs()],
+  },
+  {
     entryPoints: { main: "server/main.ts", thread: "server/thread.ts" },
     outdir: "dist/server",
     platform: "node",
     target: "node20",
     format: "esm",
-    splitting: true,
-    chunkNames: "chunks/[name]-[hash]",
     // The protocol's library is CommonJS, and asks for parts of Node as such.
     banner: { js: REQUIRE },
-  },
-  {
-    entryPoints: { browser: "server/browser-worker.ts" },
-    outdir: "dist/server",
-    platform: "browser",
-    target: "es2022",
-    format: "iife",
+    plugins: [coreBeside()],
   },
   {
     entryPoints: [
@@ -68,6 +71,35 @@ const PROGRAMS = [
     ...EXTENSION,
   },
 ];
+
+/** The core stands once in the package: a server on Node takes it from the program that browsers run. */
+function coreBeside() {
+  return {
+    name: "core beside",
+    setup(bundle) {
+      const outside = { path: "core", namespace: "core" };
+      bundle.onResolve({ filter: /shared-core\/index\.ts$/ }, () => outside);
+      bundle.onLoad({ filter: /./, namespace: "core" }, () => ({
+        contents: 'module.exports = require("./core.cjs");',
+      }));
+      bundle.onResolve({ filter: /^\.\/core\.cjs$/ }, ({ path }) => ({ path, external: true }));
+    },
+  };
+}
+
+/** Where nothing is loaded later, a module that would be is taken whole; made first, it has only what is used. */
+function partsOfMathjs() {
+  return {
+    name: "parts of mathjs",
+    setup({ onLoad, esbuild }) {
+      onLoad({ filter: /units[\\/]mathjs\.ts$/ }, async ({ path }) => {
+        const options = { ...COMMON, entryPoints: [path], format: "esm", write: false };
+        const { outputFiles } = await esbuild.build(options);
+        return { contents: outputFiles[0].text, loader: "js" };
+      });
+    },
+  };
+}
 
 const COMMON = { bundle: true, minify: true, legalComments: "none", logLevel: "warning" };
 

@@ -22,28 +22,32 @@ async function connect(
   context: vscode.ExtensionContext,
   output: vscode.LogOutputChannel,
 ): Promise<MessageTransports> {
-  const program = vscode.Uri.joinPath(context.extensionUri, "dist/server/browser.js");
-  const port = await startWorker(program).catch((error: Error) => {
+  const program = vscode.Uri.joinPath(context.extensionUri, "dist/server/core.cjs");
+  const source = new TextDecoder().decode(await vscode.workspace.fs.readFile(program));
+  const port = await startWorker(source).catch((error: Error) => {
     output.info(`No worker for the server (${error.message}); it runs beside the extension`);
-    return startBeside(program);
+    return startBeside(source);
   });
   return { reader: new BrowserMessageReader(port), writer: new BrowserMessageWriter(port) };
 }
 
-async function startWorker(program: vscode.Uri): Promise<Worker> {
-  const worker = new Worker(program.toString(true));
+/** From the text, because a worker may not be loaded from where the extension lies. */
+async function startWorker(source: string): Promise<Worker> {
+  const url = URL.createObjectURL(new Blob([source], { type: "text/javascript" }));
+  const worker = new Worker(url);
   try {
     await firstWord(worker);
     return worker;
   } catch (error) {
     worker.terminate();
     throw error;
+  } finally {
+    URL.revokeObjectURL(url);
   }
 }
 
 /** Runs the worker's program in this thread; it speaks through the port that it is given as its scope. */
-async function startBeside(program: vscode.Uri): Promise<MessagePort> {
-  const source = new TextDecoder().decode(await vscode.workspace.fs.readFile(program));
+async function startBeside(source: string): Promise<MessagePort> {
   const { port1, port2 } = new MessageChannel();
   const ready = firstWord(port1);
   new Function("self", source)(port2);
