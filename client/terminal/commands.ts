@@ -65,7 +65,11 @@ export const COMMANDS: readonly Command[] = [
     options: [
       JSON_OPTION,
       { name: "csv", value: "DIR", says: "write each answer as a CSV file into this folder" },
-      { name: "svg", value: "DIR", says: "write each answer as an SVG picture into this folder" },
+      {
+        name: "svg",
+        value: "DIR",
+        says: "write the drawing, the frequency ruler and each answer as SVG pictures into this folder",
+      },
       CASE,
       UNIT,
       WATCH,

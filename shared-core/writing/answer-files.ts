@@ -5,6 +5,7 @@ import type { CaseReport, FileReport } from "../judgement/report.ts";
 import type { UnitSystem } from "../units/show.ts";
 import { answerCsv, modesCsv } from "./answer-csv.ts";
 import { historyFigure, modesFigure, sweepFigure } from "./figure/answer-figures.ts";
+import type { Figure } from "./figure/figure.ts";
 import { rulerSvg } from "./figure/ruler-svg.ts";
 import { sceneSvg } from "./figure/scene-svg.ts";
 import { figureSvg } from "./figure/svg.ts";
@@ -18,6 +19,7 @@ export interface AnswerFilesOptions {
   readonly units: UnitSystem;
 }
 
+const MODE_HEIGHT = 110;
 const PICTURE = { width: 720, height: 460 };
 
 /**
@@ -54,15 +56,16 @@ function systemPictures(
   ]);
 }
 
+/** As high as its shapes need. */
+const modesSvg = (figure: Figure): string =>
+  figureSvg(figure, { ...PICTURE, height: 70 + MODE_HEIGHT * Math.max(1, figure.panels.length) });
+
 function contents(each: CaseReport, { asks, as }: AnswerFilesOptions, units: UnitView): Map<string, string> {
   const texts = new Map<string, string>();
   const names = each.instance.assembly.coordinates.map((coordinate) => coordinate.name);
   if (asks.includes("modes") && each.modes.ok) {
     const { table } = each.modes;
-    texts.set(
-      "modes",
-      as === "csv" ? modesCsv(table, names) : figureSvg(modesFigure(table, names, units), PICTURE),
-    );
+    texts.set("modes", as === "csv" ? modesCsv(table, names) : modesSvg(modesFigure(table, names, units)));
   }
   for (const [name, result] of each.answers) {
     if (!result.ok || !asks.includes(name)) continue;

@@ -146,7 +146,14 @@ describe("thrum answer", () => {
     expect(status).toBe(0);
     expect(stdout).toMatch(/1 +4\.135 Hz +9\.62 %/);
     expect(stdout).toMatch(/[\u2801-\u28ff]/);
-    expect(readdirSync(join(folder, "out")).sort()).toEqual(["modes.csv", "modes.svg", "run.csv", "run.svg"]);
+    expect(readdirSync(join(folder, "out")).sort()).toEqual([
+      "drawing.svg",
+      "modes.csv",
+      "modes.svg",
+      "ruler.svg",
+      "run.csv",
+      "run.svg",
+    ]);
     expect(stderr).toContain("wrote out/run.csv");
     expect(get("out/run.svg")).toMatch(/^<svg xmlns/);
   });

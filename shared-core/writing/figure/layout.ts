@@ -63,13 +63,15 @@ function ticksOf(axis: Axis, scale: Scale, room: number): readonly { value: numb
   return own ?? scale.ticks(Math.max(2, room));
 }
 
-/** A log axis that follows its data leaves room above the highest peak for its name. */
-const HEADROOM = 10 ** 0.15;
+/** A log axis that follows its data leaves this share of its length above the highest peak for its name. */
+const HEADROOM = 0.12;
 
 function axisScale(axis: Axis, data: readonly ArrayLike<number>[], more: readonly number[]): Scale {
   if (axis.from !== undefined && axis.to !== undefined) return scaleBetween(axis.scale, axis.from, axis.to);
   const scale = scaleOver(axis.scale, ...data, more);
-  return axis.scale === "log" ? scaleBetween("log", scale.from, scale.to * HEADROOM) : scale;
+  return axis.scale === "log"
+    ? scaleBetween("log", scale.from, scale.to * (scale.to / scale.from) ** HEADROOM)
+    : scale;
 }
 
 function pathOf(

@@ -1,0 +1,272 @@
+import { describe, expect, it } from "vitest";
+import type { PlotCard, SheetContent } from "../../shared-core/features/sheet.ts";
+import { sheetContent } from "../../shared-core/features/sheet-content.ts";
+import { packContent, unpackContent } from "../../shared-core/protocol/sheet.ts";
+import { viewOf } from "./views.ts";
+
+/**
+ * One mass of 100 kg on 39478.4176 N/m: natural frequency sqrt(k/m)/(2 pi) = 10 / sqrt(10) Hz = 3.1623 Hz. With
+ * c = 2 zeta sqrt(k m) at zeta = 5 % that is 198.7 N*s/m. Closed forms of one oscillator, any vibration textbook.
+ */
+const ONE = `thrum 1
+title "One mass"
+> On four feet.
+> source: sketch 3
+let unit_mass = 100 kg within 50 kg to 200 kg
+let drive_rate = 3 Hz +/- 10 %
+mass unit = unit_mass
+spring feet between unit and ground = 39478.4176 N/m
+damper oil between unit and ground = 198.7 N*s/m
+force shake on unit
+    amplitude = 10 N
+    frequency = drive_rate
+force kick on unit
+    pulse = half_sine
+    peak = 100 N
+    duration = 20 ms
+case heavy
+    unit_mass = 150 kg
+ask modes
+ask sweep run
+    of = unit.displacement, feet.force
+    by = shake
+    from = 1 Hz
+    to = 10 Hz
+ask history blow
+    of = unit.displacement
+    by = kick
+    lasting = 2 s
+ask shock_spectrum shock
+    of = unit.displacement
+    by = kick
+expect low = natural_frequency(1) <= 4 Hz
+expect calm = peak(run, unit.displacement) <= 1 mm
+expect narrow = natural_frequency(1) >= 3.1 Hz
+    margin = 10 %
+`;
+const view = viewOf(ONE, { judged: true });
+const content = sheetContent(view);
+const F1 = Math.sqrt(39478.4176 / 100) / (2 * Math.PI);
+
+function plot(of: SheetContent, name: string): PlotCard {
+  const card = of.cards.find((each) => each.name === name);
+  if (card === undefined || !("panels" in card)) throw new Error(`no plot of ${name}`);
+  return card;
+}
+
+describe("the ruler", () => {
+  const { ruler } = content;
+  if (ruler === null) throw new Error("no ruler");
+  const hz = (at: number): number => ruler.fromHz * (ruler.toHz / ruler.fromHz) ** at;
+
+  it("hangs the mode where it belongs, as wide as its half-power bandwidth 2 zeta f", () => {
+    const [mode] = ruler.modes;
+    expect(hz(mode.at)).toBeCloseTo(F1, 9);
+    const zeta = 198.7 / (2 * Math.sqrt(39478.4176 * 100));
+    expect(hz(mode.high) - hz(mode.low)).toBeCloseTo(2 * zeta * F1, 9);
+    expect(hz(mode.bandLow)).toBeCloseTo(0.8 * F1, 9);
+    expect(hz(mode.bandHigh)).toBeCloseTo(1.2 * F1, 9);
+    expect(mode.label).toBe("3.162 Hz");
+  });
+
+  it("stands drives and limits on it and says what is in danger", () => {
+    expect(ruler.drives.map(({ name, from }) => [name, Math.round(hz(from) * 1e6) / 1e6])).toEqual([
+      ["shake", 3],
+    ]);
+    expect(ruler.modes[0].danger).toBe(true);
+    expect(ruler.limits.map(({ name, side, at }) => [name, side, Number(hz(at).toFixed(6))])).toEqual([
+      ["low", "below", 4],
+      ["narrow", "above", 3.1],
+    ]);
+    const texts = ruler.separations.map(({ text }) => text);
+    expect(texts).toContain("shake is 5.13 % below mode 1, ratio 0.949");
+    expect(texts).toContain("low is 26.5 % above mode 1, ratio 1.26");
+  });
+});
+
+describe("cards", () => {
+  it("stand in the order of the file, later kinds with a reason", () => {
+    expect(content.cards.map(({ kind, name }) => [kind, name])).toEqual([
+      ["modes", "modes"],
+      ["sweep", "run"],
+      ["history", "blow"],
+      ["reason", "shock"],
+    ]);
+    expect(content.cards[3]).toMatchObject({ title: "shock_spectrum shock" });
+    expect(content.cards.every(({ description }) => description.length > 10)).toBe(true);
+  });
+
+  it("draw curves in the units of the file, with limits and peaks", () => {
+    const { panels, phase, peaks } = plot(content, "run");
+    const [displacement] = panels.filter(({ y }) => y.unit === "mm");
+    expect(displacement.curves.map(({ name, role }) => [name, role])).toEqual([
+      ["unit.displacement", undefined],
+      ["calm", "limit"],
+    ]);
+    expect(Array.from(displacement.curves[1].y)).toEqual([1, 1]);
+    // Peak of one oscillator: (F/k) / (2 zeta sqrt(1 - zeta^2)), any vibration textbook.
+    const zeta = 198.7 / (2 * Math.sqrt(39478.4176 * 100));
+    const peak = (10 / 39478.4176 / (2 * zeta * Math.sqrt(1 - zeta * zeta))) * 1000;
+    expect(Math.max(...Array.from(displacement.curves[0].y))).toBeCloseTo(peak, 9);
+    expect(peaks[0]).toMatch(/^unit\.displacement up to 2\.536 mm at 3\.154 Hz$/);
+    const unwrapped = Array.from(phase?.unwrapped.curves[0].y ?? []);
+    expect(unwrapped.length).toBeGreaterThan(50);
+    for (let i = 1; i < unwrapped.length; i++)
+      expect(Math.abs(unwrapped[i] - unwrapped[i - 1])).toBeLessThan(180);
+  });
+
+  it("have a table that holds the peak", () => {
+    const { table } = plot(content, "run");
+    expect(table.head.slice(0, 2)).toEqual(["frequency in Hz", "unit.displacement in mm"]);
+    expect(Math.max(...table.rows.map((row) => Number(row[1])))).toBeCloseTo(2.536, 2);
+    expect(table.rows.length).toBeLessThan(130);
+  });
+
+  it("show shapes and energy of the modes", () => {
+    const [card] = content.cards;
+    if (card.kind !== "modes") throw new Error("no modes");
+    expect(card.modes[0]).toMatchObject({
+      id: "mode:1",
+      label: "mode 1 · 3.162 Hz",
+      damping: "damping ratio 5 %",
+    });
+    expect(card.modes[0].energy).toEqual([{ name: "feet", share: 1, text: "100 %" }]);
+    expect(Array.from(card.modes[0].shape)).toEqual([1]);
+  });
+});
+
+describe("motions", () => {
+  it("are the modes and the histories, scaled to one", () => {
+    expect(content.motions.map(({ id }) => id)).toEqual(["mode:1", "history:blow"]);
+    const [mode, history] = content.motions;
+    expect(mode).toMatchObject({ kind: "mode", re: Float64Array.of(1), im: Float64Array.of(0) });
+    if (history.kind !== "history") throw new Error("no history");
+    expect(history.values).toHaveLength(history.frames * content.scene.coordinates.length);
+    expect(history.stepS * (history.frames - 1)).toBeCloseTo(2, 12);
+    expect(Math.max(...history.values.map(Math.abs))).toBeCloseTo(1, 12);
+  });
+});
+
+describe("the ledger", () => {
+  it("has a row an expectation and a verdict a case", () => {
+    const rows = content.ledger.map(({ name, condition, verdicts }) => [
+      name,
+      condition,
+      verdicts.map((each) => [each.case, each.holds, each.value, each.thin]),
+    ]);
+    expect(rows).toEqual([
+      [
+        "low",
+        "natural_frequency(1) <= 4 Hz",
+        [
+          ["as written", true, "3.162 Hz", false],
+          ["heavy", true, "2.582 Hz", false],
+        ],
+      ],
+      // (F/k) / (2 zeta sqrt(1 - zeta^2)) with zeta = 5 % sqrt(100/150) in the heavy case.
+      [
+        "calm",
+        "peak(run, unit.displacement) <= 1 mm",
+        [
+          ["as written", false, "2.536 mm", false],
+          ["heavy", false, "3.105 mm", false],
+        ],
+      ],
+      [
+        "narrow",
+        "natural_frequency(1) >= 3.1 Hz",
+        [
+          ["as written", true, "3.162 Hz", true],
+          ["heavy", false, "2.582 Hz", false],
+        ],
+      ],
+    ]);
+    expect(content.ledger[0].verdicts[0]).toMatchObject({ limit: "≤ 4 Hz", marginText: "21 % left" });
+    expect(content.ledger[0].verdicts[0].margin).toBeCloseTo((4 - F1) / 4, 9);
+  });
+});
+
+describe("knobs", () => {
+  it("are the lets with a range or a tolerance, in the units of the text", () => {
+    expect(content.knobs.map(({ range: _, ...knob }) => knob)).toEqual([
+      {
+        name: "unit_mass",
+        written: 100,
+        value: 100,
+        from: 50,
+        to: 200,
+        step: 1,
+        unit: "kg",
+        factor: 1,
+        text: "100 kg within 50 kg to 200 kg",
+        note: "On four feet.\nsource: sketch 3",
+      },
+      expect.objectContaining({ name: "drive_rate", written: 3, unit: "Hz", step: 0.005 }),
+    ]);
+  });
+
+  it("move the shown answer over the written one", () => {
+    const moved = sheetContent(view, { knobs: { unit_mass: 200, nobody: 3, drive_rate: Number.NaN } });
+    expect(moved.knobs[0]).toMatchObject({ written: 100, value: 200 });
+    expect(moved.ledger[0].verdicts.map(({ value }) => value)).toEqual(["2.236 Hz", "2.582 Hz"]);
+    const [panel] = plot(moved, "run").panels;
+    expect(panel.curves.map(({ name, role }) => [name, role])).toEqual([
+      ["unit.displacement", "written"],
+      ["unit.displacement", undefined],
+      ["calm", "limit"],
+    ]);
+    const placed = ({ scene }: SheetContent) => scene.items.map(({ name, box }) => ({ name, box }));
+    expect(placed(moved)).toEqual(placed(content));
+    expect(moved.scene.items.find(({ name }) => name === "unit")?.says).toBe("mass unit, 200 kg");
+  });
+
+  it("say why when nothing can be computed with them", () => {
+    const moved = sheetContent(view, { knobs: { unit_mass: -1 } });
+    expect(moved.notice).toMatch(/moved numbers/);
+    expect(moved.ledger[0].verdicts[0].value).toBe("3.162 Hz");
+  });
+});
+
+describe("cases and units", () => {
+  it("show another case", () => {
+    const heavy = sheetContent(view, { case: "heavy" });
+    expect(heavy.case).toBe("heavy");
+    expect(heavy.ruler?.modes[0].label).toBe("2.582 Hz");
+    expect(heavy.scene.items.find(({ name }) => name === "unit")?.says).toBe("mass unit, 150 kg");
+    expect(sheetContent(view, { case: "nobody" }).case).toBe("as written");
+  });
+
+  it("show inch units", () => {
+    const inch = sheetContent({ ...view, units: "inch" });
+    expect(plot(inch, "run").panels.map(({ y }) => y.unit)).toEqual(["in", "lbf"]);
+    expect(inch.knobs[0].unit).toBe("lbm");
+    expect(inch.knobs[0].factor).toBeCloseTo(0.45359237, 12);
+  });
+});
+
+describe("what is not there", () => {
+  it("is drawn while numbers are awaited", () => {
+    const waiting = sheetContent(viewOf(ONE));
+    expect(waiting).toMatchObject({ notice: "numbers are awaited", ruler: null, cards: [] });
+    expect(waiting.scene.items.length).toBeGreaterThan(4);
+  });
+
+  it("is said when a text has no system", () => {
+    for (const text of [
+      "",
+      "thrum 1\n",
+      "thrum 1\nmass a = 3 m\nspring k between a and ground = 1 N/m\n",
+      "}{",
+    ]) {
+      const empty = sheetContent(viewOf(text, { judged: true }));
+      expect(empty.cards.length + empty.knobs.length + (empty.notice ?? "").length).toBeGreaterThan(0);
+      expect(unpackContent(packContent(empty))).toEqual(JSON.parse(JSON.stringify(empty)));
+    }
+  });
+
+  it("comes over the wire whole", () => {
+    const back = unpackContent(packContent(content));
+    expect(back.motions).toEqual(content.motions);
+    expect(plot(back, "run").panels).toEqual(plot(content, "run").panels);
+  });
+});
