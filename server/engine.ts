@@ -2,7 +2,7 @@
  * What the server and the side that computes numbers say to each other. That side may be a thread of its own, so
  * everything is plain data; it holds the models with their reports, and answers what needs both.
  */
-import type { Diagnostic, FileContent, ModelSummary, UnitSystem } from "../shared-core/index.ts";
+import type { Diagnostic, FileContent, ModelSummary, Unit, UnitSystem } from "../shared-core/index.ts";
 import type { NumericArgs, NumericFeature } from "./numeric-features.ts";
 
 /** A file that a model read. Its content travels once; afterwards `id` stands for it. */
@@ -21,6 +21,8 @@ export interface TextMessage {
   readonly text: string;
   readonly reads: readonly ReadFile[];
   readonly units: UnitSystem;
+  /** Units that the language does not spell itself and that a text has met. */
+  readonly learned: readonly Unit[];
 }
 
 export type ToEngine =

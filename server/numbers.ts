@@ -9,6 +9,7 @@ import {
   type FileReport,
   judgeInSteps,
   LineIndex,
+  learnUnit,
   type Model,
   type ModelSummary,
   type Steps,
@@ -78,7 +79,8 @@ export class Numbers {
     return this.#jobs.length > 0;
   }
 
-  #take({ uri, serial, file, text, reads, units }: TextMessage): void {
+  #take({ uri, serial, file, text, reads, units, learned }: TextMessage): void {
+    for (const unit of learned) learnUnit(unit);
     for (const { id, content } of reads) if (content) this.#contents.set(id, content);
     this.#drop(uri);
     const before = this.#entries.get(uri);

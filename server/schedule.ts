@@ -2,7 +2,16 @@
  * Two tiers. What the text alone says is worked out at once, here; numbers are computed aside once typing rests.
  * Every result carries the serial of the text it belongs to; a late one is dropped, for the newer run will publish.
  */
-import { judge, LineIndex, type Model, summaryOf, understand, type View } from "../shared-core/index.ts";
+import {
+  judge,
+  LineIndex,
+  learnedUnits,
+  learnUnits,
+  type Model,
+  summaryOf,
+  understand,
+  type View,
+} from "../shared-core/index.ts";
 import type { AskMessage, Engine, FromEngine, ReadFile } from "./engine.ts";
 import { errorText, withState } from "./numbers.ts";
 import type { NumericArgs, NumericFeature, NumericResult } from "./numeric-features.ts";
@@ -12,6 +21,8 @@ import type { Sources } from "./sources.ts";
 import { nextTurn } from "./turns.ts";
 import { keyOf } from "./uris.ts";
 
+/** Codes of what may be a unit that is not known yet. */
+const MAY_BE_UNIT: ReadonlySet<string> = new Set(["unknown-unit", "unknown-name"]);
 /** Texts that take longer than this, in ms, are worked out when typing rests for as long, at most `LONGEST_REST`. */
 const SWIFT = 40;
 const LONGEST_REST = 400;
@@ -106,19 +117,19 @@ export class Schedule {
   }
 
   /** Resolves when the numbers of the text as it stands are there, or will not come. Does not wait for typing to rest. */
-  settled(session: Session): Promise<void> {
-    this.current(session);
+  async settled(session: Session): Promise<void> {
+    await this.#textTold(session);
     if (session.numbers === "awaited" && this.#timers.has(session)) this.#judge(session);
     return session.settled();
   }
 
   /** Asks the side that computes. undefined where it could not answer, which has been logged. */
-  ask<F extends NumericFeature>(
+  async ask<F extends NumericFeature>(
     session: Session,
     feature: F,
     ...args: NumericArgs<F>
   ): Promise<NumericResult<F> | undefined> {
-    this.current(session);
+    await this.#textTold(session);
     const id = ++this.#lastQuestion;
     return new Promise((done) => {
       this.#questions.set(id, (value) => done(value as NumericResult<F> | undefined));
@@ -166,6 +177,15 @@ export class Schedule {
     return this.#engine;
   }
 
+  /** The side that computes knows the text as it stands. */
+  async #textTold(session: Session): Promise<void> {
+    for (;;) {
+      this.current(session);
+      if (session.settling === undefined) return;
+      await session.settling;
+    }
+  }
+
   #workOut(session: Session): void {
     this.#texts.forget(session);
     const { serial } = session;
@@ -174,13 +194,44 @@ export class Schedule {
     const reading = this.#host.sources.reading(session);
     session.understood = this.#understood(session, text, serial, reading);
     session.cost = performance.now() - start;
-    if (reading.pending.length > 0) {
-      void this.#fetch(session, reading.pending);
-      return;
-    }
+    if (reading.pending.length > 0) this.#settleLater(session, this.#fetch(session, reading.pending));
+    else if (session.understood.said.some(({ code }) => MAY_BE_UNIT.has(code))) {
+      this.#settleLater(session, this.#learn(session));
+    } else this.#settleText(session);
+  }
+
+  /** The text cannot be spoken of before something has come that may change what it means. */
+  #settleLater(session: Session, coming: Promise<boolean>): void {
+    const { serial } = session;
+    const settling = coming
+      .catch((error: unknown) => {
+        this.#fault("looking around", session, error);
+        return false;
+      })
+      .then((changes) => {
+        if (session.settling === settling) session.settling = undefined;
+        if (session.serial !== serial || this.#sessions.get(session.key) !== session) return;
+        if (changes) this.touch(session, []);
+        else this.#settleText(session);
+      });
+    session.settling = settling;
+  }
+
+  /** Files that only the client can read; true when there is something to read anew. */
+  async #fetch(session: Session, pending: readonly string[]): Promise<boolean> {
+    return ++session.rounds < MOST_ROUNDS && (await this.#host.sources.fetch(pending));
+  }
+
+  /** Units that the language does not spell itself are looked up before anything is said of them. */
+  #learn(session: Session): Promise<boolean> {
+    return learnUnits((session.understood as Understood).model);
+  }
+
+  #settleText(session: Session): void {
     session.rounds = 0;
-    this.#tellText(session, text, session.understood, this.#host.settingsOf(session).units);
-    if (session.understood.model.buildable) this.#plan(session);
+    const understood = this.current(session);
+    this.#tellText(session, session.document.getText(), understood, this.#host.settingsOf(session).units);
+    if (understood.model.buildable) this.#plan(session);
     else session.withoutNumbers("there");
     this.#host.changed(session);
   }
@@ -209,14 +260,6 @@ export class Schedule {
     }
   }
 
-  async #fetch(session: Session, pending: readonly string[]): Promise<void> {
-    const { serial } = session;
-    session.rounds++;
-    const more = session.rounds < MOST_ROUNDS && (await this.#host.sources.fetch(pending));
-    if (more && session.serial === serial && this.#sessions.get(session.key) === session)
-      this.touch(session, []);
-  }
-
   #tellText(
     { uri, file }: { readonly uri: string; readonly file: string },
     text: string,
@@ -233,7 +276,7 @@ export class Schedule {
       this.#sent.set(id, new Set([uri]));
       return { path, id, content };
     });
-    this.engine.tell({ say: "text", uri, serial, file, text, reads: sent, units });
+    this.engine.tell({ say: "text", uri, serial, file, text, reads: sent, units, learned: learnedUnits() });
   }
 
   #plan(session: Session): void {

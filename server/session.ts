@@ -42,6 +42,8 @@ export class Session implements Place {
   summary: SummaryOfModel | undefined;
   /** The serial of which a pulling client has been told something. */
   pulled = 0;
+  /** Until then the text cannot be spoken of: files or units are on their way. */
+  settling: Promise<void> | undefined;
   /** Rounds of asking the client for files that this text leads to. */
   rounds = 0;
   /** How long understanding the text took the last time, in ms. */

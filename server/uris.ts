@@ -40,10 +40,13 @@ export function uriOf(folder: string, path: string): string {
   for (const part of path.split("/")) {
     if (part === "..") {
       if (parts.length > 1) parts.pop();
-    } else if (part !== "." && part !== "") parts.push(encodeURIComponent(part));
+    } else if (part !== "." && part !== "") parts.push(encodeURIComponent(whole(part)));
   }
   return start + parts.join("/");
 }
+
+/** Half of a surrogate pair cannot be encoded. */
+const whole = (text: string): string => text.replace(/\p{Surrogate}/gu, "\ufffd");
 
 function decoded(uri: string): string {
   try {

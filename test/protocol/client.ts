@@ -95,6 +95,7 @@ export class TestClient {
   /** Answers requests that the server sends beside the usual ones. */
   readonly answers = new Map<string, (params: never) => unknown>();
   readonly #waiting = new Set<() => void>();
+  #ended = false;
 
   constructor(options: ClientOptions = {}) {
     this.folder = options.folder ?? root;
@@ -178,8 +179,14 @@ export class TestClient {
     await this.connection.sendRequest("shutdown");
     await this.connection.sendNotification("exit");
     const code = await this.exitCode;
+    this.#ended = true;
     this.connection.dispose();
     return code;
+  }
+
+  /** Notifications after the end go nowhere. */
+  notify(method: string, params: unknown): void {
+    if (!this.#ended) void this.connection.sendNotification(method, params).catch(() => {});
   }
 
   #listen(): void {
@@ -246,7 +253,7 @@ export class TestDocument {
     const range = { start: this.position(start), end: this.position(end) };
     this.text = this.text.slice(0, start) + text + this.text.slice(end);
     this.version++;
-    void this.client.connection.sendNotification("textDocument/didChange", {
+    this.client.notify("textDocument/didChange", {
       textDocument: { uri: this.uri, version: this.version },
       contentChanges: [{ range, text }],
     });
@@ -308,7 +315,7 @@ export class TestDocument {
   }
 
   close(): void {
-    void this.client.connection.sendNotification("textDocument/didClose", {
+    this.client.notify("textDocument/didClose", {
       textDocument: { uri: this.uri },
     });
   }

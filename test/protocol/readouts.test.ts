@@ -152,7 +152,7 @@ describe("every reference case that has models", () => {
           const wanted = reference?.expected.find((each) => each.quantity === quantity);
           const unit = verdict?.unit === "" ? "1" : verdict?.unit;
           // Where both are in the same unit, they are the same number as far as four digits tell.
-          if (verdict === undefined || wanted?.unit !== unit) continue;
+          if (verdict === undefined || wanted === undefined || wanted.unit !== unit) continue;
           compared++;
           const said = Number.parseFloat(verdict.value ?? "");
           if (!(Math.abs(said - wanted.value) <= Math.max(6e-4, wanted.rel_tol) * Math.abs(wanted.value)))
