@@ -8,8 +8,9 @@ import type { Ruler, RulerDrive, RulerLimit, RulerMode } from "./ruler.ts";
 
 /** Modes shown whether or not anything comes near them. */
 const ALWAYS = 6;
-/** Higher modes are shown up to this multiple of the highest drive or limit. */
+/** Higher modes are shown up to this multiple of the highest drive or limit, and never more than so many. */
 const REACH = 3;
+const MOST_MODES = 24;
 /** Room at both ends, and the least length of the axis, as frequency ratios. */
 const ROOM = 1.3;
 const SHORTEST = 4;
@@ -72,6 +73,7 @@ function shownModes(report: CaseReport, others: readonly number[]): ShownMode[] 
   const highest = REACH * Math.max(0, ...others);
   return elasticModes(table)
     .filter(({ number, frequencyHz }) => number <= ALWAYS || frequencyHz <= highest)
+    .slice(0, MOST_MODES)
     .map((mode) => {
       const index = table.modes.indexOf(mode);
       const exciting = instance.assembly.drives.filter((drive) =>

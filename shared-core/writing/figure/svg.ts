@@ -142,6 +142,9 @@ function barPanel(panel: BarPanel, box: Box, theme: FigureTheme): string[] {
   const step = box.width / Math.max(1, panel.bars.length);
   const wide = Math.min(WIDEST_BAR, step * 0.5);
   const tall = (box.height - LINE * 2) / 2;
+  // Where names have no room beside each other, every so many bars one is named.
+  const longest = Math.max(1, ...panel.bars.map(({ name }) => [...name].length));
+  const every = Math.ceil((LETTER * longest + 6) / step);
   return [
     `<text x="${px(box.left)}" y="${px(box.top + 10)}">${escapeText(panel.title)}</text>`,
     `<path d="M${px(box.left)},${px(middle)}H${px(box.left + box.width)}" stroke="${theme.quiet}"/>`,
@@ -150,7 +153,11 @@ function barPanel(panel: BarPanel, box: Box, theme: FigureTheme): string[] {
       const x = box.left + step * i;
       return [
         `<rect x="${px(x + (step - wide) / 2)}" y="${px(value > 0 ? middle - size : middle)}" width="${px(wide)}" height="${px(size)}" fill="${theme.curves[0]}"/>`,
-        `<text x="${px(x + step / 2)}" y="${px(value > 0 ? middle + 12 : middle - 4)}" text-anchor="middle" fill="${theme.quiet}">${escapeText(name)}</text>`,
+        ...(i % every === 0
+          ? [
+              `<text x="${px(x + step / 2)}" y="${px(value > 0 ? middle + 12 : middle - 4)}" text-anchor="middle" fill="${theme.quiet}">${escapeText(name)}</text>`,
+            ]
+          : []),
       ];
     }),
   ];
