@@ -176,10 +176,20 @@ function report(
   for (const verdict of expectation.verdicts) {
     const target = item.children.get(`${item.id}#${verdict.case}`) ?? item;
     if (!covers(request, target)) continue;
+    run.appendOutput(`${lineOf(expectation, verdict)}\r\n`, undefined, target);
     if (verdict.holds === true) run.passed(target);
     else if (verdict.holds === false) run.failed(target, messageOf(target, expectation, verdict));
     else run.errored(target, messageOf(target, expectation, verdict));
   }
+}
+
+/** `fails  soft in heavy: 10.07 Hz <= 9 Hz`, as far as there is something to tell. */
+function lineOf({ name, comparison, verdicts }: ExpectationSummary, verdict: CaseVerdict): string {
+  const { holds, value } = verdict;
+  const word =
+    holds === null ? vscode.l10n.t("open") : holds ? vscode.l10n.t("holds") : vscode.l10n.t("fails");
+  const where = verdicts.length < 2 ? name : vscode.l10n.t("{0} in {1}", name, verdict.case);
+  return `${word}  ${where}: ${value === null ? verdict.message : `${value} ${comparison}`}`;
 }
 
 function messageOf(

@@ -16,9 +16,10 @@ export function registerInlayHints(serving: Serving): void {
       const cursor = session.cursor();
       const asked = schedule.ask(session, "inlayHints", toSpan(lines, range), kinds, cursor);
       const hints = (await ofThisText(session, asked)) ?? [];
-      return hints.map(({ offset, label, says }) => ({
+      // Two at one place would read as one word.
+      return hints.map(({ offset, label, says }, i) => ({
         position: lines.position(offset),
-        label,
+        label: hints[i - 1]?.offset === offset ? `· ${label}` : label,
         tooltip: says,
         paddingLeft: true,
       }));
