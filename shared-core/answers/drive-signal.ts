@@ -80,6 +80,31 @@ export function packedSignal(plain: Plain, jumps: Uint8Array = jumpOrders(plain)
   return { ...plain, impulses: [], jumps };
 }
 
+/** The same signal with its clock set back: what was at `time` is at 0. Impulses up to then are left out. */
+export function laterSignal(signal: Signal, time: number, same: number): Signal {
+  const { starts, order, coefficients, omega, sineRe, sineIm, impulses, jumps } = signal;
+  let first = 0;
+  while (first + 1 < starts.length && starts[first + 1] <= time + same) first++;
+  const by = Math.max(0, time - starts[first]);
+  const moved = coefficients.slice(first * order);
+  shiftedPolynomial(coefficients, first * order, order, by, moved, 0);
+  const [re, im] = [sineRe.slice(first), sineIm.slice(first)];
+  const [cos, sin] = [Math.cos(omega * by), Math.sin(omega * by)];
+  [re[0], im[0]] = [re[0] * cos - im[0] * sin, re[0] * sin + im[0] * cos];
+  return {
+    starts: starts.slice(first).map((start, i) => (i === 0 ? 0 : start - time)),
+    order,
+    coefficients: moved,
+    omega,
+    sineRe: re,
+    sineIm: im,
+    impulses: impulses.flatMap((each) =>
+      each.time > time + same ? [{ ...each, time: each.time - time }] : [],
+    ),
+    jumps: jumps.slice(first),
+  };
+}
+
 /** u, u', u'' ... at `tau` after the start of piece `i`, into `out` (length SIGNAL_DERIVATIVES). */
 export function signalDerivatives(signal: Plain, i: number, tau: number, out: Float64Array): void {
   const { order, coefficients, omega } = signal;

@@ -5,9 +5,11 @@ import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import type { TimeResponse } from "./analysis.ts";
 import type { HistoryAnswer, Peak } from "./answer.ts";
 import type { ModalBasis } from "./modes-basis.ts";
+import { switchedResponse } from "./switched-response.ts";
 import { extreme, Prober } from "./time-extremes.ts";
-import { type LinearMotion, linearMotion } from "./time-linear.ts";
+import { linearMotion } from "./time-linear.ts";
 import { timeResponseOf } from "./time-response.ts";
+import { type Stretch, speedCurvesOf, switchedMotion } from "./time-switched.ts";
 import {
   type Demands,
   demandedGrid,
@@ -49,11 +51,10 @@ export function historySolution(
 ): Outcome<HistorySolution> {
   if (assembly.free === 0) return fail(UNASKED);
   if (!(ask.lasting > 0)) return fail(`a history needs a duration above zero, found ${ask.lasting} s`);
-  const make = (finer: number) =>
-    linearMotion(assembly, { ...ask, tolerance: DRIVE_TOLERANCE, finer }, basis);
+  const make = (finer: number) => followed(assembly, basis, ask, finer);
   const first = make(1);
-  if (!first.ok) return fail(first.reason);
-  if (!first.value.interpolated) return succeed(solutionOf(first.value, ask));
+  if (!first.ok) return fail(first.reason, first.upTo?.length ? solutionOf(first.upTo, ask) : undefined);
+  if (!first.value.some(({ linear }) => linear.interpolated)) return succeed(solutionOf(first.value, ask));
   let before = { solution: solutionOf(first.value, ask), peaks: peaksOf(first.value, ask) };
   for (let k = 1; k <= MOST_HALVINGS; k++) {
     const next = make(2 ** k);
@@ -71,13 +72,34 @@ export function historySolution(
   );
 }
 
-function solutionOf(linear: LinearMotion, ask: HistoryAsk): HistorySolution {
-  return { response: timeResponseOf(linear, ask.accuracy), answer: () => storedAnswer(linear, ask) };
+/** One linear motion, or with torques over speed one after the other. */
+type Stretches = readonly Pick<Stretch, "from" | "linear" | "speeds">[];
+
+function followed(
+  assembly: Assembly,
+  basis: ModalBasis | undefined,
+  ask: HistoryAsk,
+  finer: number,
+): Outcome<Stretches> {
+  const options = { ...ask, tolerance: DRIVE_TOLERANCE, finer };
+  if (speedCurvesOf(assembly, ask.by).length > 0) return switchedMotion(assembly, options, basis);
+  const linear = linearMotion(assembly, options, basis);
+  return linear.ok ? succeed([{ from: 0, linear: linear.value, speeds: [] }]) : fail(linear.reason);
+}
+
+function solutionOf(stretches: Stretches, ask: HistoryAsk): HistorySolution {
+  return { response: responseOf(stretches, ask), answer: () => storedAnswer(stretches, ask) };
+}
+
+function responseOf(stretches: Stretches, { accuracy }: HistoryAsk): TimeResponse {
+  const [first] = stretches;
+  const isPlain = stretches.length === 1 && first.speeds.length === 0;
+  return isPlain ? timeResponseOf(first.linear, accuracy) : switchedResponse(stretches, accuracy);
 }
 
 /** Largest absolute value of each quantity asked for. */
-function peaksOf(linear: LinearMotion, ask: HistoryAsk): Outcome<number[]> {
-  const response = timeResponseOf(linear, ask.accuracy);
+function peaksOf(stretches: Stretches, ask: HistoryAsk): Outcome<number[]> {
+  const response = responseOf(stretches, ask);
   const out: number[] = [];
   for (const quantity of ask.of) {
     const high = response.highest(quantity);
@@ -93,44 +115,94 @@ function agree(a: readonly number[], b: readonly number[], accuracy: number): bo
   return a.every((value, i) => Math.abs(value - b[i]) <= accuracy * Math.abs(b[i]));
 }
 
-function storedAnswer(linear: LinearMotion, ask: HistoryAsk): Outcome<HistoryAnswer> {
-  const { motion } = linear;
-  const quantities = ask.of.map((ref) => linear.quantity(ref));
-  const demands = surveyDemands(motion, quantities, 0.1 * ask.accuracy);
-  const known = demands.ok ? demands.value : demands.upTo;
-  if (known === undefined) return fail(demands.ok ? UNASKED : demands.reason);
-  const timeS = storedTimes(ask, known);
-  if (!timeS.ok) return fail(timeS.reason);
-  const grid = demandedGrid(motion, known, timeS.value);
-  if (!grid.ok) return fail(grid.reason);
-  const series = new Map<string, { unit: string; values: Float64Array }>();
-  const peaks = new Map<string, Peak>();
-  let reached = timeS.value.length;
-  let trouble: string | undefined;
-  const together = Math.max(2, Math.floor(TRACE_ROOM / grid.value.times.length));
-  for (let from = 0; from < quantities.length; from += together) {
-    const batch = quantities.slice(from, from + together);
-    const followed = followTrace(motion, grid.value, batch);
-    const trace = followed.ok ? followed.value : followed.upTo;
-    if (!followed.ok) trouble ??= followed.reason;
-    if (trace === undefined) return fail(trouble ?? UNASKED);
-    const rows = storedRows(trace, timeS.value);
-    reached = Math.min(reached, rows.length);
-    batch.forEach((quantity, q) => {
-      const { text, unit } = ask.of[from + q];
-      series.set(text, { unit, values: gathered(trace.values[q], rows) });
-      const prober = new Prober(motion, new QuantityReader(motion.modal, quantity));
-      const high = extreme(trace, q, prober, 1);
-      const low = extreme(trace, q, prober, -1);
-      const most = Math.abs(low.value) > Math.abs(high.value) ? low : high;
-      peaks.set(text, { value: Math.abs(most.value), at: most.at });
-    });
+function storedAnswer(stretches: Stretches, ask: HistoryAsk): Outcome<HistoryAnswer> {
+  const demands: Demands[] = [];
+  for (const { linear } of stretches) {
+    const quantities = ask.of.map((ref) => linear.quantity(ref));
+    const found = surveyDemands(linear.motion, quantities, 0.1 * ask.accuracy);
+    const known = found.ok ? found.value : found.upTo;
+    if (known === undefined) return fail(found.ok ? UNASKED : found.reason);
+    demands.push(known);
   }
-  const answer: HistoryAnswer = { kind: "history", timeS: timeS.value.slice(0, reached), series, peaks };
-  return trouble === undefined ? succeed(answer) : fail(trouble, answer);
+  const timeS = storedTimes(ask, demands);
+  if (!timeS.ok) return fail(timeS.reason);
+  const stored = new Stored(ask, timeS.value);
+  for (let i = 0; i < stretches.length; i++) {
+    const last = i + 1 === stretches.length;
+    const goesOn = stored.add(
+      stretches[i],
+      demands[i],
+      last ? Number.POSITIVE_INFINITY : stretches[i + 1].from,
+    );
+    if (!goesOn.ok) return fail(goesOn.reason, stored.answer());
+  }
+  return succeed(stored.answer());
 }
 
-function storedTimes(ask: HistoryAsk, demands: Demands): Outcome<Float64Array> {
+/** A stored answer while its stretches are followed one by one. */
+class Stored {
+  readonly #ask: HistoryAsk;
+  readonly #timeS: Float64Array;
+  readonly #values: readonly Float64Array[];
+  readonly #peaks = new Map<string, Peak>();
+  #reached = 0;
+
+  constructor(ask: HistoryAsk, timeS: Float64Array) {
+    this.#ask = ask;
+    this.#timeS = timeS;
+    this.#values = ask.of.map(() => new Float64Array(timeS.length));
+  }
+
+  answer(): HistoryAnswer {
+    const { of } = this.#ask;
+    const values = (i: number) => this.#values[i].slice(0, this.#reached);
+    const series = new Map(of.map(({ text, unit }, i) => [text, { unit, values: values(i) }]));
+    return { kind: "history", timeS: this.#timeS.slice(0, this.#reached), series, peaks: this.#peaks };
+  }
+
+  /** Follows a stretch to the instants before `until`. What was reached before a failure stands. */
+  add({ from, linear }: Stretches[number], demands: Demands, until: number): Outcome<true> {
+    const { motion } = linear;
+    const start = this.#reached;
+    let end = start;
+    while (end < this.#timeS.length && this.#timeS[end] < until) end++;
+    const local = this.#timeS
+      .slice(start, end)
+      .map((time) => Math.min(motion.duration, Math.max(0, time - from)));
+    const grid = demandedGrid(motion, demands, local);
+    if (!grid.ok) return fail(grid.reason);
+    let reached = local.length;
+    let trouble: string | undefined;
+    const { of } = this.#ask;
+    const together = Math.max(2, Math.floor(TRACE_ROOM / grid.value.times.length));
+    for (let first = 0; first < of.length; first += together) {
+      const batch = of.slice(first, first + together).map((ref) => linear.quantity(ref));
+      const followed = followTrace(motion, grid.value, batch);
+      const trace = followed.ok ? followed.value : followed.upTo;
+      if (!followed.ok) trouble ??= followed.reason;
+      if (trace === undefined) return fail(trouble ?? UNASKED);
+      const rows = storedRows(trace, local);
+      reached = Math.min(reached, rows.length);
+      batch.forEach((quantity, q) => {
+        gather(trace.values[q], rows, this.#values[first + q], start);
+        const prober = new Prober(motion, new QuantityReader(motion.modal, quantity));
+        this.#peak(of[first + q].text, from, extreme(trace, q, prober, 1));
+        this.#peak(of[first + q].text, from, extreme(trace, q, prober, -1));
+      });
+    }
+    this.#reached = start + reached;
+    return trouble === undefined ? succeed(true) : fail(trouble);
+  }
+
+  #peak(text: string, from: number, { value, at }: Peak): void {
+    const known = this.#peaks.get(text);
+    if (known === undefined || Math.abs(value) > known.value) {
+      this.#peaks.set(text, { value: Math.abs(value), at: from + at });
+    }
+  }
+}
+
+function storedTimes(ask: HistoryAsk, demands: readonly Demands[]): Outcome<Float64Array> {
   const { lasting, step } = ask;
   if (step !== undefined) {
     if (!(step > 0)) return fail(`the step of a history must be above zero, found ${step} s`);
@@ -143,7 +215,9 @@ function storedTimes(ask: HistoryAsk, demands: Demands): Outcome<Float64Array> {
     return succeed(times);
   }
   let fastest = 0;
-  for (const { rate, share } of demands.rates) if (share >= DRAWN_SHARE) fastest = Math.max(fastest, rate);
+  for (const { rates } of demands) {
+    for (const { rate, share } of rates) if (share >= DRAWN_SHARE) fastest = Math.max(fastest, rate);
+  }
   const wanted = Math.ceil((lasting * fastest * POINTS_A_CYCLE) / (2 * Math.PI));
   const count = Math.min(MOST_USUAL_POINTS, Math.max(USUAL_POINTS, wanted));
   return succeed(Float64Array.from({ length: count + 1 }, (_, i) => (lasting * i) / count));
@@ -163,8 +237,6 @@ function storedRows(trace: Trace, stored: Float64Array): Int32Array {
   return rows;
 }
 
-function gathered(values: Float64Array, rows: Int32Array): Float64Array {
-  const out = new Float64Array(rows.length);
-  for (let i = 0; i < rows.length; i++) out[i] = values[rows[i]];
-  return out;
+function gather(values: Float64Array, rows: Int32Array, into: Float64Array, at: number): void {
+  for (let i = 0; i < rows.length; i++) into[at + i] = values[rows[i]];
 }

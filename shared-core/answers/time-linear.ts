@@ -13,7 +13,7 @@ import { type StateInput, type StateSpace, stateSpace } from "../mechanics/state
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { identity, multiply, multiplyVector } from "../numerics/products.ts";
 import { type DriveSignal, driveSignal } from "./drive-history.ts";
-import { constantSignal } from "./drive-signal.ts";
+import { constantSignal, type Signal } from "./drive-signal.ts";
 import type { ModalBasis } from "./modes-basis.ts";
 import { modalStates, type StateBasis } from "./time-basis.ts";
 import { type ModalOutput, type ModalSystem, modalOutput, modalState, modalSystem } from "./time-modal.ts";
@@ -46,11 +46,40 @@ export interface MotionAsk {
   readonly finer: number;
 }
 
+/** A motion before its equations are parted: what a torque over speed changes from stretch to stretch. */
+export interface PreparedMotion {
+  readonly states: States;
+  /** Sets of states that do not feel each other. */
+  readonly components: readonly (readonly number[])[];
+  /** One an input; a torque over speed stands as zero. */
+  readonly signals: readonly Signal[];
+  /** The states before t = 0. */
+  readonly start: Float64Array;
+  readonly interpolated: boolean;
+}
+
 /**
  * `basis` holds the undamped modes; without it the states of the mechanics are split as they are, and the model
  * must have neither modal damping nor loss factors.
  */
 export function linearMotion(assembly: Assembly, ask: MotionAsk, basis?: ModalBasis): Outcome<LinearMotion> {
+  const prepared = preparedMotion(assembly, ask, basis);
+  if (!prepared.ok) return fail(prepared.reason);
+  const { states, components, signals, start, interpolated } = prepared.value;
+  const modal = modalSystem(states.system, components);
+  return succeed({
+    motion: new Motion(modal, signals, ask.lasting, modalState(modal, start)),
+    interpolated,
+    quantity: (ref) => states.quantity(ref, modal),
+  });
+}
+
+/** The same before it is parted. */
+export function preparedMotion(
+  assembly: Assembly,
+  ask: MotionAsk,
+  basis?: ModalBasis,
+): Outcome<PreparedMotion> {
   const drives = drivesOf(assembly, ask);
   if (!drives.ok) return fail(drives.reason);
   const load = steadyLoad(assembly);
@@ -65,11 +94,12 @@ export function linearMotion(assembly: Assembly, ask: MotionAsk, basis?: ModalBa
   if (load !== undefined) signals.push(constantSignal(1));
   const start = startState(assembly, ask, states, load, drives.value);
   if (!start.ok) return fail(start.reason);
-  const modal = modalSystem(states.system, chosen.value.components);
   return succeed({
-    motion: new Motion(modal, signals, ask.lasting, modalState(modal, start.value)),
+    states,
+    components: chosen.value.components,
+    signals,
+    start: start.value,
     interpolated: drives.value.some((d) => d.interpolated),
-    quantity: (ref) => states.quantity(ref, modal),
   });
 }
 
@@ -106,6 +136,10 @@ export function steadyLoad(assembly: Assembly): LinearForm | undefined {
 function drivesOf(assembly: Assembly, ask: MotionAsk): Outcome<DriveSignal[]> {
   const out: DriveSignal[] = [];
   for (const index of ask.by) {
+    if (assembly.drives[index].shape.kind === "speed-curve") {
+      out.push({ signal: constantSignal(0), standing: 0, interpolated: false });
+      continue;
+    }
     const made = driveSignal(assembly.drives[index], ask);
     if (!made.ok) return fail(made.reason);
     out.push(made.value);
@@ -119,7 +153,7 @@ function inputOf(assembly: Assembly, index: number): StateInput {
 }
 
 /** The chosen states with the outputs that quantities need. */
-class States {
+export class States {
   readonly system: StateForm;
   readonly #assembly: Assembly;
   readonly #space: StateSpace;
@@ -130,14 +164,35 @@ class States {
   readonly #displacement: Float64Array;
   readonly #outputs = new Map<LinearForm, OutputForm[]>();
 
-  constructor(assembly: Assembly, space: StateSpace, inputs: readonly StateInput[], chosen: StateBasis) {
+  /** `system` stands in place of the equations of the chosen states, whose meaning stays as it is. */
+  constructor(
+    assembly: Assembly,
+    space: StateSpace,
+    inputs: readonly StateInput[],
+    chosen: StateBasis,
+    system?: StateForm,
+  ) {
     this.#assembly = assembly;
     this.#space = space;
     this.#inputs = inputs;
     this.#chosen = chosen;
     this.#clean = withoutInputDerivatives(chosen.raw);
     this.#displacement = multiply(space.displacement, chosen.columns, assembly.free, space.size, space.size);
-    this.system = this.#clean.system;
+    this.system = system ?? this.#clean.system;
+  }
+
+  /** The same states under other equations. */
+  under(system: StateForm): States {
+    return new States(this.#assembly, this.#space, this.#inputs, this.#chosen, system);
+  }
+
+  /** Whether an input is felt without delay by a place: one on which it acts has no inertia. */
+  actsAtOnce(input: number): boolean {
+    const { displacementDirect } = this.#space;
+    const count = this.system.inputs;
+    for (let at = input; at < displacementDirect.length; at += count)
+      if (displacementDirect[at] !== 0) return true;
+    return false;
   }
 
   /** The chosen states at places `q` and speeds `v` of the free coordinates, supports at zero. */
@@ -168,14 +223,15 @@ class States {
     const state = new Float64Array(this.system.size);
     const direct = new Float64Array(this.system.inputs * DIRECT_ORDERS);
     for (const { form, derivative, factor } of terms) {
-      const output = this.#output(form, derivative);
+      const output = this.output(form, derivative);
       for (let i = 0; i < state.length; i++) state[i] += factor * output.state[i];
       for (let i = 0; i < direct.length; i++) direct[i] += factor * output.direct[i];
     }
     return modalOutput(modal, { state, direct });
   }
 
-  #output(form: LinearForm, derivative: 0 | 1 | 2): OutputForm {
+  /** A form of the coordinates, its speed or its acceleration, from states and inputs. */
+  output(form: LinearForm, derivative: 0 | 1 | 2): OutputForm {
     let known = this.#outputs.get(form);
     if (known === undefined) {
       const place = this.#place(form);

@@ -24,13 +24,13 @@ export function settledValue(motion: Motion, quantity: ModalQuantity): Outcome<n
   const inputs = new Float64Array(motion.signals.length * SIGNAL_DERIVATIVES);
   const end = motion.rowAt(motion.duration, "before", row, inputs);
   if (!end.ok) return fail(end.reason);
-  const rest = equilibriumRow(motion.modal, standing.value, row);
+  const outputs = [quantity.linear, ...quantity.products.flatMap((p) => [p.a, p.b])];
+  const rest = equilibriumRow(motion.modal, standing.value, row, outputs);
   if (!rest.ok) return fail(rest.reason);
   const block = laterBlock(motion.modal, standing.value, row);
   if (!block.ok) return fail(block.reason);
   row.set(block.value, 2 * motion.modal.count);
   rest.value.set(block.value, 2 * motion.modal.count);
-  const outputs = [quantity.linear, ...quantity.products.flatMap((p) => [p.a, p.b])];
   for (const output of outputs) {
     const trouble = unrest(motion, output, row, rest.value, standing.value);
     if (trouble !== undefined) return fail(trouble);
@@ -63,11 +63,15 @@ function standingInputs(motion: Motion): Outcome<Float64Array> {
   return succeed(out);
 }
 
-/** The single roots' places under standing inputs; where a root of zero leaves one open it is that of `open`. */
+/**
+ * The single roots' places under standing inputs; where a root of zero leaves one open it is that of `open`. One
+ * that a load moves on for ever, as an angle at a running speed, may be open where no output sees it.
+ */
 function equilibriumRow(
   modal: ModalSystem,
   standing: Float64Array,
   open: Float64Array,
+  outputs: readonly ModalOutput[],
 ): Outcome<Float64Array> {
   const { count, inputs } = modal;
   const out = new Float64Array(2 * count + modal.rest);
@@ -85,7 +89,8 @@ function equilibriumRow(
     const li = modal.lambdaIm[k];
     const square = lr * lr + li * li;
     if (square === 0) {
-      if (Math.abs(br) > UNSEEN * size) return fail("a standing load moves something that nothing holds");
+      if (Math.abs(br) > UNSEEN * size && outputs.some((output) => sees(output, k)))
+        return fail("a standing load moves something that nothing holds");
       out[k] = open[k];
       continue;
     }
@@ -93,6 +98,13 @@ function equilibriumRow(
     out[count + k] = -(bi * lr - br * li) / square;
   }
   return succeed(out);
+}
+
+/** Whether a root makes up more of an output than rounding. */
+function sees({ re, im }: ModalOutput, k: number): boolean {
+  let most = 0;
+  for (let i = 0; i < re.length; i++) most = Math.max(most, Math.hypot(re[i], im[i]));
+  return Math.hypot(re[k], im[k]) > UNDAMPED * most;
 }
 
 /** The block so much later that whatever decays in it has died away: forty times its slowest decay. */

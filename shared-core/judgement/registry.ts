@@ -9,6 +9,7 @@ import { lossInTime } from "./rules/loss-in-time.ts";
 import { nearResonance } from "./rules/near-resonance.ts";
 import { noConvergence } from "./rules/no-convergence.ts";
 import { noInertia } from "./rules/no-inertia.ts";
+import { nonlinearLinearised } from "./rules/nonlinear-linearised.ts";
 import { notDamped } from "./rules/not-damped.ts";
 import { notSettled } from "./rules/not-settled.ts";
 import { outsideValidity } from "./rules/outside-validity.ts";
@@ -26,6 +27,7 @@ export const RULES: readonly Rule[] = [
   outsideValidity,
   unreached,
   lossInTime,
+  nonlinearLinearised,
   startsWithJump,
   noInertia,
   noConvergence,

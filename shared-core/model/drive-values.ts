@@ -13,6 +13,7 @@ import { unitsOf } from "../vocabulary/measures.ts";
 import { type Code, numberFault, reads, VARIABLE_SLOTS } from "./code.ts";
 import { type Given, itemWords, singleValue, wordOf } from "./details.ts";
 import { type Draft, sayNotYet } from "./draft.ts";
+import { speedCurve } from "./drive-curve.ts";
 import type { ShapeRule } from "./drive-shapes.ts";
 import { type DriveValues, derivativeOf } from "./drives.ts";
 import { replaceFix } from "./findings.ts";
@@ -440,9 +441,8 @@ function recordUnit(r: ShapeReader): UnitMeaning | undefined {
 const sameAs = (a: Kind, b: Kind): boolean =>
   a.rate === b.rate && a.dimension.every((exponent, i) => Math.abs(exponent - b.dimension[i]) < 1e-9);
 
-/** Torque over speed, in rows; a file is read with its records. */
+/** Torque over speed, in rows. */
 function curve(r: ShapeReader): Plan | undefined {
-  const given = r.details.get("curve") as Given;
-  sayNotYet(r.draft, given.span, "a torque over speed");
-  return undefined;
+  const read = speedCurve(r.details.get("curve") as Given, r.values.wanted, r.draft);
+  return read && r.finish("speed-curve", () => ({ kind: "speed-curve", ...read }));
 }

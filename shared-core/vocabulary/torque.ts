@@ -13,8 +13,11 @@ export const torque: StatementDescription = statement({
   text: prose(
     "A torque on a turning coordinate, positive the way the angle is positive, with the shapes that a",
     "force has. Two more belong to machines: a `law` may also hold `rate`, the angular rate of what it",
-    "acts on as a plain 1/s, and `curve` gives torque over speed in rows, as a motor's data sheet does.",
-    "Both make the torque part of the dynamics: a falling curve damps, a rising one may hunt.",
+    "acts on as a plain 1/s, and `curve` gives torque over speed in rows, as a motor's data sheet does:",
+    "straight between the rows, and held at the first and last torque outside them. Both make the torque",
+    "part of the dynamics: a falling curve damps, a rising one may hunt. A history follows a curve exactly,",
+    "several at once too, switched on at t = 0; modes and sweeps leave it out, because its slope at",
+    "standstill is not the one at speed. What a curve acts on needs an inertia of its own.",
     "",
     "The orders of a reciprocating engine are one drive each, tied to one speed with its own `order` and",
     "`phase`.",

@@ -12,7 +12,6 @@ import { understand } from "../../shared-core/model/understand.ts";
  */
 const LATER: ReadonlySet<string> = new Set([
   "swing-too-large",
-  "nonlinear-linearised",
   "no-equilibrium",
   "no-convergence",
   "tune-impossible",
