@@ -48,14 +48,14 @@ mass beam = 900 kg
 spring rope between hook and beam = k
 spring girder between beam and ground = 3 MN/m
     loss_factor = 0.02
-expect slow = natural_frequency(1) <= 0.6 Hz
+expect slow = natural_frequency(1) <= 2 Hz
     margin = 10 %
-expect damped = damping_ratio(1) >= 1 %
 `.replaceAll("\n", "\r\n"),
   `thrum 1
 use "examples/ventilation-fan.thrum"
 inertia rotor = 2 kg*m^2
 inertia wheel = 0.5 kg*m^2
+inertia gear = 0.1 kg*m^2
 spring shaft between rotor and wheel = 4 kN*m/rad
 torque ripple on rotor
     amplitude = 3 N*m
