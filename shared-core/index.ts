@@ -8,6 +8,8 @@ export type { CaseReport, FileReport, InternalFault, JudgeOptions, Verdict } fro
 export type { Steps } from "./judgement/steps.ts";
 export type { FileContent, FileReader, Model } from "./model/model.ts";
 export { learnUnits } from "./model/other-units.ts";
+export type { Unit } from "./units/dimension.ts";
+export { learnedUnits, learnUnit } from "./units/lookup.ts";
 export { understand } from "./model/understand.ts";
 
 // One case of a model with its numbers, and what can be asked of it.

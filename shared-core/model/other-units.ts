@@ -13,7 +13,8 @@ const LONGEST = 30;
 export async function learnUnits(model: Model): Promise<boolean> {
   const names = wantedNames(model);
   if (names.size === 0) return false;
-  const resolve = await loadOtherUnits();
+  resolver ??= loadOtherUnits();
+  const resolve = await resolver;
   let learned = false;
   for (const name of names) {
     const unit = resolve(name);
@@ -23,6 +24,9 @@ export async function learnUnits(model: Model): Promise<boolean> {
   }
   return learned;
 }
+
+/** Loaded once: it takes some 100 ms, and a text that is being typed asks again and again. */
+let resolver: ReturnType<typeof loadOtherUnits> | undefined;
 
 function wantedNames({ diagnostics, tree }: Model): ReadonlySet<string> {
   const names = new Set<string>();

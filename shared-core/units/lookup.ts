@@ -51,6 +51,9 @@ export function learnUnit(unit: Unit): void {
   if (lookupUnit(unit.name) === undefined) LEARNED.set(unit.name, unit);
 }
 
+/** All units that were added so far. */
+export const learnedUnits = (): readonly Unit[] => [...LEARNED.values()];
+
 /** Whether a name behind a number is a unit of the table; what the parser asks. */
 export function isUnitName(name: string): boolean {
   return lookupUnit(name) !== undefined;
