@@ -1,6 +1,7 @@
 /** What joins and drives, as symbols with their leads and words. */
-import { type PlacedLink, type Port, SYMBOL, SYMBOL_HALF } from "./layout.ts";
+
 import { hatched, placedPath, round } from "./path.ts";
+import { type PlacedLink, type Port, SYMBOL, SYMBOL_HALF } from "./placed.ts";
 import type { SceneAnchor, SceneItem, SceneLabel, ScenePart } from "./scene.ts";
 import { DRIVES, OTHER, SYMBOLS, type SymbolPart } from "./symbols.ts";
 import { LINE_HEIGHT, type Words } from "./words.ts";

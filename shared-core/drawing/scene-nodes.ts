@@ -1,6 +1,7 @@
 /** What moves or stands, as shapes with words in them. */
-import type { Layout, PlacedNode, Port } from "./layout.ts";
+
 import { circle, hatched, rectangle, round } from "./path.ts";
+import type { PlacedNode, Port } from "./placed.ts";
 import type { SceneAnchor, SceneItem, SceneLabel, ScenePart } from "./scene.ts";
 import { LINE_HEIGHT, nameWidth, type Words } from "./words.ts";
 
@@ -25,17 +26,14 @@ export function nodeItem(frame: NodeFrame): SceneItem {
     name: node.name,
     keyword: node.keyword,
     family: "moves",
-    parts: partsOf(frame),
+    // What is drawn elsewhere already is only hinted at.
+    parts: frame.placed.isCopy
+      ? partsOf(frame).map((part) => (part.style === "body" ? { ...part, style: "dashed" } : part))
+      : partsOf(frame),
     labels: [...labelsOf(frame), ...frame.pointPorts.map((port) => pointLabel(port, frame.anchor))],
     box: { x: round(x), y: round(y), width: round(width), height: round(height) },
     says: frame.says,
   };
-}
-
-/** Ports of all links at the points of a node, each name once a side where it stands. */
-export function pointPortsOf({ links }: Layout, node: number): Port[] {
-  const standing = links.filter(({ link }) => link.keyword !== "point");
-  return standing.flatMap(({ ports }) => ports).filter((port) => port.node === node && port.point !== "");
 }
 
 function partsOf(frame: NodeFrame): ScenePart[] {

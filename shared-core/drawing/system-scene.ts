@@ -3,11 +3,12 @@ import type { Assembly } from "../mechanics/assembly.ts";
 import type { Model } from "../model/model.ts";
 import type { StatementNode } from "../syntax/tree.ts";
 import { type GraphLink, type GraphNode, type SystemGraph, systemGraph } from "./graph.ts";
-import { type Layout, layoutSystem } from "./layout.ts";
+import { layoutSystem } from "./layout.ts";
 import { round } from "./path.ts";
+import type { Layout, PlacedNode, Port } from "./placed.ts";
 import type { Scene, SceneAnchor, SceneItem, Sway } from "./scene.ts";
 import { groundItem, linkItem } from "./scene-links.ts";
-import { nodeItem, pointPortsOf } from "./scene-nodes.ts";
+import { nodeItem } from "./scene-nodes.ts";
 import { type ShowValue, type Words, wordsFor } from "./words.ts";
 
 /** From here on a drawing tells less than a chart of the coordinates. */
@@ -48,29 +49,38 @@ interface PainterInput {
 class Painter {
   readonly #in: PainterInput;
   readonly #words = new Map<StatementNode, Words>();
-  readonly #sways: readonly (readonly Sway[])[];
+  readonly #boxes: ReadonlyMap<GraphNode, readonly PlacedNode[]>;
+  readonly #sways: ReadonlyMap<PlacedNode, readonly Sway[]>;
 
   constructor(input: PainterInput) {
     this.#in = input;
-    this.#sways = input.graph.nodes.map((_, i) => this.#swaysOf(i));
+    const boxes = new Map<GraphNode, PlacedNode[]>();
+    for (const box of input.layout.nodes) boxes.set(box.node, [...(boxes.get(box.node) ?? []), box]);
+    this.#boxes = boxes;
+    this.#sways = new Map(input.layout.nodes.map((box) => [box, this.#swaysOf(box)]));
   }
 
   items(): SceneItem[] {
-    const { graph, layout } = this.#in;
+    const { layout } = this.#in;
+    const joins = layout.links.filter(({ link }) => link.keyword !== "point");
     const nodes = layout.nodes.map((placed) => {
-      const index = graph.nodes.indexOf(placed.node);
       const { node, x, y, width, height } = placed;
-      const anchor = this.#anchor(index, x + width / 2, y + height / 2);
       const words = this.#wordsOf(node);
-      const pointPorts = pointPortsOf(layout, index);
-      const own = layout.links.flatMap(({ ports }) => ports).filter((port) => port.node === index);
-      const sides = new Set(own.map(({ side }) => side));
-      return nodeItem({ placed, words, anchor, sides, pointPorts, says: saying(node, words, "") });
+      const all = (links: Layout["links"]) =>
+        links.flatMap(({ ports }) => ports).filter((port) => this.#boxAt(port) === placed);
+      return nodeItem({
+        placed,
+        words,
+        anchor: this.#anchor(placed, x + width / 2, y + height / 2),
+        sides: new Set(all(layout.links).map(({ side }) => side)),
+        pointPorts: all(joins).filter(({ point }) => point !== ""),
+        says: saying(node, words, ""),
+      });
     });
     const links = layout.links.map((placed) => {
       const { link, ports } = placed;
       const words = this.#wordsOf(link);
-      const anchors = ports.map((port) => this.#anchor(port.node, port.x, port.y));
+      const anchors = ports.map((port) => this.#anchor(this.#boxAt(port), port.x, port.y));
       return linkItem({ placed, words, anchors, says: saying(link, words, this.#between(link)) });
     });
     const grounds = layout.links.filter(({ link }) => link.grounded).map(groundItem);
@@ -85,8 +95,18 @@ class Painter {
     return words;
   }
 
-  #anchor(node: number, x: number, y: number): SceneAnchor {
-    return { x: round(x), y: round(y), sways: this.#sways[node] };
+  /** The box that a port stands on: of a node that is drawn twice the one in its column. */
+  #boxAt({ node, x, y, side }: Port): PlacedNode {
+    const boxes = this.#boxes.get(this.#in.graph.nodes[node]) ?? [];
+    const found = boxes.find((box) => {
+      const edge = side === "above" ? box.y : box.y + box.height;
+      return Math.abs(edge - y) < 0.5 && box.x - 0.5 <= x && x <= box.x + box.width + 0.5;
+    });
+    return found ?? boxes[0];
+  }
+
+  #anchor(box: PlacedNode, x: number, y: number): SceneAnchor {
+    return { x: round(x), y: round(y), sways: this.#sways.get(box) ?? [] };
   }
 
   #between({ ends, grounded, keyword }: GraphLink): string {
@@ -100,11 +120,9 @@ class Painter {
   }
 
   /** How the coordinates of a node move it in the picture. */
-  #swaysOf(index: number): Sway[] {
-    const { name, keyword } = this.#in.graph.nodes[index];
-    const box = this.#in.layout.nodes.find(({ node }) => node === this.#in.graph.nodes[index]);
+  #swaysOf(box: PlacedNode): Sway[] {
+    const { name, keyword } = box.node;
     const coordinates = this.#in.assembly?.coordinates ?? [];
-    if (box === undefined) return [];
     const middle = { aboutX: round(box.x + box.width / 2), aboutY: round(box.y + box.height / 2) };
     const pivot = { aboutX: round(box.x + 30), aboutY: round(box.y + 4) };
     return coordinates.flatMap((each, coordinate) => {

@@ -165,6 +165,28 @@ spring shaft between rotor and ground = 3 kN*m/rad
   });
 });
 
+describe("a chain that would be too high", () => {
+  const masses = Array.from({ length: MOST_DRAWN }, (_, i) => `mass m${i} = 1 kg`);
+  const springs = masses.map(
+    (_, i) => `spring k${i} between m${i} and ${i === 0 ? "ground" : `m${i - 1}`} = 1 N/m`,
+  );
+  const scene = sceneOf(`thrum 1\n${[...masses, ...springs].join("\n")}\n`);
+
+  it("is folded, and what stands twice sways twice", () => {
+    expect(scene.height).toBeLessThan(1400);
+    expect(overlaps(scene)).toEqual([]);
+    expect(scene.items.filter(({ keyword }) => keyword === "spring")).toHaveLength(MOST_DRAWN);
+    const drawn = scene.items.filter(({ keyword }) => keyword === "mass");
+    const twice = drawn.filter(({ name }, i) => drawn.findIndex((other) => other.name === name) !== i);
+    expect(twice.length).toBeGreaterThan(0);
+    expect(drawn).toHaveLength(MOST_DRAWN + twice.length);
+    for (const { name, parts } of drawn) {
+      const coordinate = Number(name.slice(1));
+      expect(parts[0].rides).toMatchObject({ on: "anchor", anchor: { sways: [{ coordinate }] } });
+    }
+  });
+});
+
 describe("what is hard to draw", () => {
   it("becomes a chart when there are too many coordinates", () => {
     const masses = Array.from(
