@@ -307,7 +307,7 @@ export function demandedGrid(motion: Motion, demands: Demands, stored: Float64Ar
       while (next < stored.length && stored[next] <= from + same) next++;
       const stop = next < stored.length && stored[next] < end - same ? stored[next] : end;
       let rate = (TURN * least) / (end - start);
-      for (const r of rates) if (from - start < r.until && rate < r.rate) rate = r.rate;
+      for (const r of rates) if (from < start + r.until - same && rate < r.rate) rate = r.rate;
       // A stage ends where the fastest root of it has died away.
       let to = stop;
       for (const r of rates) {
