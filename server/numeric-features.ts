@@ -68,9 +68,12 @@ export const NUMERIC = {
     );
   },
 
-  /** Packed here: one text travels between threads faster than rows do. */
-  sheet: ({ whole }: Views, choice: SheetChoice, units: UnitSystem | undefined): PackedContent =>
-    packContent(sheetContent({ ...whole, units: units ?? whole.units }, choice)),
+  /**
+   * Packed here: one text travels between threads faster than rows do. While answers are awaited, modes of this
+   * text are worth more than everything of an earlier one.
+   */
+  sheet: ({ now }: Views, choice: SheetChoice, units: UnitSystem | undefined): PackedContent =>
+    packContent(sheetContent({ ...now, units: units ?? now.units }, choice)),
 
   csv({ whole }: Views, ask: string, caseName: string | undefined): CsvAnswer {
     const { report, units, model } = whole;

@@ -123,6 +123,13 @@ export class Schedule {
     return session.settled();
   }
 
+  /** Resolves when the first numbers of the text as it stands are there. Does not wait for typing to rest either. */
+  async begun(session: Session): Promise<void> {
+    await this.#textTold(session);
+    if (session.numbers === "awaited" && this.#timers.has(session)) this.#judge(session);
+    return session.begun();
+  }
+
   /** Asks the side that computes. undefined where it could not answer, which has been logged. */
   async ask<F extends NumericFeature>(
     session: Session,

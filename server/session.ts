@@ -57,6 +57,7 @@ export class Session implements Place {
   #judged: readonly Diagnostic[] = [];
   #changes: Change[] = [];
   readonly #waiting: (() => void)[] = [];
+  readonly #waitingForModes: (() => void)[] = [];
 
   /** `source`: the text as it was read, of a model that is not open. */
   constructor(document: TextDocument, { folder, file }: Place, source?: FileContent) {
@@ -113,6 +114,7 @@ export class Session implements Place {
     this.#judged = judged.diagnostics;
     this.summary = judged.summary;
     if (judged.upTo === "answers") this.#done();
+    else this.#begin();
   }
 
   /** There will be no numbers of the text as it stands: it has errors, or somebody stopped them. */
@@ -144,11 +146,22 @@ export class Session implements Place {
     return new Promise((done) => this.#waiting.push(done));
   }
 
+  /** Resolves when the first numbers of the text as it stands then are there, or will never be. */
+  begun(): Promise<void> {
+    if (this.numbers !== "awaited") return Promise.resolve();
+    return new Promise((done) => this.#waitingForModes.push(done));
+  }
+
   close(): void {
     this.#done();
   }
 
+  #begin(): void {
+    for (const done of this.#waitingForModes.splice(0)) done();
+  }
+
   #done(): void {
+    this.#begin();
     for (const done of this.#waiting.splice(0)) done();
   }
 

@@ -2,6 +2,10 @@ import {
   CSV,
   type CsvParams,
   PROTOCOL_VERSION,
+  ROWS,
+  type RowsParams,
+  type RowsResult,
+  rowsToStatements,
   SUMMARY,
   type Summary,
   type SummaryParams,
@@ -18,7 +22,7 @@ export function registerOwnRequests(serving: Serving): void {
   const { connection, closed, schedule, guard } = serving;
   connection.onRequest<Summary | null, never>(
     SUMMARY,
-    guard<SummaryParams, Summary | null>("thrum/summary", null, ({ uri }) =>
+    guard<SummaryParams, Summary | null>(SUMMARY, null, ({ uri }) =>
       closed.visit(uri, async (session) => {
         await schedule.settled(session);
         const { summary } = session;
@@ -31,7 +35,7 @@ export function registerOwnRequests(serving: Serving): void {
   );
   connection.onRequest<string | null, never>(
     CSV,
-    guard<CsvParams, string | null>("thrum/csv", null, ({ uri, ask, case: of }) =>
+    guard<CsvParams, string | null>(CSV, null, ({ uri, ask, case: of }) =>
       closed.visit(uri, async (session) => {
         await schedule.settled(session);
         const answer = await schedule.ask(session, "csv", ask, of);
@@ -40,9 +44,19 @@ export function registerOwnRequests(serving: Serving): void {
       }),
     ),
   );
+  connection.onRequest<RowsResult, never>(
+    ROWS,
+    guard<RowsParams, RowsResult>(ROWS, UNREADABLE, async ({ uri, text }) => {
+      const made = await closed.visit(uri, async (session): Promise<RowsResult> => {
+        const rows = rowsToStatements(schedule.view(session), text);
+        return "refused" in rows ? { text: null, refused: rows.refused } : rows;
+      });
+      return made ?? UNREADABLE;
+    }),
+  );
   connection.onRequest<WriteValueResult, never>(
     WRITE_VALUE,
-    guard<WriteValueParams, WriteValueResult>("thrum/writeValue", NOTHING, async ({ uri, name, value }) => {
+    guard<WriteValueParams, WriteValueResult>(WRITE_VALUE, NOTHING, async ({ uri, name, value }) => {
       const result = await closed.visit(uri, async (session) => {
         const { model, lines } = schedule.current(session);
         const written = writeValue(model, name, value);
@@ -56,4 +70,5 @@ export function registerOwnRequests(serving: Serving): void {
   );
 }
 
+const UNREADABLE: RowsResult = { text: null, refused: "the model cannot be read" };
 const NOTHING: WriteValueResult = { edits: [], refused: "the model cannot be read" };

@@ -7,7 +7,7 @@ export function registerSheet({ connection, closed, schedule, guard }: Serving):
     SHEET,
     guard<SheetParams, SheetResult>("thrum/sheet", NOTHING, async ({ uri, units, ...choice }, token) => {
       const result = await closed.visit(uri, async (session): Promise<SheetResult> => {
-        await schedule.settled(session);
+        await schedule.begun(session);
         if (token.isCancellationRequested) return NOTHING;
         const version = session.hidden ? null : session.document.version;
         const content = await schedule.ask(session, "sheet", choice, units);
