@@ -62,18 +62,19 @@ class Painter {
 
   items(): SceneItem[] {
     const { layout } = this.#in;
-    const joins = layout.links.filter(({ link }) => link.keyword !== "point");
+    const met = this.#portsByBox();
     const nodes = layout.nodes.map((placed) => {
       const { node, x, y, width, height } = placed;
       const words = this.#wordsOf(node);
-      const all = (links: Layout["links"]) =>
-        links.flatMap(({ ports }) => ports).filter((port) => this.#boxAt(port) === placed);
+      const ports = met.get(placed) ?? [];
       return nodeItem({
         placed,
         words,
         anchor: this.#anchor(placed, x + width / 2, y + height / 2),
-        sides: new Set(all(layout.links).map(({ side }) => side)),
-        pointPorts: all(joins).filter(({ point }) => point !== ""),
+        sides: new Set(ports.map(({ port }) => port.side)),
+        pointPorts: ports
+          .filter(({ port, link }) => port.point !== "" && link.keyword !== "point")
+          .map(({ port }) => port),
         says: saying(node, words, ""),
       });
     });
@@ -93,6 +94,19 @@ class Painter {
     const words = wordsFor(name, statement, this.#in.model.tree.text, this.#in.show);
     this.#words.set(statement, words);
     return words;
+  }
+
+  #portsByBox(): Map<PlacedNode, { port: Port; link: GraphLink }[]> {
+    const met = new Map<PlacedNode, { port: Port; link: GraphLink }[]>();
+    for (const { link, ports } of this.#in.layout.links) {
+      for (const port of ports) {
+        const box = this.#boxAt(port);
+        const known = met.get(box);
+        if (known === undefined) met.set(box, [{ port, link }]);
+        else known.push({ port, link });
+      }
+    }
+    return met;
   }
 
   /** The box that a port stands on: of a node that is drawn twice the one in its column. */
