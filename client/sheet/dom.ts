@@ -31,23 +31,26 @@ export interface Choice<T extends string> {
   readonly text: string;
 }
 
+let choices = 0;
+
 /** A labelled list to choose from; `update` exchanges its entries and keeps the focus. */
 export class Choices<T extends string> {
-  readonly element: HTMLLabelElement;
+  readonly element: HTMLSpanElement;
   readonly #select: HTMLSelectElement;
   #shown = "";
 
   constructor(label: string, choose: (value: T) => void) {
-    this.#select = html("select");
+    const id = `choice${++choices}`;
+    this.#select = html("select", { id });
     this.#select.addEventListener("change", () => choose(this.#select.value as T));
-    this.element = html("label", { class: "choice" }, html("span", {}, label), this.#select);
+    this.element = html("span", { class: "choice" }, html("label", { for: id }, label), this.#select);
   }
 
-  update(choices: readonly Choice<T>[], chosen: T): void {
-    const shown = JSON.stringify(choices);
+  update(entries: readonly Choice<T>[], chosen: T): void {
+    const shown = JSON.stringify(entries);
     if (shown !== this.#shown) {
       this.#shown = shown;
-      this.#select.replaceChildren(...choices.map(({ value, text }) => html("option", { value }, text)));
+      this.#select.replaceChildren(...entries.map(({ value, text }) => html("option", { value }, text)));
     }
     this.#select.value = chosen;
   }

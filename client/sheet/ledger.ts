@@ -8,7 +8,7 @@ export class Ledger {
     class: "wide",
     tabindex: 0,
     role: "region",
-    "aria-label": "What must hold",
+    "aria-label": "Table of what must hold",
   });
   readonly #page: Page;
   #rows = new Map<string, HTMLElement>();

@@ -37,7 +37,7 @@ export class Player {
     this.#play = wordButton("play", () => (this.playing ? this.pause() : this.play()), {
       class: "word play",
     });
-    this.#speed = slider("speed", { min: -3, max: 3, step: 0.25, value: 0 });
+    this.#speed = slider("speed of the motion", { min: -3, max: 3, step: 0.25, value: 0 });
     this.#place = slider("place in the motion", { min: 0, max: 1, step: 0.001, value: 0 });
     this.#place.addEventListener("input", () => {
       this.pause();
@@ -50,7 +50,7 @@ export class Player {
       this.#play,
       this.#place,
       this.#where,
-      html("label", { class: "choice" }, html("span", {}, "speed"), this.#speed),
+      html("span", { class: "choice" }, html("label", { for: "speed" }, "speed"), this.#speed),
     );
     this.element = html("div", { class: "player" }, this.#motions.element, this.#controls);
   }
@@ -143,5 +143,5 @@ const lengthOf = ({ frames, stepS }: Extract<SheetMotion, { kind: "history" }>):
   Math.max(0, frames - 1) * stepS;
 
 function slider(label: string, attributes: Record<string, number>): HTMLInputElement {
-  return html("input", { type: "range", "aria-label": label, ...attributes });
+  return html("input", { type: "range", id: label.split(" ")[0], "aria-label": label, ...attributes });
 }

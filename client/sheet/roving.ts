@@ -33,7 +33,10 @@ export class Roving {
       "aria-label": options.label,
     });
     this.element.addEventListener("keydown", (event) => this.#key(event));
-    this.element.addEventListener("focus", () => this.#stand(Math.max(0, this.#at)));
+    this.element.addEventListener("focus", () => {
+      // A click stands where it points.
+      if (this.element.matches(":focus-visible")) this.#stand(Math.max(0, this.#at));
+    });
     this.element.addEventListener("blur", () => this.#mark(undefined));
     this.element.addEventListener("pointerleave", () => this.#options.over(null));
   }

@@ -204,6 +204,7 @@ class Parts {
         { class: "in", x, y: belly + 3.5, "text-anchor": "middle" },
         half > 6 ? String(number) : "",
       ),
+      " ",
       words,
     );
     return { key: id, element, says, x };

@@ -54,6 +54,8 @@ export class ScenePicture {
       if (label.anchor) this.#words.push({ label, text });
       return text;
     });
-    return svg("g", { class: `item ${item.family}` }, hit, ...paths, ...texts);
+    // Blanks between its words, as a screen reader takes them.
+    const words = texts.flatMap((text) => [" ", text]);
+    return svg("g", { class: `item ${item.family}` }, hit, ...paths, ...words);
   }
 }

@@ -108,9 +108,11 @@ describe("a plot", () => {
       await page.mouse.move(box.x + 500, box.y + 60, { steps: 4 });
       await page.mouse.up();
       await expect.poll(ticks).not.toEqual(whole);
-      const framed = (await state()) as { zoom: Record<string, [number, number]> };
-      const [from, to] = framed.zoom.half_run;
-      expect(to - from).toBeCloseTo(200 / (box.width - 62 - 16), 2);
+      const shown = async () => {
+        const [from, to] = ((await state()) as { zoom: Record<string, [number, number]> }).zoom.half_run;
+        return to - from;
+      };
+      await expect.poll(shown).toBeCloseTo(200 / (box.width - 62 - 16), 2);
       await page.mouse.dblclick(box.x + 300, box.y + 60);
       await expect.poll(ticks).toEqual(whole);
       await page.keyboard.down("Control");
