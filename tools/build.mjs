@@ -1,6 +1,6 @@
 /** Builds everything that ships into dist/. */
-import { rmSync } from "node:fs";
-import { join } from "node:path";
+import { readdirSync, renameSync, rmSync } from "node:fs";
+import { basename, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { ensureInstalled } from "./install.mjs";
 import { root } from "./root.mjs";
@@ -104,16 +104,25 @@ function partsOfMathjs() {
 const COMMON = { bundle: true, minify: true, legalComments: "none", logLevel: "warning" };
 
 /**
- * Builds all programs; throws when one does not build.
+ * Builds all programs; throws when one does not build. What stood there is replaced at once and only by something
+ * whole, for others may be running it.
  * @param {string} [into]  folder whose dist/ is written
  */
 export async function build(into = root) {
   ensureInstalled("build");
   const esbuild = await import("esbuild");
-  for (const { outdir } of PROGRAMS) rmSync(join(into, outdir), { recursive: true, force: true });
-  for (const program of PROGRAMS) {
-    const outdir = join(into, program.outdir);
-    await esbuild.build({ absWorkingDir: root, ...COMMON, ...program, outdir });
+  const fresh = join(into, "dist", `.fresh-${process.pid}`);
+  try {
+    for (const program of PROGRAMS) {
+      const outdir = join(fresh, basename(program.outdir));
+      await esbuild.build({ absWorkingDir: root, ...COMMON, ...program, outdir });
+    }
+    for (const name of readdirSync(fresh)) {
+      rmSync(join(into, "dist", name), { recursive: true, force: true });
+      renameSync(join(fresh, name), join(into, "dist", name));
+    }
+  } finally {
+    rmSync(fresh, { recursive: true, force: true });
   }
 }
 
