@@ -154,7 +154,6 @@ export class SheetPanel implements vscode.Disposable {
       this.#post({ type: "state", state: "failed", text: (error as Error).message });
       return;
     }
-    this.#behind = false;
     if (!this.shows(uri)) return;
     if (result.content === null) this.#post({ type: "state", state: "failed", text: result.reason ?? "" });
     else {
