@@ -40,8 +40,9 @@ export class SheetPanel implements vscode.Disposable {
   #ready = false;
   #wanted = false;
   #running = false;
-  /** Numbers have begun to be computed since the last content was asked for. */
-  #behind = false;
+  /** The server is computing: what it says now may not have all answers. */
+  #computing = false;
+  #posted = "";
   #ask: string | undefined;
   #cursor: ReturnType<typeof setTimeout> | undefined;
 
@@ -91,6 +92,7 @@ export class SheetPanel implements vscode.Disposable {
     if (this.shows(uri)) return;
     this.#point(undefined);
     this.#uri = uri;
+    this.#computing = false;
     const { units } = this.#choice;
     this.#choice = units === undefined ? {} : { units };
     this.#name();
@@ -109,8 +111,9 @@ export class SheetPanel implements vscode.Disposable {
   }
 
   hear({ state }: StateParams): void {
-    if (state !== "ready") this.#behind = true;
-    else if (this.#behind && !this.#running) this.refresh();
+    const computed = this.#computing && state === "ready";
+    this.#computing = state !== "ready";
+    if (computed) this.refresh();
   }
 
   cursorAt(document: vscode.TextDocument, place: vscode.Position): void {
@@ -135,7 +138,6 @@ export class SheetPanel implements vscode.Disposable {
     this.#running = true;
     while (this.#wanted && this.#ready && this.#panel.visible) {
       this.#wanted = false;
-      this.#behind = false;
       this.#post({ type: "state", state: "busy", text: "" });
       // The edit that led here is on its way to the server first.
       await new Promise((done) => setTimeout(done, 0));
@@ -158,8 +160,11 @@ export class SheetPanel implements vscode.Disposable {
     if (result.content === null) this.#post({ type: "state", state: "failed", text: result.reason ?? "" });
     else {
       const { content, version } = result;
-      this.#post({ type: "content", uri: uri.toString(), version, content });
-      this.#post({ type: "state", state: "ready", text: "" });
+      // The same once more would only be painted again.
+      const posted = `${uri} ${content}`;
+      if (posted !== this.#posted) this.#post({ type: "content", uri: uri.toString(), version, content });
+      this.#posted = posted;
+      if (!this.#computing) this.#post({ type: "state", state: "ready", text: "" });
     }
   }
 
@@ -168,6 +173,7 @@ export class SheetPanel implements vscode.Disposable {
     switch (message.type) {
       case "ready":
         this.#ready = true;
+        this.#posted = "";
         this.refresh();
         break;
       case "show": {

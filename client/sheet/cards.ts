@@ -28,10 +28,15 @@ export class Cards {
     this.#host = host;
   }
 
-  update(content: SheetContent): void {
+  /** @param waits  answers are still being computed: a plot stays, marked, where there is only a reason yet */
+  update(content: SheetContent, waits: boolean): void {
     const wanted = new Map(content.cards.map((card) => [card.name, card]));
+    const stays = (name: string, kind: string) =>
+      waits && kind === "plot" && wanted.get(name)?.kind === "reason";
     for (const [name, shown] of this.#shown) {
-      if (familyOf(wanted.get(name)) === shown.kind) continue;
+      const old = stays(name, shown.kind);
+      shown.element.classList.toggle("old", old);
+      if (old || familyOf(wanted.get(name)) === shown.kind) continue;
       shown.element.remove();
       this.#shown.delete(name);
     }

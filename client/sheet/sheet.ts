@@ -33,6 +33,7 @@ export class Sheet {
   #content: SheetContent | undefined;
   #next: Extract<ToSheet, { type: "content" }> | undefined;
   #failed: string | undefined;
+  #busy = false;
 
   constructor(page: Page) {
     this.#page = page;
@@ -124,7 +125,7 @@ export class Sheet {
     this.#head.update(content);
     this.#drawing.update(content);
     this.#ruler.update(content.ruler);
-    this.#cards.update(content);
+    this.#cards.update(content, this.#busy);
     this.#ledger.update(content.ledger, content.case);
     this.#knobs.update(content.knobs);
     this.#foot.replaceChildren(...content.cautions.map((line) => html("p", {}, line)));
@@ -140,7 +141,10 @@ export class Sheet {
   }
 
   #state({ state, text }: Extract<ToSheet, { type: "state" }>): void {
-    this.#head.busy(state === "busy");
+    const computed = this.#busy && state !== "busy";
+    this.#busy = state === "busy";
+    if (computed && this.#content && this.#next === undefined) this.#cards.update(this.#content, false);
+    this.#head.busy(this.#busy);
     this.element.setAttribute("aria-busy", String(state === "busy"));
     if (state === "failed") {
       this.#failed = text;
