@@ -37,8 +37,11 @@ export interface SteadyQuantity {
     readonly kind: "power" | "energy";
     readonly owner: number;
     readonly factor: number;
-    readonly a: FlatTerms;
-    readonly b: FlatTerms;
+    /** The travel (energies: travel or rate) whose square it goes with. */
+    readonly motion: FlatTerms;
+    /** Of a power: hysteretic stiffness and damping, so that what loses nothing has a power of exactly zero. */
+    readonly hysteretic: number;
+    readonly viscous: number;
   }[];
 }
 
@@ -50,8 +53,9 @@ export function steadyQuantity(assembly: Assembly, ref: QuantityRef): SteadyQuan
       kind,
       owner,
       factor,
-      a: flatten(a),
-      b: flatten(b),
+      motion: flatten(kind === "energy" ? a : [{ ...b[0], derivative: 0 }]),
+      hysteretic: a.reduce((sum, t) => sum + (t.derivative === 0 ? t.factor * t.loss : 0), 0),
+      viscous: a.reduce((sum, t) => sum + (t.derivative === 1 ? t.factor : 0), 0),
     })),
   };
 }
@@ -121,8 +125,9 @@ export function steadyScale({ linear, products }: SteadyQuantity, groups: readon
   for (const group of groups) {
     const most = furthest(group);
     sum += termScale(linear, group, most);
-    for (const { factor, a, b } of products) {
-      sum += Math.abs(factor) * termScale(a, group, most) * termScale(b, group, most);
+    for (const { kind, factor, motion, hysteretic, viscous } of products) {
+      const lost = kind === "power" ? 0.5 * group.omega * (hysteretic + group.omega * viscous) : 1;
+      sum += Math.abs(factor * lost) * termScale(motion, group, most) ** 2;
     }
   }
   return sum;
@@ -160,22 +165,21 @@ function productValue({ products }: SteadyQuantity, groups: readonly GroupState[
 
 type Product = SteadyQuantity["products"][number];
 
-function meanPower({ factor, a, b }: Product, groups: readonly GroupState[]): number {
+/** Half Re(F V*) = half omega |x|^2 (k eta + omega c): springs and inerters give back what they take. */
+function meanPower({ factor, motion, hysteretic, viscous }: Product, groups: readonly GroupState[]): number {
   let sum = 0;
   for (const group of groups) {
-    phasor(a, group, scratch);
-    const re = scratch[0];
-    const im = scratch[1];
-    phasor(b, group, scratch);
-    sum += 0.5 * factor * (re * scratch[0] + im * scratch[1]);
+    phasor(motion, group, scratch);
+    const square = scratch[0] * scratch[0] + scratch[1] * scratch[1];
+    sum += 0.5 * factor * group.omega * square * (hysteretic + group.omega * viscous);
   }
   return sum;
 }
 
-function largestEnergy({ factor, a }: Product, groups: readonly GroupState[]): number {
+function largestEnergy({ factor, motion }: Product, groups: readonly GroupState[]): number {
   let size = 0;
   for (const group of groups) {
-    phasor(a, group, scratch);
+    phasor(motion, group, scratch);
     size += Math.hypot(scratch[0], scratch[1]);
   }
   return factor * size * size;
