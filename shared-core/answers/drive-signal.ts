@@ -80,19 +80,22 @@ export function packedSignal(plain: Plain, jumps: Uint8Array = jumpOrders(plain)
   return { ...plain, impulses: [], jumps };
 }
 
-/** The same signal with its clock set back: what was at `time` is at 0. Impulses up to then are left out. */
-export function laterSignal(signal: Signal, time: number, same: number): Signal {
+/**
+ * The same signal with its clock set back: what was at `time` is at 0. Impulses up to then are left out, and so are
+ * pieces that begin after `until`. Instants closer than `same` are one.
+ */
+export function laterSignal(signal: Signal, time: number, until: number, same: number): Signal {
   const { starts, order, coefficients, omega, sineRe, sineIm, impulses, jumps } = signal;
-  let first = 0;
-  while (first + 1 < starts.length && starts[first + 1] <= time + same) first++;
+  const first = Math.max(0, startsUpTo(starts, time + same) - 1);
+  const end = Math.max(first + 1, startsUpTo(starts, until));
   const by = Math.max(0, time - starts[first]);
-  const moved = coefficients.slice(first * order);
+  const moved = coefficients.slice(first * order, end * order);
   shiftedPolynomial(coefficients, first * order, order, by, moved, 0);
-  const [re, im] = [sineRe.slice(first), sineIm.slice(first)];
+  const [re, im] = [sineRe.slice(first, end), sineIm.slice(first, end)];
   const [cos, sin] = [Math.cos(omega * by), Math.sin(omega * by)];
   [re[0], im[0]] = [re[0] * cos - im[0] * sin, re[0] * sin + im[0] * cos];
   return {
-    starts: starts.slice(first).map((start, i) => (i === 0 ? 0 : start - time)),
+    starts: starts.slice(first, end).map((start, i) => (i === 0 ? 0 : start - time)),
     order,
     coefficients: moved,
     omega,
@@ -101,8 +104,19 @@ export function laterSignal(signal: Signal, time: number, same: number): Signal 
     impulses: impulses.flatMap((each) =>
       each.time > time + same ? [{ ...each, time: each.time - time }] : [],
     ),
-    jumps: jumps.slice(first),
+    jumps: jumps.slice(first, end),
   };
+}
+
+/** How many pieces begin at or before an instant. */
+function startsUpTo(starts: Float64Array, time: number): number {
+  let [low, high] = [0, starts.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (starts[middle] <= time) low = middle + 1;
+    else high = middle;
+  }
+  return low;
 }
 
 /** u, u', u'' ... at `tau` after the start of piece `i`, into `out` (length SIGNAL_DERIVATIVES). */

@@ -17,13 +17,8 @@ import { type LinearMotion, type MotionAsk, type PreparedMotion, preparedMotion 
 import { type ModalOutput, type ModalSystem, modalOutput, modalState, modalSystem } from "./time-modal.ts";
 import { Motion, outputValue } from "./time-motion.ts";
 import { DIRECT_ORDERS, type OutputForm, type StateForm } from "./time-state.ts";
-import {
-  demandedGrid,
-  followTrace,
-  type ModalQuantity,
-  QuantityReader,
-  surveyDemands,
-} from "./time-trace.ts";
+import { demandedGrid, surveyDemands } from "./time-grid.ts";
+import { followTrace, type ModalQuantity, QuantityReader } from "./time-trace.ts";
 
 /** A linear motion that holds from `from` (s) for its duration; its clock starts there. */
 export interface Stretch {
@@ -156,9 +151,8 @@ class Switching {
   ): Outcome<{ linear: LinearMotion }> {
     const left = this.#lasting - time;
     const start = modalState(region.modal, z);
-    const signals = this.#signals(region, time);
     const linear = (duration: number): LinearMotion => ({
-      motion: new Motion(region.modal, signals, duration, start),
+      motion: new Motion(region.modal, this.#signals(region, time, duration), duration, start),
       interpolated: this.#prepared.interpolated,
       quantity: region.quantity,
     });
@@ -200,8 +194,10 @@ class Switching {
     return first === undefined && !followed.ok ? fail(followed.reason) : succeed(first);
   }
 
-  #signals({ intercepts }: Region, time: number): Signal[] {
-    const signals = this.#prepared.signals.map((signal) => laterSignal(signal, time, this.#same));
+  #signals({ intercepts }: Region, time: number, duration: number): Signal[] {
+    // What lies beyond the end of the history tells whether it comes to rest.
+    const until = time + duration >= this.#lasting - this.#same ? Number.POSITIVE_INFINITY : time + duration;
+    const signals = this.#prepared.signals.map((signal) => laterSignal(signal, time, until, this.#same));
     this.#curves.forEach(({ input }, k) => {
       signals[input] = intercepts[k];
     });

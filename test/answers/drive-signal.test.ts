@@ -4,6 +4,7 @@ import { driveGroups, drivePhasor } from "../../shared-core/answers/drive-phasor
 import { recordSignal } from "../../shared-core/answers/drive-record.ts";
 import {
   integrated,
+  laterSignal,
   type Signal,
   signalDerivatives,
   signalFrom,
@@ -35,6 +36,35 @@ function valueAt(signal: Signal, time: number, order = 0): number {
   signalDerivatives(signal, piece, time - signal.starts[piece], out);
   return out[order];
 }
+
+describe("a signal with its clock set back", () => {
+  const whole = signalFrom(
+    [
+      { start: 0, polynomial: [1, 2, -3], sine: [0.5, -0.2] },
+      { start: 1, polynomial: [4, 0, 0, 2], sine: [1, 1] },
+      { start: 3, polynomial: [-1] },
+    ],
+    7,
+    [
+      { time: 2, size: 5 },
+      { time: 4, size: 6 },
+    ],
+  );
+
+  it.each([0, 0.4, 1, 2, 3.5])("is the same %j s later", (by) => {
+    const later = laterSignal(whole, by, Number.POSITIVE_INFINITY, 1e-12);
+    for (const t of [0, 0.3, 0.9, 1.7, 4]) {
+      for (const order of [0, 1, 2])
+        expect(valueAt(later, t, order)).toBeCloseTo(valueAt(whole, by + t, order), 10);
+    }
+    expect(later.impulses.map(({ time }) => time + by)).toEqual([2, 4].filter((time) => time > by));
+  });
+
+  it("leaves out what begins beyond an end", () => {
+    expect([...laterSignal(whole, 0.5, 2, 1e-12).starts]).toEqual([0, 0.5]);
+    expect([...laterSignal(whole, 3.5, 3.6, 1e-12).starts]).toEqual([0]);
+  });
+});
 
 describe("pulses", () => {
   const at = (shape: PulseShape, time: number) =>

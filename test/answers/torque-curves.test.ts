@@ -117,6 +117,47 @@ ask history run
   expect(Math.abs(at(t1 / 2) / ((10 / k) * (Math.sqrt(3) - 1)) - 1)).toBeLessThan(1e-11);
 });
 
+test("rows of one torque are a step, whatever else drives", () => {
+  const model = (motor: string) => `
+inertia rotor = 0.3 kg*m^2
+    starts_moving = -50 rpm
+inertia load = 2 kg*m^2
+spring shaft between rotor and load = 500 N*m/rad
+damper rubber between rotor and load = 0.4 N*m*s/rad
+spring bar between load and ground = 90 N*m/rad
+torque motor on rotor
+${motor}
+torque knock on load
+    pulse = trapezoid
+    peak = 80 N*m
+    duration = 0.4 s
+    rise = 0.1 s
+    fall = 0.1 s
+    start = 0.7 s
+torque sway on load
+    law = 4 N*m * sin(3 * t / (1 s))
+ask history run
+    of = rotor.speed, shaft.torque, load.angular_acceleration
+    lasting = 3 s
+`;
+  const rows = [-40, -10, 0, 10, 40].map((speed) => `        ${speed} rpm  7 N*m\n`).join("");
+  const curve = historyOf(model(`    curve =\n${rows}`));
+  const step = historyOf(model("    step = 7 N*m"));
+  for (const name of ["rotor.speed", "shaft.torque", "load.angular_acceleration"]) {
+    const [a, b] = [curve, step].map(({ response, quantity }) => ({
+      at: (t: number) => unwrap(response.at(quantity(name), t)),
+      high: unwrap(response.highest(quantity(name))),
+      rms: unwrap(response.rms(quantity(name))),
+      up: unwrap(response.crossings(quantity(name), 0.1, "up")),
+    }));
+    for (let t = 0; t <= 3; t += 0.1) expect(Math.abs(a.at(t) - b.at(t)) / b.high.value).toBeLessThan(1e-9);
+    expect(Math.abs(a.high.value / b.high.value - 1)).toBeLessThan(1e-9);
+    expect(Math.abs(a.rms / b.rms - 1)).toBeLessThan(1e-5);
+    expect(a.up.length).toBe(b.up.length);
+    a.up.forEach((time, i) => void expect(Math.abs(time - b.up[i])).toBeLessThan(1e-8));
+  }
+});
+
 describe("pieces of a curve", () => {
   const curve = curvePieces([0, 1, 3], [10, 30, 20]);
 
