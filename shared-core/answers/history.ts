@@ -7,17 +7,11 @@ import type { HistoryAnswer, Peak } from "./answer.ts";
 import type { ModalBasis } from "./modes-basis.ts";
 import { switchedResponse } from "./switched-response.ts";
 import { extreme, Prober } from "./time-extremes.ts";
+import { type Demands, demandedGrid, surveyDemands } from "./time-grid.ts";
 import { linearMotion } from "./time-linear.ts";
 import { timeResponseOf } from "./time-response.ts";
 import { type Stretch, speedCurvesOf, switchedMotion } from "./time-switched.ts";
-import {
-  type Demands,
-  demandedGrid,
-  followTrace,
-  QuantityReader,
-  surveyDemands,
-  type Trace,
-} from "./time-trace.ts";
+import { followTrace, QuantityReader, type Trace } from "./time-trace.ts";
 
 export interface HistorySolution {
   readonly response: TimeResponse;

@@ -4,9 +4,10 @@ import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import type { TimeResponse } from "./analysis.ts";
 import type { Peak } from "./answer.ts";
 import { crossingsOf, extreme, meanSquareRoot, Prober } from "./time-extremes.ts";
+import { demandedGrid, surveyDemands } from "./time-grid.ts";
 import type { LinearMotion } from "./time-linear.ts";
 import { settledValue } from "./time-settled.ts";
-import { demandedGrid, followTrace, QuantityReader, surveyDemands, type Trace } from "./time-trace.ts";
+import { followTrace, QuantityReader, type Trace } from "./time-trace.ts";
 
 /** Traces kept at a time; an expectation asks several things of one quantity. */
 const KEPT_TRACES = 4;

@@ -13,11 +13,11 @@ import { constantSignal, laterSignal, type Signal } from "./drive-signal.ts";
 import type { ModalBasis } from "./modes-basis.ts";
 import { type CurvePieces, curvePieces, pieceAt, rangeOf } from "./speed-curves.ts";
 import { crossingsOf, Prober } from "./time-extremes.ts";
+import { demandedGrid, surveyDemands } from "./time-grid.ts";
 import { type LinearMotion, type MotionAsk, type PreparedMotion, preparedMotion } from "./time-linear.ts";
 import { type ModalOutput, type ModalSystem, modalOutput, modalState, modalSystem } from "./time-modal.ts";
 import { Motion, outputValue } from "./time-motion.ts";
 import { DIRECT_ORDERS, type OutputForm, type StateForm } from "./time-state.ts";
-import { demandedGrid, surveyDemands } from "./time-grid.ts";
 import { followTrace, type ModalQuantity, QuantityReader } from "./time-trace.ts";
 
 /** A linear motion that holds from `from` (s) for its duration; its clock starts there. */
