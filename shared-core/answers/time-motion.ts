@@ -2,7 +2,8 @@
  * The exact motion of a modal system under given signals: marched along a grid of instants, or asked at any one.
  *
  * Every row is exact to rounding whatever the grid: a step is the closed form of time-propagator.ts. Marching
- * leaves checkpoints behind, from which any instant is reached in a few steps.
+ * leaves checkpoints behind, from which any instant is reached in a few steps. `march` is one long function because
+ * it is the loop over all steps.
  */
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { SIGNAL_DERIVATIVES, type Signal, shiftedPolynomial, signalDerivatives } from "./drive-signal.ts";
