@@ -56,6 +56,7 @@ class Server {
   readonly #diagnostics: Diagnostics;
   readonly #status: Status;
   #refresh: ReturnType<typeof setTimeout> | undefined;
+  #ended = false;
 
   constructor(connection: Connection, client: Client, host: Host) {
     this.#connection = connection;
@@ -88,7 +89,8 @@ class Server {
       });
     });
     const docs = client.docs ?? host.docs;
-    this.serving = { connection, client, workspace, schedule, closed, settingsOf, guard: wall(log), docs };
+    const guard = wall(log, () => this.#ended);
+    this.serving = { connection, client, workspace, schedule, closed, settingsOf, guard, docs };
     this.#diagnostics = new Diagnostics(this.serving);
     this.#status = new Status(this.serving);
     registerFeatures(this.serving);
@@ -117,6 +119,7 @@ class Server {
   }
 
   end(): void {
+    this.#ended = true;
     clearTimeout(this.#refresh);
     this.#diagnostics.end();
     this.#status.end();
@@ -224,12 +227,13 @@ class Server {
       schedule.close(session);
       schedule.open(new Session(session.document, place));
     }
-    void this.#diagnostics.judgeClosed();
+    void this.#loadSettings();
   }
 
   async #loadSettings(...more: readonly string[]): Promise<void> {
-    const open = more.length > 0 ? more : [...this.serving.schedule.sessions].map(({ uri }) => uri);
-    if (await this.#settings.load(open)) this.#settingsChanged();
+    const { schedule, workspace } = this.serving;
+    const all = () => [...[...schedule.sessions].map(({ uri }) => uri), ...workspace.folders];
+    if (await this.#settings.load(more.length > 0 ? more : all())) this.#settingsChanged();
   }
 
   #settingsChanged(): void {

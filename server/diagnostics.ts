@@ -48,6 +48,7 @@ export class Diagnostics {
   readonly #closed = new Map<string, ClosedReport>();
   #reports = 0;
   #closedRun: Promise<void> | undefined;
+  #again = false;
 
   constructor(serving: Serving) {
     this.#serving = serving;
@@ -74,7 +75,9 @@ export class Diagnostics {
 
   /** Judges what is not open, one model behind the other, when the settings want it. */
   judgeClosed(): Promise<void> {
-    this.#closedRun ??= this.#judgeClosed().finally(() => {
+    // A run that is under way may have passed what has changed since.
+    if (this.#closedRun) this.#again = true;
+    this.#closedRun ??= this.#judgeAllClosed().finally(() => {
       this.#closedRun = undefined;
     });
     return this.#closedRun;
@@ -110,11 +113,12 @@ export class Diagnostics {
     );
     connection.languages.diagnostics.onWorkspace(
       guard("workspace/diagnostic", { items: [] }, async ({ previousResultIds }, token) => {
-        let items = await this.#closedReports(previousResultIds);
+        await this.judgeClosed();
+        let items = this.#closedReports(previousResultIds);
         const until = performance.now() + WORKSPACE_EVERY;
         while (items.length === 0 && performance.now() < until && !token.isCancellationRequested) {
           await new Promise((done) => setTimeout(done, WORKSPACE_EVERY / 10));
-          items = await this.#closedReports(previousResultIds);
+          items = this.#closedReports(previousResultIds);
         }
         return { items };
       }),
@@ -152,8 +156,7 @@ export class Diagnostics {
     return Object.keys(related).length > 0 ? { relatedDocuments: related } : {};
   }
 
-  async #closedReports(previous: readonly PreviousResultId[]): Promise<WorkspaceDocumentDiagnosticReport[]> {
-    await this.judgeClosed();
+  #closedReports(previous: readonly PreviousResultId[]): WorkspaceDocumentDiagnosticReport[] {
     const known = new Map(previous.map(({ uri, value }) => [keyOf(uri), value]));
     const items: WorkspaceDocumentDiagnosticReport[] = [];
     const add = (uri: string, found: Diagnostic[], resultId?: string) =>
@@ -168,13 +171,22 @@ export class Diagnostics {
     return items;
   }
 
+  async #judgeAllClosed(): Promise<void> {
+    do {
+      this.#again = false;
+      await this.#judgeClosed();
+    } while (this.#again);
+  }
+
   async #judgeClosed(): Promise<void> {
     const { closed, schedule, settingsOf, workspace } = this.#serving;
     const before = new Set(this.#closed.keys());
-    for (const at of await closed.files()) {
+    const wanted = new Set(workspace.folders.filter((uri) => settingsOf({ uri }).closedModels));
+    // Nothing is looked through that nobody wants.
+    const files = wanted.size === 0 ? [] : await closed.files();
+    for (const at of files) {
       const key = keyOf(at.uri);
-      const open = schedule.session(key);
-      if ((open && !open.hidden) || !workspace.shows(at.uri) || !settingsOf(at).closedModels) continue;
+      if (!wanted.has(at.folder) || schedule.byUri(at.uri) || !workspace.shows(at.uri)) continue;
       const known = this.#closed.get(key);
       if ((known && closed.isUnchanged(at, known.reads)) || (await this.#judgeOne(at))) before.delete(key);
     }

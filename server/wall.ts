@@ -1,4 +1,4 @@
-import { type CancellationToken, LSPErrorCodes, ResponseError } from "vscode-languageserver";
+import { type CancellationToken, ErrorCodes, LSPErrorCodes, ResponseError } from "vscode-languageserver";
 import { errorText } from "./numbers.ts";
 
 /** A request that cannot be met for a reason that the user should read. */
@@ -13,10 +13,11 @@ export const outdated = (): ResponseError<never> =>
  * A wall around each handler: a defect costs that one answer. It is logged with the name of the request; the client
  * gets an empty answer and the server lives on. Refusals and cancellations pass through.
  */
-export function wall(log: (text: string) => void) {
+export function wall(log: (text: string) => void, hasEnded: () => boolean) {
   return <P, R>(name: string, empty: R, handler: (params: P, token: CancellationToken) => R | Promise<R>) =>
     async (params: P, token: CancellationToken): Promise<R | ResponseError<never>> => {
       try {
+        if (hasEnded()) return ended();
         if (token.isCancellationRequested) return cancelled();
         const answer = await handler(params, token);
         return token.isCancellationRequested ? cancelled() : answer;
@@ -27,6 +28,9 @@ export function wall(log: (text: string) => void) {
       }
     };
 }
+
+const ended = (): ResponseError<never> =>
+  new ResponseError(ErrorCodes.InvalidRequest, "the server has been shut down");
 
 const cancelled = (): ResponseError<never> =>
   new ResponseError(LSPErrorCodes.RequestCancelled, "the request was cancelled");
