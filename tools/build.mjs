@@ -69,6 +69,8 @@ const PROGRAMS = [
     outdir: "dist/extension-browser",
     platform: "browser",
     ...EXTENSION,
+    // A browser's extension host knows no other ending.
+    outExtension: {},
   },
 ];
 

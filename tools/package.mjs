@@ -1,5 +1,18 @@
-/** Packs the extension into dist/thrum.vsix: builds, gathers third-party notices, and takes what `files` lists. */
-import { mkdirSync, readdirSync, readFileSync, renameSync, statSync, writeFileSync } from "node:fs";
+/**
+ * Packs the extension into dist/thrum.vsix: builds, gathers third-party notices, and takes what `files` of package.json
+ * lists. Usage: node tools/package.mjs
+ */
+import {
+  cpSync,
+  mkdirSync,
+  mkdtempSync,
+  readdirSync,
+  readFileSync,
+  rmSync,
+  statSync,
+  writeFileSync,
+} from "node:fs";
+import { tmpdir } from "node:os";
 import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { build } from "./build.mjs";
@@ -7,32 +20,48 @@ import { root } from "./root.mjs";
 
 export const vsix = join(root, "dist", "thrum.vsix");
 
+const NOTICES = "third-party-notices.txt";
+
 /**
- * @param {{ builds?: boolean, to?: string, folder?: string }} [options]  `folder`: a copy to pack instead of the root
+ * @param {{ builds?: boolean, to?: string, host?: "web" }} [options]  `host`: without the entry for Node
  * @returns {Promise<string>} path of the package
  */
-export async function packExtension({ builds = true, to = vsix, folder = root } = {}) {
+export async function packExtension({ builds = true, to = vsix, host } = {}) {
   if (builds) await build();
-  // Whole at once: another packing may be reading it.
-  const part = join(folder, `third-party-notices.${process.pid}.txt`);
-  writeFileSync(part, notices());
-  renameSync(part, join(folder, "third-party-notices.txt"));
-  const { createVSIX } = await import("@vscode/vsce");
-  mkdirSync(dirname(to), { recursive: true });
-  await createVSIX({
-    cwd: folder,
-    packagePath: to,
-    dependencies: false,
-    allowMissingRepository: true,
-    rewriteRelativeLinks: false,
-    skipLicense: false,
-  });
+  const folder = mkdtempSync(join(tmpdir(), "thrum-package-"));
+  try {
+    stage(folder, host);
+    const { createVSIX } = await import("@vscode/vsce");
+    mkdirSync(dirname(to), { recursive: true });
+    await createVSIX({
+      cwd: folder,
+      packagePath: to,
+      dependencies: false,
+      allowMissingRepository: true,
+      rewriteRelativeLinks: false,
+    });
+  } finally {
+    rmSync(folder, { recursive: true, force: true });
+  }
   return to;
 }
 
+/** Puts everything that is packed into a folder of its own, where nothing changes meanwhile. */
+function stage(folder, host) {
+  // A browser's extension host takes a package of type `module` for one that it cannot run.
+  const { type: _, ...manifest } = JSON.parse(readFileSync(join(root, "package.json"), "utf8"));
+  const { scripts, bin, dependencies, devDependencies, sideEffects, ...shipped } = manifest;
+  if (host === "web") delete shipped.main;
+  for (const entry of shipped.files) {
+    if (entry !== NOTICES) cpSync(join(root, entry), join(folder, entry), { recursive: true });
+  }
+  writeFileSync(join(folder, "package.json"), JSON.stringify(shipped, null, 2));
+  writeFileSync(join(folder, "dist", "server", "package.json"), '{ "type": "module" }\n');
+  writeFileSync(join(folder, NOTICES), notices(Object.keys(dependencies)));
+}
+
 /** Licence texts of everything that is bundled: the dependencies and what they bring. */
-function notices() {
-  const { dependencies } = JSON.parse(readFileSync(join(root, "package.json"), "utf8"));
+function notices(dependencies) {
   const seen = new Map();
   const visit = (name) => {
     if (seen.has(name)) return;
@@ -49,7 +78,7 @@ function notices() {
     seen.set(name, `${name} ${manifest.version} (${manifest.license})\n\n${text}\n`);
     for (const next of Object.keys(manifest.dependencies ?? {})) visit(next);
   };
-  for (const name of Object.keys(dependencies).sort()) visit(name);
+  for (const name of dependencies.sort()) visit(name);
   const rule = `\n${"-".repeat(78)}\n\n`;
   return `Thrum contains parts of the following packages.\n${rule}${[...seen.values()].join(rule)}`;
 }

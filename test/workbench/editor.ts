@@ -1,5 +1,5 @@
 /** A workbench with the packed extension, and what a person does in it. */
-import { cpSync, mkdirSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { cpSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import type { Browser, Locator, Page } from "playwright-core";
@@ -16,7 +16,7 @@ export interface EditorOptions {
   readonly files?: Readonly<Record<string, string>>;
   readonly settings?: Record<string, unknown>;
   readonly trust?: boolean;
-  /** Without the part of the extension that needs Node. */
+  /** In the host that has no Node. */
   readonly browserOnly?: boolean;
   /** Called before the workbench starts. */
   readonly prepare?: (folder: string) => void;
@@ -43,7 +43,8 @@ export class Editor {
     cpSync(join(root, "examples"), folder, { recursive: true });
     for (const [name, text] of Object.entries(options.files ?? {})) writeFileSync(join(folder, name), text);
     options.prepare?.(folder);
-    const vsix = await packed(home, options.browserOnly === true);
+    const host = options.browserOnly ? "web" : undefined;
+    const vsix = await packExtension({ builds: false, to: join(home, "thrum.vsix"), host });
     const { settings, trust } = options;
     const workbench = await launchWorkbench({ folder, vsix: [vsix], settings, trust });
     const browser = await openBrowser();
@@ -85,16 +86,21 @@ export class Editor {
 
   async #pick(text: string, listed = true): Promise<void> {
     const { page } = this;
-    await page.keyboard.press("F1");
     const input = page.locator(".quick-input-widget input[type=text]");
-    await input.waitFor();
-    await input.fill(text);
-    if (listed) {
-      const wanted = text.replace(/^>/, "");
-      await page
-        .locator(".quick-input-widget .quick-input-list .monaco-list-row", { hasText: wanted })
-        .first()
-        .waitFor();
+    const row = page.locator(".quick-input-widget .quick-input-list .monaco-list-row", {
+      hasText: text.replace(/^>/, ""),
+    });
+    const end = Date.now() + PATIENCE;
+    for (;;) {
+      await page.keyboard.press("F1");
+      await input.waitFor();
+      await input.fill(text);
+      if (!listed) break;
+      // A list that is open does not learn of commands that come with an extension.
+      const seen = await row.first().waitFor({ timeout: 5000 }).then(yes, no);
+      if (seen) break;
+      if (Date.now() > end) throw new Error(`Nothing is called "${text}"`);
+      await page.keyboard.press("Escape");
     }
     await page.keyboard.press("Enter");
     await input.waitFor({ state: "hidden" });
@@ -143,6 +149,9 @@ export class Editor {
   }
 }
 
+const yes = () => true;
+const no = () => false;
+
 function recordNotifications(): void {
   const shown: string[] = [];
   Object.assign(window, { shown });
@@ -155,18 +164,4 @@ function recordNotifications(): void {
       }
     }
   }).observe(document, { childList: true, subtree: true });
-}
-
-/** The extension as it ships, or without its entry for Node; from what has been built. */
-async function packed(home: string, browserOnly: boolean): Promise<string> {
-  const folder = join(home, "package");
-  mkdirSync(folder);
-  const manifest = JSON.parse(readFileSync(join(root, "package.json"), "utf8"));
-  if (browserOnly) delete manifest.main;
-  for (const entry of manifest.files as string[]) {
-    if (entry !== "third-party-notices.txt")
-      cpSync(join(root, entry), join(folder, entry), { recursive: true });
-  }
-  writeFileSync(join(folder, "package.json"), JSON.stringify(manifest));
-  return packExtension({ builds: false, to: join(home, "thrum.vsix"), folder });
 }
