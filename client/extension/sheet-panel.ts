@@ -111,9 +111,9 @@ export class SheetPanel implements vscode.Disposable {
   }
 
   hear({ state }: StateParams): void {
-    const computed = this.#computing && state === "ready";
     this.#computing = state !== "ready";
-    if (computed) this.refresh();
+    // Also where the content came in time: which answers it had cannot be told from here.
+    if (!this.#computing) this.refresh();
   }
 
   cursorAt(document: vscode.TextDocument, place: vscode.Position): void {

@@ -40,22 +40,27 @@ export function paintCurves(
     context.strokeStyle = colour;
     context.lineWidth = width;
     context.setLineDash(dash === "" ? [] : dash.split(" ").map(Number));
+    context.fillStyle = colour;
     context.beginPath();
-    trace(context, drawn, place);
-    context.stroke();
+    // A band of columns is filled: dashes across it would say nothing and take long.
+    if (trace(context, drawn, place)) context.fill();
+    else context.stroke();
   }
   context.restore();
 }
 
 export const dashOf = (style: number): string => DASHES[style % DASHES.length];
 
-function trace(context: CanvasRenderingContext2D, drawn: Drawn, place: CurvePlace): void {
+/** True when the path is a band to be filled, not a line. */
+function trace(context: CanvasRenderingContext2D, drawn: Drawn, place: CurvePlace): boolean {
   const { x } = drawn.curve;
   const first = Math.max(0, firstFrom(x, place.x.from) - 1);
   const last = Math.min(x.length, firstFrom(x, place.x.to) + 1);
   const columns = Math.ceil((place.geometry.right - place.geometry.left) * COLUMNS);
-  if (last - first > DENSE * columns) traceColumns(context, drawn, place, [first, last, columns]);
+  const isDense = last - first > DENSE * columns;
+  if (isDense) traceColumns(context, drawn, place, [first, last, columns]);
   else traceSamples(context, drawn, place, [first, last]);
+  return isDense;
 }
 
 function traceSamples(
@@ -89,7 +94,10 @@ function traceColumns(
 ): void {
   const pair = new Float64Array(2);
   const ratio = x.kind === "log" ? Math.log(x.to / x.from) : 0;
-  let [from, open] = [first, false];
+  let from = first;
+  // Where the column before was left, so that neighbours touch.
+  const wide = (right - left) / columns;
+  let before = Number.NaN;
   for (let column = 0; column < columns && from < last; column++) {
     const share = (column + 1) / columns;
     const end = x.kind === "log" ? x.from * Math.exp(ratio * share) : x.from + share * (x.to - x.from);
@@ -97,20 +105,18 @@ function traceColumns(
     if (to <= from) continue;
     heights.extremes(from, to, pair);
     if (pair[0] <= pair[1]) {
-      const across = left + ((column + 0.5) / columns) * (right - left);
-      const [low, high] = [upright(y, box, pair[0]), upright(y, box, pair[1])];
-      const start = upright(y, box, curve.y[from]);
-      if (open && Number.isFinite(start)) context.lineTo(across, start);
-      else context.moveTo(across, low);
-      context.lineTo(across, low);
-      context.lineTo(across, high);
-      const leave = upright(y, box, curve.y[to - 1]);
-      if (Number.isFinite(leave)) context.lineTo(across, leave);
-      open = true;
-    } else open = false;
+      let [bottom, top] = [upright(y, box, pair[0]), upright(y, box, pair[1])];
+      if (before > bottom) bottom = before;
+      if (before < top) top = before;
+      context.rect(left + column * wide, top - THIN / 2, wide, bottom - top + THIN);
+    }
+    before = upright(y, box, curve.y[to - 1]);
     from = to;
   }
 }
+
+/** Height of a column of one value, as thick as a line, in pixels. */
+const THIN = 1.5;
 
 /** Pixel of a value; what a log axis cannot show lies at its bottom. NaN stays NaN: a gap. */
 function upright(y: Scale, box: PanelBox, value: number): number {
