@@ -55,6 +55,9 @@ function stage(folder, host) {
   for (const entry of shipped.files) {
     if (entry !== NOTICES) cpSync(join(root, entry), join(folder, entry), { recursive: true });
   }
+  // The pictures of the page are larger than all else together.
+  const page = readFileSync(join(folder, "README.md"), "utf8").replace(/^!\[[^\]]*\]\([^)]*\)\n\n/gm, "");
+  writeFileSync(join(folder, "README.md"), page);
   writeFileSync(join(folder, "package.json"), JSON.stringify(shipped, null, 2));
   writeFileSync(join(folder, "dist", "server", "package.json"), '{ "type": "module" }\n');
   writeFileSync(join(folder, NOTICES), notices(Object.keys(dependencies)));

@@ -10,7 +10,9 @@ const program = join(root, "dist", "terminal", "thrum.js");
 await build();
 const answered = run("answer", EXAMPLE, "modes");
 const judged = run("check", EXAMPLE);
-console.log("\nMore: npx thrum help, README.md, and every file in examples/");
+console.log(
+  "\nMore: npx thrum help, README.md, every file in examples/; npm run editor shows them as you type",
+);
 // A model with a failed expectation (1) has been judged all the same; 2 means that nothing was shown.
 process.exitCode = [answered, judged].every((status) => status === 0 || status === 1) ? 0 : 1;
 

@@ -121,7 +121,7 @@ describe("the language", () => {
 });
 
 describe("files that a script writes", () => {
-  for (const script of ["make-grammar", "make-snippets", "make-l10n"]) {
+  for (const script of ["make-grammar", "make-snippets", "make-l10n", "write-settings"]) {
     it(`are what tools/${script}.mjs would write`, () => {
       const run = spawnSync(process.execPath, [`tools/${script}.mjs`, "--check"], { encoding: "utf8" });
       expect(run.stderr).toBe("");
