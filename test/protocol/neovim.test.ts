@@ -2,9 +2,9 @@ import { spawnSync } from "node:child_process";
 import { mkdtempSync, readFileSync, realpathSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
-import { expect, it } from "vitest";
+import { afterEach, beforeEach, expect, it } from "vitest";
 import { format } from "../../shared-core/index.ts";
-import { root } from "../house/files.ts";
+import { read, root } from "../house/files.ts";
 
 /** sqrt(5400/8)/(2 pi) = 4.135 Hz, more than the expectation allows. */
 const DRUM = `thrum 1
@@ -32,35 +32,28 @@ interface Found {
   readonly failed?: string;
 }
 
-it("works in Neovim 0.7 as it comes: diagnostics, hover, completion, rename, formatting, code actions", () => {
-  const folder = realpathSync(mkdtempSync(join(tmpdir(), "thrum-neovim-")));
+let folder = "";
+beforeEach(() => {
+  folder = realpathSync(mkdtempSync(join(tmpdir(), "thrum-neovim-")));
   writeFileSync(join(folder, "drum.thrum"), DRUM);
+});
+afterEach(() => rmSync(folder, { recursive: true, force: true }));
+
+/** Without anybody's settings, and without leaving anything behind. */
+function neovim(script: string, env: Record<string, string>) {
+  return spawnSync("nvim", ["--headless", "-u", "NONE", "-i", "NONE", "-n", "-c", `luafile ${script}`], {
+    cwd: folder,
+    encoding: "utf8",
+    timeout: 120_000,
+    env: { ...process.env, XDG_STATE_HOME: folder, XDG_CACHE_HOME: folder, XDG_DATA_HOME: folder, ...env },
+  });
+}
+
+it("works in Neovim 0.7 as it comes: diagnostics, hover, completion, rename, formatting, code actions", () => {
   const result = join(folder, "found.json");
   const program = join(root, "dist/terminal/thrum.js");
-  const run = spawnSync(
-    "nvim",
-    [
-      "--headless",
-      "-u",
-      "NONE",
-      "-i",
-      "NONE",
-      "-n",
-      "-c",
-      `luafile ${join(root, "test/protocol/neovim.lua")}`,
-    ],
-    {
-      encoding: "utf8",
-      timeout: 120_000,
-      env: {
-        ...process.env,
-        THRUM_TEST: [process.execPath, program, folder, result].join("\n"),
-        XDG_STATE_HOME: folder,
-        XDG_CACHE_HOME: folder,
-        XDG_DATA_HOME: folder,
-      },
-    },
-  );
+  const test = [process.execPath, program, folder, result].join("\n");
+  const run = neovim(join(root, "test/protocol/neovim.lua"), { THRUM_TEST: test });
   expect(run.status, `${run.error?.message ?? ""}${run.stderr}`).toBe(0);
   const found = JSON.parse(readFileSync(result, "utf8")) as Found;
   expect(found.failed).toBeUndefined();
@@ -77,5 +70,28 @@ it("works in Neovim 0.7 as it comes: diagnostics, hover, completion, rename, for
   const cured = DRUM.replace("2 lbf", "2 lbm");
   expect(found.renamed).toBe(cured.replaceAll("drum_mass", "load"));
   expect(found.formatted).toBe(format(found.renamed));
-  rmSync(folder, { recursive: true, force: true });
+});
+
+it("is set up as docs/editors.md says", () => {
+  const [, setup] = /```lua\n(.*?)```/s.exec(read("docs/editors.md")) ?? [];
+  const script = join(folder, "setup.lua");
+  const said = join(folder, "said.txt");
+  writeFileSync(
+    script,
+    `${setup}
+vim.cmd("filetype on")
+vim.cmd("edit drum.thrum")
+local pushed = vim.wait(30000, function() return #vim.diagnostic.get(0) > 0 end, 20)
+local file = assert(io.open("${said}", "w"))
+file:write(pushed and vim.diagnostic.get(0)[1].code or "nothing")
+file:close()
+vim.cmd("qa!")
+`,
+  );
+  const program = join(root, "dist/terminal/thrum.js");
+  const command = join(folder, "thrum");
+  writeFileSync(command, `#!/bin/sh\nexec "${process.execPath}" "${program}" "$@"\n`, { mode: 0o755 });
+  const run = neovim(script, { PATH: `${folder}:${process.env.PATH}` });
+  expect(run.status, run.stderr).toBe(0);
+  expect(readFileSync(said, "utf8")).toBe("weight-as-mass");
 });
