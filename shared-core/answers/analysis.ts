@@ -29,8 +29,11 @@ export interface TimeResponse {
 
 /** Static quantities under gravity, preloads. */
 export interface StaticResponse {
-  /** Size of travel (m, rad) and force (N, N*m) of element `index` when gravity acts on every mass in its positive direction. */
-  element(index: number): Outcome<{ readonly travel: number; readonly force: number }>;
+  /**
+   * Size of travel (m, rad) and force (N, N*m) of element `index` when gravity acts on every mass in its positive
+   * direction; `pull` is that force with its sign, positive where it pulls the ends together.
+   */
+  element(index: number): Outcome<{ readonly travel: number; readonly force: number; readonly pull: number }>;
 }
 
 /**

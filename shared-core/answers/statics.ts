@@ -15,8 +15,9 @@ export function staticResponse(assembly: Assembly): Outcome<StaticResponse> {
       if (element === undefined) return fail("there is no such element");
       const loose = looseIn(element.form);
       if (loose !== undefined) return fail(`no spring holds ${loose} against its weight`);
-      const travel = Math.abs(formValue(element.form, q));
-      return succeed({ travel, force: Math.abs(element.stiffness) * travel });
+      const travel = formValue(element.form, q);
+      const pull = element.stiffness * travel;
+      return succeed({ travel: Math.abs(travel), force: Math.abs(pull), pull });
     },
   });
 }

@@ -153,11 +153,11 @@ function staticSum(numbers: Numbers, elements: readonly number[]): Phrase | unde
   for (const index of elements) {
     const found = statics.value.element(index);
     if (!found.ok) return `no static load: ${found.reason}`;
-    sum += found.value.force;
+    sum += found.value.pull;
   }
   const { motion } = instance.assembly.elements[elements[0]];
   return motion === "sliding"
-    ? `static load under gravity: ${showMeasure(numbers, "force", motion, sum)}`
+    ? `static load under gravity: ${showMeasure(numbers, "force", motion, Math.abs(sum))}`
     : undefined;
 }
 

@@ -76,7 +76,7 @@ function singleLimit(
   return number && { name, resolve: (put) => ({ ...shape, points: put.number(number), kind: number.kind }) };
 }
 
-/** Rows of frequency and value: rates ascending, values of one kind. */
+/** Rows of frequency and value: rates ascending, two at one rate where the limit jumps; values of one kind. */
 function pointsOf(rows: Given, file: FileContext): { points: Points; kind: Kind } | undefined {
   const points: { atHz: number; value: number }[] = [];
   let kind: Kind | undefined;
@@ -102,11 +102,14 @@ function pointsOf(rows: Given, file: FileContext): { points: Points; kind: Kind 
       );
       return undefined;
     }
-    if (points.length > 0 && !(rate.value > points[points.length - 1].atHz)) {
+    const [before, last] = [points.at(-2), points.at(-1)];
+    const isThird = before?.atHz === rate.value && last?.atHz === rate.value;
+    if (last !== undefined && (!(rate.value >= last.atHz) || isThird)) {
       file.findings.say(
         "wrong-kind",
         row.cells[0].span,
-        `rows go up in frequency; ${rate.value} Hz does not come after ${points[points.length - 1].atHz} Hz`,
+        `rows go up in frequency; ${rate.value} Hz does not come after ${last.atHz} Hz`,
+        { hint: "two rows at one frequency make a jump" },
       );
       return undefined;
     }

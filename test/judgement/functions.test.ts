@@ -48,6 +48,28 @@ describe("functions of the mode table", () => {
   });
 });
 
+describe("a mode that does not return to rest", () => {
+  test("has no natural frequency, so no upper limit holds by it", () => {
+    const arch =
+      "mass m = 10 kg\nspring a between m and ground = 1 kN/m\nspring b between m and ground = -1.5 kN/m\n";
+    for (const value of ["natural_frequency(1)", "2 Hz * separation(1, 4 Hz)"]) {
+      const verdict = verdictOf(`${arch}expect held = ${value} <= 5 Hz`);
+      expect(verdict).toMatchObject({ holds: null, value: null });
+      expect(verdict.reason).toBe("mode 1 does not return to rest, so it has no natural frequency");
+    }
+  });
+});
+
+describe("static_force of a group", () => {
+  // By hand: of 98.0665 N of weight 3/4 stand in the spring below; the one above is written the other way round.
+  test("is the size of the sum with signs, whichever way its members were written", () => {
+    const pair =
+      "mass m = 10 kg\nspring under between m and ground = 3 kN/m\nspring over between ground and m = 1 kN/m\ngroup feet = under, over\n";
+    expect(valueIn(pair, "static_force(feet)")).toBeCloseTo((98.0665 * 2) / 4, 9);
+    expect(valueIn(pair, "static_force(over)")).toBeCloseTo(98.0665 / 4, 9);
+  });
+});
+
 describe("functions of a sweep", () => {
   const most = 1 / (2 * zeta * Math.sqrt(1 - zeta * zeta));
   const edge = (sign: number): number =>

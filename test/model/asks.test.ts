@@ -226,6 +226,13 @@ describe("limits", () => {
     });
   });
 
+  it("may jump: two rows at one frequency", () => {
+    const { limits } = instanceOf(
+      "limit zone\n    rows =\n        3 Hz 3 mm\n        4 Hz 3 mm\n        4 Hz 5 mm",
+    );
+    expect(limits.get("zone")?.points).toHaveLength(3);
+  });
+
   it("are marked where they are wrong", () => {
     check(`
 limit a
@@ -234,6 +241,13 @@ limit b
     rows =
         3 Hz 3 mm/s
         2 Hz 3 mm/s
+#       ^^^^ wrong-kind
+limit jumps
+    rows =
+        3 Hz 3 mm/s
+        4 Hz 3 mm/s
+        4 Hz 5 mm/s
+        4 Hz 6 mm/s
 #       ^^^^ wrong-kind
 limit c
     rows =

@@ -14,7 +14,7 @@ import { list, number as say } from "../wording.ts";
 import { argument, numberOf } from "./arguments.ts";
 
 export function naturalFrequency(trial: Trial, args: AnswerArguments): Found<Quantity> {
-  const mode = modeOf(trial, args);
+  const mode = swingingModeOf(trial, args);
   return mode.ok ? succeed(rate(mode.value.frequencyHz)) : mode;
 }
 
@@ -48,7 +48,7 @@ export function effectiveMass(trial: Trial, args: AnswerArguments): Found<Quanti
 
 /** Distance of a rate from a mode, as a share of the mode's frequency. */
 export function separation(trial: Trial, args: AnswerArguments): Found<Quantity> {
-  const mode = modeOf(trial, args);
+  const mode = swingingModeOf(trial, args);
   if (!mode.ok) return mode;
   const at = numberOf(args, "rate");
   return at.ok ? succeed(number(Math.abs(at.value.value / mode.value.frequencyHz - 1))) : at;
@@ -96,6 +96,13 @@ function modeOf(trial: Trial, args: AnswerArguments): Found<Mode & { frequencyHz
   if (mode !== undefined) return succeed(mode);
   const count = elastic.length === 1 ? "one elastic mode" : `${elastic.length} elastic modes`;
   return fail(`there is no mode ${n}: the model has ${elastic.length === 0 ? "no elastic mode" : count}`);
+}
+
+/** A mode that has a natural frequency: one that does not return to rest is 0 Hz in the table, and below every limit. */
+function swingingModeOf(trial: Trial, args: AnswerArguments): Found<Mode & { frequencyHz: number }> {
+  const mode = modeOf(trial, args);
+  if (!mode.ok || mode.value.frequencyHz > 0) return mode;
+  return fail(`mode ${mode.value.number} does not return to rest, so it has no natural frequency`);
 }
 
 function bandOf(args: AnswerArguments): Found<readonly [number, number]> {

@@ -14,7 +14,7 @@ export function staticDeflection(trial: Trial, args: AnswerArguments): Found<Qua
   return succeed(turning ? number(travel) : quantity(travel, dimension(1)));
 }
 
-/** Size of the force of an element when gravity acts; the total of its count, the sum of a group. */
+/** Size of the force of an element when gravity acts; the total of its count, of a group that of the sum. */
 export function staticForce(trial: Trial, args: AnswerArguments): Found<Quantity> {
   const found = staticOf(trial, args);
   if (!found.ok) return found;
@@ -33,13 +33,13 @@ function staticOf(
   const statics = trial.analysis.statics();
   if (!statics.ok) return statics;
   let travel = 0;
-  let force = 0;
+  let pull = 0;
   for (const index of elements) {
     const found = statics.value.element(index);
     if (!found.ok) return found;
     travel = Math.max(travel, Math.abs(found.value.travel));
-    force += Math.abs(found.value.force);
+    pull += found.value.pull;
   }
   const turning = trial.instance.assembly.elements[elements[0]]?.motion === "turning";
-  return succeed({ travel, force, turning });
+  return succeed({ travel, force: Math.abs(pull), turning });
 }
