@@ -251,6 +251,7 @@ describe("what comes in", () => {
 describe("a reader's place", () => {
   it("is the same after a reload", async () => {
     let kept: unknown;
+    let ticks: readonly string[] = [];
     await withSheet("quay-generator", {}, async ({ page, state }) => {
       await page.getByLabel("case", { exact: true }).selectOption("soft_mounts");
       await page.getByLabel("units", { exact: true }).selectOption("inch");
@@ -258,11 +259,13 @@ describe("a reader's place", () => {
       await page.locator(".stage").first().press("+");
       await page.waitForTimeout(300);
       kept = await state();
+      ticks = await page.locator(".stage").first().locator("text.number").allTextContents();
     });
     expect(JSON.stringify(kept).length).toBeLessThan(1000);
     await withSheet("quay-generator", { state: kept }, async ({ page }, host) => {
       await page.locator(".ledger tr.shown .case", { hasText: "soft_mounts" }).first().waitFor();
       expect(host.last("show")).toMatchObject({ case: "soft_mounts", units: "inch" });
+      expect(await page.locator(".stage").first().locator("text.number").allTextContents()).toEqual(ticks);
       await page.waitForTimeout(300);
     });
   });

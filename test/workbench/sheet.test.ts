@@ -140,17 +140,17 @@ describe("a number", () => {
 describe("after a reload", () => {
   it("a sheet is back with its zoom, its motion and its place", async () => {
     const stage = sheet().locator(".stage").first();
+    const ticks = () => stage.locator("text.number").allTextContents();
+    const whole = await ticks();
     await stage.focus();
     await stage.press("+");
-    await stage.press("+");
-    const ticks = () => sheet().locator(".stage").first().locator("text.number").allTextContents();
-    const zoomed = await ticks();
+    const zoomed = await eventually(ticks, (now) => now.join() !== whole.join());
+    expect(zoomed).not.toEqual(whole);
     // What a webview keeps is written behind.
     await editor.page.waitForTimeout(9_000);
     await editor.load();
     await sheet().locator("h1", { hasText: "Standby generator" }).waitFor();
-    await stage.locator("text.number").first().waitFor();
-    expect(await ticks()).toEqual(zoomed);
+    expect(await eventually(ticks, (now) => now.join() === zoomed.join())).toEqual(zoomed);
   });
 });
 
