@@ -108,8 +108,12 @@ export class Editor {
 
   /** Saves the editor in front and returns what the file holds then. */
   async saved(name: string): Promise<string> {
-    await this.page.keyboard.press("Control+s");
-    await this.page.locator(".tab.active:not(.dirty)").waitFor();
+    const clean = this.page.locator(".tab.active:not(.dirty)");
+    const end = Date.now() + PATIENCE;
+    // An edit that arrives while it saves leaves it unsaved.
+    do {
+      await this.page.keyboard.press("Control+s");
+    } while (!(await clean.waitFor({ timeout: 2000 }).then(yes, no)) && Date.now() < end);
     return this.text(name);
   }
 

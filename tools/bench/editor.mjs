@@ -1,0 +1,89 @@
+/**
+ * Speed of the extension in a real workbench: size of the package, activation, from opening a model to its verdict,
+ * from a keystroke to its squiggle. Medians of several runs, in ms. Needs a build.
+ * Usage: node tools/bench/editor.mjs
+ */
+import { cpSync, mkdtempSync, rmSync, statSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { packExtension } from "../package.mjs";
+import { root } from "../root.mjs";
+import { openBrowser } from "../workbench/browser.mjs";
+import { launchWorkbench } from "../workbench/launch.mjs";
+
+const RUNS = 7;
+const MODEL = "transport-crate.thrum";
+
+const home = mkdtempSync(join(tmpdir(), "thrum-bench-"));
+const folder = join(home, "harbour");
+cpSync(join(root, "examples"), folder, { recursive: true });
+const vsix = await packExtension({ builds: false, to: join(home, "thrum.vsix") });
+const workbench = await launchWorkbench({ folder, vsix: [vsix], settings: { "files.autoSave": "off" } });
+const browser = await openBrowser();
+try {
+  const activations = [];
+  const openings = [];
+  let squiggles = [];
+  for (let i = 0; i < RUNS; i++) {
+    const page = await browser.newPage({ viewport: { width: 1280, height: 800 } });
+    page.setDefaultTimeout(60_000);
+    await page.goto(workbench.url);
+    openings.push(await openModel(page));
+    activations.push(await activation(page));
+    if (i === RUNS - 1) squiggles = await mistakes(page);
+    await page.close();
+  }
+  console.log(`package ${(statSync(vsix).size / 1e3).toFixed(0)} kB (aim 1000)`);
+  console.log(`activation ${median(activations)} ms (aim 100)`);
+  console.log(`open to verdict ${median(openings)} ms (aim 1000)`);
+  console.log(`keystroke to squiggle ${median(squiggles)} ms (aim 150)`);
+} finally {
+  await browser.close();
+  workbench.stop();
+  rmSync(home, { recursive: true, force: true, maxRetries: 5 });
+}
+
+/** From the double click on a model to its verdict, with the extension not active before. */
+async function openModel(page) {
+  const row = page.locator(".explorer-folders-view .monaco-list-row", { hasText: MODEL });
+  await row.waitFor();
+  const start = performance.now();
+  await row.dblclick();
+  await page.locator("[id='thrum.thrum.thrum.verdict']", { hasText: "holds" }).waitFor();
+  return performance.now() - start;
+}
+
+/** As the editor itself has measured it. */
+async function activation(page) {
+  await page.keyboard.press("F1");
+  const input = page.locator(".quick-input-widget input[type=text]");
+  await input.fill(">Developer: Show Running Extensions");
+  await page.locator(".quick-input-list .monaco-list-row", { hasText: "Show Running" }).first().waitFor();
+  await page.keyboard.press("Enter");
+  const row = page.locator(".runtime-extensions-editor .monaco-list-row", { hasText: "Thrum" }).first();
+  await row.waitFor();
+  const time = /Activation: (\d+)ms/.exec((await row.textContent()) ?? "")?.[1];
+  if (time === undefined) throw new Error("The editor shows no time of activation");
+  return Number(time);
+}
+
+/** From a letter that makes a name unknown to the squiggle below it; the letter is taken back each time. */
+async function mistakes(page) {
+  await page.locator(".tab", { hasText: MODEL }).click();
+  const times = [];
+  await page.locator(".view-line", { hasText: "gauge" }).last().click();
+  await page.keyboard.press("End");
+  for (let i = 0; i < RUNS; i++) {
+    const start = performance.now();
+    await page.keyboard.press("(");
+    await page.locator(".squiggly-error").first().waitFor();
+    times.push(performance.now() - start);
+    await page.keyboard.press("Backspace");
+    await page.locator(".squiggly-error").first().waitFor({ state: "detached" });
+  }
+  return times;
+}
+
+function median(values) {
+  return Math.round([...values].sort((a, b) => a - b)[Math.floor(values.length / 2)]);
+}
