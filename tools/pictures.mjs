@@ -1,0 +1,109 @@
+/**
+ * Draws docs/pictures/*.png: the editor on an example in four themes, with what it shows. Needs a build.
+ * Usage: node tools/pictures.mjs [NAME…]
+ */
+import { cpSync, mkdirSync, mkdtempSync, rmSync, statSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { packExtension } from "./package.mjs";
+import { root } from "./root.mjs";
+import { openBrowser } from "./workbench/browser.mjs";
+import { launchWorkbench, writeSettings } from "./workbench/launch.mjs";
+
+const target = join(root, "docs", "pictures");
+/** A picture for a page, in bytes at most. */
+const LARGEST = 200e3;
+const VIEW = { width: 1280, height: 800 };
+
+const THEMES = {
+  dark: "Default Dark Modern",
+  light: "Default Light Modern",
+  "high-contrast-dark": "Default High Contrast",
+  "high-contrast-light": "Default High Contrast Light",
+};
+
+/** What stands on the screen when a picture is taken. */
+const SCENES = {
+  async editor({ page, open, goTo, command }) {
+    await open("ventilation-fan.thrum");
+    await page.locator("[id='thrum.thrum.thrum.verdict']", { hasText: "holds" }).waitFor();
+    await goTo(47, 10);
+    await command("Show or Focus Hover");
+    await page.locator(".monaco-hover:not(.hidden)", { hasText: "Hz" }).first().waitFor();
+  },
+  async verdicts({ page, open, goTo }) {
+    await open("quay-generator.thrum");
+    await page.locator("[id='thrum.thrum.thrum.verdict']", { hasText: "holds" }).waitFor();
+    await goTo(81, 1);
+    await page.locator(".codelens-decoration", { hasText: "fails" }).first().waitFor();
+  },
+  async tests({ page, open, command }) {
+    await open("transport-crate.thrum");
+    await page.locator("[id='thrum.thrum.thrum.verdict']", { hasText: "holds" }).waitFor();
+    await command("Test: Run Tests in Current File");
+    await command("Testing: Focus on Test Explorer View");
+    const file = page.locator(".test-explorer .monaco-list-row", { hasText: "transport-crate" }).first();
+    await file.click();
+    await page.keyboard.press("ArrowRight");
+  },
+};
+
+const chosen = process.argv.slice(2);
+const home = mkdtempSync(join(tmpdir(), "thrum-pictures-"));
+const folder = join(home, "harbour");
+cpSync(join(root, "examples"), folder, { recursive: true });
+mkdirSync(target, { recursive: true });
+const vsix = process.env.THRUM_VSIX ?? (await packExtension({ builds: false }));
+const workbench = await launchWorkbench({ folder, vsix: [vsix] });
+const browser = await openBrowser();
+try {
+  for (const [theme, name] of Object.entries(THEMES)) {
+    for (const [scene, prepare] of Object.entries(SCENES)) {
+      const picture = `${scene}-${theme}`;
+      if (chosen.length > 0 && !chosen.includes(picture)) continue;
+      writeSettings(workbench.userData, { "workbench.colorTheme": name, "editor.minimap.enabled": false });
+      const page = await browser.newPage({ viewport: VIEW });
+      page.setDefaultTimeout(60_000);
+      await page.goto(workbench.url);
+      await page.locator(".explorer-folders-view .monaco-list-row").first().waitFor();
+      await prepare(handsOn(page));
+      await page.mouse.move(VIEW.width / 2, 5);
+      await page.waitForTimeout(1500);
+      await save(page, picture);
+      await page.close();
+    }
+  }
+} finally {
+  await browser.close();
+  workbench.stop();
+  rmSync(home, { recursive: true, force: true, maxRetries: 5 });
+}
+
+function handsOn(page) {
+  const pick = async (text, row) => {
+    await page.keyboard.press("F1");
+    const input = page.locator(".quick-input-widget input[type=text]");
+    await input.waitFor();
+    await input.fill(text);
+    if (row) await page.locator(".quick-input-list .monaco-list-row", { hasText: row }).first().waitFor();
+    await page.keyboard.press("Enter");
+    await input.waitFor({ state: "hidden" });
+  };
+  return {
+    page,
+    command: (title) => pick(`>${title}`, title),
+    goTo: (line, column) => pick(`:${line}:${column}`),
+    async open(name) {
+      await pick(name, name);
+      await page.locator(".tab.active", { hasText: name }).waitFor();
+    },
+  };
+}
+
+async function save(page, name) {
+  const path = join(target, `${name}.png`);
+  writeFileSync(path, await page.screenshot({ type: "png" }));
+  const { size } = statSync(path);
+  console.log(`${name}.png, ${(size / 1e3).toFixed(0)} kB`);
+  if (size > LARGEST) throw new Error(`${path} is larger than ${LARGEST / 1e3} kB`);
+}
