@@ -256,6 +256,7 @@ describe("a reader's place", () => {
       await page.getByLabel("case", { exact: true }).selectOption("soft_mounts");
       await page.getByLabel("units", { exact: true }).selectOption("inch");
       await page.locator(".ledger tr.shown .case", { hasText: "soft_mounts" }).first().waitFor();
+      await page.locator(".ledger td.number", { hasText: "in/s" }).first().waitFor();
       await page.locator(".stage").first().press("+");
       await page.waitForTimeout(300);
       kept = await state();
