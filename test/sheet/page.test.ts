@@ -258,7 +258,7 @@ describe("a reader's place", () => {
       await page.locator(".ledger tr.shown .case", { hasText: "soft_mounts" }).first().waitFor();
       await page.locator(".ledger td.number", { hasText: "in/s" }).first().waitFor();
       await page.locator(".stage").first().press("+");
-      await page.waitForTimeout(300);
+      await expect.poll(async () => JSON.stringify(await state()), { timeout: 10_000 }).toContain("half_run");
       kept = await state();
       ticks = await page.locator(".stage").first().locator("text.number").allTextContents();
     });
