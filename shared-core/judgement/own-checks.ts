@@ -46,17 +46,19 @@ export function imbalanceAt(
   if (assembly.free > MOST_COORDINATES || !(frequencyHz > 0)) return undefined;
   const x = responseOf(assembly, response, frequencyHz);
   if (x === undefined) return undefined;
-  let work = 0;
+  let balance = 0;
+  let size = 0;
   for (const index of by) {
     const drive = assembly.drives[index];
     if (drive.on.kind !== "form") return undefined;
     const [re, im] = drivePhasor(drive, frequencyHz);
     const [xRe, xIm] = onShape(drive.on.form, x);
-    work += re * xRe + im * xIm;
+    const work = re * xRe + im * xIm;
+    balance += work;
+    // Each drive by itself: of two that cancel each other rounding is left, and no lack of balance.
+    size += Math.abs(work);
   }
   const square = (2 * Math.PI * frequencyHz) ** 2;
-  let balance = work;
-  let size = Math.abs(work);
   const store = (energy: number): void => {
     balance -= energy;
     size += Math.abs(energy);

@@ -42,6 +42,22 @@ describe("energies added up element by element", () => {
     expect(imbalanceAt(one, responding(1.001), [0], 0.1)).toBeGreaterThan(4e-4);
   });
 
+  test("take drives that cancel each other for no lack of balance", () => {
+    // A shaker against its counter-phase: by hand nothing moves, and rounding of sin(180 deg) is all that is left.
+    const still = sketch({ masses: { m: 5 }, joints: [{ a: "m", stiffness: 2e3, damping: 1e-3 }] });
+    const drives = [0, Math.PI].map((phase) => {
+      const drive = steadyForce(0, 1);
+      return { ...drive, shape: { kind: "sine", amplitude: 1, frequencyHz: 1, phase, order: 1 } as const };
+    });
+    const model = { ...still, drives };
+    const { analysis } = contextOf(model);
+    const response = analysis.frequencyResponse([0, 1]);
+    if (!response.ok) throw new Error(response.reason);
+    for (const hertz of [1, Math.sqrt(10), 10]) {
+      expect(imbalanceAt(model, response.value, [0, 1], hertz) ?? 0).toBeLessThan(1e-12);
+    }
+  });
+
   test("find the digits that a sweep loses between a weld and a hair", () => {
     const context = contextOf(graded);
     const response = analyse(context.instance).frequencyResponse([0]);
