@@ -8,6 +8,7 @@ import { version } from "../package.json";
 import { serve } from "./connection.ts";
 import { ThreadEngine } from "./engine-thread.ts";
 import type { Disk } from "./host.ts";
+import { tidyWhenIdle } from "./tidy.ts";
 
 function start(): void {
   const overIpc = process.argv.includes("--node-ipc");
@@ -16,6 +17,7 @@ function start(): void {
     ? createConnection(new IPCMessageReader(process), new IPCMessageWriter(process))
     : createConnection(process.stdin, process.stdout);
   if (!overIpc) console.log = console.info = console.debug = (...said: unknown[]) => console.error(...said);
+  tidyWhenIdle();
   const docs = new URL("../../docs/", import.meta.url);
   serve(connection, {
     disk,

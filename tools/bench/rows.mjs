@@ -1,5 +1,6 @@
 /** The rows of the benchmark table with their aims: ours / peer, or seconds where there is no peer. */
 import { benchModel, modelText } from "./model.mjs";
+import { SERVER_ROWS } from "./server.mjs";
 
 const row = (name, rowName, shape, n, aim) => ({ name, row: rowName, shape, n, aim });
 
@@ -62,4 +63,5 @@ export const ROWS = [
     text: () => longText(1000),
     aimSeconds: 1,
   },
+  ...SERVER_ROWS,
 ];
