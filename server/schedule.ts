@@ -24,7 +24,7 @@ import { keyOf } from "./uris.ts";
 /** Codes of what may be a unit that is not known yet. */
 const MAY_BE_UNIT: ReadonlySet<string> = new Set(["unknown-unit", "unknown-name"]);
 /** Texts that take longer than this, in ms, are worked out when typing rests for as long, at most `LONGEST_REST`. */
-const SWIFT = 40;
+const SWIFT = 250;
 const LONGEST_REST = 400;
 /** A burst of edits that wait to be read counts as one, for at most so long, in ms. */
 const LONGEST_BURST = 25;
