@@ -1,12 +1,5 @@
 import type { TextDocument } from "vscode-languageserver-textdocument";
-import {
-  type Diagnostic,
-  type FileContent,
-  type LineIndex,
-  type Model,
-  type Span,
-  sameMeaning,
-} from "../shared-core/index.ts";
+import type { Diagnostic, FileContent, LineIndex, Model, Span } from "../shared-core/index.ts";
 import type { Judged, SummaryOfModel } from "./engine.ts";
 import { keyOf } from "./uris.ts";
 import type { Place } from "./workspace.ts";
@@ -62,7 +55,6 @@ export class Session implements Place {
   #fromModes: readonly Diagnostic[] = [];
   #fromAnswers: readonly Diagnostic[] = [];
   #judged: readonly Diagnostic[] = [];
-  #judgedTree: Model["tree"] | undefined;
   #changes: Change[] = [];
   readonly #waiting: (() => void)[] = [];
   readonly #waitingForModes: (() => void)[] = [];
@@ -120,7 +112,6 @@ export class Session implements Place {
     }
     this.#changes = [];
     this.#judged = judged.diagnostics;
-    this.#judgedTree = this.understood?.model.tree;
     this.summary = judged.summary;
     if (judged.upTo === "answers") this.#done();
     else this.#begin();
@@ -175,14 +166,11 @@ export class Session implements Place {
   }
 
   #carried(list: readonly Diagnostic[]): readonly Diagnostic[] {
-    // Numbers of a text that means the same are not of an earlier one.
-    const { understood } = this;
-    const same = understood && this.#judgedTree && sameMeaning(understood.model.tree, this.#judgedTree);
     return list.flatMap((each) => {
       const span = moved(each.span, this.#changes);
       if (span === undefined) return [];
       const { related: _related, fixes: _fixes, ...rest } = each;
-      const message = same || each.message.endsWith(EARLIER) ? each.message : `${each.message}${EARLIER}`;
+      const message = each.message.endsWith(EARLIER) ? each.message : `${each.message}${EARLIER}`;
       return [{ ...rest, span, message }];
     });
   }

@@ -138,18 +138,6 @@ describe("numbers", () => {
     expect(await hint("Hz alone")).toBe("8.27 Hz alone");
   });
 
-  it("stay when only a comment or a note is written: nothing is computed anew", async () => {
-    opened(LONG.replace("<= 1 m", "<= 1 mm"));
-    expect(codes(await document.settled())).toEqual(["expectation-fails"]);
-    document.edit("thrum 1\n", "thrum 1\n\n# 𐐀 for the night shift\n> source: ticket 0417\n");
-    await client.until("the text tier", () => saidOf(2).length > 0);
-    expect(saidOf(2)[0].diagnostics[0].message).not.toContain("before the last edit");
-    const [said] = await document.settled();
-    expect(document.textIn(said.range)).toBe("peak(run, m9.displacement) <= 1 mm");
-    const states = client.states.filter(({ uri, version }) => uri === document.uri && version === 2);
-    expect(states.map(({ state }) => state)).toEqual(["ready"]);
-  });
-
   it("come in two steps where they take long: modes, then the rest", async () => {
     opened(LONG);
     await client.until("modes", () =>
