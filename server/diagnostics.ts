@@ -60,8 +60,8 @@ export class Diagnostics {
     const { client, workspace } = this.#serving;
     if (!workspace.shows(session.uri) || session.hidden) return;
     if (!client.pullsDiagnostics) this.#push(session.uri, session.document.version, this.#itemsOf(session));
-    // The text tier is there when the client pulls after an edit; it cannot know when numbers come.
-    else if (session.numbers !== "awaited" || session.pulled !== session.serial) this.#askToPull();
+    // After an edit the client asks by itself; it cannot know when numbers come, or what another file has changed.
+    else if (session.numbers !== "awaited" || !session.edited) this.#askToPull();
   }
 
   /** A model is no longer open: nothing is said of it, or what is said of closed ones. */
@@ -138,7 +138,6 @@ export class Diagnostics {
 
   #fullReport(session: Session): FullDocumentDiagnosticReport & { readonly resultId: string } {
     this.#serving.schedule.current(session);
-    session.pulled = session.serial;
     const resultId = `${session.serial} ${session.numbers}`;
     return { kind: DocumentDiagnosticReportKind.Full, resultId, items: this.#itemsOf(session) };
   }

@@ -7,12 +7,14 @@ import {
   type Diagnostic,
   type FileContent,
   type FileReport,
+  judgeAgain,
   judgeInSteps,
   LineIndex,
   learnUnit,
   type Model,
   type ModelSummary,
   type Steps,
+  sameMeaning,
   stateText,
   summaryOf,
   type UnitSystem,
@@ -129,6 +131,13 @@ export class Numbers {
     this.#say({ say: "started", uri, serial });
     const model = understood(entry, this.#contents);
     const start = this.#now();
+    const before = this.#unchanged(entry);
+    if (before !== undefined) {
+      const report = yield* judgeAgain(model, before);
+      entry.whole = { report, serial, reads: entry.reads };
+      this.#say({ say: "judged", uri, serial, judged: judgedOf(report, "answers", units) });
+      return;
+    }
     const asks = model.expectations.length > 0 || model.tree.statements.some(isAsk);
     if (asks && entry.took > AT_ONCE) {
       const report = yield* judgeInSteps(model, "modes");
@@ -136,10 +145,18 @@ export class Numbers {
       this.#say({ say: "judged", uri, serial, judged: judgedOf(report, "modes", units) });
     }
     const report = yield* judgeInSteps(model);
-    entry.whole = { report, serial };
+    entry.whole = { report, serial, reads: entry.reads };
     entry.modes = undefined;
     entry.took = this.#now() - start;
     this.#say({ say: "judged", uri, serial, judged: judgedOf(report, "answers", units) });
+  }
+
+  /** The report of an earlier text that means the same: a comment or a note was written, blanks were moved. */
+  #unchanged({ whole, model, reads }: Entry): FileReport | undefined {
+    if (whole === undefined || model === undefined || whole.report.faults.length > 0) return undefined;
+    const sameFiles =
+      reads.size === whole.reads.size && [...reads].every(([path, id]) => whole.reads.get(path) === id);
+    return sameFiles && sameMeaning(model.tree, whole.report.model.tree) ? whole.report : undefined;
   }
 
   #answer({ id, uri, feature, args }: AskMessage): void {
@@ -170,7 +187,11 @@ interface Entry {
   /** Of this text, while its answers are being computed. */
   modes?: FileReport;
   /** The newest report with everything, of this text or an earlier one. */
-  whole?: { readonly report: FileReport; readonly serial: number };
+  whole?: {
+    readonly report: FileReport;
+    readonly serial: number;
+    readonly reads: ReadonlyMap<string, number>;
+  };
   /** How long everything took the last time, in ms. */
   took: number;
 }

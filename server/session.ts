@@ -1,5 +1,12 @@
 import type { TextDocument } from "vscode-languageserver-textdocument";
-import type { Diagnostic, FileContent, LineIndex, Model, Span } from "../shared-core/index.ts";
+import {
+  type Diagnostic,
+  type FileContent,
+  type LineIndex,
+  type Model,
+  type Span,
+  sameMeaning,
+} from "../shared-core/index.ts";
 import type { Judged, SummaryOfModel } from "./engine.ts";
 import { keyOf } from "./uris.ts";
 import type { Place } from "./workspace.ts";
@@ -40,8 +47,8 @@ export class Session implements Place {
   understood: Understood | undefined;
   numbers: NumbersState = "awaited";
   summary: SummaryOfModel | undefined;
-  /** The serial of which a pulling client has been told something. */
-  pulled = 0;
+  /** The client knows that the text is another one, and asks by itself what is said of it. */
+  edited = true;
   /** Until then the text cannot be spoken of: files or units are on their way. */
   settling: Promise<void> | undefined;
   /** Rounds of asking the client for files that this text leads to. */
@@ -55,6 +62,7 @@ export class Session implements Place {
   #fromModes: readonly Diagnostic[] = [];
   #fromAnswers: readonly Diagnostic[] = [];
   #judged: readonly Diagnostic[] = [];
+  #judgedTree: Model["tree"] | undefined;
   #changes: Change[] = [];
   readonly #waiting: (() => void)[] = [];
   readonly #waitingForModes: (() => void)[] = [];
@@ -87,6 +95,7 @@ export class Session implements Place {
     this.serial++;
     this.numbers = "awaited";
     this.#changes.push(...changes);
+    this.edited = changes.length > 0 || this.serial === 2;
     const last = changes.at(-1);
     if (last === undefined) return;
     this.#content = undefined;
@@ -112,6 +121,7 @@ export class Session implements Place {
     }
     this.#changes = [];
     this.#judged = judged.diagnostics;
+    this.#judgedTree = this.understood?.model.tree;
     this.summary = judged.summary;
     if (judged.upTo === "answers") this.#done();
     else this.#begin();
@@ -166,11 +176,14 @@ export class Session implements Place {
   }
 
   #carried(list: readonly Diagnostic[]): readonly Diagnostic[] {
+    // Numbers of a text that means the same are not of an earlier one.
+    const { understood } = this;
+    const same = understood && this.#judgedTree && sameMeaning(understood.model.tree, this.#judgedTree);
     return list.flatMap((each) => {
       const span = moved(each.span, this.#changes);
       if (span === undefined) return [];
       const { related: _related, fixes: _fixes, ...rest } = each;
-      const message = each.message.endsWith(EARLIER) ? each.message : `${each.message}${EARLIER}`;
+      const message = same || each.message.endsWith(EARLIER) ? each.message : `${each.message}${EARLIER}`;
       return [{ ...rest, span, message }];
     });
   }

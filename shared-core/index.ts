@@ -3,7 +3,8 @@
 // A text, understood and judged.
 export type { DiagnosticCode } from "./diagnostics/codes.ts";
 export type { Diagnostic, Fix, RelatedPlace, Severity } from "./diagnostics/diagnostic.ts";
-export { judge, judgeInSteps } from "./judgement/judge.ts";
+export { judge, judgeAgain, judgeInSteps } from "./judgement/judge.ts";
+export { sameMeaning } from "./judgement/same-meaning.ts";
 export type { CaseReport, FileReport, InternalFault, JudgeOptions, Verdict } from "./judgement/report.ts";
 export type { Steps } from "./judgement/steps.ts";
 export type { FileContent, FileReader, Model } from "./model/model.ts";

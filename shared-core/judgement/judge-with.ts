@@ -1,7 +1,7 @@
 import type { ModeTable } from "../answers/answer.ts";
 import { CODES } from "../diagnostics/codes.ts";
 import type { Diagnostic } from "../diagnostics/diagnostic.ts";
-import type { Ask, Instance, Model } from "../model/model.ts";
+import type { Ask, Expectation, Instance, Model } from "../model/model.ts";
 import { fail, type Outcome } from "../numerics/outcome.ts";
 import { sortAccepted } from "./accept.ts";
 import { judgeExpectations, unjudged } from "./expectations.ts";
@@ -18,10 +18,16 @@ export function judgeWith(sources: Sources, model: Model, options: JudgeOptions 
 }
 
 /** The same piece by piece: each answer, each corner of a tolerance, each rule is a step. */
-export function* judgeSteps(sources: Sources, model: Model, upTo: CostClass = "answers"): Steps<FileReport> {
+export function* judgeSteps(
+  sources: Sources,
+  model: Model,
+  upTo: CostClass = "answers",
+  known: readonly (readonly Judged[] | undefined)[] = [],
+): Steps<FileReport> {
   const work: Work = {
     sources,
     model,
+    known,
     wanted: WANTED[upTo],
     done: new Set(),
     diagnostics: [...model.diagnostics],
@@ -56,6 +62,8 @@ const WANTED: Readonly<Record<CostClass, ReadonlySet<CostClass>>> = {
 interface Work {
   readonly sources: Sources;
   readonly model: Model;
+  /** By case, expectations that were judged in an earlier text of the same meaning. */
+  readonly known: readonly (readonly Judged[] | undefined)[];
   readonly wanted: ReadonlySet<CostClass>;
   /** Cost classes of which every rule has been asked in every case so far. */
   readonly done: Set<CostClass>;
@@ -78,7 +86,7 @@ function* judgeCase(work: Work, index: number): Steps<CaseReport | undefined> {
   sayInstance(work, index, trial.instance);
   const modes = readModes(work, name, trial);
   const answers = yield* readAnswers(work, name, trial);
-  const judged = work.wanted.has("answers") ? yield* readExpectations(work, name, trial, remarks) : [];
+  const judged = work.wanted.has("answers") ? yield* readExpectations(work, index, trial, remarks) : [];
   const { instance, analysis } = trial;
   const context: RuleContext = {
     model: work.model,
@@ -98,6 +106,7 @@ function* judgeCase(work: Work, index: number): Steps<CaseReport | undefined> {
     modes: modes.ok ? { ok: true, table: modes.value } : { ok: false, reason: modes.reason },
     answers,
     verdicts: judged.map(({ verdict }) => verdict),
+    judged,
   };
 }
 
@@ -146,17 +155,33 @@ const noAnswer = (ask: Ask, reason: string): AnswerResult => ({
 
 function* readExpectations(
   work: Work,
-  name: string,
+  index: number,
   trial: Trial,
   remarks: Remark[],
 ): Steps<readonly Judged[]> {
+  const { name } = work.model.cases[index];
   const meant = work.model.expectations.filter(({ cases }) => cases === undefined || cases.includes(name));
+  const known = work.known[index];
+  if (known?.length === meant.length) {
+    return meant.map((expectation, i) => judgedAgain(trial, expectation, known[i]));
+  }
   try {
     return yield* judgeExpectations(trial, remarks, meant);
   } catch (error) {
     sayFault(work, "expectations", name, error);
     return meant.map((expectation) => unjudged(expectation));
   }
+}
+
+/** What was found of an expectation holds for the same one of another text. */
+function judgedAgain({ instance }: Trial, expectation: Expectation, known: Judged): Judged {
+  const asks = new Map(instance.asks.map((ask) => [ask.name, ask]));
+  return {
+    ...known,
+    expectation,
+    verdict: { ...known.verdict, expectation },
+    remarks: known.remarks.map((remark) => ({ ...remark, ask: asks.get(remark.ask.name) ?? remark.ask })),
+  };
 }
 
 function* askRules(work: Work, index: number, context: RuleContext): Steps<void> {

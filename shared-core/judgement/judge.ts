@@ -1,5 +1,6 @@
 /** Judging a model: every case answered, every rule asked, every expectation held against its limit. */
 import type { Analysis } from "../answers/analysis.ts";
+import { movedAnalysis } from "../answers/analysis-moved.ts";
 import { analyse } from "../answers/analysis-of.ts";
 import { evaluateExpression, instantiate } from "../model/instantiate.ts";
 import type { Instance, Model, Overrides } from "../model/model.ts";
@@ -23,6 +24,23 @@ export function judge(model: Model, options: JudgeOptions = {}): FileReport {
  */
 export function judgeInSteps(model: Model, upTo?: CostClass): Steps<FileReport> {
   return judgeSteps(SOURCES, model, upTo);
+}
+
+/**
+ * A model that means the same as the one of an earlier report (see `sameMeaning`) and read the same files: no
+ * answer is computed anew, only what is said gets the places of the new text.
+ */
+export function judgeAgain(model: Model, before: FileReport): Steps<FileReport> {
+  for (const [index, { analysis }] of before.cases.entries()) {
+    const instance = SOURCES.instantiate(model, index);
+    ANALYSES.set(instance, movedAnalysis(instance, analysis));
+  }
+  return judgeSteps(
+    SOURCES,
+    model,
+    "answers",
+    before.cases.map(({ judged }) => judged),
+  );
 }
 
 /** The cases of a model as they stand are kept as long as the model: judged further, they go on from there. */

@@ -3,6 +3,7 @@ import type { HistoryAnswer, ModeTable, SweepAnswer } from "../answers/answer.ts
 import type { Diagnostic } from "../diagnostics/diagnostic.ts";
 import type { Expectation, Instance, Model } from "../model/model.ts";
 import type { Kind } from "../units/dimension.ts";
+import type { Judged } from "./rule.ts";
 
 /** What became of one expectation in one case. Numbers in SI, rates in Hz. */
 export interface Verdict {
@@ -51,6 +52,8 @@ export interface CaseReport {
   /** By ask name, in file order, all asks but `modes`. */
   readonly answers: ReadonlyMap<string, AnswerResult>;
   readonly verdicts: readonly Verdict[];
+  /** The verdicts with what was learnt on the way, for the next text that means the same. */
+  readonly judged?: readonly Judged[];
 }
 
 /** Everything said about one file: the command line prints it, the editor and the sheet show it. */
