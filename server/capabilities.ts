@@ -4,7 +4,10 @@ import type { Client } from "./client.ts";
 import { IDENTIFIER } from "./diagnostics.ts";
 import { COMPLETION_TRIGGERS, SIGNATURE_TRIGGERS } from "./features/completion.ts";
 
-/** What the server does; parts of 3.18 only for clients that know them. */
+/**
+ * What the server does; parts of 3.18 only for clients that know them. Longer than other functions because it is the
+ * one list of it.
+ */
 export function capabilitiesFor({ capabilities, pullsDiagnostics }: Client): ServerCapabilities {
   const ranges = capabilities.textDocument?.rangeFormatting?.rangesSupport === true;
   return {

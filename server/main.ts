@@ -8,6 +8,7 @@ import { version } from "../package.json";
 import { serve } from "./connection.ts";
 import { ThreadEngine } from "./engine-thread.ts";
 import type { Disk } from "./host.ts";
+import { errorText } from "./numbers.ts";
 import { tidyWhenIdle } from "./tidy.ts";
 
 function start(): void {
@@ -17,6 +18,10 @@ function start(): void {
     ? createConnection(new IPCMessageReader(process), new IPCMessageWriter(process))
     : createConnection(process.stdin, process.stdout);
   if (!overIpc) console.log = console.info = console.debug = (...said: unknown[]) => console.error(...said);
+  // Every request has a wall of its own; what comes past them all is told, and the next request is answered.
+  for (const event of ["uncaughtException", "unhandledRejection"] as const) {
+    process.on(event, (error: unknown) => connection.console.error(`${event}\n${errorText(error)}`));
+  }
   tidyWhenIdle();
   const docs = new URL("../../docs/", import.meta.url);
   serve(connection, {

@@ -18,16 +18,11 @@ import type { NumericArgs, NumericFeature, NumericResult } from "./numeric-featu
 import type { Change, Session, Understood } from "./session.ts";
 import type { Settings } from "./settings.ts";
 import type { Sources } from "./sources.ts";
-import { nextTurn } from "./turns.ts";
+import { Texts } from "./texts.ts";
 import { keyOf } from "./uris.ts";
 
 /** Codes of what may be a unit that is not known yet. */
 const MAY_BE_UNIT: ReadonlySet<string> = new Set(["unknown-unit", "unknown-name"]);
-/** Texts that take longer than this, in ms, are worked out when typing rests for as long, at most `LONGEST_REST`. */
-const SWIFT = 250;
-const LONGEST_REST = 400;
-/** A burst of edits that wait to be read counts as one, for at most so long, in ms. */
-const LONGEST_BURST = 25;
 /** Rounds of asking the client for files that lead to more files. */
 const MOST_ROUNDS = 20;
 
@@ -45,7 +40,7 @@ export interface ScheduleHost {
 export class Schedule {
   readonly #host: ScheduleHost;
   readonly #sessions = new Map<string, Session>();
-  readonly #texts = new Texts((session) => this.#workOut(session));
+  readonly #texts = new Texts((session) => this.#behindWall(session.file, () => this.#workOut(session)));
   readonly #timers = new Map<Session, ReturnType<typeof setTimeout>>();
   readonly #questions = new Map<number, (value: unknown) => void>();
   /** Which session or closed model uses which content of the engine. */
@@ -179,7 +174,7 @@ export class Schedule {
   get engine(): Engine {
     if (this.#engine === undefined) {
       this.#engine = this.#host.startEngine();
-      this.#engine.onSaid = (message) => this.#hear(message);
+      this.#engine.onSaid = (message) => this.#behindWall(message.say, () => this.#hear(message));
     }
     return this.#engine;
   }
@@ -356,57 +351,16 @@ export class Schedule {
     }
   }
 
+  /** A defect costs what stands behind the wall; the server lives on. */
+  #behindWall(where: string, run: () => void): void {
+    try {
+      run();
+    } catch (error) {
+      this.#host.log(`${where}\n${errorText(error)}`);
+    }
+  }
+
   #fault(where: string, session: Session, error: unknown): void {
     this.#host.log(`${where}, version ${session.document.version}\n${errorText(error)}`);
   }
 }
-
-/** Sessions whose text waits to be worked out, each once however many edits have come. */
-class Texts {
-  readonly #run: (session: Session) => void;
-  /** By session, when its last edit came. */
-  readonly #waiting = new Map<Session, number>();
-  #edits = 0;
-  #running = false;
-
-  constructor(run: (session: Session) => void) {
-    this.#run = run;
-  }
-
-  add(session: Session): void {
-    this.#waiting.delete(session);
-    this.#waiting.set(session, performance.now());
-    this.#edits++;
-    if (!this.#running) void this.#loop();
-  }
-
-  forget(session: Session): void {
-    this.#waiting.delete(session);
-  }
-
-  async #loop(): Promise<void> {
-    this.#running = true;
-    let since = performance.now();
-    while (this.#waiting.size > 0) {
-      const seen = this.#edits;
-      // Messages are handled one a turn: two turns without an edit mean that none waits.
-      await nextTurn();
-      await nextTurn();
-      const now = performance.now();
-      if (seen !== this.#edits && now - since < LONGEST_BURST) continue;
-      const rests = [...this.#waiting].map(([session, at]) => ({
-        session,
-        left: at + restOf(session) - now,
-      }));
-      const due = rests.find(({ left }) => left <= 0);
-      if (due) this.#run(due.session);
-      else if (rests.length > 0) await pause(Math.min(...rests.map(({ left }) => left)));
-      since = performance.now();
-    }
-    this.#running = false;
-  }
-}
-
-const restOf = ({ cost }: Session): number => (cost > SWIFT ? Math.min(cost, LONGEST_REST) : 0);
-
-const pause = (ms: number): Promise<void> => new Promise((done) => setTimeout(done, ms));

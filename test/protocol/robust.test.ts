@@ -1,4 +1,5 @@
 /** Whatever a client sends and whatever stands in a text, the server answers and lives on. */
+import { spawnSync } from "node:child_process";
 import { readdirSync, readFileSync } from "node:fs";
 import { join } from "node:path";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
@@ -44,7 +45,7 @@ describe("a server that is thrown everything at", () => {
 
   it("answers every request at any place of mangled texts", async () => {
     const dice = new Dice(2207);
-    for (let seed = 0; seed < tries(250); seed++) {
+    for (let seed = 0; seed < tries(150); seed++) {
       const text = mangle(EXAMPLES[seed % EXAMPLES.length], seed);
       const document = client.open(`mangled-${seed}.thrum`, text);
       await Promise.all([
@@ -105,6 +106,14 @@ describe("a fault", () => {
 });
 
 describe("the manners of starting and ending", () => {
+  it("include a word about how to talk", () => {
+    const run = spawnSync(process.execPath, [join(root, "dist/terminal/thrum.js"), "serve"], {
+      encoding: "utf8",
+    });
+    expect([run.status, run.stdout]).toEqual([2, ""]);
+    expect(run.stderr).toContain("--stdio");
+  });
+
   it("are those of the protocol", async () => {
     const client = new TestClient();
     await expect(client.request("textDocument/hover", {})).rejects.toThrow();
