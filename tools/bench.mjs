@@ -4,7 +4,7 @@
  * difference of the answers and the peak memory of both. Only ratios of one run mean anything.
  */
 import { spawn, spawnSync } from "node:child_process";
-import { mkdirSync, writeFileSync } from "node:fs";
+import { existsSync, mkdirSync, writeFileSync } from "node:fs";
 import { cpus } from "node:os";
 import { join } from "node:path";
 import { createInterface } from "node:readline";
@@ -14,6 +14,8 @@ import { build } from "./build.mjs";
 import { root } from "./root.mjs";
 
 const RUNS = 7;
+/** Debian's own, where it is: another Python on the path may carry another SciPy. */
+const PYTHON = existsSync("/usr/bin/python3") ? "/usr/bin/python3" : "python3";
 const cache = join(root, ".cache", "bench");
 
 /** The peer runs on the kernels of its own choice. */
@@ -26,7 +28,7 @@ const chosen = process.argv[2] ?? "";
 await build();
 mkdirSync(cache, { recursive: true });
 await bundleOurs();
-if (spawnSync("python3", ["-c", "import scipy"]).status !== 0) {
+if (spawnSync(PYTHON, ["-c", "import scipy"]).status !== 0) {
   console.error("The peer needs SciPy: apt-get install -y python3-scipy");
   process.exit(2);
 }
@@ -78,7 +80,7 @@ async function sideBySide(row) {
   const extra = extras(row, model);
   const ours = ourTalker();
   const peers = [1, 2].map((threads) =>
-    talker("python3", [join(root, "tools/bench/peer.py")], peerEnvironment(threads)),
+    talker(PYTHON, [join(root, "tools/bench/peer.py")], peerEnvironment(threads)),
   );
   const talkers = [ours, ...peers];
   try {
@@ -149,7 +151,7 @@ async function processRow(row) {
   const ours = () =>
     timed(process.execPath, [join(root, "dist/terminal/thrum.js"), "answer", textFile, "modes"]);
   const peer = (threads) => () =>
-    timed("python3", [join(root, "tools/bench/peer-process.py"), jsonFile], peerEnvironment(threads));
+    timed(PYTHON, [join(root, "tools/bench/peer-process.py"), jsonFile], peerEnvironment(threads));
   const all = [ours, peer(1), peer(2)];
   const times = all.map(() => []);
   for (let i = 0; i <= RUNS; i++) {
