@@ -6,7 +6,13 @@ import {
   FileChangeType,
   type InitializeResult,
 } from "vscode-languageserver";
-import { FIND_MODELS, type FileContent, READ_FILE, type ReadFileResult } from "../shared-core/index.ts";
+import {
+  FIND_MODELS,
+  type FileContent,
+  READ_FILE,
+  type ReadFileParams,
+  type ReadFileResult,
+} from "../shared-core/index.ts";
 import { capabilitiesFor } from "./capabilities.ts";
 import { type Client, clientOf } from "./client.ts";
 import { ClosedModels } from "./closed.ts";
@@ -90,7 +96,10 @@ class Server {
     });
     const docs = client.docs ?? host.docs;
     const guard = wall(log, () => this.#ended);
-    this.serving = { connection, client, workspace, schedule, closed, settingsOf, guard, docs };
+    const readAt = client.readsFiles
+      ? (uri: string, revision: string) => this.#readFile(uri, revision)
+      : undefined;
+    this.serving = { connection, client, workspace, schedule, closed, settingsOf, guard, readAt, docs };
     this.#diagnostics = new Diagnostics(this.serving);
     this.#status = new Status(this.serving);
     registerFeatures(this.serving);
@@ -243,9 +252,10 @@ class Server {
     void this.#diagnostics.judgeClosed();
   }
 
-  async #readFile(uri: string): Promise<FileContent> {
+  async #readFile(uri: string, revision?: string): Promise<FileContent> {
+    const params: ReadFileParams = { uri, ...(revision !== undefined && { revision }) };
     const sent = await this.#connection
-      .sendRequest<ReadFileResult | null>(READ_FILE, { uri })
+      .sendRequest<ReadFileResult | null>(READ_FILE, params)
       .catch((error: Error) => ({ why: "unreadable" as const, detail: error.message }));
     if (sent && "text" in sent) return { ok: true, text: sent.text };
     return { ok: false, why: sent?.why ?? "missing", detail: sent?.detail ?? "" };

@@ -25,8 +25,22 @@ export interface TextMessage {
   readonly learned: readonly Unit[];
 }
 
+/** What a model was at a revision; the newest one told counts. */
+export interface EarlierMessage {
+  readonly say: "earlier";
+  readonly uri: string;
+  readonly revision: string;
+  readonly file: string;
+  readonly text: string;
+  /** By path, everything that it read then. */
+  readonly reads: readonly (readonly [path: string, content: FileContent])[];
+  /** As in a text. */
+  readonly learned: readonly Unit[];
+}
+
 export type ToEngine =
   | TextMessage
+  | EarlierMessage
   /** Computes everything about the newest text. One that is open goes before those that are not. */
   | { readonly say: "judge"; readonly uri: string; readonly serial: number; readonly open: boolean }
   /** Ends a computation, running or waiting. */

@@ -21,8 +21,16 @@ import {
   understand,
   type View,
 } from "../shared-core/index.ts";
-import type { AskMessage, FromEngine, Judged, SummaryOfModel, TextMessage, ToEngine } from "./engine.ts";
-import { NUMERIC, type Views } from "./numeric-features.ts";
+import type {
+  AskMessage,
+  EarlierMessage,
+  FromEngine,
+  Judged,
+  SummaryOfModel,
+  TextMessage,
+  ToEngine,
+} from "./engine.ts";
+import { type EarlierModel, NUMERIC, type Views } from "./numeric-features.ts";
 
 /** Modes come first where everything together took longer than this the last time, in ms. */
 const AT_ONCE = 40;
@@ -32,6 +40,7 @@ export class Numbers {
   readonly #now: () => number;
   readonly #entries = new Map<string, Entry>();
   readonly #contents = new Map<number, FileContent>();
+  readonly #earlier = new Map<string, EarlierModel>();
   /** Work to be done, the last first: the newest of what is open; what is not open lies at the bottom. */
   #jobs: Job[] = [];
 
@@ -44,6 +53,9 @@ export class Numbers {
     switch (message.say) {
       case "text":
         this.#take(message);
+        break;
+      case "earlier":
+        this.#earlier.set(message.uri, earlierModel(message));
         break;
       case "judge":
         this.#want(message.uri, message.serial, message.open);
@@ -59,6 +71,7 @@ export class Numbers {
       case "forget":
         this.#drop(message.uri);
         this.#entries.delete(message.uri);
+        this.#earlier.delete(message.uri);
         for (const id of message.contents) this.#contents.delete(id);
         break;
       case "ask":
@@ -163,7 +176,8 @@ export class Numbers {
     const entry = this.#entries.get(uri);
     try {
       const run = NUMERIC[feature] as (views: Views, ...args: readonly unknown[]) => unknown;
-      const value = entry && run(viewsOf(entry, this.#contents), ...args);
+      const value =
+        entry && run({ ...viewsOf(entry, this.#contents), earlier: this.#earlier.get(uri) }, ...args);
       this.#say({ say: "answer", id, value });
     } catch (error) {
       this.#fault(`${feature} in ${entry?.file ?? uri}`, error, id);
@@ -212,7 +226,16 @@ function understood(entry: Entry, contents: ReadonlyMap<number, FileContent>): M
   return entry.model;
 }
 
-function viewsOf(entry: Entry, contents: ReadonlyMap<number, FileContent>): Views {
+function earlierModel({ file, text, revision, reads, learned }: EarlierMessage): EarlierModel {
+  for (const unit of learned) learnUnit(unit);
+  const known = new Map(reads);
+  const model = understand(file, text, {
+    read: (path) => known.get(path) ?? { ok: false, why: "missing", detail: "it was not read" },
+  });
+  return { revision, model };
+}
+
+function viewsOf(entry: Entry, contents: ReadonlyMap<number, FileContent>): Omit<Views, "earlier"> {
   entry.lines ??= new LineIndex(entry.text);
   const { lines, units, whole, modes, serial } = entry;
   const base = { model: understood(entry, contents), lines, units, others: [] };

@@ -9,6 +9,7 @@ import {
   type InlayHint,
   type InlayKind,
   inlayHints,
+  type Model,
   type OfferedAction,
   type PackedContent,
   packContent,
@@ -34,6 +35,20 @@ export type CsvAnswer = { readonly text: string } | { readonly refused: string }
 export interface Views {
   readonly now: View;
   readonly whole: View;
+  readonly earlier: EarlierModel | undefined;
+}
+
+/** What the model was at the revision that was told last. */
+export interface EarlierModel {
+  readonly revision: string;
+  readonly model: Model;
+}
+
+/** A revision that is wanted, and why it cannot be read if it cannot. */
+export interface WantedEarlier {
+  readonly revision: string;
+  readonly label: string;
+  readonly reason: string | undefined;
 }
 
 export const NUMERIC = {
@@ -72,8 +87,20 @@ export const NUMERIC = {
    * Packed here: one text travels between threads faster than rows do. While answers are awaited, modes of this
    * text are worth more than everything of an earlier one.
    */
-  sheet: ({ now }: Views, choice: SheetChoice, units: UnitSystem | undefined): PackedContent =>
-    packContent(sheetContent({ ...now, units: units ?? now.units }, choice)),
+  sheet(
+    { now, earlier }: Views,
+    choice: SheetChoice,
+    units: UnitSystem | undefined,
+    wanted: WantedEarlier | undefined,
+  ): PackedContent {
+    const model = earlier?.revision === wanted?.revision ? earlier?.model : undefined;
+    const before = wanted && {
+      label: wanted.label,
+      ...(model && { model }),
+      ...(wanted.reason !== undefined && { reason: wanted.reason }),
+    };
+    return packContent(sheetContent({ ...now, units: units ?? now.units }, choice, before));
+  },
 
   csv({ whole }: Views, ask: string, caseName: string | undefined): CsvAnswer {
     const { report, units, model } = whole;

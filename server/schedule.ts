@@ -12,7 +12,7 @@ import {
   understand,
   type View,
 } from "../shared-core/index.ts";
-import type { AskMessage, Engine, FromEngine, ReadFile } from "./engine.ts";
+import type { AskMessage, EarlierMessage, Engine, FromEngine, ReadFile } from "./engine.ts";
 import { errorText, withState } from "./numbers.ts";
 import type { NumericArgs, NumericFeature, NumericResult } from "./numeric-features.ts";
 import type { Change, Session, Understood } from "./session.ts";
@@ -46,6 +46,7 @@ export class Schedule {
   /** Which session or closed model uses which content of the engine. */
   readonly #sent = new Map<number, Set<string>>();
   #engine: Engine | undefined;
+  #engines = 1;
   #lastQuestion = 0;
 
   constructor(host: ScheduleHost) {
@@ -149,6 +150,15 @@ export class Schedule {
   stop(session: Session): void {
     this.#stopTimer(session);
     this.engine.tell({ say: "stop", uri: session.uri });
+  }
+
+  tellEarlier(message: Omit<EarlierMessage, "learned">): void {
+    this.engine.tell({ ...message, learned: learnedUnits() });
+  }
+
+  /** How many engines there have been: a new one knows nothing of what was told to the one before. */
+  get engines(): number {
+    return this.#engines;
   }
 
   unitsChanged(session: Session): void {
@@ -338,6 +348,7 @@ export class Schedule {
     for (const done of this.#questions.values()) done(undefined);
     this.#questions.clear();
     this.#sent.clear();
+    this.#engines++;
     for (const session of this.#sessions.values()) {
       const { understood, numbers } = session;
       if (understood === undefined) continue;

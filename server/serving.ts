@@ -2,6 +2,7 @@ import type { Connection } from "vscode-languageserver";
 import { LineIndex, type View } from "../shared-core/index.ts";
 import type { Client } from "./client.ts";
 import type { ClosedModels } from "./closed.ts";
+import type { ReadAt } from "./earlier.ts";
 import type { Schedule } from "./schedule.ts";
 import type { Session } from "./session.ts";
 import type { Settings } from "./settings.ts";
@@ -17,6 +18,8 @@ export interface Serving {
   readonly closed: ClosedModels;
   readonly settingsOf: (of: { readonly uri: string }) => Settings;
   readonly guard: ReturnType<typeof wall>;
+  /** undefined: the client reads no revisions. */
+  readonly readAt: ReadAt | undefined;
   /** Where the pages of docs/ lie, ending in `/`. */
   readonly docs: string | undefined;
 }

@@ -111,6 +111,6 @@ export { sceneSvg } from "./writing/figure/scene-svg.ts";
 
 // What a page needs to paint figures itself: the figure as data, its scales and dashes, numbers for people.
 export { formatNumber } from "./units/show.ts";
-export { type Axis, type CurvePanel, DASHES, type Figure } from "./writing/figure/figure.ts";
+export { type Axis, type CurvePanel, curveWords, DASHES, type Figure } from "./writing/figure/figure.ts";
 export { figureSvg } from "./writing/figure/svg.ts";
 export { type Scale, scaleBetween, scaleOver, tickLabel } from "./writing/scales.ts";

@@ -8,12 +8,14 @@ import {
   type ReadFileParams,
   type ReadFileResult,
 } from "../../shared-core/index.ts";
+import { textAt } from "./revisions.ts";
 
 /** Answers what the server cannot read by itself: files of virtual workspaces, and everything in a browser. */
 export function answerFileRequests(client: BaseLanguageClient): void {
   client.onRequest<ReadFileResult, void>(
     READ_FILE,
-    async ({ uri }: ReadFileParams): Promise<ReadFileResult> => {
+    async ({ uri, revision }: ReadFileParams): Promise<ReadFileResult> => {
+      if (revision !== undefined) return readAt(vscode.Uri.parse(uri), revision);
       try {
         const bytes = await vscode.workspace.fs.readFile(vscode.Uri.parse(uri));
         return { text: new TextDecoder("utf-8").decode(bytes) };
@@ -28,4 +30,13 @@ export function answerFileRequests(client: BaseLanguageClient): void {
     const found = await vscode.workspace.findFiles(pattern, "**/node_modules/**");
     return found.map((uri) => uri.toString());
   });
+}
+
+/** What is not in a revision and what cannot be read are one to source control: both are said in its words. */
+async function readAt(uri: vscode.Uri, revision: string): Promise<ReadFileResult> {
+  try {
+    return { text: await textAt(uri, revision) };
+  } catch (error) {
+    return { why: "unreadable", detail: String((error as Error).message ?? error) };
+  }
 }

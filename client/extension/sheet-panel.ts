@@ -7,9 +7,11 @@ import {
   SHEET_VERSION,
   type SheetParams,
   type SheetResult,
+  type SheetRevision,
   type StateParams,
   type ToSheet,
 } from "../../shared-core/index.ts";
+import { revisionsOf } from "./revisions.ts";
 import { saveCsv, savePicture, writeToSource } from "./sheet-acts.ts";
 import { sheetPage } from "./sheet-page.ts";
 import { namesAt, placeOf } from "./sheet-places.ts";
@@ -44,6 +46,7 @@ export class SheetPanel implements vscode.Disposable {
   #computing = false;
   #posted = "";
   #ask: string | undefined;
+  #revisions: readonly SheetRevision[] = [];
   #cursor: ReturnType<typeof setTimeout> | undefined;
 
   constructor(panel: vscode.WebviewPanel, uri: vscode.Uri, pinned: boolean, environment: SheetEnvironment) {
@@ -97,6 +100,7 @@ export class SheetPanel implements vscode.Disposable {
     this.#choice = units === undefined ? {} : { units };
     this.#name();
     this.refresh();
+    void this.#offerRevisions();
   }
 
   /** Brings the panel to the front without taking the focus, and a card of it into sight. */
@@ -147,6 +151,19 @@ export class SheetPanel implements vscode.Disposable {
     this.#showAsk();
   }
 
+  async #offerRevisions(): Promise<void> {
+    const uri = this.#uri;
+    const list = await revisionsOf(uri);
+    if (!this.shows(uri)) return;
+    this.#revisions = list;
+    this.#post({ type: "revisions", list });
+    const chosen = this.#choice.earlier;
+    const label = list.find(({ id }) => id === chosen?.revision)?.label;
+    if (chosen === undefined || label === undefined || label === chosen.label) return;
+    this.#choice = { ...this.#choice, earlier: { ...chosen, label } };
+    this.refresh();
+  }
+
   async #fetch(uri: vscode.Uri): Promise<void> {
     let result: SheetResult;
     try {
@@ -175,10 +192,14 @@ export class SheetPanel implements vscode.Disposable {
         this.#ready = true;
         this.#posted = "";
         this.refresh();
+        await this.#offerRevisions();
         break;
       case "show": {
-        const { case: of, units, knobs } = message;
-        this.#choice = { case: of, units, knobs };
+        const { case: of, units, knobs, earlier } = message;
+        const found = this.#revisions.find(({ id }) => id === earlier);
+        // A page that was restored asks before the list is there.
+        const label = found?.label ?? earlier?.slice(0, 7) ?? "";
+        this.#choice = { case: of, units, knobs, ...(earlier && { earlier: { revision: earlier, label } }) };
         this.refresh();
         break;
       }

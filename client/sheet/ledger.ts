@@ -58,7 +58,7 @@ export class Ledger {
 }
 
 function cells(verdict: LedgerVerdict): HTMLTableCellElement[] {
-  const { case: of, holds, thin, value, limit, marginText, message } = verdict;
+  const { case: of, holds, thin, value, limit, marginText, message, earlier } = verdict;
   const state = holds === null ? "unknown" : !holds ? "fails" : thin ? "thin" : "holds";
   const words = { unknown: "not computed", fails: "fails", thin: "thin", holds: "holds" }[state];
   const left = html(
@@ -71,7 +71,12 @@ function cells(verdict: LedgerVerdict): HTMLTableCellElement[] {
   if (holds === null && message !== "") left.append(html("span", { class: "quiet" }, message));
   return [
     html("td", { class: "case" }, of),
-    html("td", { class: "number" }, value ?? "–"),
+    html(
+      "td",
+      { class: "number" },
+      value ?? "–",
+      ...(earlier === undefined ? [] : [html("span", { class: "earlier" }, `earlier ${earlier}`)]),
+    ),
     html("td", { class: "number" }, limit ?? "–"),
     left,
   ];

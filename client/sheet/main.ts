@@ -12,5 +12,5 @@ addEventListener("message", ({ data }) => sheet.hear(data));
 page.say({ type: "ready" });
 
 // After a reload the same case, units and moved numbers are asked for again.
-const { case: of, units, knobs = {} } = page.kept;
-if (of !== undefined && units !== undefined) page.say({ type: "show", case: of, units, knobs });
+const { case: of, units, knobs = {}, earlier = null } = page.kept;
+if (of !== undefined && units !== undefined) page.say({ type: "show", case: of, units, knobs, earlier });

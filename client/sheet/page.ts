@@ -10,6 +10,8 @@ export interface Kept {
   /** Name of the chosen statement. */
   readonly selected?: string;
   readonly motion?: string;
+  /** The revision under today's. */
+  readonly earlier?: string;
   /** Shown part of each plot's axis, as shares of the whole. */
   readonly zoom?: Readonly<Record<string, readonly [number, number]>>;
   /** Scale and phase choices of each plot. */
@@ -81,6 +83,7 @@ function readKept(state: unknown): Kept {
     knobs: entries(it.knobs, (value) => Number.isFinite(value)) as Kept["knobs"],
     selected: text(it.selected),
     motion: text(it.motion),
+    earlier: text(it.earlier),
     zoom: entries(it.zoom, isPart) as Kept["zoom"],
     views: entries(it.views, (value) => typeof value === "object" && value !== null) as Kept["views"],
     scroll: Number.isFinite(it.scroll) ? (it.scroll as number) : undefined,

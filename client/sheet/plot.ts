@@ -1,4 +1,4 @@
-import { type CurvePanel, formatNumber, type Scale } from "../../shared-core/index.ts";
+import { type CurvePanel, curveWords, formatNumber, type Scale } from "../../shared-core/index.ts";
 import { html, svg } from "./dom.ts";
 import { followGestures } from "./gestures.ts";
 import type { Page } from "./page.ts";
@@ -168,8 +168,7 @@ export class Plot {
           "stroke-dasharray": dashFor(curve) || undefined,
         }),
       );
-      const words = curve.role === "written" ? `${curve.name}, as written` : curve.name;
-      return html("span", {}, swatch, words);
+      return html("span", {}, swatch, curveWords(curve));
     });
     this.#legend.replaceChildren(...items);
   }
@@ -226,8 +225,7 @@ export class Plot {
     const values = this.#data.flatMap(({ panel, curves }) =>
       curves.map(({ curve }) => {
         const value = curve.y[nearestTo(curve.x, at)];
-        const words = curve.role === "written" ? `${curve.name} as written` : curve.name;
-        return `${words} ${Number.isFinite(value) ? `${formatNumber(value)} ${panel.y.unit}`.trim() : "no value"}`;
+        return `${curveWords(curve)} ${Number.isFinite(value) ? `${formatNumber(value)} ${panel.y.unit}`.trim() : "no value"}`;
       }),
     );
     return [place, ...values].join(" · ");
@@ -321,8 +319,8 @@ const HELP =
 const inkClass = ({ role, style }: CurvePanel["curves"][number]): string =>
   role === "limit"
     ? "ink-limit"
-    : role === "written"
-      ? `ink-written ink-${style % INKS}`
+    : role === "written" || role === "earlier"
+      ? `ink-${role} ink-${style % INKS}`
       : `ink-${style % INKS}`;
 
 /** Colours in the style sheet. */

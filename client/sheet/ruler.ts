@@ -71,6 +71,7 @@ export class RulerView {
       "svg",
       { class: "ruler-picture", width, height, viewBox: `0 0 ${width} ${height}` },
       ...ruler.modes.map((mode) => parts.band(mode)),
+      ...ruler.earlier.map((mode) => parts.earlier(mode)),
       ...parts.scale(ruler, width),
       ...items.map(({ element }) => element),
     );
@@ -179,13 +180,29 @@ class Parts {
     ];
   }
 
-  /** A drop: hangs from a point of the axis, as wide at its belly as the half-power bandwidth. */
-  mode({ id, at, low, high, label, says, danger, number }: Ruler["modes"][number]): Item {
+  /** Of an earlier revision: an empty drop behind today's. */
+  earlier(mode: Ruler["earlier"][number]): SVGElement {
+    return svg(
+      "g",
+      { class: "earlier" },
+      svg("title", {}, mode.says),
+      svg("path", { d: this.#drop(mode).d }),
+    );
+  }
+
+  /** Hangs from a point of the axis, as wide at its belly as the half-power bandwidth. */
+  #drop({ at, low, high }: Pick<Ruler["modes"][number], "at" | "low" | "high">) {
     const [x, top] = [this.#to(at), this.#axis];
     const half = Math.max(THINNEST, this.#to(high) - this.#to(low)) / 2;
     const round = Math.min(half, DROP / 3);
     const belly = top + DROP - round;
     const d = `M${x},${top}C${x},${top + DROP * 0.4} ${x - half},${belly - round} ${x - half},${belly}A${half},${round} 0 0 0 ${x + half},${belly}C${x + half},${belly - round} ${x},${top + DROP * 0.4} ${x},${top}Z`;
+    return { x, top, half, belly, d };
+  }
+
+  mode(mode: Ruler["modes"][number]): Item {
+    const { id, label, says, danger, number } = mode;
+    const { x, top, half, belly, d } = this.#drop(mode);
     const y = top + DROP + 14 + ROW * (this.#below.rowOf.get(id) ?? 0);
     const words = svg("text", { x: this.#below.xOf.get(id) ?? x, y, "text-anchor": "middle" }, label);
     const element = svg(

@@ -40,6 +40,10 @@ export class Sheet {
     this.#head = new Head({
       chooseCase: (name) => this.#ask({ case: name }),
       chooseUnits: (units) => this.#ask({ units }),
+      chooseEarlier: (id) => {
+        this.#page.keep({ earlier: id });
+        this.#ask({});
+      },
     });
     this.#drawing = new Drawing(page);
     const chooseMotion = (id: string) => this.#chooseMotion(id);
@@ -85,6 +89,7 @@ export class Sheet {
     else if (message.type === "content") this.#receive(message);
     else if (message.type === "highlight") this.#highlight(message.names);
     else if (message.type === "reveal") this.#cards.show(message.name);
+    else if (message.type === "revisions") this.#head.revisions(message.list, this.#page.kept.earlier);
     else this.#state(message);
   }
 
@@ -107,6 +112,8 @@ export class Sheet {
       return;
     }
     this.#failed = undefined;
+    // A revision of another model is none of this one.
+    if (this.#page.kept.uri !== message.uri) this.#page.keep({ earlier: undefined });
     this.#page.keep({ uri: message.uri, case: content.case, units: content.units });
     this.#lay(content);
     performance.mark("thrum-painted");
@@ -179,6 +186,7 @@ export class Sheet {
       case: change.case ?? this.#page.kept.case ?? content.case,
       units: change.units ?? this.#page.kept.units ?? content.units,
       knobs: this.#knobs.moved,
+      earlier: this.#page.kept.earlier ?? null,
     };
     this.#page.keep({ case: asked.case, units: asked.units });
     this.#page.say({ type: "show", ...asked });

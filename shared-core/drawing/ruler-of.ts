@@ -15,12 +15,17 @@ const MOST_MODES = 24;
 const ROOM = 1.3;
 const SHORTEST = 4;
 
-/** null: there is no elastic mode and no steady drive. */
-export function rulerOf(report: CaseReport): Ruler | null {
+/**
+ * null: there is no elastic mode and no steady drive.
+ * @param earlier the same case at an earlier revision, whose modes are shown beside
+ */
+export function rulerOf(report: CaseReport, earlier?: CaseReport): Ruler | null {
   const drives = steadyDrives(report);
   const limits = frequencyLimits(report.verdicts);
   const modes = shownModes(report, [...drives.map(({ toHz }) => toHz), ...limits.map(({ hz }) => hz)]);
+  const before = earlier === undefined ? [] : shownModes(earlier, []).slice(0, modes.length);
   const all = [
+    ...before.map(({ hz }) => hz),
     ...modes.map(({ hz }) => hz),
     ...drives.flatMap(({ fromHz, toHz }) => [fromHz, toHz]),
     ...limits.map(({ hz }) => hz),
@@ -42,6 +47,7 @@ export function rulerOf(report: CaseReport): Ruler | null {
     modes: modes.map((mode) => rulerMode(mode, drives, band, at)),
     drives: drives.map((drive) => rulerDrive(drive, at)),
     limits: limits.map(({ hz, ...limit }) => ({ ...limit, at: at(hz) })),
+    earlier: before.map((mode) => earlierMode(mode, at)),
     separations: separations(modes, drives, limits),
     description: describe(modes, drives, limits),
   };
@@ -126,6 +132,25 @@ function rulerMode(
   band: number,
   at: (hz: number) => number,
 ): RulerMode {
+  return {
+    ...drop({ number, hz, damping }, at),
+    bandLow: at(hz * (1 - band)),
+    bandHigh: at(hz * (1 + band)),
+    danger: drives.some(
+      ({ name, fromHz, toHz }) => excitedBy.has(name) && separationFrom([fromHz, toHz], hz) <= band,
+    ),
+  };
+}
+
+const earlierMode = (mode: ShownMode, at: (hz: number) => number): Ruler["earlier"][number] => {
+  const { id, says, ...rest } = drop(mode, at);
+  return { ...rest, id: `earlier:${id}`, says: `earlier: ${says}` };
+};
+
+function drop(
+  { number, hz, damping }: Omit<ShownMode, "excitedBy">,
+  at: (hz: number) => number,
+): Omit<RulerMode, "bandLow" | "bandHigh" | "danger"> {
   // Half-power points of the velocity of one oscillator, exact: their distance is twice the damping ratio.
   const middle = Math.hypot(1, damping);
   return {
@@ -135,12 +160,7 @@ function rulerMode(
     label: hertz(hz),
     low: at(hz * (middle - damping)),
     high: at(hz * (middle + damping)),
-    bandLow: at(hz * (1 - band)),
-    bandHigh: at(hz * (1 + band)),
     says: `mode ${number}, ${hertz(hz)}, damping ratio ${percent(damping)}`,
-    danger: drives.some(
-      ({ name, fromHz, toHz }) => excitedBy.has(name) && separationFrom([fromHz, toHz], hz) <= band,
-    ),
   };
 }
 

@@ -8,6 +8,8 @@ export interface Ruler {
   readonly modes: readonly RulerMode[];
   readonly drives: readonly RulerDrive[];
   readonly limits: readonly RulerLimit[];
+  /** Drops of the chosen earlier revision. */
+  readonly earlier: readonly Pick<RulerMode, "id" | "number" | "at" | "label" | "low" | "high" | "says">[];
   /** How far any mode is from any drive, limit or other mode: `ratio 1.31, 31 % apart`. */
   readonly separations: readonly { readonly a: string; readonly b: string; readonly text: string }[];
   /** One sentence for readers who do not see it. */

@@ -25,6 +25,8 @@ export interface CardInput {
   readonly shown: CaseReport;
   /** As it stands in the text, where `shown` is another. */
   readonly written?: CaseReport;
+  /** The same case at an earlier revision. */
+  readonly earlier?: CaseReport;
 }
 
 export function cardsOf(input: CardInput): SheetCard[] {
@@ -111,14 +113,16 @@ function plotCard(
   title: string,
   answer: SweepAnswer | HistoryAnswer,
 ): PlotCard {
-  const found = input.written?.answers.get(name);
-  const before = found?.ok === true && found.value.kind === answer.kind ? found.value : undefined;
-  const units = sharedUnits(input.numbers.units, before === undefined ? [answer] : [answer, before]);
+  const under = (["earlier", "written"] as const).flatMap((role) => {
+    const found = input[role]?.answers.get(name);
+    return found?.ok === true && found.value.kind === answer.kind ? [{ role, answer: found.value }] : [];
+  });
+  const units = sharedUnits(input.numbers.units, [answer, ...under.map((each) => each.answer)]);
   const panels = panelsOf(name, answer, units);
-  const ghosts = before === undefined ? [] : panelsOf(name, before, units);
+  const ghosts = under.map(({ role, answer: of }) => ({ role, panels: panelsOf(name, of, units) }));
   const { description } =
     answer.kind === "sweep" ? sweepFigure(name, answer, units) : historyFigure(name, answer, units);
-  const merged = panels.map((panel, i) => merge(panel, ghosts[i]));
+  const merged = panels.map((panel) => withGhosts(panel, ghosts));
   const values = merged.filter(({ y }) => y.label !== "phase");
   const wrapped = merged.find(({ y }) => y.label === "phase");
   return {
@@ -157,10 +161,21 @@ function sharedUnits(units: UnitView, answers: readonly (SweepAnswer | HistoryAn
   return { unitFor: (si, size) => units.unitFor(si, sizes.get(si) ?? size) };
 }
 
-function merge(panel: CurvePanel, ghost: CurvePanel | undefined): CurvePanel {
-  if (ghost === undefined) return panel;
-  const written = ghost.curves.map((curve) => ({ ...curve, role: "written" as const }));
-  return { ...panel, curves: [...written, ...panel.curves] };
+interface Ghosts {
+  readonly role: "earlier" | "written";
+  readonly panels: readonly CurvePanel[];
+}
+
+/** Under each answer the same quantity of another model, where it has it, in the same style. */
+function withGhosts(panel: CurvePanel, ghosts: readonly Ghosts[]): CurvePanel {
+  const under = ghosts.flatMap(({ role, panels }) => {
+    const same = panels.find(({ y }) => y.label === panel.y.label && y.unit === panel.y.unit);
+    return panel.curves.flatMap(({ name, style }) => {
+      const curve = same?.curves.find((each) => each.name === name);
+      return curve === undefined ? [] : [{ ...curve, style, role }];
+    });
+  });
+  return { ...panel, curves: [...under, ...panel.curves] };
 }
 
 /** Degrees without jumps of a whole turn; an axis that follows them. */

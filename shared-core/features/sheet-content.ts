@@ -5,11 +5,12 @@ import { systemScene } from "../drawing/system-scene.ts";
 import { plainCase } from "../judgement/plain-case.ts";
 import type { CaseReport } from "../judgement/report.ts";
 import { currentInstance, type Numbers, numbersOf, show } from "./readout-numbers.ts";
-import type { SheetContent } from "./sheet.ts";
+import type { SheetContent, SheetEarlier } from "./sheet.ts";
 import { cardsOf } from "./sheet-cards.ts";
+import { type Earlier, type EarlierCase, earlierCase } from "./sheet-earlier.ts";
 import { knobsOf, ledgerOf } from "./sheet-ledger.ts";
 import { motionsOf } from "./sheet-motions.ts";
-import { stateText, summaryOf } from "./summary.ts";
+import { caseStateText, stateText, summaryOf } from "./summary.ts";
 import type { View } from "./view.ts";
 
 export interface SheetChoice {
@@ -24,8 +25,11 @@ const CAUTIONS = [
   "Where people can be hurt (lifting, fall arrest, structures, vehicles, human exposure), local codes and licensed practice decide.",
 ];
 
-/** Moved knobs are judged anew here; everything else is in the view. */
-export function sheetContent(view: View, choice: SheetChoice = {}): SheetContent {
+/**
+ * Moved knobs are judged anew here, and so is an earlier revision, once; everything else is in the view.
+ * @param earlier the revision whose answer is drawn under today's
+ */
+export function sheetContent(view: View, choice: SheetChoice = {}, earlier?: Earlier): SheetContent {
   const { model } = view;
   const numbers = numbersOf(view);
   const chosen = numbers?.report.cases.find(({ name }) => name === choice.case) ?? numbers?.asWritten;
@@ -45,22 +49,36 @@ export function sheetContent(view: View, choice: SheetChoice = {}): SheetContent
       ? undefined
       : plainCase(numbers.report.model, caseIndex(numbers, chosen), { parameters: knobs });
   const shown = moved?.instance.sound === true ? moved : chosen;
+  const before = earlier && earlierCase(earlier, chosen.name);
   return {
     ...base,
     ...noticeOf(view, knobs, moved),
     summary: stateText(summaryOf(numbers.report, view.units)),
+    ...(shown === chosen ? {} : { moved: caseStateText(shown, numbers) }),
+    ...(before && { earlier: saidOfEarlier(before, numbers) }),
     scene: systemScene(
       view.stale ? numbers.report.model : model,
       shown.instance.assembly,
       shownValues(shown.instance, view.units, (si, value) => show(numbers, si, value)),
     ),
-    ruler: rulerOf(shown),
+    ruler: rulerOf(shown, before?.ok ? before.report : undefined),
     motions: motionsOf(numbers, shown),
-    cards: cardsOf({ view, numbers, shown, ...(shown === chosen ? {} : { written: chosen }) }),
-    ledger: ledgerOf(view, numbers, shown),
+    cards: cardsOf({
+      view,
+      numbers,
+      shown,
+      ...(shown === chosen ? {} : { written: chosen }),
+      ...(before?.ok && { earlier: before.report }),
+    }),
+    ledger: ledgerOf(view, numbers, shown, before),
     knobs: knobsOf(view, chosen.instance, knobs),
   };
 }
+
+const saidOfEarlier = (before: EarlierCase, numbers: Numbers): SheetEarlier =>
+  before.ok
+    ? { label: before.label, summary: caseStateText(before.report, numbers) }
+    : { label: before.label, summary: "", reason: before.reason };
 
 const caseIndex = ({ report }: Numbers, { name }: CaseReport): number =>
   Math.max(

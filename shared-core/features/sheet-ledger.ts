@@ -5,6 +5,7 @@ import { unitToShow } from "../units/show.ts";
 import { type Numbers, parameterUnit } from "./readout-numbers.ts";
 import { type CaseVerdict, limitText, marginText, valueText, verdictPhrase } from "./readout-verdicts.ts";
 import type { Knob, LedgerRow, LedgerVerdict } from "./sheet.ts";
+import type { EarlierCase } from "./sheet-earlier.ts";
 import { summaryOf } from "./summary.ts";
 import type { View } from "./view.ts";
 
@@ -13,8 +14,14 @@ const STEPS = 100;
 
 /**
  * @param shown the case that the sheet shows, by its name; with moved numbers it is another than in the report
+ * @param earlier the shown case at an earlier revision
  */
-export function ledgerOf(view: View, numbers: Numbers, shown: CaseReport): LedgerRow[] {
+export function ledgerOf(
+  view: View,
+  numbers: Numbers,
+  shown: CaseReport,
+  earlier: EarlierCase | undefined,
+): LedgerRow[] {
   const { model, lines } = view;
   const said = summaryOf(numbers.report, view.units).expectations;
   return model.expectations.map((expectation, row) => {
@@ -28,7 +35,8 @@ export function ledgerOf(view: View, numbers: Numbers, shown: CaseReport): Ledge
         report === written
           ? said[row]?.verdicts.find((each) => each.case === written.name)?.message
           : undefined;
-      return [ledgerVerdict(numbers, found, message)];
+      const before = report === shown ? earlierValue(numbers, earlier, name) : undefined;
+      return [{ ...ledgerVerdict(numbers, found, message), ...(before && { earlier: before }) }];
     });
     return {
       name,
@@ -37,6 +45,16 @@ export function ledgerOf(view: View, numbers: Numbers, shown: CaseReport): Ledge
       verdicts,
     };
   });
+}
+
+/** `3.8 Hz, failed`: value and verdict of the same expectation at the earlier revision. */
+function earlierValue(numbers: Numbers, earlier: EarlierCase | undefined, name: string): string | undefined {
+  if (earlier?.ok !== true) return undefined;
+  const { report, asWritten } = earlier;
+  const verdict = report.verdicts.find((each) => each.name === name);
+  if (verdict === undefined) return undefined;
+  const words = verdict.holds === null ? "open" : verdict.holds ? "held" : "failed";
+  return `${valueText(numbers, { report, asWritten, verdict })}, ${words}`;
 }
 
 function ledgerVerdict(numbers: Numbers, found: CaseVerdict, message: string | undefined): LedgerVerdict {

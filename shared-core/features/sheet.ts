@@ -22,6 +22,10 @@ export interface SheetContent {
   readonly stale: boolean;
   /** `holds 7 of 8 · 4.1 Hz · 12.6 Hz`. */
   readonly summary: string;
+  /** The same of the shown case with moved numbers; left out where none is moved. */
+  readonly moved?: string;
+  /** The revision whose answer is drawn under today's; left out where none is chosen. */
+  readonly earlier?: SheetEarlier;
   readonly scene: Scene;
   /** null: there are no modes. */
   readonly ruler: Ruler | null;
@@ -32,6 +36,15 @@ export interface SheetContent {
   readonly knobs: readonly Knob[];
   /** Lines at the foot. */
   readonly cautions: readonly string[];
+}
+
+export interface SheetEarlier {
+  /** How it is called. */
+  readonly label: string;
+  /** Its frequencies and verdicts in one line: `holds 6 of 8 · 4.0 Hz · 12.6 Hz`. */
+  readonly summary: string;
+  /** Why nothing of it is drawn. */
+  readonly reason?: string;
 }
 
 /**
@@ -91,7 +104,7 @@ export interface ModesCard extends CardBase {
 
 export interface PlotCard extends CardBase {
   readonly kind: "sweep" | "history";
-  /** One a unit. Curves carry a role: the answer, the written model under moved knobs, a limit. */
+  /** One a unit. Curves carry a role: the answer, the written model under moved knobs, an earlier one, a limit. */
   readonly panels: readonly CurvePanel[];
   /** Sweeps: degrees, -180 to 180, and continued over the jumps. */
   readonly phase?: { readonly wrapped: CurvePanel; readonly unwrapped: CurvePanel };
@@ -137,6 +150,8 @@ export interface LedgerVerdict {
   /** `12 % left`, `8 % over`. */
   readonly marginText: string;
   readonly message: string;
+  /** What was found at the chosen earlier revision; left out where it did not stand there or none is chosen. */
+  readonly earlier?: string;
 }
 
 /** A `let` that can be moved. Values in SI, rates in Hz; a shown number is a value divided by `factor`. */

@@ -1,5 +1,5 @@
 /** A report in a few lines: for a status, a test tree, a list of models. */
-import type { FileReport, Verdict } from "../judgement/report.ts";
+import type { CaseReport, FileReport, Verdict } from "../judgement/report.ts";
 import type { Expectation } from "../model/model.ts";
 import { LineIndex } from "../text/line-index.ts";
 import { formatNumber, type UnitSystem } from "../units/show.ts";
@@ -17,7 +17,7 @@ export function summaryOf(report: FileReport, units: UnitSystem): ModelSummary {
   return {
     title: model.title,
     cases: model.cases.map(({ name }) => name),
-    frequencies: numbers === undefined ? [] : frequenciesOf(numbers),
+    frequencies: numbers === undefined ? [] : frequenciesOf(numbers.asWritten, numbers.units),
     expectations: model.expectations.map((expectation) => ({
       name: expectation.name,
       range: lines.range(expectation.node.headSpan),
@@ -41,18 +41,25 @@ export function stateText({ expectations, frequencies, errors }: ModelSummary): 
   return parts.join(" · ");
 }
 
+/** The same of one case, whatever its numbers are. */
+export function caseStateText(report: CaseReport, { units }: Pick<Numbers, "units">): string {
+  const held = report.verdicts.filter(({ holds }) => holds === true).length;
+  const { length } = report.verdicts;
+  const frequencies = frequenciesOf(report, units).slice(0, NAMED);
+  return [...(length > 0 ? [`holds ${held} of ${length}`] : []), ...frequencies].join(" · ");
+}
+
 /** Natural frequencies that a status names. */
 const NAMED = 2;
 /** Natural frequencies of a summary; more would be a mode table. */
 const LISTED = 20;
 
-function frequenciesOf(numbers: Numbers): readonly string[] {
-  const { modes } = numbers.asWritten;
+function frequenciesOf({ modes }: CaseReport, units: Numbers["units"]): readonly string[] {
   if (!modes.ok) return [];
   return modes.table.modes
     .filter(({ number, frequencyHz }) => number !== null && number > 0 && frequencyHz !== null)
     .slice(0, LISTED)
-    .map(({ frequencyHz }) => showHz(numbers, Number((frequencyHz as number).toPrecision(3))));
+    .map(({ frequencyHz }) => showHz({ units }, Number((frequencyHz as number).toPrecision(3))));
 }
 
 function comparisonOf(text: string, { operator, right }: Expectation): ExpectationSummary["comparison"] {

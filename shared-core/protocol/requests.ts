@@ -5,7 +5,7 @@
 import type { ModelSummary } from "../features/summary-content.ts";
 import type { Range } from "../text/span.ts";
 
-export const PROTOCOL_VERSION = 1;
+export const PROTOCOL_VERSION = 2;
 
 /** Request: the summary of a file, computed now if need be. */
 export const SUMMARY = "thrum/summary";
@@ -92,6 +92,8 @@ export interface RowsResult {
 
 export interface ReadFileParams {
   readonly uri: string;
+  /** As it was at this revision of the client's source control; default: as it is. */
+  readonly revision?: string;
 }
 
 export type ReadFileResult =

@@ -26,12 +26,13 @@ export type {
   ReasonCard,
   SheetCard,
   SheetContent,
+  SheetEarlier,
   SheetMotion,
   SheetTable,
 } from "../features/sheet.ts";
 
 /** Raised whenever a message or the content changes its shape; a page of another version asks to be reloaded. */
-export const SHEET_VERSION = 1;
+export const SHEET_VERSION = 2;
 
 /** Request `thrum/sheet`. */
 export interface SheetParams {
@@ -42,6 +43,8 @@ export interface SheetParams {
   readonly units?: UnitSystem;
   /** Moved knobs: name of a `let` to SI value, rates in Hz. */
   readonly knobs?: Readonly<Record<string, number>>;
+  /** The revision whose answer is drawn under today's; the client must answer `READ_FILE` for it. */
+  readonly earlier?: { readonly revision: string; readonly label: string };
 }
 
 export interface SheetResult {
@@ -71,10 +74,18 @@ export type ToSheet =
       readonly state: "busy" | "failed" | "ready";
       readonly text: string;
     }
+  /** Revisions of the model, the newest first; none: there is no source control. */
+  | { readonly type: "revisions"; readonly protocol: number; readonly list: readonly SheetRevision[] }
   /** The cursor stands in these statements; none: nowhere. */
   | { readonly type: "highlight"; readonly protocol: number; readonly names: readonly string[] }
   /** Bring what the sheet shows of this statement into sight. */
   | { readonly type: "reveal"; readonly protocol: number; readonly name: string };
+
+export interface SheetRevision {
+  readonly id: string;
+  /** `3 Nov 2026, softer mounts`. */
+  readonly label: string;
+}
 
 /** From the page. */
 export type FromSheet =
@@ -84,13 +95,15 @@ export type FromSheet =
   | { readonly type: "reveal"; readonly protocol: number; readonly name: string }
   /** The pointer is over this statement; null: over none. */
   | { readonly type: "point"; readonly protocol: number; readonly name: string | null }
-  /** Show another case, other units, moved knobs (all that are moved; SI, rates in Hz). */
+  /** Show another case, other units, moved knobs (all that are moved; SI, rates in Hz), an earlier revision under it. */
   | {
       readonly type: "show";
       readonly protocol: number;
       readonly case: string;
       readonly units: UnitSystem;
       readonly knobs: Readonly<Record<string, number>>;
+      /** null: none. */
+      readonly earlier: string | null;
     }
   /** Write the value of a `let` into the text. */
   | { readonly type: "write"; readonly protocol: number; readonly name: string; readonly value: number }
@@ -143,6 +156,7 @@ export function readToSheet(message: unknown): ToSheet | undefined {
     (it.type === "highlight" &&
       Array.isArray(it.names) &&
       it.names.every((name) => typeof name === "string")) ||
+    (it.type === "revisions" && Array.isArray(it.list) && it.list.every(isRevision)) ||
     (it.type === "reveal" && texts(it, "name"));
   return known ? (message as ToSheet) : undefined;
 }
@@ -155,7 +169,11 @@ export function readFromSheet(message: unknown): FromSheet | undefined {
     it.type === "ready" ||
     (it.type === "reveal" && texts(it, "name")) ||
     (it.type === "point" && (it.name === null || texts(it, "name"))) ||
-    (it.type === "show" && texts(it, "case") && UNITS.has(it.units as string) && numbers(it.knobs)) ||
+    (it.type === "show" &&
+      texts(it, "case") &&
+      UNITS.has(it.units as string) &&
+      numbers(it.knobs) &&
+      (it.earlier === null || typeof it.earlier === "string")) ||
     (it.type === "write" && texts(it, "name") && Number.isFinite(it.value)) ||
     (it.type === "csv" && texts(it, "ask", "case")) ||
     (it.type === "picture" && texts(it, "name", "data") && (it.format === "svg" || it.format === "png"));
@@ -168,6 +186,11 @@ const UNITS: ReadonlySet<string> = new Set(["as-written", "si", "inch"] satisfie
 
 function record(value: unknown): Readonly<Record<string, unknown>> | undefined {
   return typeof value === "object" && value !== null ? (value as Record<string, unknown>) : undefined;
+}
+
+function isRevision(value: unknown): boolean {
+  const it = record(value);
+  return it !== undefined && texts(it, "id", "label");
 }
 
 const texts = (of: Readonly<Record<string, unknown>>, ...keys: readonly string[]): boolean =>

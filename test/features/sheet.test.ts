@@ -208,6 +208,9 @@ describe("knobs", () => {
   it("move the shown answer over the written one", () => {
     const moved = sheetContent(view, { knobs: { unit_mass: 200, nobody: 3, drive_rate: Number.NaN } });
     expect(moved.knobs[0]).toMatchObject({ written: 100, value: 200 });
+    // 2.24 Hz is low, but not above 3.1 Hz; 10 N / (c omega) = 3.6 mm is not calm.
+    expect(moved.moved).toBe("holds 1 of 3 · 2.24 Hz");
+    expect(content.moved).toBeUndefined();
     expect(moved.ledger[0].verdicts.map(({ value }) => value)).toEqual(["2.236 Hz", "2.582 Hz"]);
     const [panel] = plot(moved, "run").panels;
     expect(panel.curves.map(({ name, role }) => [name, role])).toEqual([
@@ -224,6 +227,59 @@ describe("knobs", () => {
     const moved = sheetContent(view, { knobs: { unit_mass: -1 } });
     expect(moved.notice).toMatch(/moved numbers/);
     expect(moved.ledger[0].verdicts[0].value).toBe("3.162 Hz");
+  });
+});
+
+describe("an earlier revision", () => {
+  const at = (text: string) => ({ label: "3 Nov, lighter", model: viewOf(text).model });
+  /** Half the mass: the frequency is sqrt(2) times as high. */
+  const lighter = at(ONE.replace("unit_mass = 100 kg", "unit_mass = 50 kg"));
+  const over = sheetContent(view, {}, lighter);
+
+  it("lies under today's answers, in the same units and styles", () => {
+    const [panel] = plot(over, "run").panels;
+    expect(panel.curves.map(({ name, role, style }) => [name, role, style])).toEqual([
+      ["unit.displacement", "earlier", 0],
+      ["unit.displacement", undefined, 0],
+      ["calm", "limit", expect.any(Number)],
+    ]);
+    const [before, now] = panel.curves;
+    const peakAt = ({ x, y }: typeof now) => x[Array.from(y).indexOf(Math.max(...Array.from(y)))];
+    // Damping moves the peak by zeta^2: 0.25 % at most.
+    expect(peakAt(before) / peakAt(now)).toBeCloseTo(Math.SQRT2, 2);
+    expect(plot(over, "blow").panels[0].curves.map(({ role }) => role)).toEqual(["earlier", undefined]);
+  });
+
+  it("hangs on the ruler and stands in the ledger and the head", () => {
+    expect(over.earlier).toEqual({ label: "3 Nov, lighter", summary: "holds 1 of 3 · 4.47 Hz" });
+    expect(over.ruler?.earlier.map(({ label }) => label)).toEqual(["4.472 Hz"]);
+    expect(over.ruler?.modes.map(({ label }) => label)).toEqual(["3.162 Hz"]);
+    expect(over.ledger[0].verdicts.map(({ earlier }) => earlier)).toEqual(["4.472 Hz, failed", undefined]);
+    expect(content.ledger[0].verdicts[0].earlier).toBeUndefined();
+  });
+
+  it("is that of the shown case, and as written where it had none", () => {
+    const heavy = sheetContent(view, { case: "heavy" }, at(ONE.replace(/case heavy\n.*\n/, "")));
+    expect(heavy.ruler?.earlier[0].label).toBe("3.162 Hz");
+    expect(sheetContent(view, { case: "heavy" }, lighter).ruler?.earlier[0].label).toBe("2.582 Hz");
+  });
+
+  it("leaves out what did not stand there", () => {
+    const bare = sheetContent(
+      view,
+      {},
+      at(ONE.replace(/ask sweep run\n(?: .*\n)*/, "").replace(/expect calm.*\n/, "")),
+    );
+    expect(plot(bare, "run").panels[0].curves.map(({ role }) => role)).toEqual([undefined, "limit"]);
+    expect(bare.ledger[1].verdicts[0].earlier).toBeUndefined();
+  });
+
+  it("says why nothing of it is drawn", () => {
+    expect(sheetContent(view, {}, { label: "x", reason: "it did not exist then" }).earlier?.reason).toBe(
+      "it did not exist then",
+    );
+    expect(sheetContent(view, {}, at("thrum 1\nmass unit = 3 m\n")).earlier?.reason).toMatch(/errors/);
+    expect(sheetContent(view, {}, at("}{")).ruler?.earlier).toEqual([]);
   });
 });
 

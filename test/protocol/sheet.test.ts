@@ -45,7 +45,8 @@ describe("messages", () => {
       { type: "ready", protocol },
       { type: "reveal", protocol, name: "unit" },
       { type: "point", protocol, name: null },
-      { type: "show", protocol, case: "as written", units: "si", knobs: { mount: 26500 } },
+      { type: "show", protocol, case: "as written", units: "si", knobs: { mount: 26500 }, earlier: null },
+      { type: "show", protocol, case: "as written", units: "si", knobs: {}, earlier: "4f0c" },
       { type: "write", protocol, name: "mount", value: 1 },
       { type: "csv", protocol, ask: "run_up", case: "as written" },
       { type: "picture", protocol, name: "run_up", format: "svg", data: "<svg/>" },
@@ -56,6 +57,8 @@ describe("messages", () => {
       { type: "state", protocol, state: "busy", text: "" },
       { type: "highlight", protocol, names: ["a"] },
       { type: "reveal", protocol, name: "run_up" },
+      { type: "revisions", protocol, list: [{ id: "4f0c", label: "softer mounts" }] },
+      { type: "revisions", protocol, list: [] },
     ];
     for (const message of to) expect(readToSheet(message)).toBe(message);
   });
@@ -71,12 +74,14 @@ describe("messages", () => {
       { type: "erase", protocol },
       { type: "write", protocol, name: "mount", value: Number.NaN },
       { type: "write", protocol, name: "mount", value: "1" },
-      { type: "show", protocol, case: "as written", units: "si", knobs: { mount: "1" } },
-      { type: "show", protocol, case: "as written", units: "miles", knobs: {} },
+      { type: "show", protocol, case: "as written", units: "si", knobs: { mount: "1" }, earlier: null },
+      { type: "show", protocol, case: "as written", units: "miles", knobs: {}, earlier: null },
+      { type: "show", protocol, case: "as written", units: "si", knobs: {}, earlier: 3 },
       { type: "picture", protocol, name: "run_up", format: "exe", data: "" },
     ];
     for (const message of wrong) expect(readFromSheet(message)).toBeUndefined();
     expect(readToSheet({ type: "state", protocol, state: "odd", text: "" })).toBeUndefined();
     expect(readToSheet({ type: "highlight", protocol, names: [1] })).toBeUndefined();
+    expect(readToSheet({ type: "revisions", protocol, list: [{ id: 1, label: "" }] })).toBeUndefined();
   });
 });

@@ -37,9 +37,15 @@ export interface Curve {
   readonly y: ArrayLike<number>;
   /** Which of the picture's line styles; curves of one quantity share it over the panels. */
   readonly style: number;
-  /** Default: an answer. `written`: of the model as it stands, under moved numbers. */
-  readonly role?: "answer" | "written" | "limit";
+  /**
+   * Default: an answer. `written`: of the model as it stands, under moved numbers. `earlier`: of an earlier revision.
+   */
+  readonly role?: "answer" | "written" | "earlier" | "limit";
 }
+
+/** What a legend calls a curve: its quantity, and which model it is of if that is not the shown one. */
+export const curveWords = ({ name, role }: Pick<Curve, "name" | "role">): string =>
+  role === "written" ? `${name}, as written` : role === "earlier" ? `${name}, earlier` : name;
 
 export interface Mark {
   readonly x: number;

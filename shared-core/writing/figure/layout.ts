@@ -1,7 +1,7 @@
 import { line } from "d3-shape";
 import { keepExtremes } from "../decimate.ts";
 import { type Scale, scaleBetween, scaleOver, tickLabel } from "../scales.ts";
-import type { Axis, CurvePanel, Mark } from "./figure.ts";
+import type { Axis, Curve, CurvePanel, Mark } from "./figure.ts";
 
 /** A rectangle in pixels, y downwards. */
 export interface Box {
@@ -18,7 +18,7 @@ export interface CurveLayout {
   readonly xTicks: readonly PlacedTick[];
   readonly yTicks: readonly PlacedTick[];
   /** SVG path strings. */
-  readonly paths: readonly { readonly path: string; readonly style: number }[];
+  readonly paths: readonly ({ readonly path: string } & Pick<Curve, "style" | "role">)[];
   readonly marks: readonly Mark[];
 }
 
@@ -53,6 +53,7 @@ export function layoutCurves(panel: CurvePanel, box: Box): CurveLayout {
     paths: panel.curves.map((curve) => ({
       path: pathOf(curve.x, curve.y, toX, toY, { y, box }),
       style: curve.style,
+      role: curve.role,
     })),
     marks: panel.marks.map((mark) => ({ ...mark, x: toX(mark.x), y: toY(mark.y) })),
   };

@@ -1,6 +1,8 @@
 import {
   type BarPanel,
+  type Curve,
   type CurvePanel,
+  curveWords,
   DASHES,
   type Figure,
   type FigureTheme,
@@ -90,8 +92,8 @@ function curvePanel(panel: CurvePanel, box: Box, theme: FigureTheme, labelled: b
     axisTitle(panel.y.label, panel.y.unit, box, theme),
     ...(labelled ? [xTitle(panel, box)] : []),
     ...layout.paths.map(
-      ({ path, style }) =>
-        `<path d="${path}" fill="none" stroke="${theme.curves[style % theme.curves.length]}" stroke-width="1.5" stroke-linejoin="round"${dash(style)}/>`,
+      ({ path, ...curve }) =>
+        `<path d="${path}" fill="none" ${strokeOf(curve, theme)} stroke-linejoin="round"/>`,
     ),
     ...layout.marks.flatMap(({ x, y, label }) => [
       `<circle cx="${px(x)}" cy="${px(y)}" r="2.5" fill="${theme.ink}"/>`,
@@ -163,27 +165,43 @@ function barPanel(panel: BarPanel, box: Box, theme: FigureTheme): string[] {
   ];
 }
 
-interface LegendEntry {
+/** What is shown in its colour; what lies under it faint, an earlier revision broad as a shadow; limits dotted. */
+function strokeOf({ style, role = "answer" }: Ink, theme: FigureTheme): string {
+  const pattern = role === "limit" ? "1 4" : DASHES[style % DASHES.length];
+  const dash = pattern === "" ? "" : ` stroke-dasharray="${pattern}"`;
+  const colour = role === "answer" ? theme.curves[style % theme.curves.length] : theme.quiet;
+  return `stroke="${colour}" ${STROKES[role]}${dash}`;
+}
+
+const STROKES = {
+  answer: 'stroke-width="1.5"',
+  written: 'stroke-width="1.1"',
+  earlier: 'stroke-width="3.4" stroke-opacity="0.4"',
+  limit: 'stroke-width="1.4"',
+} as const;
+
+type Ink = Pick<Curve, "style" | "role">;
+
+interface LegendEntry extends Ink {
   readonly name: string;
-  readonly style: number;
   readonly left: number;
 }
 
-function legendNames(figure: Figure): Map<string, number> {
+function legendNames(figure: Figure): Map<string, Ink> {
   const curves = figure.panels.flatMap((panel) => (panel.kind === "curves" ? panel.curves : []));
-  return new Map(curves.map((curve) => [curve.name, curve.style]));
+  return new Map(curves.map((curve) => [curveWords(curve), curve]));
 }
 
-function legendRows(names: ReadonlyMap<string, number>, width: number): LegendEntry[][] {
+function legendRows(names: ReadonlyMap<string, Ink>, width: number): LegendEntry[][] {
   const rows: LegendEntry[][] = [];
   let left = Number.POSITIVE_INFINITY;
-  for (const [name, style] of names) {
+  for (const [name, { style, role }] of names) {
     const wide = 30 + LETTER * [...name].length + 14;
     if (left + wide > width) {
       rows.push([]);
       left = MARGIN.left;
     }
-    rows[rows.length - 1].push({ name, style, left });
+    rows[rows.length - 1].push({ name, style, role, left });
     left += wide;
   }
   return rows;
@@ -192,14 +210,9 @@ function legendRows(names: ReadonlyMap<string, number>, width: number): LegendEn
 function legendParts(rows: readonly LegendEntry[][], height: number, theme: FigureTheme): string[] {
   return rows.flatMap((row, i) => {
     const y = height - LINE * (rows.length - i) + 10;
-    return row.flatMap(({ name, style, left }) => [
-      `<path d="M${px(left)},${px(y - 4)}h24" stroke="${theme.curves[style % theme.curves.length]}" stroke-width="1.5"${dash(style)}/>`,
+    return row.flatMap(({ name, left, ...ink }) => [
+      `<path d="M${px(left)},${px(y - 4)}h24" ${strokeOf(ink, theme)}/>`,
       `<text x="${px(left + 30)}" y="${px(y)}">${escapeText(name)}</text>`,
     ]);
   });
-}
-
-function dash(style: number): string {
-  const pattern = DASHES[style % DASHES.length];
-  return pattern === "" ? "" : ` stroke-dasharray="${pattern}"`;
 }
