@@ -54,8 +54,8 @@ export function sheetContent(view: View, choice: SheetChoice = {}, earlier?: Ear
     ...base,
     ...noticeOf(view, knobs, moved),
     summary: stateText(summaryOf(numbers.report, view.units)),
-    ...(shown === chosen ? {} : { moved: caseStateText(shown, numbers) }),
-    ...(before && { earlier: saidOfEarlier(before, numbers) }),
+    ...(shown === chosen ? {} : { moved: caseStateText(shown, numbers, isAlone(model)) }),
+    ...(before && { earlier: saidOfEarlier(before, numbers, isAlone(model)) }),
     scene: systemScene(
       view.stale ? numbers.report.model : model,
       shown.instance.assembly,
@@ -75,9 +75,11 @@ export function sheetContent(view: View, choice: SheetChoice = {}, earlier?: Ear
   };
 }
 
-const saidOfEarlier = (before: EarlierCase, numbers: Numbers): SheetEarlier =>
+const isAlone = ({ cases }: View["model"]): boolean => cases.length < 2;
+
+const saidOfEarlier = (before: EarlierCase, numbers: Numbers, alone: boolean): SheetEarlier =>
   before.ok
-    ? { label: before.label, summary: caseStateText(before.report, numbers) }
+    ? { label: before.label, summary: caseStateText(before.report, numbers, alone) }
     : { label: before.label, summary: "", reason: before.reason };
 
 const caseIndex = ({ report }: Numbers, { name }: CaseReport): number =>

@@ -41,12 +41,15 @@ export function stateText({ expectations, frequencies, errors }: ModelSummary): 
   return parts.join(" · ");
 }
 
-/** The same of one case, whatever its numbers are. */
-export function caseStateText(report: CaseReport, { units }: Pick<Numbers, "units">): string {
+/** The same of one case, whatever its numbers are; where there are several, the count says that it is of one. */
+export function caseStateText(report: CaseReport, { units }: Pick<Numbers, "units">, alone: boolean): string {
   const held = report.verdicts.filter(({ holds }) => holds === true).length;
   const { length } = report.verdicts;
   const frequencies = frequenciesOf(report, units).slice(0, NAMED);
-  return [...(length > 0 ? [`holds ${held} of ${length}`] : []), ...frequencies].join(" · ");
+  return [
+    ...(length > 0 ? [`holds ${held} of ${length}${alone ? "" : " in this case"}`] : []),
+    ...frequencies,
+  ].join(" · ");
 }
 
 /** Natural frequencies that a status names. */

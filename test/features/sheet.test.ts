@@ -209,7 +209,7 @@ describe("knobs", () => {
     const moved = sheetContent(view, { knobs: { unit_mass: 200, nobody: 3, drive_rate: Number.NaN } });
     expect(moved.knobs[0]).toMatchObject({ written: 100, value: 200 });
     // 2.24 Hz is low, but not above 3.1 Hz; 10 N / (c omega) = 3.6 mm is not calm.
-    expect(moved.moved).toBe("holds 1 of 3 · 2.24 Hz");
+    expect(moved.moved).toBe("holds 1 of 3 in this case · 2.24 Hz");
     expect(content.moved).toBeUndefined();
     expect(moved.ledger[0].verdicts.map(({ value }) => value)).toEqual(["2.236 Hz", "2.582 Hz"]);
     const [panel] = plot(moved, "run").panels;
@@ -251,7 +251,7 @@ describe("an earlier revision", () => {
   });
 
   it("hangs on the ruler and stands in the ledger and the head", () => {
-    expect(over.earlier).toEqual({ label: "3 Nov, lighter", summary: "holds 1 of 3 · 4.47 Hz" });
+    expect(over.earlier).toEqual({ label: "3 Nov, lighter", summary: "holds 1 of 3 in this case · 4.47 Hz" });
     expect(over.ruler?.earlier.map(({ label }) => label)).toEqual(["4.472 Hz"]);
     expect(over.ruler?.modes.map(({ label }) => label)).toEqual(["3.162 Hz"]);
     expect(over.ledger[0].verdicts.map(({ earlier }) => earlier)).toEqual(["4.472 Hz, failed", undefined]);

@@ -3,7 +3,7 @@ import type { Browser } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { SHEET_VERSION } from "../../shared-core/index.ts";
 import { openBrowser } from "../../tools/workbench/browser.mjs";
-import { example, SheetHost } from "./harness/host.ts";
+import { example, type Revision, SheetHost } from "./harness/host.ts";
 import { type Harness, type HarnessOptions, openSheet } from "./harness/page.ts";
 import { THEME_KINDS } from "./harness/themes.ts";
 import { violations } from "./harness/violations.ts";
@@ -27,8 +27,9 @@ async function withSheet(
   name: string,
   options: HarnessOptions,
   use: (sheet: Harness, host: SheetHost) => Promise<void>,
+  revisions: readonly Revision[] = [],
 ): Promise<void> {
-  const host = new SheetHost(`${name}.thrum`, example(name));
+  const host = new SheetHost(`${name}.thrum`, example(name), revisions);
   const sheet = await openSheet(browser, host, options);
   try {
     await use(sheet, host);
@@ -160,6 +161,54 @@ describe("a knob", () => {
       await page.locator(".legend", { hasText: "as written" }).first().waitFor();
       expect(await slider.evaluate((input) => input === document.activeElement)).toBe(true);
       expect(host.last("show")?.knobs.mount).toBeGreaterThan(4.4e6);
+    }));
+});
+
+describe("an earlier revision", () => {
+  const text = example("quay-generator");
+  const revisions = [
+    { id: "4f0c", label: "3 Nov 2026, stiffer mounts", text: text.replace("4.4 kN/mm", "6.6 kN/mm") },
+    { id: "91ab", label: "1 Nov 2026, first try", text: "thrum 1\nmass a = 3 m\n" },
+  ];
+  const open = (use: (sheet: Harness, host: SheetHost) => Promise<void>, state?: unknown) =>
+    withSheet("quay-generator", { state }, use, revisions);
+
+  it("lies under today's answer when it is chosen, and is chosen again after a reload", async () => {
+    let kept: unknown;
+    await open(async ({ page, state }, host) => {
+      await page.getByLabel("drawn under it").selectOption({ label: "3 Nov 2026, stiffer mounts" });
+      await page.locator(".legend", { hasText: "skid.velocity, earlier" }).first().waitFor();
+      expect(host.last("show")?.earlier).toBe("4f0c");
+      expect(await page.locator(".ruler .earlier").count()).toBeGreaterThan(2);
+      expect(await page.locator("header .verdict").allTextContents()).toContainEqual(
+        expect.stringMatching(/^3 Nov 2026, stiffer mounts: holds \d of 4 in this case · 3\.\d+ Hz/),
+      );
+      expect(await page.locator(".ledger .earlier").first().textContent()).toMatch(
+        /^earlier .*(held|failed)$/,
+      );
+      expect(await violations(page.locator("body"))).toEqual([]);
+      await expect.poll(async () => JSON.stringify(await state())).toContain("4f0c");
+      kept = await state();
+    });
+    await open(async ({ page }) => {
+      await page.locator(".legend", { hasText: "skid.velocity, earlier" }).first().waitFor();
+      expect(await page.getByLabel("drawn under it").inputValue()).toBe("4f0c");
+      await page.getByLabel("drawn under it").selectOption("");
+      await page.locator(".legend", { hasText: "earlier" }).first().waitFor({ state: "detached" });
+      expect(await page.locator(".ruler .earlier").count()).toBe(0);
+    }, kept);
+  });
+
+  it("that leaves nothing to compute is said to be such", () =>
+    open(async ({ page }) => {
+      await page.getByLabel("drawn under it").selectOption("91ab");
+      await page.locator("header .verdict", { hasText: "first try: it has errors" }).waitFor();
+      expect(await page.locator(".ruler .mode").count()).toBeGreaterThan(2);
+    }));
+
+  it("is not offered where there is none", () =>
+    withSheet("quay-generator", {}, async ({ page }) => {
+      expect(await page.getByLabel("drawn under it").isVisible()).toBe(false);
     }));
 });
 

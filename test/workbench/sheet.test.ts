@@ -1,4 +1,7 @@
 /** The response sheet in a real workbench, as a person uses it. One workbench serves all tests, in order. */
+import { execFileSync } from "node:child_process";
+import { readFileSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
 import type { FrameLocator } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { writeSettings } from "../../tools/workbench/launch.mjs";
@@ -8,6 +11,26 @@ import { eventually } from "./eventually.ts";
 import { UNIT } from "./models.ts";
 
 let editor: Editor;
+
+/** A history of one revision; what stands in the folder is newer. */
+function commitStifferMounts(folder: string): void {
+  const file = join(folder, "quay-generator.thrum");
+  const text = readFileSync(file, "utf8");
+  const git = (...args: string[]) =>
+    execFileSync("git", ["-c", "user.name=Works", "-c", "user.email=works@harbour.example", ...args], {
+      cwd: folder,
+      env: {
+        ...process.env,
+        GIT_AUTHOR_DATE: "2026-11-03T12:00:00Z",
+        GIT_COMMITTER_DATE: "2026-11-03T12:00:00Z",
+      },
+    });
+  git("init", "--quiet");
+  writeFileSync(file, text.replace("4.4 kN/mm", "6.6 kN/mm"));
+  git("add", "quay-generator.thrum");
+  git("commit", "--quiet", "--message", "Stiffer mounts");
+  writeFileSync(file, text);
+}
 
 /** Themes of the editor, one of each kind. */
 const THEMES = [
@@ -21,6 +44,7 @@ beforeAll(async () => {
   editor = await Editor.open({
     files: { "unit.thrum": UNIT },
     settings: { "files.autoSave": "off" },
+    prepare: commitStifferMounts,
   });
 }, 240_000);
 
@@ -137,6 +161,25 @@ describe("a number", () => {
   });
 });
 
+describe("a revision", () => {
+  const under = () => sheet().getByLabel("drawn under it");
+
+  it("that is committed can be drawn under today's answer", async () => {
+    await under().selectOption({
+      label: await eventually(
+        async () => (await labels())[1] ?? "",
+        (it) => it !== "",
+      ),
+    });
+    expect(await labels()).toEqual(["nothing", expect.stringMatching(/2026, Stiffer mounts$/)]);
+    await sheet().locator(".legend", { hasText: "skid.velocity, earlier" }).first().waitFor();
+    await sheet().locator("header .verdict", { hasText: "Stiffer mounts: holds" }).waitFor();
+    expect(await sheet().locator(".ruler .earlier").count()).toBeGreaterThan(2);
+  });
+
+  const labels = () => under().locator("option").allTextContents();
+});
+
 describe("after a reload", () => {
   it("a sheet is back with its zoom, its motion and its place", async () => {
     const stage = sheet().locator(".stage").first();
@@ -150,6 +193,7 @@ describe("after a reload", () => {
     await editor.page.waitForTimeout(9_000);
     await editor.load();
     await sheet().locator("h1", { hasText: "Standby generator" }).waitFor();
+    await sheet().locator(".legend", { hasText: "skid.velocity, earlier" }).first().waitFor();
     expect(await eventually(ticks, (now) => now.join() === zoomed.join())).toEqual(zoomed);
   });
 });

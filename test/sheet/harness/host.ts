@@ -22,6 +22,15 @@ export interface Choice {
   readonly case?: string;
   readonly units?: UnitSystem;
   readonly knobs?: Readonly<Record<string, number>>;
+  /** Id of a revision. */
+  readonly earlier?: string | null;
+}
+
+/** A text as it was. */
+export interface Revision {
+  readonly id: string;
+  readonly label: string;
+  readonly text: string;
 }
 
 export const example = (name: string): string =>
@@ -33,12 +42,14 @@ export class SheetHost {
   readonly said: FromSheet[] = [];
   /** What the page said that was no message. */
   readonly strange: unknown[] = [];
+  readonly revisions: readonly Revision[];
   post: (message: ToSheet) => Promise<void> = async () => undefined;
   #view: View;
   #version = 1;
 
-  constructor(file: string, text: string) {
+  constructor(file: string, text: string, revisions: readonly Revision[] = []) {
     this.file = file;
+    this.revisions = revisions;
     this.#view = viewOf(file, text);
   }
 
@@ -49,7 +60,11 @@ export class SheetHost {
       return;
     }
     this.said.push(message);
-    if (message.type === "ready") void this.show({});
+    if (message.type === "ready") {
+      void this.show({});
+      const list = this.revisions.map(({ id, label }) => ({ id, label }));
+      void this.post({ type: "revisions", protocol: SHEET_VERSION, list });
+    }
     if (message.type === "show") void this.show(message);
   }
 
@@ -59,7 +74,12 @@ export class SheetHost {
 
   message(choice: Choice): ToSheet {
     const view = { ...this.#view, units: choice.units ?? "as-written" } as const;
-    const content = packContent(sheetContent(view, choice));
+    const revision = this.revisions.find(({ id }) => id === choice.earlier);
+    const earlier = revision && {
+      label: revision.label,
+      model: understand(this.file, revision.text, NO_FILES),
+    };
+    const content = packContent(sheetContent(view, choice, earlier));
     return {
       type: "content",
       protocol: SHEET_VERSION,
