@@ -44,19 +44,16 @@ class Basis implements ModalBasis {
   readonly assembly: Assembly;
   readonly undamped: UndampedModes;
   readonly #shapes: (Float64Array | undefined)[];
-  readonly #springs: FlatForms;
-  readonly #inertias: FlatForms;
   readonly #lossy: boolean;
-  readonly #loads: ReadonlyMap<Direction, readonly { index: number; load: number; mass: number }[]>;
+  #springs: FlatForms | undefined;
+  #inertias: FlatForms | undefined;
+  #loads: ReturnType<typeof directionLoads> | undefined;
 
   constructor(assembly: Assembly, undamped: UndampedModes) {
     this.assembly = assembly;
     this.undamped = undamped;
     this.#shapes = new Array(undamped.count);
-    this.#springs = flatForms(assembly.elements.map(({ form, stiffness }) => ({ form, value: stiffness })));
-    this.#inertias = flatForms(assembly.inertias);
     this.#lossy = assembly.elements.some(({ lossFactor, stiffness }) => lossFactor * stiffness !== 0);
-    this.#loads = directionLoads(assembly);
   }
 
   shape(r: number): Float64Array {
@@ -69,10 +66,13 @@ class Basis implements ModalBasis {
   }
 
   energyShares(r: number): Float64Array | undefined {
-    const strains = formValues(this.#springs, this.shape(r), 0, new Float64Array(this.#springs.count));
+    const { elements } = this.assembly;
+    this.#springs ??= flatForms(elements.map(({ form, stiffness }) => ({ form, value: stiffness })));
+    const { count, value } = this.#springs;
+    const strains = formValues(this.#springs, this.shape(r), 0, new Float64Array(count));
     let sum = 0;
     let size = 0;
-    const energies = strains.map((s, e) => this.#springs.value[e] * s * s);
+    const energies = strains.map((s, e) => value[e] * s * s);
     for (const energy of energies) {
       sum += energy;
       size += Math.abs(energy);
@@ -103,6 +103,8 @@ class Basis implements ModalBasis {
 
   participation(r: number): { direction: Direction; factor: number; total: number }[] {
     const shape = this.shape(r);
+    this.#inertias ??= flatForms(this.assembly.inertias);
+    this.#loads ??= directionLoads(this.assembly);
     const travels = formValues(this.#inertias, shape, 0, new Float64Array(this.#inertias.count));
     return [...this.#loads].map(([direction, loads]) => {
       let factor = 0;

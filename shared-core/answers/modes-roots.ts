@@ -23,6 +23,7 @@ import { generalEigen } from "../numerics/general-eigen.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { sparseToDense } from "../numerics/sparse.ts";
 import { chainRoots } from "./modes-chain.ts";
+import type { Matching } from "./modes-match.ts";
 import { addSquare, newtonStep, type Pair } from "./modes-newton.ts";
 import type { UndampedModes } from "./modes-undamped.ts";
 
@@ -42,6 +43,14 @@ export interface RootShape {
   readonly basis: "modal" | "inertial";
   readonly re: Float64Array;
   readonly im: Float64Array;
+}
+
+export interface ComplexRoots {
+  readonly roots: readonly Root[];
+  /** Whether dampers couple the modes; then whose roots are whose has to be found out. */
+  readonly coupled: boolean;
+  /** Whose roots are whose, where each mode has its own. */
+  readonly matching?: Matching;
 }
 
 /** Damping in the coordinates above. */
@@ -67,10 +76,10 @@ export function complexRoots(
   undamped: UndampedModes,
   massDamping: number,
   added: Float64Array,
-): Outcome<{ readonly roots: Root[]; readonly coupled: boolean }> {
+): Outcome<ComplexRoots> {
   if (undamped.reduction.damping.length === 0) {
     const rates = added.map((rate) => rate + massDamping);
-    return succeed({ roots: singleRoots(undamped, rates), coupled: false });
+    return succeed(singleRoots(undamped, rates));
   }
   const chain = chainRoots(undamped, massDamping, added);
   if (chain !== undefined) return succeed({ roots: chain, coupled: true });
@@ -78,7 +87,7 @@ export function complexRoots(
   if (isDiagonal(system)) {
     const { count, damping } = system;
     const rates = added.map((_, r) => damping[r * count + r]);
-    return succeed({ roots: singleRoots(undamped, rates), coupled: false });
+    return succeed(singleRoots(undamped, rates));
   }
   const found = coupledRoots(undamped, system);
   if (!found.ok) return fail(found.reason);
@@ -185,14 +194,39 @@ export function oscillatorRoots(c: number, lambda: number): readonly { re: numbe
 }
 
 /** Roots where mode r is damped by `rates[r]` = 2 zeta omega and coupled to no other. */
-function singleRoots({ count, free, values }: UndampedModes, rates: Float64Array): Root[] {
+function singleRoots({ count, free, held, values }: UndampedModes, rates: Float64Array): ComplexRoots {
   const roots: Root[] = [];
-  for (let r = free; r < count; r++) {
+  const ofMode: number[][] = [];
+  const left: number[] = [];
+  for (let r = 0; r < count; r++) {
+    const own: number[] = [];
+    ofMode.push(own);
+    if (r < free) continue;
     for (const { re, im } of oscillatorRoots(rates[r], values[r])) {
-      roots.push({ re: re + 0, im, shape: unitShape(r, count) });
+      (r < free + held ? left : own).push(roots.length);
+      roots.push(new SingleRoot(re + 0, im, r, count));
     }
   }
-  return roots;
+  return { roots, coupled: false, matching: { ofMode, left } };
+}
+
+/** A root whose shape is that of one undamped mode; shapes of many modes take more room than all the rest. */
+class SingleRoot implements Root {
+  readonly re: number;
+  readonly im: number;
+  readonly #mode: number;
+  readonly #size: number;
+
+  constructor(re: number, im: number, mode: number, size: number) {
+    this.re = re;
+    this.im = im;
+    this.#mode = mode;
+    this.#size = size;
+  }
+
+  get shape(): RootShape {
+    return unitShape(this.#mode, this.#size);
+  }
 }
 
 /** The shape of undamped mode r alone. */

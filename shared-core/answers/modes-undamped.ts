@@ -64,34 +64,42 @@ export function undampedModes(reduction: Reduction): Outcome<UndampedModes> {
   const nullVectors = rigidVectors(reduction, condensed, mass);
   const solved = solve(condensed.stiffness, mass);
   if (!solved.ok) return fail(solved.reason);
-  const { rows, values } = elasticRows(solved.value, nullVectors.rows, mass);
-  refine(rows, values, condensed, n);
+  const elastic = elasticRows(solved.value, nullVectors.rows, mass);
+  refine(elastic.rows, elastic.values, condensed, n);
+  const { values, rows: vectors } = ascending(nullVectors.rows, elastic, n);
   const { free, held } = nullVectors;
+  const { chain } = solved.value;
+  return succeed({ reduction, condensed, count: n, free, held, values, vectors, mass, chain });
+}
+
+/** Null vectors with roots of zero, then the elastic modes by their roots. */
+function ascending(rigid: readonly Float64Array[], { values, rows }: Rows, n: number): Rows {
+  if (rigid.length === 0 && isAscending(values)) return { values, rows };
+  const sorted = new Float64Array(n);
   const vectors = new Float64Array(n * n);
-  nullVectors.rows.forEach((row, r) => {
+  rigid.forEach((row, r) => {
     vectors.set(row, r * n);
   });
-  const order = Array.from(values.keys()).sort((a, b) => values[a] - values[b] || a - b);
-  const sorted = new Float64Array(n);
+  const order = indices(values.length).sort((a, b) => values[a] - values[b] || a - b);
   order.forEach((from, r) => {
-    sorted[free + held + r] = values[from];
-    vectors.set(rows.subarray(from * n, (from + 1) * n), (free + held + r) * n);
+    sorted[rigid.length + r] = values[from];
+    vectors.set(rows.subarray(from * n, (from + 1) * n), (rigid.length + r) * n);
   });
-  return succeed({
-    reduction,
-    condensed,
-    count: n,
-    free,
-    held,
-    values: sorted,
-    vectors,
-    mass,
-    chain: solved.value.chain,
-  });
+  return { values: sorted, rows: vectors };
+}
+
+function isAscending(values: Float64Array): boolean {
+  for (let r = 1; r < values.length; r++) if (!(values[r - 1] <= values[r])) return false;
+  return true;
 }
 
 const asTerm = ({ form, value }: SquareTerm) => ({ row: form, column: form, value });
-const indices = (n: number): number[] => Array.from({ length: n }, (_, i) => i);
+function indices(n: number): number[] {
+  const out = new Array<number>(n);
+  for (let i = 0; i < n; i++) out[i] = i;
+  return out;
+}
+
 const formsOf = (terms: readonly SquareTerm[]): LinearForm[] => terms.map(({ form }) => form);
 
 /** Mass-orthonormal motions that no spring feels, those that no damper feels either first. */
@@ -158,14 +166,42 @@ interface Rows {
 function solve(springs: readonly SquareTerm[], mass: SparseMatrix): Outcome<Rows> {
   const n = mass.rows;
   const diagonal = diagonalOf(mass);
-  if (diagonal && springs.length <= CHAIN_SPRINGS * n) {
+  if (diagonal && springs.length <= CHAIN_SPRINGS * n && mayBeChain(springs, n)) {
     const stiffness = sumTerms(springs.map(asTerm), n);
     const chain = chainOrder(stiffness);
     if (chain) return solveChain(stiffness, diagonal, chain);
   }
-  const solved = generalisedEigen(denseSum(springs, n), diagonal ?? sparseToDense(mass), n);
+  const solved = generalisedEigen(denseSum(springs, n), diagonal ?? sparseToDense(mass), n, {
+    layout: "rows",
+  });
   if (!solved.ok) return fail(solved.reason);
-  return succeed({ values: solved.value.values, rows: transposed(solved.value.vectors, n) });
+  return succeed({ values: solved.value.values, rows: solved.value.vectors });
+}
+
+/** Whether no coordinate is joined to more than two others: cheaper to see than to build the matrix. */
+function mayBeChain(springs: readonly SquareTerm[], n: number): boolean {
+  const neighbours = new Int32Array(2 * n).fill(-1);
+  for (const { form } of springs) {
+    const { coordinates } = form;
+    for (let i = 0; i < coordinates.length; i++) {
+      for (let j = 0; j < coordinates.length; j++) {
+        if (i !== j && !addNeighbour(neighbours, coordinates[i], coordinates[j])) return false;
+      }
+    }
+  }
+  return true;
+}
+
+/** False where two others are neighbours already. */
+function addNeighbour(neighbours: Int32Array, of: number, other: number): boolean {
+  for (let p = 2 * of; p < 2 * of + 2; p++) {
+    if (neighbours[p] === other) return true;
+    if (neighbours[p] < 0) {
+      neighbours[p] = other;
+      return true;
+    }
+  }
+  return false;
 }
 
 /** Sum of value form form^T, row-major: many springs on few coordinates need no sorting of entries. */
@@ -180,12 +216,6 @@ function denseSum(springs: readonly SquareTerm[], n: number): Float64Array {
     }
   }
   return out;
-}
-
-function transposed(columns: Float64Array, n: number): Float64Array {
-  const rows = new Float64Array(n * n);
-  for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) rows[j * n + i] = columns[i * n + j];
-  return rows;
 }
 
 /** The diagonal of a matrix that has nothing beside it. */
@@ -226,15 +256,15 @@ function solveChain(stiffness: SparseMatrix, diagonal: Float64Array, order: Int3
       else if (place[j] === place[i] + 1) e[place[i]] = scaled;
     }
   }
-  const solved = tridiagonalEigen(d, e);
+  const solved = tridiagonalEigen(d, e, { layout: "rows" });
   if (!solved.ok) return fail(solved.reason);
-  const { vectors } = solved.value;
-  const rows = new Float64Array(n * n);
-  for (let t = 0; t < n; t++) {
-    const at = order[t];
-    for (let r = 0; r < n; r++) rows[r * n + at] = vectors[t * n + r] * root[at];
+  const { values, vectors: rows } = solved.value;
+  const row = new Float64Array(n);
+  for (let at = 0; at < n * n; at += n) {
+    for (let t = 0; t < n; t++) row[order[t]] = rows[at + t] * root[order[t]];
+    rows.set(row, at);
   }
-  return succeed({ values: solved.value.values, rows, chain: order });
+  return succeed({ values, rows, chain: order });
 }
 
 /** The routine's modes without as many as there are null vectors (those nearest to them), cleared of these. */
@@ -267,14 +297,16 @@ function elasticRows(all: Rows, rigid: readonly Float64Array[], mass: SparseMatr
 
 /** Low roots from the sums over springs and inertias; rows are rotated within groups and normalised, in place. */
 function refine(rows: Float64Array, values: Float64Array, condensed: Condensation, n: number): void {
-  const springs = flatForms(condensed.stiffness);
-  const inertias = flatForms(condensed.mass);
   const below = (group: readonly number[], share: number): number[] => {
     const largest = group.reduce((most, r) => Math.max(most, Math.abs(values[r])), 0);
     return group.filter((r) => Math.abs(values[r]) <= share * largest);
   };
-  const all = Array.from(values.keys());
-  for (const r of below(all, REFINED)) values[r] = quotient(rows, r, n, springs, inertias);
+  const all = indices(values.length);
+  const low = below(all, REFINED);
+  if (low.length === 0) return;
+  const springs = flatForms(condensed.stiffness);
+  const inertias = flatForms(condensed.mass);
+  for (const r of low) values[r] = quotient(rows, r, n, springs, inertias);
   let group = all;
   // Each round goes down at least a factor of GROUP; forty reach below the smallest number there is.
   for (let round = 0; round < 40; round++) {

@@ -21,7 +21,7 @@ export function modeTable(basis: ModalBasis): Outcome<ModeTable> {
   if (!found.ok) return fail(found.reason);
   const { roots, coupled } = found.value;
   const { free, held, count, values } = undamped;
-  const { ofMode, left } = matchRoots(roots, undamped, free + held);
+  const { ofMode, left } = found.value.matching ?? matchRoots(roots, undamped, free + held);
   const modes: Mode[] = [];
   for (let r = 0; r < free; r++) modes.push(freeMode(basis, r));
   for (let r = free + held; r < count; r++) {
@@ -31,7 +31,8 @@ export function modeTable(basis: ModalBasis): Outcome<ModeTable> {
   }
   const others = left.map((s) => roots[s]).sort((a, b) => size(a) - size(b) || a.re - b.re);
   for (const root of others) modes.push(looseMode(basis, root));
-  const stabilityMargin = roots.reduce((least, { re }) => Math.min(least, 0 - re), Number.POSITIVE_INFINITY);
+  let stabilityMargin = Number.POSITIVE_INFINITY;
+  for (const { re } of roots) stabilityMargin = Math.min(stabilityMargin, 0 - re);
   return succeed({ modes, stabilityMargin });
 }
 
@@ -41,64 +42,28 @@ const hertz = (value: number): number => Math.sqrt(Math.max(0, value)) / (2 * Ma
 
 function freeMode(basis: ModalBasis, r: number): Mode {
   const { massDamping } = basis.assembly;
-  const parts = new UndampedParts(basis, r);
-  const mode: Mode = {
+  return new ShapedMode(basis, r, {
     number: 0,
     frequencyHz: 0,
     dampedFrequencyHz: 0,
     dampingRatio: null,
     eigenvalue: [0, 0],
-    get shape() {
-      return parts.shape();
-    },
-    get modalMass() {
-      return parts.modalMass();
-    },
-    get effectiveMass() {
-      return parts.effectiveMass();
-    },
-    get participation() {
-      return parts.participation();
-    },
-    get energyShare() {
-      return parts.energyShare();
-    },
-  };
-  return massDamping === 0 ? mode : Object.assign(mode, { realRoots: [-massDamping, 0] as const });
+    realRoots: massDamping === 0 ? undefined : [-massDamping, 0],
+  });
 }
 
 function elasticMode(basis: ModalBasis, r: number, roots: readonly Root[], coupled: boolean): Mode {
   const { free, held, values } = basis.undamped;
   const slow = roots.length > 1 && Math.abs(roots[1].re) < Math.abs(roots[0].re) ? roots[1] : roots[0];
-  const parts = new UndampedParts(basis, r);
-  const mode: Mode = {
+  const own: OwnRoots = {
     number: r - free - held + 1,
     frequencyHz: hertz(values[r]),
     dampedFrequencyHz: slow.im / (2 * Math.PI),
     dampingRatio: dampingRatio(roots),
     eigenvalue: [slow.re, slow.im],
-    get shape() {
-      return parts.shape();
-    },
-    get modalMass() {
-      return parts.modalMass();
-    },
-    get effectiveMass() {
-      return parts.effectiveMass();
-    },
-    get participation() {
-      return parts.participation();
-    },
-    get energyShare() {
-      return parts.energyShare();
-    },
+    realRoots: roots.length === 2 ? realRoots(roots) : undefined,
   };
-  if (roots.length === 2) Object.assign(mode, { realRoots: realRoots(roots) });
-  if (coupled) {
-    const shape = lazy(() => complexShape(basis, slow));
-    Object.defineProperty(mode, "complexShape", { get: shape, enumerable: true });
-  }
-  return mode;
+  return new ShapedMode(basis, r, own, coupled ? slow : undefined);
 }
 
 /** A root that no undamped mode stands behind. */
@@ -136,38 +101,69 @@ function realRoots(roots: readonly Root[]): readonly [number, number] {
   return a <= b ? [a, b] : [b, a];
 }
 
-/** What the undamped shape gives; computed when looked at, which for a large model is seldom. */
-class UndampedParts {
+/** What the roots of a mode say of it. */
+interface OwnRoots {
+  readonly number: number;
+  readonly frequencyHz: number;
+  readonly dampedFrequencyHz: number;
+  readonly dampingRatio: number | null;
+  readonly eigenvalue: readonly [number, number];
+  readonly realRoots: readonly [number, number] | undefined;
+}
+
+/** A mode with an undamped shape; what the shape gives is computed when looked at, in a large model seldom. */
+class ShapedMode implements Mode {
+  readonly number: number;
+  readonly frequencyHz: number;
+  readonly dampedFrequencyHz: number;
+  readonly dampingRatio: number | null;
+  readonly eigenvalue: readonly [number, number];
+  readonly realRoots: readonly [number, number] | undefined;
   readonly #basis: ModalBasis;
   readonly #mode: number;
+  readonly #root: Root | undefined;
   #scaled: { readonly shape: Shape; readonly largest: number } | undefined;
+  #complex: Shape | undefined;
   #shares: Record<string, number> | undefined;
 
-  constructor(basis: ModalBasis, mode: number) {
+  /** `mode` counts in the basis; `root` is the one whose complex shape differs from the undamped one. */
+  constructor(basis: ModalBasis, mode: number, own: OwnRoots, root?: Root) {
+    this.number = own.number;
+    this.frequencyHz = own.frequencyHz;
+    this.dampedFrequencyHz = own.dampedFrequencyHz;
+    this.dampingRatio = own.dampingRatio;
+    this.eigenvalue = own.eigenvalue;
+    this.realRoots = own.realRoots;
     this.#basis = basis;
     this.#mode = mode;
+    this.#root = root;
   }
 
-  shape(): Shape {
+  get shape(): Shape {
     return this.#largest().shape;
   }
 
-  modalMass(): number {
+  get complexShape(): Shape | undefined {
+    if (this.#root !== undefined) this.#complex ??= complexShape(this.#basis, this.#root);
+    return this.#complex;
+  }
+
+  get modalMass(): number {
     return 1 / this.#largest().largest ** 2;
   }
 
-  effectiveMass(): Record<string, number> {
+  get effectiveMass(): Record<string, number> {
     const all = this.#basis.participation(this.#mode);
     return Object.fromEntries(all.map((p) => [p.direction, (p.factor * p.factor) / p.total]));
   }
 
-  participation(): Record<string, number> {
+  get participation(): Record<string, number> {
     const { largest } = this.#largest();
     const all = this.#basis.participation(this.#mode);
     return Object.fromEntries(all.map((p) => [p.direction, p.factor * largest]));
   }
 
-  energyShare(): Record<string, number> {
+  get energyShare(): Record<string, number> {
     this.#shares ??= byElement(this.#basis, this.#basis.energyShares(this.#mode));
     return this.#shares;
   }

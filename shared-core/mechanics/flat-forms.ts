@@ -19,11 +19,16 @@ export function flatForms(
   for (let e = 0; e < terms.length; e++) starts[e + 1] = starts[e] + terms[e].form.coordinates.length;
   const coordinate = new Int32Array(starts[terms.length]);
   const factor = new Float64Array(starts[terms.length]);
-  for (let e = 0; e < terms.length; e++) {
-    coordinate.set(terms[e].form.coordinates, starts[e]);
-    factor.set(terms[e].form.factors, starts[e]);
+  const value = new Float64Array(terms.length);
+  for (let e = 0, p = 0; e < terms.length; e++) {
+    const { coordinates, factors } = terms[e].form;
+    for (let k = 0; k < coordinates.length; k++, p++) {
+      coordinate[p] = coordinates[k];
+      factor[p] = factors[k];
+    }
+    value[e] = terms[e].value;
   }
-  return { count: terms.length, starts, coordinate, factor, value: Float64Array.from(terms, (t) => t.value) };
+  return { count: terms.length, starts, coordinate, factor, value };
 }
 
 /** Value of every form at the vector that starts at `offset` in `q`; written to `out` (count entries). */

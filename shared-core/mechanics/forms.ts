@@ -1,22 +1,30 @@
 import type { LinearForm } from "./assembly.ts";
 
+const NONE: readonly number[] = [];
+const ONE: readonly number[] = [1];
+
 /** The form that is always zero: an end on ground. */
-export const groundForm: LinearForm = { coordinates: [], factors: [], supports: [], supportFactors: [] };
+export const groundForm: LinearForm = {
+  coordinates: NONE,
+  factors: NONE,
+  supports: NONE,
+  supportFactors: NONE,
+};
 
 /** The free coordinate itself. */
 export const coordinateForm = (index: number): LinearForm => ({
   coordinates: [index],
-  factors: [1],
-  supports: [],
-  supportFactors: [],
+  factors: ONE,
+  supports: NONE,
+  supportFactors: NONE,
 });
 
 /** The support itself. */
 export const supportForm = (index: number): LinearForm => ({
-  coordinates: [],
-  factors: [],
+  coordinates: NONE,
+  factors: NONE,
   supports: [index],
-  supportFactors: [1],
+  supportFactors: ONE,
 });
 
 /** `sum of factors[i] * forms[i]`, indices ascending and without zeros, so that equal forms have equal entries. */

@@ -74,7 +74,9 @@ export interface Condensation extends Reduction {
 /** Eliminates the relaxing coordinates through their springs: the undamped problem, all coordinates inertial. */
 export function condense(reduction: Reduction): Outcome<Condensation> {
   if (reduction.relaxing === 0) {
-    return succeed({ ...reduction, inner: indices(reduction.inertial).map(coordinateForm) });
+    const { recovery, inertial } = reduction;
+    const inner = isIdentity(recovery, inertial) ? recovery : indices(inertial).map(coordinateForm);
+    return succeed({ ...reduction, inner });
   }
   const steps: Step[] = [];
   let stiffness = [...reduction.stiffness];
@@ -244,7 +246,22 @@ class Reducer {
   }
 }
 
-const indices = (n: number): number[] => Array.from({ length: n }, (_, i) => i);
+function indices(n: number): number[] {
+  const out = new Array<number>(n);
+  for (let i = 0; i < n; i++) out[i] = i;
+  return out;
+}
+
+/** Whether form i is coordinate i of `size`, for all of them. */
+function isIdentity(forms: readonly LinearForm[], size: number): boolean {
+  return (
+    forms.length === size &&
+    forms.every(({ coordinates, factors, supports }, i) => {
+      return coordinates.length === 1 && coordinates[0] === i && factors[0] === 1 && supports.length === 0;
+    })
+  );
+}
+
 const square = ({ row, value }: Term): SquareTerm => ({ form: row, value });
 const formsOf = (terms: readonly SquareTerm[]): LinearForm[] => terms.map(({ form }) => form);
 

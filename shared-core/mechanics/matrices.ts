@@ -86,6 +86,8 @@ export function systemMatrices(assembly: Assembly): SystemMatrices {
 
 /** free x free part of a sum of terms. */
 export function sumTerms(terms: readonly Term[], free: number): SparseMatrix {
+  const alone = sumSingles(terms, free);
+  if (alone !== undefined) return alone;
   const entries = new Entries();
   for (const { row, column, value } of terms) {
     for (let i = 0; i < row.coordinates.length; i++) {
@@ -96,6 +98,30 @@ export function sumTerms(terms: readonly Term[], free: number): SparseMatrix {
     }
   }
   return sparseFromTriplets(free, free, entries);
+}
+
+/** The same where every term touches one coordinate and every coordinate is touched, as masses usually do. */
+function sumSingles(terms: readonly Term[], free: number): SparseMatrix | undefined {
+  if (terms.length < free) return undefined;
+  const value = new Float64Array(free);
+  const touched = new Uint8Array(free);
+  let count = 0;
+  for (const { row, column, value: factor } of terms) {
+    if (row.coordinates.length !== 1 || column.coordinates.length !== 1) return undefined;
+    const i = row.coordinates[0];
+    if (column.coordinates[0] !== i) return undefined;
+    value[i] += factor * row.factors[0] * column.factors[0];
+    if (touched[i] === 0) count++;
+    touched[i] = 1;
+  }
+  if (count < free) return undefined;
+  const rowStart = new Int32Array(free + 1);
+  const at = new Int32Array(free);
+  for (let i = 0; i < free; i++) {
+    at[i] = i;
+    rowStart[i + 1] = i + 1;
+  }
+  return { rows: free, columns: free, rowStart, column: at, value };
 }
 
 /** free x supports part of a sum of terms. */

@@ -109,12 +109,30 @@ class Forest {
       if (!this.held(root)) this.#hold(root);
       return true;
     }
+    if (form.coordinates.length === 2 && this.#absorbPair(form)) return true;
     const row = this.reduce(form);
     if (row.size > 2) return false;
     const [first, second] = row;
     if (first === undefined) return true;
     if (second === undefined) this.#hold(first[0]);
     else if (this.#weight[first[0]] < this.#weight[second[0]]) this.#tie(first, second);
+    else this.#tie(second, first);
+    return true;
+  }
+
+  /** The usual spring, between two trees: nothing can cancel. False where that is not so. */
+  #absorbPair({ coordinates, factors }: LinearForm): boolean {
+    const a = this.find(coordinates[0]);
+    const b = this.find(coordinates[1]);
+    if (a.root === b.root || factors[0] * a.ratio === 0 || factors[1] * b.ratio === 0) return false;
+    const first = [a.root, factors[0] * a.ratio] as const;
+    const second = [b.root, factors[1] * b.ratio] as const;
+    if (this.held(a.root) || this.held(b.root)) {
+      if (!this.held(a.root)) this.#hold(a.root);
+      else if (!this.held(b.root)) this.#hold(b.root);
+      return true;
+    }
+    if (this.#weight[a.root] < this.#weight[b.root]) this.#tie(first, second);
     else this.#tie(second, first);
     return true;
   }

@@ -181,10 +181,7 @@ function rotateKept(
   const starts = [0, counts[UPPER], counts[UPPER] + counts[BOTH]];
   const column = new Int32Array(k);
   for (let j = 0; j < k; j++) column[j] = starts[kind[kept[j]]]++;
-  for (let j = 0; j < k; j++) {
-    const from = (lo + kept[j]) * n + lo;
-    packed.set(rows.subarray(from, from + size), column[j] * size);
-  }
+  for (let j = 0; j < k; j++) copyRow(rows, (lo + kept[j]) * n + lo, packed, column[j] * size, size);
   return kernel.merge({
     k,
     poles,
@@ -213,20 +210,28 @@ function writeBack(
 ): void {
   const { n, d, rows, packed, result } = work;
   const size = hi - lo;
-  // The deflated rows are parked behind the new ones; their values with them.
-  const all = new Float64Array(size);
-  all.set(values);
+  // The deflated rows are parked while the new ones come in; their values with them.
+  const parked = new Float64Array(dropped.length);
+  dropped.sort((i, j) => d[lo + i] - d[lo + j] || i - j);
   for (let j = 0; j < dropped.length; j++) {
-    const from = (lo + dropped[j]) * n + lo;
-    packed.set(rows.subarray(from, from + size), j * size);
-    all[k + j] = d[lo + dropped[j]];
+    copyRow(rows, (lo + dropped[j]) * n + lo, packed, j * size, size);
+    parked[j] = d[lo + dropped[j]];
   }
-  const order = Int32Array.from(all, (_, i) => i).sort((i, j) => all[i] - all[j] || i - j);
+  // Both lists ascend.
+  let [i, j] = [0, 0];
   for (let t = 0; t < size; t++) {
-    const i = order[t];
-    const source = i < k ? result : packed;
-    const from = (i < k ? i : i - k) * size;
-    rows.set(source.subarray(from, from + size), (lo + t) * n + lo);
-    d[lo + t] = all[i];
+    const fresh = j >= parked.length || (i < k && values[i] <= parked[j]);
+    d[lo + t] = fresh ? values[i] : parked[j];
+    const to = (lo + t) * n + lo;
+    if (fresh) copyRow(result, i++ * size, rows, to, size);
+    else copyRow(packed, j++ * size, rows, to, size);
   }
+}
+
+/** Rows shorter than this are copied number by number: a view of each would cost more. */
+const SHORT_ROW = 64;
+
+function copyRow(from: Float64Array, fromAt: number, to: Float64Array, toAt: number, size: number): void {
+  if (size < SHORT_ROW) for (let i = 0; i < size; i++) to[toAt + i] = from[fromAt + i];
+  else to.set(from.subarray(fromAt, fromAt + size), toAt);
 }

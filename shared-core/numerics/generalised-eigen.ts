@@ -9,7 +9,7 @@ import { factorCholesky, solveLower, solveLowerTransposed } from "./cholesky.ts"
 import { pathThrough } from "./ordering.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, transpose } from "./products.ts";
-import { symmetricEigen } from "./symmetric-eigen.ts";
+import { symmetricEigen, type VectorLayout } from "./symmetric-eigen.ts";
 import { tridiagonalEigen } from "./tridiagonal-eigen.ts";
 
 /** Below this size looking for a chain costs more than it saves. */
@@ -18,9 +18,11 @@ const CHAIN_SIZE = 16;
 export type Modes = {
   /** λ = ω², ascending; a free body's are zero within rounding, either sign. */
   values: Float64Array;
-  /** n×n row-major, mass-normalised vector of `values[j]` in column j; empty when not asked for. */
+  /** n×n row-major, mass-normalised vector of `values[j]` in column (or row) j; empty when not asked for. */
   vectors: Float64Array;
 };
+
+type Options = { vectors?: boolean; layout?: VectorLayout };
 
 /**
  * `k` is n×n row-major; `m` is either the n diagonal entries or an n×n row-major matrix. Both are kept.
@@ -30,7 +32,7 @@ export function generalisedEigen(
   k: Float64Array,
   m: Float64Array,
   n: number,
-  options: { vectors?: boolean } = {},
+  options: Options = {},
 ): Outcome<Modes> {
   if (!allFinite(k) || !allFinite(m)) return fail("a matrix holds a value that is not finite");
   const diagonal = m.length === n ? m : diagonalOf(m, n);
@@ -61,7 +63,7 @@ function withDiagonalMass(
   k: Float64Array,
   diagonal: Float64Array,
   n: number,
-  options: { vectors?: boolean },
+  options: Options,
 ): Outcome<Modes> {
   const roots = inverseRoots(diagonal);
   if (!roots.ok) return fail(roots.reason);
@@ -74,17 +76,21 @@ function withDiagonalMass(
   const solved = path ? alongPath(a, path, n, options) : symmetricEigen(a, n, options);
   if (!solved.ok) return solved;
   const { vectors } = solved.value;
-  for (let i = 0; i < n; i++) for (let j = 0; j < n && vectors.length > 0; j++) vectors[i * n + j] *= r[i];
+  if (vectors.length > 0) scaleEntries(vectors, r, n, options.layout);
   return solved;
 }
 
+/** Entry i of every vector times `factor[i]`. */
+function scaleEntries(vectors: Float64Array, factor: Float64Array, n: number, layout?: VectorLayout): void {
+  for (let i = 0; i < n; i++) {
+    const at = i * n;
+    if (layout === "rows") for (let j = 0; j < n; j++) vectors[at + j] *= factor[j];
+    else for (let j = 0; j < n; j++) vectors[at + j] *= factor[i];
+  }
+}
+
 /** A chain is tridiagonal in its own order: no reduction is needed. Only the lower triangle of `a` is filled. */
-function alongPath(
-  a: Float64Array,
-  path: Int32Array,
-  n: number,
-  options: { vectors?: boolean },
-): Outcome<Modes> {
+function alongPath(a: Float64Array, path: Int32Array, n: number, options: Options): Outcome<Modes> {
   const diagonal = new Float64Array(n);
   const offDiagonal = new Float64Array(n - 1);
   for (let t = 0; t < n; t++) {
@@ -95,19 +101,16 @@ function alongPath(
   }
   const solved = tridiagonalEigen(diagonal, offDiagonal, options);
   if (!solved.ok || solved.value.vectors.length === 0) return solved;
+  const { values, vectors: found } = solved.value;
   const vectors = new Float64Array(n * n);
   for (let t = 0; t < n; t++) {
-    vectors.set(solved.value.vectors.subarray(t * n, (t + 1) * n), path[t] * n);
+    if (options.layout === "rows") for (let j = 0; j < n; j++) vectors[j * n + path[t]] = found[j * n + t];
+    else vectors.set(found.subarray(t * n, (t + 1) * n), path[t] * n);
   }
-  return succeed({ values: solved.value.values, vectors });
+  return succeed({ values, vectors });
 }
 
-function withFullMass(
-  k: Float64Array,
-  m: Float64Array,
-  n: number,
-  options: { vectors?: boolean },
-): Outcome<Modes> {
+function withFullMass(k: Float64Array, m: Float64Array, n: number, options: Options): Outcome<Modes> {
   const factor = factorCholesky(m, n);
   if (!factor.ok) {
     const row = (factor.upTo?.reached ?? 0) + 1;
@@ -118,8 +121,9 @@ function withFullMass(
   solveLower(factor.value, half, n);
   const a = transpose(half, n, n);
   solveLower(factor.value, a, n);
-  const solved = symmetricEigen(a, n, options);
-  if (!solved.ok) return solved;
-  if (solved.value.vectors.length > 0) solveLowerTransposed(factor.value, solved.value.vectors, n);
-  return solved;
+  const solved = symmetricEigen(a, n, { vectors: options.vectors });
+  if (!solved.ok || solved.value.vectors.length === 0) return solved;
+  const { values, vectors } = solved.value;
+  solveLowerTransposed(factor.value, vectors, n);
+  return succeed({ values, vectors: options.layout === "rows" ? transpose(vectors, n, n) : vectors });
 }

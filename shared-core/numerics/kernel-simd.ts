@@ -125,12 +125,10 @@ function kernelOf(compiled: WebAssembly.Module): Kernel {
       // Even row distance, so that every row starts on a sixteen-byte boundary.
       const stride = n + (n % 2);
       return run([n * stride, n, n, n, 4 * (n + 2)], (wasm, memory, [pa, pd, pe, pt, work]) => {
-        for (let i = 0; i < n; i++) memory.set(a.subarray(i * n, i * n + i + 1), pa / 8 + i * stride);
+        spread(a, n, n, memory, pa, stride);
         memory.fill(0, pt / 8, pt / 8 + n);
         wasm.tridiagonalise(pa, stride, n, pd, pe, pt, work);
-        for (let i = 0; i < n; i++) {
-          a.set(memory.subarray(pa / 8 + i * stride, pa / 8 + i * stride + i), i * n);
-        }
+        gather(memory, pa, stride, a, n, n);
         const part = (p: number, count: number) => memory.slice(p / 8, p / 8 + count);
         const offDiagonal = part(pe, Math.max(0, n - 1));
         return { n, diagonal: part(pd, n), offDiagonal, reflectors: a, tau: part(pt, n) };
@@ -142,9 +140,7 @@ function kernelOf(compiled: WebAssembly.Module): Kernel {
       const room = roomFor(count, n);
       run([count * n, n * stride, n, room, packRoom(n)], (wasm, memory, [pr, pv, pt, work, pack]) => {
         memory.set(rows.subarray(0, count * n), pr / 8);
-        for (let i = 0; i < n; i++) {
-          memory.set(t.reflectors.subarray(i * n, i * n + i), pv / 8 + i * stride);
-        }
+        spread(t.reflectors, n, n, memory, pv, stride);
         memory.set(t.tau, pt / 8);
         wasm.backTransform(pr, n, count, pv, stride, n, pt, work, pack);
         rows.set(memory.subarray(pr / 8, pr / 8 + count * n));
@@ -194,16 +190,14 @@ function kernelOf(compiled: WebAssembly.Module): Kernel {
         withQ ? packRoom(n) : 0,
       ];
       return run(sizes, (wasm, memory, [pa, pv, pt, work, pq, scratch, pack]) => {
-        for (let i = 0; i < n; i++) memory.set(a.subarray(i * n, (i + 1) * n), pa / 8 + i * stride);
+        spread(a, n, n, memory, pa, stride);
         memory.fill(0, pv / 8, pv / 8 + n * stride);
         memory.fill(0, pt / 8, pt / 8 + n);
         wasm.hessenberg(pa, stride, n, pv, pt, work);
         if (withQ) wasm.hessenbergQ(pq, stride, n, pv, pt, scratch, pack);
         const transposedQ = new Float64Array(withQ ? n * n : 0);
-        for (let i = 0; i < n; i++) {
-          a.set(memory.subarray(pa / 8 + i * stride, pa / 8 + i * stride + n), i * n);
-          if (withQ) transposedQ.set(memory.subarray(pq / 8 + i * stride, pq / 8 + i * stride + n), i * n);
-        }
+        gather(memory, pa, stride, a, n, n);
+        if (withQ) gather(memory, pq, stride, transposedQ, n, n);
         return { n, h: a, transposedQ };
       });
     },
@@ -229,27 +223,61 @@ function packRoom(columns: number): number {
   return PACK_DEPTH * (columns + 4);
 }
 
-function copyIn(from: Window, memory: Float64Array, to: number, rows: number, columns: number): void {
-  const base = to / 8;
-  if (from.stride === columns) {
-    memory.set(from.data.subarray(from.at, from.at + rows * columns), base);
+/** Rows of an array into the module, `stride` numbers apart; in one piece where they lie so already. */
+function spread(
+  from: Float64Array,
+  rows: number,
+  columns: number,
+  memory: Float64Array,
+  to: number,
+  stride: number,
+): void {
+  copyRows(from, 0, columns, memory, to / 8, stride, rows, columns);
+}
+
+/** The way back. */
+function gather(
+  memory: Float64Array,
+  from: number,
+  stride: number,
+  to: Float64Array,
+  rows: number,
+  columns: number,
+): void {
+  copyRows(memory, from / 8, stride, to, 0, columns, rows, columns);
+}
+
+/** Rows shorter than this are copied number by number: a view of each would cost more. */
+const SHORT_ROW = 64;
+
+function copyRows(
+  from: Float64Array,
+  fromAt: number,
+  fromStride: number,
+  to: Float64Array,
+  toAt: number,
+  toStride: number,
+  rows: number,
+  columns: number,
+): void {
+  if (fromStride === columns && toStride === columns) {
+    to.set(from.subarray(fromAt, fromAt + rows * columns), toAt);
     return;
   }
   for (let i = 0; i < rows; i++) {
-    const at = from.at + i * from.stride;
-    memory.set(from.data.subarray(at, at + columns), base + i * columns);
+    const p = fromAt + i * fromStride;
+    const q = toAt + i * toStride;
+    if (columns < SHORT_ROW) for (let j = 0; j < columns; j++) to[q + j] = from[p + j];
+    else to.set(from.subarray(p, p + columns), q);
   }
 }
 
+function copyIn(from: Window, memory: Float64Array, to: number, rows: number, columns: number): void {
+  copyRows(from.data, from.at, from.stride, memory, to / 8, columns, rows, columns);
+}
+
 function copyOut(to: Window, memory: Float64Array, from: number, rows: number, columns: number): void {
-  const base = from / 8;
-  if (to.stride === columns) {
-    to.data.set(memory.subarray(base, base + rows * columns), to.at);
-    return;
-  }
-  for (let i = 0; i < rows; i++) {
-    to.data.set(memory.subarray(base + i * columns, base + (i + 1) * columns), to.at + i * to.stride);
-  }
+  copyRows(memory, from / 8, columns, to.data, to.at, to.stride, rows, columns);
 }
 
 const ALPHABET = "ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz0123456789+/";

@@ -17,11 +17,14 @@ import { formTransposedQ } from "./tridiagonalise.ts";
 export type SymmetricEigen = {
   /** Ascending, in the unit of A. */
   values: Float64Array;
-  /** n×n row-major, unit vector of `values[j]` in column j; empty when not asked for. */
+  /** n×n row-major, unit vector of `values[j]` in column (or row) j; empty when not asked for. */
   vectors: Float64Array;
 };
 
-export type SymmetricEigenOptions = { vectors?: boolean; kernel?: Kernel };
+/** How vectors lie in a row-major array; columns where nothing is said. */
+export type VectorLayout = "columns" | "rows";
+
+export type SymmetricEigenOptions = { vectors?: boolean; layout?: VectorLayout; kernel?: Kernel };
 
 /** Largest size at which rotating the vectors inside QL is the quickest way; found by trial. */
 const QL_SIZE = 28;
@@ -58,13 +61,30 @@ export function symmetricEigen(
     sortAscending(values, n, rows);
   }
   for (let i = 0; i < n; i++) values[i] /= scale;
-  return succeed({ values, vectors: rows ? columnsFromRows(rows, n, order) : new Float64Array(0) });
+  if (rows === undefined) return succeed({ values, vectors: new Float64Array(0) });
+  const vectors = options.layout === "rows" ? unordered(rows, n, order) : columnsFromRows(rows, n, order);
+  return succeed({ values, vectors });
 }
 
 /** Indices that bring the diagonal into ascending magnitude; equal entries keep their order. */
 function ascendingDiagonal(a: Float64Array, n: number): Int32Array {
-  const order = Int32Array.from({ length: n }, (_, i) => i);
-  return order.sort((i, j) => Math.abs(a[i * n + i]) - Math.abs(a[j * n + j]) || i - j);
+  const size = new Float64Array(n);
+  const order = new Int32Array(n);
+  for (let i = 0; i < n; i++) {
+    size[i] = Math.abs(a[i * n + i]);
+    order[i] = i;
+  }
+  return order.sort((i, j) => size[i] - size[j] || i - j);
+}
+
+/** Vectors held as rows with a permutation undone, in place: entry i of a row goes to `order[i]`. */
+function unordered(rows: Float64Array, n: number, order: Int32Array): Float64Array {
+  const row = new Float64Array(n);
+  for (let at = 0; at < n * n; at += n) {
+    for (let i = 0; i < n; i++) row[order[i]] = rows[at + i];
+    rows.set(row, at);
+  }
+  return rows;
 }
 
 /** A power of two that brings `size` near one. */

@@ -8,7 +8,7 @@ import { divideAndConquer } from "./divide-and-conquer.ts";
 import { type Kernel, kernelFor } from "./kernel.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
 import { allFinite, identity, maxAbs } from "./products.ts";
-import { columnsFromRows, type SymmetricEigen, unitScale } from "./symmetric-eigen.ts";
+import { columnsFromRows, type SymmetricEigen, unitScale, type VectorLayout } from "./symmetric-eigen.ts";
 import { implicitQl, sortAscending } from "./tridiagonal-ql.ts";
 
 /** Up to here QL with vectors is quicker; found by trial. */
@@ -16,12 +16,12 @@ const QL_SIZE = 24;
 
 /**
  * `diagonal` has n entries; entry i of `offDiagonal` (n−1) couples i and i+1. Both are kept. Values ascending,
- * vectors n×n row-major in columns, empty with `vectors: false`.
+ * vectors n×n row-major in columns or rows, empty with `vectors: false`.
  */
 export function tridiagonalEigen(
   diagonal: Float64Array,
   offDiagonal: Float64Array,
-  options: { vectors?: boolean; kernel?: Kernel } = {},
+  options: { vectors?: boolean; layout?: VectorLayout; kernel?: Kernel } = {},
 ): Outcome<SymmetricEigen> {
   const n = diagonal.length;
   if (!allFinite(diagonal) || !allFinite(offDiagonal))
@@ -40,5 +40,6 @@ export function tridiagonalEigen(
     sortAscending(d, n, rows);
   }
   const values = d.map((v) => v / scale);
-  return succeed({ values, vectors: rows ? columnsFromRows(rows, n) : new Float64Array(0) });
+  if (rows === undefined) return succeed({ values, vectors: new Float64Array(0) });
+  return succeed({ values, vectors: options.layout === "rows" ? rows : columnsFromRows(rows, n) });
 }
