@@ -1,9 +1,11 @@
 import type { Scene, SheetContent, SheetMotion } from "../../shared-core/index.ts";
-import { html, svg } from "./dom.ts";
+import { CoordinateChart } from "./chart.ts";
+import { html } from "./dom.ts";
 import type { Page } from "./page.ts";
 import { Player } from "./player.ts";
 import { Roving } from "./roving.ts";
 import { ScenePicture } from "./scene-picture.ts";
+import { poseOf } from "./sway.ts";
 
 /** The system, drawn from the source; or a chart of its coordinates where there are too many to draw. */
 export class Drawing {
@@ -15,7 +17,10 @@ export class Drawing {
   #scene: Scene | undefined;
   #shown = "";
   #picture: ScenePicture | undefined;
-  #bars: SVGPathElement | undefined;
+  readonly #chart: CoordinateChart;
+  #still: Float64Array | undefined;
+  /** Under the drawing while nothing is pointed at. */
+  #words = "";
   #named = new Map<string, readonly SVGGElement[]>();
   #lit: ReadonlySet<string> = new Set();
 
@@ -26,6 +31,7 @@ export class Drawing {
       over: (key) => this.#over(key),
       pick: (key) => this.#pick(key),
     });
+    this.#chart = new CoordinateChart(page, this.#roving, (name) => this.#reveal(name));
     this.player = new Player(page, {
       show: (pose) => this.#pose(pose),
       coordinates: () => this.#scene?.coordinates.length ?? 0,
@@ -49,10 +55,11 @@ export class Drawing {
     if (shown !== this.#shown) {
       this.#shown = shown;
       this.#scene = scene;
-      if (scene.kind === "chart") this.#drawChart(scene, motions);
+      if (scene.kind === "chart") this.#drawChart(scene);
       else this.#drawSystem(scene);
       this.highlight([...this.#lit]);
     }
+    if (scene.kind === "chart") this.#showFirst(scene, motions);
     this.player.update(motions);
   }
 
@@ -69,7 +76,9 @@ export class Drawing {
     picture.element.style.maxWidth = `${scene.width}px`;
     picture.element.style.minWidth = `${LEAST_SIZE * scene.width}px`;
     this.#picture = picture;
-    this.#bars = undefined;
+    this.#chart.hide();
+    this.#still = undefined;
+    this.#words = "";
     const named = new Map<string, SVGGElement[]>();
     const items = scene.items.flatMap((item, i) => {
       const element = picture.groups[i];
@@ -81,64 +90,49 @@ export class Drawing {
     this.#roving.update(picture.element, items, scene.description);
   }
 
-  #drawChart(scene: Scene, motions: readonly SheetMotion[]): void {
+  #drawChart({ coordinates, description }: Scene): void {
     this.#picture = undefined;
     this.#named = new Map();
-    this.#bars = svg("path", { class: "bars" });
-    const picture = svg(
-      "svg",
-      { class: "scene chart", viewBox: `0 0 ${CHART.width} ${CHART.height}` },
-      svg("path", { class: "thin", d: `M0,${CHART.height / 2}H${CHART.width}` }),
-      this.#bars,
-    );
-    const count = scene.coordinates.length;
-    const hint = motions.length > 0 ? "Choose a motion to see it over the coordinates." : "";
-    this.#says.textContent = `${scene.description} ${hint}`.trim();
-    // Entries by coordinate: a reader without sight moves along the chart.
-    const items = scene.coordinates.map((name, i) => {
-      const x = (CHART.width * i) / count;
-      const element = svg(
-        "g",
-        {},
-        svg("rect", { class: "hit", x, y: 0, width: CHART.width / count, height: CHART.height }),
-      );
-      return { key: name, element, says: `coordinate ${i + 1}, ${name}` };
-    });
-    picture.append(...items.map(({ element }) => element));
-    this.#roving.update(picture, items, scene.description);
+    this.#chart.show(coordinates, `${description} ${CHART_HELP}`);
+  }
+
+  /** At rest a chart would be empty: the first shape stands in it until somebody chooses. */
+  #showFirst({ coordinates, description }: Scene, [first]: readonly SheetMotion[]): void {
+    this.#still = first && poseOf(first, coordinates.length, 0);
+    const hint = first === undefined ? "" : `At rest it shows ${first.label}.`;
+    this.#words = `${description} ${hint}`.trim();
+    this.#says.textContent = this.#words;
+    this.#chart.pose(this.#still);
   }
 
   #pose(pose: Float64Array | undefined): void {
-    if (this.#bars) this.#bars.setAttribute("d", pose ? barPath(pose) : "");
+    this.#chart.pose(pose ?? this.#still);
     if (pose) this.#picture?.pose(pose);
     else this.#picture?.rest();
   }
 
   #over(key: string | null): void {
     const item = this.#scene?.items.find(({ name }) => name === key);
-    const text = item?.says ?? (key === null ? "" : key);
+    const text = item?.says ?? (key === null ? this.#words : this.#chart.says(key));
     this.#says.textContent = text;
     if (key === null || item) this.#page.say({ type: "point", name: key });
   }
 
   #pick(key: string): void {
+    if (this.#scene?.kind === "chart") this.#reveal(key);
     if (!this.#scene?.items.some(({ name }) => name === key)) return;
     this.#page.keep({ selected: key });
     this.highlight([key]);
     this.#page.say({ type: "reveal", name: key });
   }
+
+  /** The line of the statement that a coordinate belongs to. */
+  #reveal(coordinate: string): void {
+    this.#page.say({ type: "reveal", name: coordinate.replace(/\..*$/, "") });
+  }
 }
 
 /** A narrow page shrinks the drawing so far; then it scrolls, for words must stay readable. */
 const LEAST_SIZE = 0.75;
-const CHART = { width: 800, height: 160 };
-
-/** A bar a coordinate, to both sides of the middle. */
-function barPath(pose: Float64Array): string {
-  const step = CHART.width / Math.max(1, pose.length);
-  const [middle, half, wide] = [CHART.height / 2, CHART.height / 2 - 6, Math.max(0.6, step * 0.7)];
-  return Array.from(pose, (value, i) => {
-    const x = (step * i + (step - wide) / 2).toFixed(2);
-    return `M${x},${middle}v${(-half * value).toFixed(2)}h${wide.toFixed(2)}V${middle}Z`;
-  }).join("");
-}
+/** Keys that a chart knows beside the arrows. */
+const CHART_HELP = "Plus and minus zoom, Shift and arrow keys move, 0 shows all.";

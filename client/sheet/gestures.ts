@@ -10,6 +10,8 @@ export interface GestureHost {
   point(share: number | undefined): void;
   /** What would be shown when the pointer were let go; undefined: nothing. */
   frame(range: readonly [number, number] | undefined): void;
+  /** A click stands there. */
+  pick?(share: number): void;
 }
 
 /** A wheel notch of 100 pixels zooms by about a fifth; chosen by trial. */
@@ -17,20 +19,28 @@ const WHEEL = 0.002;
 /** A shorter drag is a click, in shares of the axis. */
 const CLICK = 0.01;
 
-/** Mouse and touch on a plot: drag frames a part, Shift drags it along, two fingers or Ctrl and wheel zoom. */
-export function followGestures(target: HTMLElement, host: GestureHost): void {
+/**
+ * Mouse and touch on a plot: drag frames a part, Shift drags it along, two fingers or Ctrl and wheel zoom.
+ * @param active false: what stands there now is no plot
+ */
+export function followGestures(
+  target: HTMLElement,
+  host: GestureHost,
+  active: () => boolean = () => true,
+): void {
   const touches = new Map<number, number>();
   let drag: { readonly from: number; readonly pans: boolean; last: number } | undefined;
 
   target.addEventListener("pointerdown", (event) => {
     const share = host.shareAt(event.clientX);
-    if (event.button !== 0 && event.button !== 1) return;
+    if (!active() || (event.button !== 0 && event.button !== 1)) return;
     if (event.pointerType === "touch") touches.set(event.pointerId, event.clientX);
     target.setPointerCapture(event.pointerId);
     const pans = event.shiftKey || event.button === 1 || event.pointerType === "touch";
     drag = { from: share, pans, last: event.clientX };
   });
   target.addEventListener("pointermove", (event) => {
+    if (!active()) return;
     if (touches.size === 2 && touches.has(event.pointerId)) return pinch(event);
     const share = host.shareAt(event.clientX);
     if (drag === undefined) return host.point(share);
@@ -48,6 +58,7 @@ export function followGestures(target: HTMLElement, host: GestureHost): void {
     const { from, pans } = drag;
     drag = undefined;
     const to = host.shareAt(event.clientX);
+    if (accepts && Math.abs(to - from) < CLICK) host.pick?.(to);
     if (!accepts || pans || Math.abs(to - from) < CLICK) return host.point(to);
     const part = between(host.part, from, to);
     if (part) host.setPart(part);
@@ -55,7 +66,7 @@ export function followGestures(target: HTMLElement, host: GestureHost): void {
   target.addEventListener("pointerup", (event) => end(event, true));
   target.addEventListener("pointercancel", (event) => end(event, false));
   target.addEventListener("pointerleave", () => drag === undefined && host.point(undefined));
-  target.addEventListener("dblclick", () => host.setPart(WHOLE));
+  target.addEventListener("dblclick", () => active() && host.setPart(WHOLE));
   target.addEventListener("wheel", (event) => wheel(event), { passive: false });
 
   function pinch(event: PointerEvent): void {
@@ -69,6 +80,7 @@ export function followGestures(target: HTMLElement, host: GestureHost): void {
 
   /** The plain wheel scrolls the page, as it does everywhere else. */
   function wheel(event: WheelEvent): void {
+    if (!active()) return;
     if (event.ctrlKey || event.metaKey) {
       const about = Math.max(0, Math.min(1, host.shareAt(event.clientX)));
       host.setPart(zoomed(host.part, about, Math.exp(WHEEL * event.deltaY)));

@@ -14,6 +14,8 @@ export class Knobs {
   readonly #host: KnobHost;
   readonly #rows = new Map<string, KnobRow>();
   readonly #resetAll = wordButton("reset all", () => this.reset());
+  /** The answers may be out of sight from here. */
+  readonly #answer = html("p", { class: "verdict answer" });
   #moved: Record<string, number>;
 
   constructor(page: Page, host: KnobHost) {
@@ -27,7 +29,8 @@ export class Knobs {
     return this.#moved;
   }
 
-  update(knobs: readonly Knob[]): void {
+  /** @param answer what the moved numbers lead to, in one line */
+  update(knobs: readonly Knob[], answer: string | undefined): void {
     const names = knobs.map(({ name }) => name);
     for (const [name, row] of this.#rows) {
       if (names.includes(name)) continue;
@@ -44,7 +47,8 @@ export class Knobs {
       if (this.element.children[i] !== row.element)
         this.element.insertBefore(row.element, this.element.children[i] ?? null);
     });
-    this.element.append(this.#resetAll);
+    this.#answer.textContent = answer === undefined ? "" : `with moved numbers: ${answer}`;
+    this.element.append(this.#answer, this.#resetAll);
     this.#kept();
   }
 

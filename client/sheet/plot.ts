@@ -158,7 +158,14 @@ export class Plot {
 
   #fillLegend(): void {
     const curves = this.#content.panels.flatMap((panel) => panel.curves);
-    const entries = new Map(curves.map((curve) => [`${curve.name} ${curve.role ?? ""}`, curve]));
+    // What is shown first; what lies under it is painted before it.
+    const rank = ({ role }: (typeof curves)[number]) =>
+      Number(role === "written") + 2 * Number(role === "earlier");
+    const entries = new Map(
+      [...curves]
+        .sort((a, b) => rank(a) - rank(b))
+        .map((curve) => [`${curve.name} ${curve.role ?? ""}`, curve]),
+    );
     const items = [...entries.values()].map((curve) => {
       const swatch = svg("svg", { class: "swatch", width: 30, height: 9, "aria-hidden": "true" });
       swatch.append(

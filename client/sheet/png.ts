@@ -10,6 +10,7 @@ const INKED = [
   "font-size",
   "font-family",
   "font-weight",
+  "paint-order",
 ];
 
 /** SVG text as a PNG on the ground of the page. */

@@ -60,7 +60,7 @@ export class RulerView {
       width,
     );
     const axis = ROW * above.rows + 34;
-    const height = axis + DROP + 24 + ROW * below.rows;
+    const height = axis + DROP + 22 + ROW * Math.max(0, below.rows - 1);
     const parts = new Parts({ to, axis, above, below });
     const items = [
       ...ruler.modes.map((mode) => parts.mode(mode)),
@@ -74,6 +74,7 @@ export class RulerView {
       ...ruler.earlier.map((mode) => parts.earlier(mode)),
       ...parts.scale(ruler, width),
       ...items.map(({ element }) => element),
+      ...parts.numbers(ruler),
     );
     this.#roving.update(picture, items, ruler.description);
   }
@@ -171,13 +172,26 @@ class Parts {
       ...ticks.map(({ at, major }) =>
         svg("path", { class: "tick", d: `M${this.#to(at)},${axis}v${major ? -8 : -4}` }),
       ),
-      ...ticks
-        .filter(({ label }) => label !== "")
-        .map(({ at, label }) =>
-          svg("text", { class: "quiet", x: this.#to(at), y: axis + 12, "text-anchor": "middle" }, label),
-        ),
       svg("text", { class: "quiet", x: width, y: axis - 6, "text-anchor": "end" }, unit),
     ];
+  }
+
+  /** Over the drops, for they say where a drop hangs; where two would touch, the rounder one stands. */
+  numbers({ ticks }: Ruler): SVGElement[] {
+    const taken: { readonly from: number; readonly to: number }[] = [];
+    const stands = ({ at, label }: Ruler["ticks"][number]) => {
+      const half = (LETTER * label.length) / 2 + 2;
+      const [from, to] = [this.#to(at) - half, this.#to(at) + half];
+      if (label === "" || taken.some((other) => from < other.to && other.from < to)) return false;
+      taken.push({ from, to });
+      return true;
+    };
+    const order = [...ticks].sort((a, b) => Number(b.major) - Number(a.major));
+    return order
+      .filter(stands)
+      .map(({ at, label }) =>
+        svg("text", { class: "quiet", x: this.#to(at), y: this.#axis + 12, "text-anchor": "middle" }, label),
+      );
   }
 
   /** Of an earlier revision: an empty drop behind today's. */

@@ -134,7 +134,7 @@ export class Sheet {
     this.#ruler.update(content.ruler);
     this.#cards.update(content, this.#busy);
     this.#ledger.update(content.ledger, content.case);
-    this.#knobs.update(content.knobs);
+    this.#knobs.update(content.knobs, content.moved);
     this.#foot.replaceChildren(...content.cautions.map((line) => html("p", {}, line)));
     if (first) this.#restore();
   }

@@ -22,8 +22,8 @@ const VALUE_LETTER = 6.4;
 const WIDE: ReadonlySet<string> = new Set("mwMWOQGCD");
 const WIDE_LETTER = 11.5;
 const MOST_NAME_LETTERS = 24;
-/** Four digits, an exponent and a unit such as `kg*m^2`. */
-const VALUE_LETTERS = 16;
+/** A damping ratio at its frequency, or four digits, an exponent and a unit such as `lbf*in/rad`. */
+const VALUE_LETTERS = 18;
 
 /** Keys worth a line, the first two that are there. */
 const SHOWN_KEYS: Readonly<Record<string, readonly string[]>> = {
