@@ -75,6 +75,7 @@ export class Drawing {
     const picture = new ScenePicture(scene, { labels: true });
     picture.element.style.maxWidth = `${scene.width}px`;
     picture.element.style.minWidth = `${LEAST_SIZE * scene.width}px`;
+    this.element.style.setProperty("--drawn", `${scene.width}px`);
     this.#picture = picture;
     this.#chart.hide();
     this.#still = undefined;

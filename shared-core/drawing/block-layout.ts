@@ -194,8 +194,12 @@ export class BlockLayout {
       // A link with both ends on one node meets it left and right of its middle.
       .flatMap((link) => this.#wantedPorts(node, link))
       .sort((a, b) => a.x - b.x);
+    // The name of a point stays inside its body.
+    const pad = (port: { readonly half: number } | undefined) => Math.max(PORT_PAD, (port?.half ?? 0) + 2);
     const inside: [number, number] =
-      keyword === "junction" ? [at, at] : [at - left + PORT_PAD, at + right - PORT_PAD];
+      keyword === "junction"
+        ? [at, at]
+        : [at - left + pad(wanted[0]), at + right - pad(wanted[wanted.length - 1])];
     const apart = wanted.slice(1).map((port, i) => Math.max(12, port.half + wanted[i].half));
     const places = spreadInside(
       wanted.map(({ x }) => x),

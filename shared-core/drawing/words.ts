@@ -24,6 +24,9 @@ const WIDE_LETTER = 11.5;
 const MOST_NAME_LETTERS = 24;
 /** A damping ratio at its frequency, or four digits, an exponent and a unit such as `lbf*in/rad`. */
 const VALUE_LETTERS = 18;
+/** A number for each direction with its unit. */
+const VECTOR_LETTERS = 24;
+const HAS_VECTORS: ReadonlySet<string> = new Set(["mount"]);
 
 /** Keys worth a line, the first two that are there. */
 const SHOWN_KEYS: Readonly<Record<string, readonly string[]>> = {
@@ -89,10 +92,13 @@ export function shownKeys(statement: StatementNode): readonly string[] {
 export function roomFor(name: string, statement: StatementNode): WordRoom {
   const values = shownKeys(statement).length;
   return {
-    width: Math.max(nameWidth(name), values > 0 ? VALUE_LETTERS * VALUE_LETTER : 0),
+    width: Math.max(nameWidth(name), values > 0 ? lettersOf(statement) * VALUE_LETTER : 0),
     lines: 1 + values,
   };
 }
+
+const lettersOf = ({ keyword }: StatementNode): number =>
+  HAS_VECTORS.has(keyword.text) ? VECTOR_LETTERS : VALUE_LETTERS;
 
 /** Room that a bare name takes. */
 export function nameWidth(name: string): number {
@@ -106,7 +112,7 @@ export function wordsFor(name: string, statement: StatementNode, text: string, s
     values: shownKeys(statement).map((key) =>
       shortened(
         prefixOf(statement, key, text) + (show(statement, key) ?? writtenValue(statement, key, text)),
-        VALUE_LETTERS,
+        lettersOf(statement),
       ),
     ),
   };

@@ -85,6 +85,20 @@ describe("a drawing", () => {
     }
   });
 
+  it("writes what stands in a body inside it", () => {
+    let count = 0;
+    for (const [name, { items }] of SCENES) {
+      for (const { box, labels } of items.filter(({ keyword }) => keyword === "body" || keyword === "mass")) {
+        for (const { text, box: room } of labels) {
+          expect(room.x, `${name}: ${text}`).toBeGreaterThanOrEqual(box.x);
+          expect(room.x + room.width, `${name}: ${text}`).toBeLessThanOrEqual(box.x + box.width);
+          count++;
+        }
+      }
+    }
+    expect(count).toBeGreaterThan(1000);
+  });
+
   it("is the same every time", () => {
     for (const text of [EVERY_KIND, randomModel(7), randomModel(42)]) {
       expect(sceneOf(text)).toEqual(sceneOf(text));
