@@ -41,13 +41,18 @@ export interface Peak {
   readonly at: number;
 }
 
+/** Complex amplitudes of one quantity along the axis; NaN in both parts where it has none, and why. */
+export interface SweepSeries {
+  readonly unit: string;
+  readonly re: Float64Array;
+  readonly im: Float64Array;
+  readonly reason?: string;
+}
+
 export interface SweepAnswer {
   readonly kind: "sweep";
   readonly frequencyHz: Float64Array;
-  readonly series: ReadonlyMap<
-    string,
-    { readonly unit: string; readonly re: Float64Array; readonly im: Float64Array }
-  >;
+  readonly series: ReadonlyMap<string, SweepSeries>;
   /** Largest magnitude, found between samples too; null with a reason where a mode in the band is undamped. */
   readonly peaks: ReadonlyMap<string, Peak | { readonly reason: string }>;
 }

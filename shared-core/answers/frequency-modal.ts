@@ -6,22 +6,36 @@
  * factorisation at some frequencies before it is used; searches run on it, single values do not.
  */
 import type { Assembly } from "../mechanics/assembly.ts";
+import { formValue } from "../mechanics/forms.ts";
 import { type StateInput, stateSpace } from "../mechanics/state-space.ts";
 import { complexLuWorkspace, factorComplexLu, solveComplexLu } from "../numerics/complex-lu.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
-import { multiply } from "../numerics/products.ts";
+import { multiply, transpose } from "../numerics/products.ts";
 import type { ModalBasis } from "./modes-basis.ts";
+import type { Root } from "./modes-roots.ts";
 import { modalStates } from "./time-basis.ts";
 import { type ModalSystem, modalSystem } from "./time-modal.ts";
 
-/** All free coordinates at s = i omega for input phasors `uRe`, `uIm`; false where a root stands at s itself. */
-export type Transfer = (
-  omega: number,
-  uRe: Float64Array,
-  uIm: Float64Array,
-  xRe: Float64Array,
-  xIm: Float64Array,
-) => boolean;
+export interface Transfer {
+  /** All free coordinates at s = i omega for input phasors `uRe`, `uIm`; false where a root stands at s itself. */
+  at(omega: number, uRe: Float64Array, uIm: Float64Array, xRe: Float64Array, xIm: Float64Array): boolean;
+  /** The same for `lanes` frequencies as one product, where every root stands singly. */
+  readonly many?: TransferBlock;
+}
+
+export interface TransferBlock {
+  readonly lanes: number;
+  readonly free: number;
+  /** Input j of a lane at lane * inputs + j; coordinate i of a lane at i * lanes + lane; `good` 0 where a root stands. */
+  solve(
+    omega: Float64Array,
+    uRe: Float64Array,
+    uIm: Float64Array,
+    xRe: Float64Array,
+    xIm: Float64Array,
+    good: Uint8Array,
+  ): void;
+}
 
 /** Inputs are the drives `by` in their order: forces, or displacements of supports. */
 export function modalTransfer(
@@ -54,11 +68,85 @@ export function modalTransfer(
       rest: multiply(modal.left, b, modal.rest, size, raw.inputs),
     })),
   };
-  return succeed(transferOf(parts));
+  return succeed({ at: transferOf(parts), many: modal.rest === 0 ? blockOf(parts) : undefined });
+}
+
+/**
+ * The same from the roots and shapes that the mode table stands on. M, C and K are symmetric, so that a shape is
+ * its own left shape: X(s) = sum psi (psi^T F) / (norm (s - root)). For forces on models in which every coordinate
+ * has an inertia and nothing floats; undefined for others.
+ */
+export function symmetricTransfer(
+  assembly: Assembly,
+  basis: ModalBasis,
+  by: readonly number[],
+): Transfer | undefined {
+  const { undamped } = basis;
+  const { count: n, free: floating, reduction } = undamped;
+  if (n !== assembly.free || floating > 0 || reduction.relaxing > 0) return undefined;
+  const found = basis.complexRoots();
+  if (!found.ok) return undefined;
+  const { roots } = found.value;
+  const forms = by.flatMap((index) => {
+    const { on } = assembly.drives[index];
+    return on.kind === "form" ? [on.form] : [];
+  });
+  if (forms.length < by.length || roots.some(({ norm }) => norm === undefined)) return undefined;
+  const { re, im } = shapeRows(basis, roots);
+  const feed = {
+    re: new Float64Array(roots.length * by.length),
+    im: new Float64Array(roots.length * by.length),
+  };
+  roots.forEach(({ norm = [0, 0] }, k) => {
+    const square = norm[0] * norm[0] + norm[1] * norm[1];
+    forms.forEach((form, j) => {
+      const a = formValue(form, re.subarray(k * n, (k + 1) * n));
+      const b = formValue(form, im.subarray(k * n, (k + 1) * n));
+      feed.re[k * by.length + j] = (a * norm[0] + b * norm[1]) / square;
+      feed.im[k * by.length + j] = (b * norm[0] - a * norm[1]) / square;
+    });
+  });
+  const nothing = { re: new Float64Array(feed.re.length), im: new Float64Array(feed.re.length) };
+  const rest = new Float64Array(0);
+  const parts: Parts = {
+    modal: {
+      count: roots.length,
+      rest: 0,
+      inputs: by.length,
+      block: rest,
+      lambdaRe: Float64Array.from(roots, (root) => root.re),
+      lambdaIm: Float64Array.from(roots, (root) => root.im),
+      weight: Float64Array.from(roots, (root) => (root.im === 0 ? 1 : 2)),
+    },
+    free: n,
+    shapeRe: transpose(re, roots.length, n),
+    shapeIm: transpose(im, roots.length, n),
+    shapeRest: rest,
+    direct: new Float64Array(n * by.length),
+    feeds: [feed, nothing, nothing].map((f) => ({ ...f, rest })),
+  };
+  return { at: transferOf(parts), many: blockOf(parts) };
+}
+
+/** Shapes of roots over the coordinates, one a row. */
+function shapeRows({ undamped }: ModalBasis, roots: readonly Root[]): { re: Float64Array; im: Float64Array } {
+  const { count: n, vectors } = undamped;
+  const rows = (part: "re" | "im"): Float64Array => {
+    const given = new Float64Array(roots.length * n);
+    roots.forEach(({ shape }, k) => {
+      given.set(shape[part], k * n);
+    });
+    return roots[0]?.shape.basis === "inertial" ? given : multiply(given, vectors, roots.length, n, n);
+  };
+  return { re: rows("re"), im: rows("im") };
 }
 
 interface Parts {
-  readonly modal: ModalSystem;
+  /** What of a modal system the sum needs. */
+  readonly modal: Pick<
+    ModalSystem,
+    "count" | "rest" | "inputs" | "block" | "lambdaRe" | "lambdaIm" | "weight"
+  >;
   readonly free: number;
   readonly shapeRe: Float64Array;
   readonly shapeIm: Float64Array;
@@ -72,7 +160,114 @@ interface Parts {
   }[];
 }
 
-function transferOf(parts: Parts): Transfer {
+/** Frequencies in one product; chosen by trial. */
+const BLOCK_LANES = 128;
+
+/** x = [Re V, Im V] [a; b] with the shares of all roots at all lanes: one real product. */
+function blockOf(parts: Parts): TransferBlock {
+  const { modal, free, shapeRe, shapeIm, direct } = parts;
+  const { count, inputs } = modal;
+  const [lanes, width] = [BLOCK_LANES, 2 * BLOCK_LANES];
+  const shapes = new Float64Array(free * 2 * count);
+  for (let i = 0; i < free; i++) {
+    shapes.set(shapeRe.subarray(i * count, (i + 1) * count), 2 * i * count);
+    shapes.set(shapeIm.subarray(i * count, (i + 1) * count), (2 * i + 1) * count);
+  }
+  const shares = new Float64Array(2 * count * width);
+  const both = new Float64Array(free * width);
+  return {
+    lanes,
+    free,
+    solve(omega, uRe, uIm, xRe, xIm, good) {
+      good.fill(1);
+      for (let k = 0; k < count; k++) shareLanes(parts, k, omega, uRe, uIm, shares, good);
+      multiply(shapes, shares, free, 2 * count, width, both);
+      for (let i = 0; i < free; i++) {
+        xRe.set(both.subarray(i * width, i * width + lanes), i * lanes);
+        xIm.set(both.subarray(i * width + lanes, (i + 1) * width), i * lanes);
+      }
+      addDirect(direct, free, inputs, lanes, uRe, uIm, xRe, xIm);
+    },
+  };
+}
+
+/** The shares of root k (see `rootShare`) in all lanes: rows k and count + k of `shares`, real parts first. */
+function shareLanes(
+  { modal, feeds }: Parts,
+  k: number,
+  omega: Float64Array,
+  uRe: Float64Array,
+  uIm: Float64Array,
+  shares: Float64Array,
+  good: Uint8Array,
+): void {
+  const { inputs, count } = modal;
+  const [f0, f1, f2] = feeds;
+  const single = modal.weight[k] === 1;
+  const [rootRe, rootIm] = [modal.lambdaRe[k], modal.lambdaIm[k]];
+  const lanes = omega.length;
+  const first = 2 * lanes * k;
+  const second = first + 2 * lanes * count;
+  for (let lane = 0; lane < lanes; lane++) {
+    const w = omega[lane];
+    let re = 0;
+    let im = 0;
+    let otherRe = 0;
+    let otherIm = 0;
+    for (let j = 0; j < inputs; j++) {
+      const at = k * inputs + j;
+      const a = uRe[lane * inputs + j];
+      const b = uIm[lane * inputs + j];
+      const evenRe = f0.re[at] - w * w * f2.re[at];
+      const evenIm = f0.im[at] - w * w * f2.im[at];
+      const oddRe = w * f1.re[at];
+      const oddIm = w * f1.im[at];
+      re += (evenRe - oddIm) * a - (evenIm + oddRe) * b;
+      im += (evenRe - oddIm) * b + (evenIm + oddRe) * a;
+      otherRe += (evenRe + oddIm) * a - (oddRe - evenIm) * b;
+      otherIm += (evenRe + oddIm) * b + (oddRe - evenIm) * a;
+    }
+    const di = w - rootIm;
+    const square = rootRe * rootRe + di * di;
+    if (square === 0) good[lane] = 0;
+    const inverse = 1 / square;
+    const etaRe = (im * di - re * rootRe) * inverse;
+    const etaIm = (-im * rootRe - re * di) * inverse;
+    const oi = w + rootIm;
+    const otherInverse = single ? 0 : 1 / (rootRe * rootRe + oi * oi);
+    const nextRe = (otherIm * oi - otherRe * rootRe) * otherInverse;
+    const nextIm = (-otherIm * rootRe - otherRe * oi) * otherInverse;
+    shares[first + lane] = etaRe + nextRe;
+    shares[first + lanes + lane] = etaIm + nextIm;
+    shares[second + lane] = single ? 0 : nextIm - etaIm;
+    shares[second + lanes + lane] = single ? 0 : etaRe - nextRe;
+  }
+}
+
+/** What inputs move at once: places without inertia, and supports. */
+function addDirect(
+  direct: Float64Array,
+  free: number,
+  inputs: number,
+  lanes: number,
+  uRe: Float64Array,
+  uIm: Float64Array,
+  xRe: Float64Array,
+  xIm: Float64Array,
+): void {
+  for (let i = 0; i < free; i++) {
+    for (let j = 0; j < inputs; j++) {
+      const factor = direct[i * inputs + j];
+      if (factor === 0) continue;
+      for (let lane = 0; lane < lanes; lane++) {
+        xRe[i * lanes + lane] += factor * uRe[lane * inputs + j];
+        xIm[i * lanes + lane] += factor * uIm[lane * inputs + j];
+      }
+    }
+  }
+}
+
+function transferOf(parts: Parts): Transfer["at"] {
   const { modal, free, shapeRe, shapeIm, direct } = parts;
   const { count, rest, inputs } = modal;
   const aRe = new Float64Array(count);
@@ -184,7 +379,7 @@ function rootShare(
 const share = new Float64Array(4);
 
 /** x <- (i omega - A_c)^-1 x for the block. */
-function blockSolver(modal: ModalSystem): (omega: number, re: Float64Array, im: Float64Array) => boolean {
+function blockSolver(modal: Parts["modal"]): (omega: number, re: Float64Array, im: Float64Array) => boolean {
   const { rest, block } = modal;
   const minus = block.map((v) => -v);
   const turn = new Float64Array(rest * rest);

@@ -9,6 +9,7 @@
  * stand a quarter of a cycle apart; those of several elements are added. Preloads and gravity are no part of a steady answer.
  */
 import type { Assembly, QuantityRef } from "../mechanics/assembly.ts";
+import type { StateBlock } from "./frequency-block.ts";
 import { type MotionTerm, quantityParts } from "./time-quantity.ts";
 
 /** Phasors of all coordinates and supports for one group of drives. */
@@ -89,13 +90,19 @@ export function steadyValue(
   out[1] = im;
 }
 
-/** Writes the values of quantities that are all single motions of coordinates, as most are, into row `i`. */
-export type PlainWriter = (
-  state: GroupState,
-  i: number,
-  re: readonly Float64Array[],
-  im: readonly Float64Array[],
-) => void;
+/** Writes the values of quantities that are all single motions of coordinates, as most are. */
+export interface PlainWriter {
+  /** Of one state, into place `i` of each column. */
+  point(state: GroupState, i: number, re: readonly Float64Array[], im: readonly Float64Array[]): void;
+  /** Of the first `count` lanes, into the places from `i` on. */
+  block(
+    block: StateBlock,
+    count: number,
+    i: number,
+    re: readonly Float64Array[],
+    im: readonly Float64Array[],
+  ): void;
+}
 
 /** The quick way for tables of many coordinates; undefined where any quantity is more than that. */
 export function plainMotions(quantities: readonly SteadyQuantity[]): PlainWriter | undefined {
@@ -105,15 +112,42 @@ export function plainMotions(quantities: readonly SteadyQuantity[]): PlainWriter
   const index = Int32Array.from(quantities, (q) => q.linear.index[0]);
   const factor = Float64Array.from(quantities, (q) => q.linear.factor[0]);
   const derivative = Uint8Array.from(quantities, (q) => q.linear.derivative[0]);
-  return ({ omega, xRe, xIm }, i, re, im) => {
-    for (let q = 0; q < index.length; q++) {
-      const a = xRe[index[q]] * factor[q];
-      const b = xIm[index[q]] * factor[q];
-      const d = derivative[q];
-      re[q][i] = d === 0 ? a : d === 1 ? -omega * b : -omega * omega * a;
-      im[q][i] = d === 0 ? b : d === 1 ? omega * a : -omega * omega * b;
-    }
+  return {
+    point({ omega, xRe, xIm }, i, re, im) {
+      for (let q = 0; q < index.length; q++) {
+        const a = xRe[index[q]] * factor[q];
+        const b = xIm[index[q]] * factor[q];
+        const d = derivative[q];
+        re[q][i] = d === 0 ? a : d === 1 ? -omega * b : -omega * omega * a;
+        im[q][i] = d === 0 ? b : d === 1 ? omega * a : -omega * omega * b;
+      }
+    },
+    block(block, count, i, re, im) {
+      for (let q = 0; q < index.length; q++) {
+        writeLanes(block, index[q], factor[q], derivative[q], count, re[q], im[q], i);
+      }
+    },
   };
+}
+
+function writeLanes(
+  { lanes, omega, row, re: xRe, im: xIm }: StateBlock,
+  coordinate: number,
+  factor: number,
+  derivative: number,
+  count: number,
+  re: Float64Array,
+  im: Float64Array,
+  to: number,
+): void {
+  const at = row[coordinate] * lanes;
+  for (let lane = 0; lane < count; lane++) {
+    const a = xRe[at + lane] * factor;
+    const b = xIm[at + lane] * factor;
+    const w = omega[lane];
+    re[to + lane] = derivative === 0 ? a : derivative === 1 ? -w * b : -w * w * a;
+    im[to + lane] = derivative === 0 ? b : derivative === 1 ? w * a : -w * w * b;
+  }
 }
 
 /**

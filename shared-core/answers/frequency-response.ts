@@ -22,7 +22,7 @@ const KEPT_TABLES = 2;
 /** Local maxima below this share of the largest sample cannot win: poles are sampled to a few per cent. */
 const CONTENDER = 0.7;
 /** Nearer to an undamped pole than this share of its frequency, the value is taken from beside it. */
-const TOO_NEAR = 1e-9;
+export const TOO_NEAR = 1e-9;
 /** Width to which a peak is closed in, as a share of the samples around it: the value errs by its square. */
 const PEAK_TOLERANCE = 1e-6;
 /** How far beside: the mean of both sides is then good to the square of it. */

@@ -1,7 +1,9 @@
 /** Phasors of everything at any frequency of the axis, drive group by drive group. */
 import type { Assembly, DriveInfo } from "../mechanics/assembly.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
+import { LANES } from "../numerics/tridiagonal-many.ts";
 import { type DriveGroup, driveGroups, drivePhasor } from "./drive-phasor.ts";
+import { type BlockSolver, type StateBlock, stateBlock } from "./frequency-block.ts";
 import type { Transfer } from "./frequency-modal.ts";
 import type { GroupState } from "./frequency-quantity.ts";
 import type { SteadySystem } from "./frequency-system.ts";
@@ -12,6 +14,10 @@ export interface SteadySolution {
   at(axisHz: number): Outcome<readonly GroupState[]>;
   /** The same for searches and tables: by superposition where that is quicker and agrees with `at`. */
   quick(axisHz: number): Outcome<readonly GroupState[]>;
+  /** The same for many points of an axis at once, where all drives have one frequency and there is such a way. */
+  blocks(): BlockSolver | undefined;
+  /** The states with their frequency and supports set, for motions taken out of a block. */
+  still(axisHz: number): Outcome<readonly GroupState[]>;
 }
 
 /** Largest relative difference at which superposition is trusted. */
@@ -23,12 +29,12 @@ export interface Superposition {
   readonly checkHz: readonly number[];
 }
 
-/** Fails where a drive asked for is no steady one. `superposition` is made when a search first needs it. */
+/** Fails where a drive asked for is no steady one. The first superposition that agrees is taken, when a search needs one. */
 export function steadySolution(
   assembly: Assembly,
   system: SteadySystem,
   by: readonly number[],
-  superposition: () => Superposition | undefined = () => undefined,
+  superpositions: () => Iterable<Superposition> = () => [],
 ): Outcome<SteadySolution> {
   const groups = driveGroups(assembly.drives, by);
   if (!groups.ok) return fail(groups.reason);
@@ -49,16 +55,120 @@ export function steadySolution(
     }
     return solved;
   };
-  let chosen: SteadySolution["quick"] | undefined;
-  const quick = (axisHz: number) => {
-    if (chosen === undefined) {
-      const made = superposition();
-      const superposed = made && superposedSolution(assembly, by, groups.value, states, made.transfer, at);
-      chosen = made && superposed && agrees(at, superposed, states, made.checkHz) ? superposed : at;
+  const still = (axisHz: number) => {
+    for (let g = 0; g < states.length; g++) {
+      const trouble = loadGroup(assembly, groups.value[g], axisHz, states[g]);
+      if (trouble !== undefined) return fail<readonly GroupState[]>(trouble);
     }
-    return chosen(axisHz);
+    return solved;
   };
-  return succeed({ groups: groups.value, at, quick });
+  const laneBlocks = (): BlockSolver | undefined =>
+    states.length === 1 ? laneSolution(assembly, system, groups.value[0], states[0]) : undefined;
+  let chosen: Pick<SteadySolution, "quick" | "blocks"> | undefined;
+  const choose = () => {
+    for (const { transfer, checkHz } of superpositions()) {
+      const superposed = superposedSolution(assembly, by, groups.value, states, transfer, at);
+      if (!agrees(at, superposed, states, checkHz)) continue;
+      return { quick: superposed, blocks: () => superposedBlocks(assembly, by, groups.value, transfer) };
+    }
+    return { quick: at, blocks: laneBlocks };
+  };
+  const quick = (axisHz: number) => {
+    chosen ??= choose();
+    return chosen.quick(axisHz);
+  };
+  const blocks = () => {
+    chosen ??= choose();
+    return chosen.blocks();
+  };
+  return succeed({ groups: groups.value, at, quick, blocks, still });
+}
+
+/** A chain's own way: elimination of many frequencies side by side. */
+function laneSolution(
+  assembly: Assembly,
+  system: SteadySystem,
+  group: DriveGroup,
+  state: GroupState,
+): BlockSolver | undefined {
+  const { lanes, free } = system;
+  if (lanes === undefined) return undefined;
+  const { row, solve } = lanes;
+  const block = stateBlock(free, LANES, row);
+  const loaded = new Uint8Array(LANES).fill(1);
+  const forces = group.drives.every((index) => assembly.drives[index].on.kind === "form");
+  return (axisHz, from) => {
+    block.re.fill(0);
+    block.im.fill(0);
+    for (let lane = 0; lane < LANES; lane++) {
+      const hz = axisHz[Math.min(from + lane, axisHz.length - 1)];
+      block.omega[lane] = 2 * Math.PI * (hz * group.ratio);
+      if (forces) {
+        loadForces(assembly, group, hz * group.ratio, block, lane);
+        continue;
+      }
+      loaded[lane] = loadAll(assembly, system, group, hz, state) === undefined ? 1 : 0;
+      for (let i = 0; i < free; i++) {
+        block.re[row[i] * LANES + lane] = state.xRe[i];
+        block.im[row[i] * LANES + lane] = state.xIm[i];
+      }
+    }
+    solve(block.omega, block.re, block.im, block.good);
+    for (let lane = 0; lane < LANES; lane++) block.good[lane] &= loaded[lane];
+    return block;
+  };
+}
+
+/** Puts forces into the few rows that they act on. */
+function loadForces(
+  assembly: Assembly,
+  group: DriveGroup,
+  frequency: number,
+  { row, re, im, lanes }: StateBlock,
+  lane: number,
+): void {
+  for (const index of group.drives) {
+    const { on } = assembly.drives[index];
+    if (on.kind !== "form") continue;
+    const [a, b] = drivePhasor(assembly.drives[index], frequency);
+    const { coordinates, factors } = on.form;
+    for (let k = 0; k < coordinates.length; k++) {
+      const at = row[coordinates[k]] * lanes + lane;
+      re[at] += factors[k] * a;
+      im[at] += factors[k] * b;
+    }
+  }
+}
+
+/** Superposition of roots at many frequencies as one product; for drives of one frequency. */
+function superposedBlocks(
+  assembly: Assembly,
+  by: readonly number[],
+  groups: readonly DriveGroup[],
+  transfer: Transfer,
+): BlockSolver | undefined {
+  if (groups.length !== 1 || transfer.many === undefined) return undefined;
+  const { lanes, free, solve } = transfer.many;
+  const block = stateBlock(free, lanes);
+  const uRe = new Float64Array(by.length);
+  const uIm = new Float64Array(by.length);
+  const allRe = new Float64Array(by.length * lanes);
+  const allIm = new Float64Array(by.length * lanes);
+  return (axisHz, from) => {
+    for (let lane = 0; lane < lanes; lane++) {
+      const hz = axisHz[Math.min(from + lane, axisHz.length - 1)];
+      block.omega[lane] = 2 * Math.PI * hz * groups[0].ratio;
+      inputPhasors(assembly, by, groups[0], hz, uRe, uIm);
+      allRe.set(uRe, lane * by.length);
+      allIm.set(uIm, lane * by.length);
+    }
+    solve(block.omega, allRe, allIm, block.re, block.im, block.good);
+    // A motion given as a speed has no displacement at 0 Hz.
+    for (let at = 0; at < allRe.length; at++) {
+      if (!Number.isFinite(allRe[at] + allIm[at])) block.good[Math.floor(at / by.length)] = 0;
+    }
+    return block;
+  };
 }
 
 function superposedSolution(
@@ -77,7 +187,7 @@ function superposedSolution(
       const trouble = loadGroup(assembly, groups[g], axisHz, states[g]);
       if (trouble !== undefined) return fail(trouble);
       inputPhasors(assembly, by, groups[g], axisHz, uRe, uIm);
-      if (!transfer(states[g].omega, uRe, uIm, states[g].xRe, states[g].xIm)) return otherwise(axisHz);
+      if (!transfer.at(states[g].omega, uRe, uIm, states[g].xRe, states[g].xIm)) return otherwise(axisHz);
     }
     return solved;
   };
@@ -175,7 +285,8 @@ function loadGroup(
   return undefined;
 }
 
-function solveGroup(
+/** The same with what the supports' motions load the coordinates with. */
+function loadAll(
   assembly: Assembly,
   system: SteadySystem,
   group: DriveGroup,
@@ -184,12 +295,24 @@ function solveGroup(
 ): string | undefined {
   const trouble = loadGroup(assembly, group, axisHz, state);
   if (trouble !== undefined) return trouble;
-  const { omega } = state;
-  const frequency = axisHz * group.ratio;
   for (let s = 0; s < system.supports; s++) {
     if (state.sRe[s] === 0 && state.sIm[s] === 0) continue;
-    system.addSupportLoad(0, omega, s, state.sRe[s], state.sIm[s], state.xRe, state.xIm);
+    system.addSupportLoad(0, state.omega, s, state.sRe[s], state.sIm[s], state.xRe, state.xIm);
   }
+  return undefined;
+}
+
+function solveGroup(
+  assembly: Assembly,
+  system: SteadySystem,
+  group: DriveGroup,
+  axisHz: number,
+  state: GroupState,
+): string | undefined {
+  const trouble = loadAll(assembly, system, group, axisHz, state);
+  if (trouble !== undefined) return trouble;
+  const { omega } = state;
+  const frequency = axisHz * group.ratio;
   if (system.free === 0) return undefined;
   const factored = system.factor(0, omega);
   if (!factored.ok) return `there is no steady response at ${frequency} Hz: nothing holds the motion there`;

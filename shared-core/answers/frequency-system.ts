@@ -17,6 +17,7 @@ import {
 import { bandwidthOf, patternOf, reverseCuthillMcKee } from "../numerics/ordering.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { type SparseMatrix, sparseToBand, sparseToDense } from "../numerics/sparse.ts";
+import { type LaneSolver, tridiagonalLanes } from "../numerics/tridiagonal-many.ts";
 
 /** Modal damping over the free coordinates: free x free, and what a support's velocity adds, free x supports. */
 export interface FreeDamping {
@@ -31,6 +32,8 @@ export interface SteadySystem {
   readonly route: "band" | "dense";
   /** Prepares Z(s), s = sRe + i sIm. Fails where Z is singular. */
   factor(sRe: number, sIm: number): Outcome<true>;
+  /** Z(i omega)^-1 at many omega at once, for chains; coordinate i stands in row `row[i]`. */
+  readonly lanes?: { readonly row: Int32Array; readonly solve: LaneSolver };
   /** x <- Z^-1 x for the last factorisation, one right-hand side over the free coordinates. */
   solve(xRe: Float64Array, xIm: Float64Array): void;
   /** x += -(K_s + i H_s + s C_s + s^2 M_s) times a support's displacement. */
@@ -133,6 +136,7 @@ class BandSystem extends Base implements SteadySystem {
   readonly #xRe: Float64Array;
   readonly #xIm: Float64Array;
   readonly #lossy: boolean;
+  #lanes: { row: Int32Array; solve: LaneSolver } | undefined;
 
   constructor(matrices: SystemMatrices, supports: number, order: Int32Array, bandwidth: number) {
     super(matrices, supports, undefined);
@@ -143,6 +147,19 @@ class BandSystem extends Base implements SteadySystem {
     this.#xRe = new Float64Array(this.free);
     this.#xIm = new Float64Array(this.free);
     this.#lossy = hysteretic.value.some((v) => v !== 0);
+  }
+
+  get lanes(): { row: Int32Array; solve: LaneSolver } | undefined {
+    if (this.#workspace.bandwidth !== 1) return undefined;
+    if (this.#lanes === undefined) {
+      const [m, c, k, h] = this.#bands;
+      const row = new Int32Array(this.free);
+      this.#order.forEach((i, t) => {
+        row[i] = t;
+      });
+      this.#lanes = { row, solve: tridiagonalLanes({ n: this.free, m, c, k, h }) };
+    }
+    return this.#lanes;
   }
 
   factor(sRe: number, sIm: number): Outcome<true> {

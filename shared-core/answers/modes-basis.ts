@@ -7,6 +7,7 @@ import { type FlatForms, flatForms, formValues } from "../mechanics/flat-forms.t
 import { formValue } from "../mechanics/forms.ts";
 import { recoverValues, reduceSystem } from "../mechanics/massless.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
+import { type ComplexRoots, complexRoots } from "./modes-roots.ts";
 import { type UndampedModes, undampedModes } from "./modes-undamped.ts";
 
 /** Unit motion of the base a participation is counted in. */
@@ -23,6 +24,8 @@ export interface ModalBasis {
   lossRatio(r: number): number;
   /** 2 zeta omega of modal damping, with or without the loss factors, for every undamped mode. 1/s. */
   modalRates(withLoss: boolean): Float64Array;
+  /** The complex roots with all damping that the mode table counts. */
+  complexRoots(): Outcome<ComplexRoots>;
   /** Participation of mode r as normalised here, and the moving mass, in each direction that has any. */
   participation(r: number): readonly { direction: Direction; factor: number; total: number }[];
 }
@@ -45,6 +48,7 @@ class Basis implements ModalBasis {
   readonly undamped: UndampedModes;
   readonly #shapes: (Float64Array | undefined)[];
   readonly #lossy: boolean;
+  #roots: Outcome<ComplexRoots> | undefined;
   #springs: FlatForms | undefined;
   #inertias: FlatForms | undefined;
   #loads: ReturnType<typeof directionLoads> | undefined;
@@ -99,6 +103,11 @@ class Basis implements ModalBasis {
       const ratio = this.assembly.modalDamping + (withLoss ? this.lossRatio(r) : 0);
       return 2 * ratio * Math.sqrt(value);
     });
+  }
+
+  complexRoots(): Outcome<ComplexRoots> {
+    this.#roots ??= complexRoots(this.undamped, this.assembly.massDamping, this.modalRates(true));
+    return this.#roots;
   }
 
   participation(r: number): { direction: Direction; factor: number; total: number }[] {

@@ -8,8 +8,14 @@ export type Pair = [number, number];
 const TRUSTED_STEP = 1e-5;
 const FLAT = 1e-5;
 
-/** The root improved, or as it was where the step is not to be trusted (near critical damping). */
-export function newtonStep(root: Root, a: Pair, b: Pair, c: Pair): Root {
+/** The root improved, or as it was where the step is not to be trusted (near critical damping); with its norm. */
+export function newtonStep(given: Root, a: Pair, b: Pair, c: Pair): Root {
+  const { re, im } = improvedRoot(given, a, b, c);
+  const norm = [2 * (a[0] * re - a[1] * im) + b[0], 2 * (a[0] * im + a[1] * re) + b[1]] as const;
+  return { re, im, shape: given.shape, norm };
+}
+
+function improvedRoot(root: Root, a: Pair, b: Pair, c: Pair): Pick<Root, "re" | "im"> {
   const { re, im } = root;
   // a root + b, then (a root + b) root + c and 2 a root + b.
   const linear = [a[0] * re - a[1] * im + b[0], a[0] * im + a[1] * re + b[1]];
@@ -21,7 +27,7 @@ export function newtonStep(root: Root, a: Pair, b: Pair, c: Pair): Root {
   const stepRe = (value[0] * slope[0] + value[1] * slope[1]) / square;
   const stepIm = im === 0 ? 0 : (value[1] * slope[0] - value[0] * slope[1]) / square;
   if (!(Math.hypot(stepRe, stepIm) <= TRUSTED_STEP * Math.hypot(re, im))) return root;
-  return { ...root, re: re - stepRe, im: im - stepIm };
+  return { re: re - stepRe, im: im - stepIm };
 }
 
 /** Adds factor (x + i y)^2. */

@@ -33,6 +33,8 @@ export interface Root {
   /** Not negative. */
   readonly im: number;
   readonly shape: RootShape;
+  /** psi^T (2 root M + C) psi for that shape, [real, imaginary]: what it answers a force with is over this. */
+  readonly norm?: readonly [number, number];
 }
 
 /**
@@ -204,7 +206,7 @@ function singleRoots({ count, free, held, values }: UndampedModes, rates: Float6
     if (r < free) continue;
     for (const { re, im } of oscillatorRoots(rates[r], values[r])) {
       (r < free + held ? left : own).push(roots.length);
-      roots.push(new SingleRoot(re + 0, im, r, count));
+      roots.push(new SingleRoot(re + 0, im, rates[r], r, count));
     }
   }
   return { roots, coupled: false, matching: { ofMode, left } };
@@ -214,14 +216,21 @@ function singleRoots({ count, free, held, values }: UndampedModes, rates: Float6
 class SingleRoot implements Root {
   readonly re: number;
   readonly im: number;
+  readonly #rate: number;
   readonly #mode: number;
   readonly #size: number;
 
-  constructor(re: number, im: number, mode: number, size: number) {
+  constructor(re: number, im: number, rate: number, mode: number, size: number) {
     this.re = re;
     this.im = im;
+    this.#rate = rate;
     this.#mode = mode;
     this.#size = size;
+  }
+
+  get norm(): readonly [number, number] {
+    // The real part of a pair cancels exactly.
+    return [this.im === 0 ? 2 * this.re + this.#rate : 0, 2 * this.im];
   }
 
   get shape(): RootShape {

@@ -7,7 +7,7 @@ import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import type { Mode, ModeTable } from "./answer.ts";
 import { type ModalBasis, namedValues } from "./modes-basis.ts";
 import { matchRoots } from "./modes-match.ts";
-import { complexRoots, type Root } from "./modes-roots.ts";
+import type { Root } from "./modes-roots.ts";
 
 type Shape = Mode["shape"];
 
@@ -16,8 +16,8 @@ const SAME_SIZE = 1e-9;
 
 /** Roots, damping, shapes, participation and energy shares of an assembly's modes. */
 export function modeTable(basis: ModalBasis): Outcome<ModeTable> {
-  const { assembly, undamped } = basis;
-  const found = complexRoots(undamped, assembly.massDamping, basis.modalRates(true));
+  const { undamped } = basis;
+  const found = basis.complexRoots();
   if (!found.ok) return fail(found.reason);
   const { roots, coupled } = found.value;
   const { free, held, count, values } = undamped;

@@ -11,7 +11,7 @@ import { fail, type Outcome, succeed } from "./outcome.ts";
 import type { SymmetricBand } from "./sparse.ts";
 
 /** Ratio of what elimination subtracts from a diagonal entry to that entry, above which LU takes over. */
-const GROWTH_LIMIT = 1e4;
+export const GROWTH_LIMIT = 1e4;
 
 export type BandWorkspace = {
   n: number;

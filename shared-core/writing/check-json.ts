@@ -116,11 +116,11 @@ function answerJson(result: AnswerResult): Json {
     return {
       kind: answer.kind,
       frequencyHz: samples(answer.frequencyHz),
-      series: record([...answer.series], ({ unit, re, im }) => ({
+      series: record([...answer.series], ({ unit, re, im, reason }) => ({
         unit,
         re: samples(re),
         im: samples(im),
-        reason: missingSamples(re, im),
+        reason: reason ?? missingSamples(re, im),
       })),
       peaks: record([...answer.peaks], (peak) => peakJson(peak, "atHz")),
     };

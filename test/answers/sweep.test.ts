@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { modalTransfer } from "../../shared-core/answers/frequency-modal.ts";
+import { modalTransfer, symmetricTransfer } from "../../shared-core/answers/frequency-modal.ts";
 import { steadySolution } from "../../shared-core/answers/frequency-solution.ts";
 import { steadySystem } from "../../shared-core/answers/frequency-system.ts";
 import { modeTable } from "../../shared-core/answers/modes.ts";
@@ -461,8 +461,23 @@ describe("routes", () => {
         damping: 5 * (1 + next()),
       };
     });
-    const base = sketch({ masses, joints: [...joints, ...more] });
+    const base = sketch({ masses, joints: [...joints, ...more], supports: ["floor"] });
     return withDrives(base, forceOn(base, "m0", unit));
+  }
+
+  /** Every two of seven masses joined, three of them damped so that modes couple; two forces. */
+  function mesh(seed: number): Assembly {
+    const next = seeded(seed);
+    const names = ["a", "b", "c", "d", "e", "f", "g"];
+    const masses = Object.fromEntries(names.map((name) => [name, 2 + next()]));
+    const joints = names.flatMap((a, i) => [
+      ...names
+        .slice(i + 1)
+        .map((b) => ({ a, b, stiffness: 500 * (1.2 + next()), damping: i < 3 ? 2 + next() : 0 })),
+      { a, stiffness: 300 * (1.5 + next()), damping: i === 0 ? 30 : 0 },
+    ]);
+    const base = sketch({ masses, joints, modalDamping: 0.01 });
+    return withDrives(base, forceOn(base, "c", sine(2, 1, 0.3)), forceOn(base, "f", sine(5, 1)));
   }
 
   it.each([1, 2, 3])("band and dense agree (seed %d)", (seed) => {
@@ -507,7 +522,7 @@ describe("routes", () => {
     const transfer = unwrap(modalTransfer(assembly, basis, [0, 1]));
     const model = unwrap(modelOf(assembly));
     const plain = unwrap(steadySolution(assembly, model.system, [0, 1]));
-    const quick = unwrap(steadySolution(assembly, model.system, [0, 1], () => ({ transfer, checkHz: [] })));
+    const quick = unwrap(steadySolution(assembly, model.system, [0, 1], () => [{ transfer, checkHz: [] }]));
     for (const hz of [0.3, 2, 4.4, 9, 40]) {
       const exact = unwrap(plain.at(hz)).map(({ xRe, xIm }) => [...xRe, ...xIm]);
       const fast = unwrap(quick.quick(hz)).map(({ xRe, xIm }) => [...xRe, ...xIm]);
@@ -516,6 +531,96 @@ describe("routes", () => {
         expect(Math.abs(v - fast[0][i])).toBeLessThan(1e-11 * scale);
       });
     }
+  });
+
+  it.each([7, 8, 9])(
+    "superposition of the mode table's own roots agrees with the factorisation (seed %d)",
+    (seed) => {
+      const assembly = mesh(seed);
+      const basis = unwrap(modalBasis(assembly));
+      const transfer = symmetricTransfer(assembly, basis, [0, 1]);
+      expect(transfer).toBeDefined();
+      if (transfer === undefined) return;
+      const model = unwrap(modelOf(assembly));
+      const plain = unwrap(steadySolution(assembly, model.system, [0, 1]));
+      const quick = unwrap(steadySolution(assembly, model.system, [0, 1], () => [{ transfer, checkHz: [] }]));
+      for (const hz of [0.3, 2, 4.4, 9, 40]) {
+        const [exact] = unwrap(plain.at(hz)).map(({ xRe, xIm }) => [...xRe, ...xIm]);
+        const [fast] = unwrap(quick.quick(hz)).map(({ xRe, xIm }) => [...xRe, ...xIm]);
+        const scale = Math.max(...exact.map(Math.abs));
+        exact.forEach((v, i) => {
+          expect(Math.abs(v - fast[i])).toBeLessThan(1e-11 * scale);
+        });
+      }
+    },
+  );
+
+  it("has no superposition of its own where something floats, relaxes, or a support moves", () => {
+    const free = sketch({ masses: { a: 1, b: 2 }, joints: [{ a: "a", b: "b", stiffness: 100, damping: 1 }] });
+    const relaxing = sketch({
+      masses: { a: 1 },
+      junctions: ["j"],
+      joints: [
+        { a: "a", stiffness: 50 },
+        { a: "a", b: "j", stiffness: 100 },
+        { a: "j", damping: 1 },
+      ],
+    });
+    for (const base of [free, relaxing]) {
+      const assembly = withDrives(base, forceOn(base, "a", unit));
+      expect(symmetricTransfer(assembly, unwrap(modalBasis(assembly)), [0])).toBeUndefined();
+    }
+    const stood = sketch({
+      masses: { a: 1 },
+      supports: ["floor"],
+      joints: [{ a: "a", b: "floor", stiffness: 9 }],
+    });
+    const moved = withDrives(stood, motionDrive(stood, "floor", 0, unit));
+    expect(symmetricTransfer(moved, unwrap(modalBasis(moved)), [0])).toBeUndefined();
+  });
+
+  // Many points at a time against one by one; both are exact, so that only rounding may part them.
+  it.each(["chain", "mesh", "shaken chain"] as const)(
+    "stored points of a %s are those of single values",
+    (kind) => {
+      const base = kind === "mesh" ? mesh(11) : chain(9, 12, [{ a: "m8", b: "floor", stiffness: 2e4 }]);
+      const assembly =
+        kind === "shaken chain" ? withDrives(base, motionDrive(base, "floor", 2, sine(3, 1, 0.4))) : base;
+      const response = responseOf(assembly);
+      const [first, last] = [assembly.coordinates[0].name, assembly.coordinates[6].name];
+      const plain = [motionOf(assembly, first), motionOf(assembly, last, 1), motionOf(assembly, last, 2)];
+      for (const of of [plain, [...plain, elementOf(assembly, "force", assembly.elements[1].name)]]) {
+        const answer = unwrap(sweepAnswer(unwrap(modelOf(assembly)), sweepAsk(of, { points: 150 })));
+        for (const ref of of) {
+          const series = answer.series.get(ref.text);
+          const scale = Math.max(...(series?.re ?? []).map(Math.abs), ...(series?.im ?? []).map(Math.abs));
+          answer.frequencyHz.forEach((f, i) => {
+            const [re, im] = unwrap(response.at(ref, f));
+            const off = Math.hypot((series?.re[i] ?? Number.NaN) - re, (series?.im[i] ?? Number.NaN) - im);
+            expect(off).toBeLessThan(1e-11 * scale);
+          });
+        }
+      }
+    },
+  );
+
+  it("says why a stored point has no value, beside the series that lacks it", () => {
+    const base = sketch({
+      masses: { a: 1, b: 1 },
+      joints: [
+        { a: "a", stiffness: (2 * Math.PI * 4) ** 2 },
+        { a: "b", stiffness: (2 * Math.PI * 9) ** 2, damping: 5 },
+      ],
+    });
+    const assembly = withDrives(base, forceOn(base, "a", unit));
+    const [a, b] = [motionOf(assembly, "a"), motionOf(assembly, "b")];
+    const ask = sweepAsk([a, b], { fromHz: 4, toHz: 8, spacing: "even", points: 5 });
+    const answer = unwrap(sweepAnswer(unwrap(modelOf(assembly)), ask));
+    expect(answer.frequencyHz[0]).toBe(4);
+    expect(answer.series.get(a.text)?.re[0]).toBeNaN();
+    expect(answer.series.get(a.text)?.reason).toBe("not damped: mode 1 at 4 Hz has no damping");
+    expect(answer.series.get(b.text)?.re.every(Number.isFinite)).toBe(true);
+    expect(answer.series.get(b.text)).not.toHaveProperty("reason");
   });
 
   it("solves a long chain in time that grows with its length only", () => {

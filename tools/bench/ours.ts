@@ -45,12 +45,21 @@ function sweep(i: Instance): number[] {
     (_, k) => ask.fromHz * (ask.toHz / ask.fromHz) ** ((200 * k) / 1999),
   );
   return wanted.map((hz) => {
-    let best = 0;
-    answer.frequencyHz.forEach((f, j) => {
-      if (Math.abs(f - hz) < Math.abs(answer.frequencyHz[best] - hz)) best = j;
-    });
-    return Math.hypot(series.re[best], series.im[best]);
+    const at = nearest(answer.frequencyHz, hz);
+    return Math.hypot(series.re[at], series.im[at]);
   });
+}
+
+/** Place of the value nearest to `x` in an ascending list. */
+function nearest(list: Float64Array, x: number): number {
+  let lo = 0;
+  let hi = list.length - 1;
+  while (hi - lo > 1) {
+    const middle = (lo + hi) >> 1;
+    if (list[middle] <= x) lo = middle;
+    else hi = middle;
+  }
+  return x - list[lo] <= list[hi] - x ? lo : hi;
 }
 
 function history(i: Instance): number[] {
