@@ -195,11 +195,17 @@ export class SheetPanel implements vscode.Disposable {
         await this.#offerRevisions();
         break;
       case "show": {
-        const { case: of, units, knobs, earlier } = message;
+        const { case: of, units, knobs, earlier, motion } = message;
         const found = this.#revisions.find(({ id }) => id === earlier);
         // A page that was restored asks before the list is there.
         const label = found?.label ?? earlier?.slice(0, 7) ?? "";
-        this.#choice = { case: of, units, knobs, ...(earlier && { earlier: { revision: earlier, label } }) };
+        this.#choice = {
+          case: of,
+          units,
+          knobs,
+          ...(motion !== null && { motion }),
+          ...(earlier && { earlier: { revision: earlier, label } }),
+        };
         this.refresh();
         break;
       }

@@ -24,7 +24,8 @@ export class Drawing {
   #named = new Map<string, readonly SVGGElement[]>();
   #lit: ReadonlySet<string> = new Set();
 
-  constructor(page: Page) {
+  /** @param ask  for the frames of the motion that was chosen */
+  constructor(page: Page, ask: () => void) {
     this.#page = page;
     this.#roving = new Roving({
       label: "The system",
@@ -35,6 +36,7 @@ export class Drawing {
     this.player = new Player(page, {
       show: (pose) => this.#pose(pose),
       coordinates: () => this.#scene?.coordinates.length ?? 0,
+      ask,
     });
     this.element = html(
       "div",

@@ -12,5 +12,6 @@ addEventListener("message", ({ data }) => sheet.hear(data));
 page.say({ type: "ready" });
 
 // After a reload the same case, units and moved numbers are asked for again.
-const { case: of, units, knobs = {}, earlier = null } = page.kept;
-if (of !== undefined && units !== undefined) page.say({ type: "show", case: of, units, knobs, earlier });
+const { case: of, units, knobs = {}, earlier = null, motion = null } = page.kept;
+if (of !== undefined && units !== undefined)
+  page.say({ type: "show", case: of, units, knobs, earlier, motion });

@@ -11,6 +11,8 @@ export interface Stage {
   /** undefined: at rest. */
   show(pose: Float64Array | undefined): void;
   coordinates(): number;
+  /** Frames of the chosen history are not here yet. */
+  ask(): void;
 }
 
 /** Sets a drawing in motion: which motion, how fast, where in it. Nothing moves unless somebody asks. */
@@ -29,6 +31,9 @@ export class Player {
   #at = 0;
   #frame: number | undefined;
   #last = 0;
+  #asked = false;
+  /** Begins to move when its frames have come. */
+  #waits = false;
 
   constructor(page: Page, stage: Stage) {
     this.#page = page;
@@ -71,6 +76,10 @@ export class Player {
     this.#controls.hidden = known === undefined;
     if (known === undefined) this.pause();
     this.#move(this.#at);
+    if (known === undefined || !isAwaited(known)) {
+      this.#asked = false;
+      if (this.#waits && known) this.play();
+    } else this.#askOnce();
   }
 
   /** `starts`: it also begins to move, unless motion is unwelcome here; the extreme is shown then. */
@@ -80,11 +89,24 @@ export class Player {
     this.update(this.#all);
     if (this.#motion === undefined) return;
     this.#page.announce(this.#motion.label);
-    if (starts && !reducedMotion()) this.play();
+    this.#waits = false;
+    if (isAwaited(this.#motion)) {
+      this.#waits = starts && !reducedMotion();
+      this.pause();
+      this.#askOnce();
+    } else if (starts && !reducedMotion()) this.play();
+  }
+
+  /** What has no frames however often it is asked for stays still. */
+  #askOnce(): void {
+    if (this.#asked) return;
+    this.#asked = true;
+    this.#stage.ask();
   }
 
   play(): void {
-    if (this.#motion === undefined || this.playing) return;
+    if (this.#motion === undefined || isAwaited(this.#motion) || this.playing) return;
+    this.#waits = false;
     this.#play.textContent = "pause";
     this.#last = performance.now();
     if (this.#motion.kind === "history" && this.#at >= 1) this.#at = 0;
@@ -114,7 +136,8 @@ export class Player {
     this.#at = at;
     this.#place.value = String(at);
     this.#sayPlace();
-    this.#stage.show(this.#motion && poseOf(this.#motion, this.#stage.coordinates(), at));
+    const shown = this.#motion && !isAwaited(this.#motion) ? this.#motion : undefined;
+    this.#stage.show(shown && poseOf(shown, this.#stage.coordinates(), at));
   }
 
   #sayPlace(): void {
@@ -138,6 +161,8 @@ export class Player {
 export const reducedMotion = (): boolean =>
   document.body.classList.contains("vscode-reduce-motion") ||
   matchMedia("(prefers-reduced-motion: reduce)").matches;
+
+const isAwaited = (motion: SheetMotion): boolean => motion.kind === "history" && motion.frames === 0;
 
 const lengthOf = ({ frames, stepS }: Extract<SheetMotion, { kind: "history" }>): number =>
   Math.max(0, frames - 1) * stepS;

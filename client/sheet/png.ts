@@ -13,8 +13,8 @@ const INKED = [
   "paint-order",
 ];
 
-/** SVG text as a PNG on the ground of the page. */
-export async function pngOf(svgText: string): Promise<Blob> {
+/** SVG text as a PNG on the ground of the page, in base64. */
+export async function pngOf(svgText: string): Promise<string> {
   const image = new Image();
   image.src = `data:image/svg+xml;charset=utf-8,${encodeURIComponent(svgText)}`;
   await image.decode();
@@ -26,23 +26,15 @@ export async function pngOf(svgText: string): Promise<Blob> {
   context.fillStyle = getComputedStyle(document.body).backgroundColor;
   context.fillRect(0, 0, canvas.width, canvas.height);
   context.drawImage(image, 0, 0, canvas.width, canvas.height);
-  return new Promise((resolve, reject) =>
-    canvas.toBlob(
-      (blob) => (blob ? resolve(blob) : reject(new Error("the picture is too large"))),
-      "image/png",
-    ),
-  );
+  // `toBlob` waits until the page has nothing to do, which may be seconds.
+  const url = canvas.toDataURL("image/png");
+  const start = "data:image/png;base64,";
+  if (!url.startsWith(start)) throw new Error("the picture is too large");
+  return url.slice(start.length);
 }
 
-export async function bytesAsBase64(blob: Blob): Promise<string> {
-  const bytes = new Uint8Array(await blob.arrayBuffer());
-  let text = "";
-  for (let i = 0; i < bytes.length; i += CHUNK) text += String.fromCharCode(...bytes.subarray(i, i + CHUNK));
-  return btoa(text);
-}
-
-/** Arguments that a call takes everywhere. */
-const CHUNK = 8192;
+export const pngBlob = (base64: string): Blob =>
+  new Blob([Uint8Array.from(atob(base64), (character) => character.charCodeAt(0))], { type: "image/png" });
 
 /** A picture of the page as SVG text without the page's style sheet. */
 export function standalone(picture: SVGSVGElement): string {

@@ -45,7 +45,7 @@ export class Sheet {
         this.#ask({});
       },
     });
-    this.#drawing = new Drawing(page);
+    this.#drawing = new Drawing(page, () => this.#ask({}));
     const chooseMotion = (id: string) => this.#chooseMotion(id);
     this.#ruler = new RulerView(page, chooseMotion);
     this.#cards = new Cards(page, { chooseMotion });
@@ -187,6 +187,7 @@ export class Sheet {
       units: change.units ?? this.#page.kept.units ?? content.units,
       knobs: this.#knobs.moved,
       earlier: this.#page.kept.earlier ?? null,
+      motion: this.#page.kept.motion || null,
     };
     this.#page.keep({ case: asked.case, units: asked.units });
     this.#page.say({ type: "show", ...asked });

@@ -1,6 +1,6 @@
 import { html, wordButton } from "./dom.ts";
 import type { Page } from "./page.ts";
-import { bytesAsBase64, pngOf } from "./png.ts";
+import { pngBlob, pngOf } from "./png.ts";
 
 export interface Portable {
   /** File name without its ending. */
@@ -63,7 +63,7 @@ export class TakeAway {
   }
 
   async #copyPng(): Promise<string> {
-    await navigator.clipboard.write([new ClipboardItem({ "image/png": await pngOf(this.#svg()) })]);
+    await navigator.clipboard.write([new ClipboardItem({ "image/png": pngBlob(await pngOf(this.#svg())) })]);
     return "copied";
   }
 
@@ -73,7 +73,7 @@ export class TakeAway {
   }
 
   async #savePng(): Promise<string> {
-    const data = await bytesAsBase64(await pngOf(this.#svg()));
+    const data = await pngOf(this.#svg());
     this.#page.say({ type: "picture", name: this.#of.name, format: "png", data });
     return "";
   }

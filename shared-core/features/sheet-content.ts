@@ -18,6 +18,8 @@ export interface SheetChoice {
   readonly case?: string;
   /** Moved knobs: SI values of lets, rates in Hz. */
   readonly knobs?: Readonly<Record<string, number>>;
+  /** Id of the motion that is shown. */
+  readonly motion?: string;
 }
 
 const CAUTIONS = [
@@ -62,7 +64,7 @@ export function sheetContent(view: View, choice: SheetChoice = {}, earlier?: Ear
       shownValues(shown.instance, view.units, (si, value) => show(numbers, si, value)),
     ),
     ruler: rulerOf(shown, before?.ok ? before.report : undefined),
-    motions: motionsOf(numbers, shown),
+    motions: motionsOf(numbers, shown, choice.motion),
     cards: cardsOf({
       view,
       numbers,

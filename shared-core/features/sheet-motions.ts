@@ -11,8 +11,9 @@ const MOST_MODES = 20;
 const MOST_VALUES = 6_000;
 const MOST_FRAMES = 400;
 
-export function motionsOf(numbers: Numbers, report: CaseReport): SheetMotion[] {
-  return [...modeMotions(numbers, report), ...historyMotions(report)];
+/** @param chosen id of the motion that is shown; frames of a history take long and are many */
+export function motionsOf(numbers: Numbers, report: CaseReport, chosen: string | undefined): SheetMotion[] {
+  return [...modeMotions(numbers, report), ...historyMotions(report, chosen)];
 }
 
 function modeMotions(numbers: Numbers, { modes }: CaseReport): SheetMotion[] {
@@ -43,18 +44,24 @@ function scaled({ re, im }: { readonly re: Float64Array; readonly im: Float64Arr
   return { re: re.map((part) => part / largest), im: im.map((part) => part / largest) };
 }
 
-function historyMotions(report: CaseReport): SheetMotion[] {
+function historyMotions(report: CaseReport, chosen: string | undefined): SheetMotion[] {
+  if (report.instance.assembly.coordinates.length === 0) return [];
   return report.instance.asks.flatMap((ask) => {
     if (ask.kind !== "history" || report.answers.get(ask.name)?.ok !== true) return [];
-    return historyMotion(report, ask) ?? [];
+    const named = { kind: "history", id: `history:${ask.name}`, label: `history ${ask.name}` } as const;
+    if (named.id !== chosen) return { ...named, frames: 0, stepS: 0, values: new Float64Array() };
+    const frames = historyFrames(report, ask);
+    return frames === undefined ? [] : { ...named, ...frames };
   });
 }
 
+type Frames = Pick<Extract<SheetMotion, { kind: "history" }>, "frames" | "stepS" | "values">;
+
 /** Displacements of all coordinates at equal steps; undefined where one of them cannot be followed. */
-function historyMotion({ analysis, instance }: CaseReport, ask: HistoryAsk): SheetMotion | undefined {
+function historyFrames({ analysis, instance }: CaseReport, ask: HistoryAsk): Frames | undefined {
   const response = analysis.timeResponse(ask);
   const { coordinates } = instance.assembly;
-  if (!response.ok || coordinates.length === 0) return undefined;
+  if (!response.ok) return undefined;
   const frames = Math.max(2, Math.min(MOST_FRAMES, Math.floor(MOST_VALUES / coordinates.length)));
   const values = new Float64Array(frames * coordinates.length);
   let largest = 0;
@@ -72,9 +79,6 @@ function historyMotion({ analysis, instance }: CaseReport, ask: HistoryAsk): She
     }
   }
   return {
-    kind: "history",
-    id: `history:${ask.name}`,
-    label: `history ${ask.name}`,
     frames,
     stepS: ask.lasting / (frames - 1),
     values: largest > 0 ? values.map((value) => value / largest) : values,

@@ -49,7 +49,8 @@ export interface SheetEarlier {
 
 /**
  * Values of all coordinates of the scene, scaled so that the largest size is 1. A mode: coordinate i moves as
- * Re((re[i] + i im[i]) e^{i phase}). A history: `frames` rows of `coordinates` values, at equal steps.
+ * Re((re[i] + i im[i]) e^{i phase}). A history: `frames` rows of `coordinates` values, at equal steps; none unless it
+ * is the chosen motion.
  */
 export type SheetMotion =
   | {

@@ -8,15 +8,27 @@ CODES.forEach((code, value) => {
 /** Rows of numbers as base64 (RFC 4648, section 4) of their bytes, least significant first. */
 export function toBase64(row: Float64Array): string {
   const bytes = bytesOf(row);
-  const out = new Uint8Array(4 * Math.ceil(bytes.length / 3)).fill(PAD);
-  for (let i = 0, at = 0; i < bytes.length; i += 3, at += 4) {
-    const three = (bytes[i] << 16) | ((bytes[i + 1] ?? 0) << 8) | (bytes[i + 2] ?? 0);
-    const digits = Math.min(3, bytes.length - i) + 1;
-    for (let digit = 0; digit < digits; digit++) out[at + digit] = CODES[(three >> (18 - 6 * digit)) & 63];
+  const { length } = bytes;
+  const whole = length - (length % 3);
+  const out = new Uint8Array(4 * Math.ceil(length / 3)).fill(PAD);
+  let at = 0;
+  // The shapes of a history are megabytes: each step is written out.
+  for (let i = 0; i < whole; i += 3) {
+    const three = (bytes[i] << 16) | (bytes[i + 1] << 8) | bytes[i + 2];
+    out[at++] = CODES[three >> 18];
+    out[at++] = CODES[(three >> 12) & 63];
+    out[at++] = CODES[(three >> 6) & 63];
+    out[at++] = CODES[three & 63];
+  }
+  if (whole < length) {
+    const rest = (bytes[whole] << 8) | (whole + 1 < length ? bytes[whole + 1] : 0);
+    out[at++] = CODES[rest >> 10];
+    out[at++] = CODES[(rest >> 4) & 63];
+    if (whole + 1 < length) out[at++] = CODES[(rest << 2) & 63];
   }
   let text = "";
   for (let i = 0; i < out.length; i += CHUNK) {
-    text += String.fromCharCode(...out.subarray(i, i + CHUNK));
+    text += String.fromCharCode.apply(undefined, out.subarray(i, i + CHUNK) as unknown as number[]);
   }
   return text;
 }
@@ -26,22 +38,34 @@ export function fromBase64(text: string): Float64Array {
   const end = text.indexOf("=");
   const digits = end < 0 ? text.length : end;
   const bytes = new Uint8Array(8 * Math.floor((digits * 3) / 32));
-  for (let i = 0; i < bytes.length; i++) {
-    const at = Math.floor((i * 8) / 6);
-    const pair = (valueAt(text, at) << 6) | valueAt(text, at + 1);
-    bytes[i] = (pair >> (4 - ((i * 8) % 6))) & 255;
+  const { length } = bytes;
+  for (let i = 0, at = 0; i < length; i += 3, at += 4) {
+    const four =
+      (valueAt(text, at) << 18) |
+      (valueAt(text, at + 1) << 12) |
+      (valueAt(text, at + 2) << 6) |
+      valueAt(text, at + 3);
+    // What lies behind the end is not kept.
+    bytes[i] = four >> 16;
+    bytes[i + 1] = four >> 8;
+    bytes[i + 2] = four;
   }
+  if (LEAST_FIRST) return new Float64Array(bytes.buffer);
   const view = new DataView(bytes.buffer);
-  return Float64Array.from({ length: bytes.length / 8 }, (_, i) => view.getFloat64(8 * i, true));
+  return Float64Array.from({ length: length / 8 }, (_, i) => view.getFloat64(8 * i, true));
 }
 
 const PAD = "=".charCodeAt(0);
 /** Arguments that a call takes in every host. */
 const CHUNK = 8192;
+/** How this machine keeps its numbers. */
+const LEAST_FIRST = new Uint8Array(new Uint16Array([1]).buffer)[0] === 1;
 
-const valueAt = (text: string, at: number): number => VALUES[text.charCodeAt(at) & 127] ?? 0;
+/** 0 for what is no digit, and behind the end of the text, where there is no code. */
+const valueAt = (text: string, at: number): number => VALUES[text.charCodeAt(at) & 127];
 
 function bytesOf(row: Float64Array): Uint8Array {
+  if (LEAST_FIRST) return new Uint8Array(row.buffer, row.byteOffset, row.byteLength);
   const bytes = new Uint8Array(8 * row.length);
   const view = new DataView(bytes.buffer);
   row.forEach((value, i) => {

@@ -43,6 +43,8 @@ export interface SheetParams {
   readonly units?: UnitSystem;
   /** Moved knobs: name of a `let` to SI value, rates in Hz. */
   readonly knobs?: Readonly<Record<string, number>>;
+  /** Id of the motion that is shown: of a history only the chosen one comes with its frames. */
+  readonly motion?: string;
   /** The revision whose answer is drawn under today's; the client must answer `READ_FILE` for it. */
   readonly earlier?: { readonly revision: string; readonly label: string };
 }
@@ -104,6 +106,8 @@ export type FromSheet =
       readonly knobs: Readonly<Record<string, number>>;
       /** null: none. */
       readonly earlier: string | null;
+      /** Id of the motion that is shown; null: none. */
+      readonly motion: string | null;
     }
   /** Write the value of a `let` into the text. */
   | { readonly type: "write"; readonly protocol: number; readonly name: string; readonly value: number }
@@ -173,7 +177,7 @@ export function readFromSheet(message: unknown): FromSheet | undefined {
       texts(it, "case") &&
       UNITS.has(it.units as string) &&
       numbers(it.knobs) &&
-      (it.earlier === null || typeof it.earlier === "string")) ||
+      [it.earlier, it.motion].every((each) => each === null || typeof each === "string")) ||
     (it.type === "write" && texts(it, "name") && Number.isFinite(it.value)) ||
     (it.type === "csv" && texts(it, "ask", "case")) ||
     (it.type === "picture" && texts(it, "name", "data") && (it.format === "svg" || it.format === "png"));

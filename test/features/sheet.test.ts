@@ -138,7 +138,9 @@ describe("cards", () => {
 describe("motions", () => {
   it("are the modes and the histories, scaled to one", () => {
     expect(content.motions.map(({ id }) => id)).toEqual(["mode:1", "history:blow"]);
-    const [mode, history] = content.motions;
+    const [mode, history] = sheetContent(view, { motion: "history:blow" }).motions;
+    // Its frames are many: they come when they are wanted.
+    expect(content.motions[1]).toMatchObject({ frames: 0, values: new Float64Array() });
     expect(mode).toMatchObject({ kind: "mode", re: Float64Array.of(1), im: Float64Array.of(0) });
     if (history.kind !== "history") throw new Error("no history");
     expect(history.values).toHaveLength(history.frames * content.scene.coordinates.length);

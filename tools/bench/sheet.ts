@@ -11,6 +11,14 @@ import { openSheet, sheetProgram } from "../../test/sheet/harness/page.ts";
 import { openBrowser } from "../workbench/browser.mjs";
 import { benchModel, modelText } from "./model.mjs";
 
+const EXAMPLES = [
+  "gate-actuator",
+  "instrument-bench",
+  "pump-line",
+  "quay-generator",
+  "transport-crate",
+  "ventilation-fan",
+];
 const EDITS = 20;
 const FRAMES = 120;
 const LONG = 100_000;
@@ -42,6 +50,7 @@ try {
   );
   console.log("| what | median | 95 % |\n|---|---|---|");
   for (const n of [10, 100, 300]) await edits(n);
+  for (const name of EXAMPLES) await knobs(name);
   await frames();
   await memory();
 } finally {
@@ -78,6 +87,23 @@ async function edits(n: number): Promise<void> {
     shows.push(computed + (await repaint(page, message)));
   }
   row(`knob to repainted, ${n} coordinates`, shows);
+  await page.close();
+}
+
+/** A knob of an example, as it is dragged: the core's answer and the page's work. */
+async function knobs(name: string): Promise<void> {
+  const host = new SheetHost(`${name}.thrum`, example(name));
+  const { page } = await openSheet(browser, host);
+  const [knob] = unpackContent((host.message({}) as Extract<ToSheet, { type: "content" }>).content).knobs;
+  const times: number[] = [];
+  for (let i = 1; i <= EDITS; i++) {
+    const value = knob.from + ((knob.to - knob.from) * i) / (EDITS + 1);
+    const start = performance.now();
+    const message = host.message({ knobs: { [knob.name]: value } });
+    const computed = performance.now() - start;
+    times.push(computed + (await repaint(page, message)));
+  }
+  row(`knob to repainted, ${name}`, times);
   await page.close();
 }
 

@@ -24,6 +24,7 @@ export interface Choice {
   readonly knobs?: Readonly<Record<string, number>>;
   /** Id of a revision. */
   readonly earlier?: string | null;
+  readonly motion?: string | null;
 }
 
 /** A text as it was. */
@@ -79,7 +80,8 @@ export class SheetHost {
       label: revision.label,
       model: understand(this.file, revision.text, NO_FILES),
     };
-    const content = packContent(sheetContent(view, choice, earlier));
+    const { motion, ...rest } = choice;
+    const content = packContent(sheetContent(view, { ...rest, ...(motion && { motion }) }, earlier));
     return {
       type: "content",
       protocol: SHEET_VERSION,
