@@ -4,6 +4,7 @@ import { movedAnalysis } from "../answers/analysis-moved.ts";
 import { analyse } from "../answers/analysis-of.ts";
 import { evaluateExpression, instantiate } from "../model/instantiate.ts";
 import type { Instance, Model, Overrides } from "../model/model.ts";
+import { instanceOf } from "../model/understand.ts";
 import { judgeSteps, judgeWith } from "./judge-with.ts";
 import type { FileReport, JudgeOptions } from "./report.ts";
 import type { CostClass } from "./rule.ts";
@@ -55,7 +56,7 @@ const SOURCES: Sources = {
     }
     const kept = KEPT.get(model) ?? [];
     KEPT.set(model, kept);
-    kept[caseIndex] ??= instantiate(model, caseIndex);
+    kept[caseIndex] ??= (caseIndex === 0 ? instanceOf(model) : undefined) ?? instantiate(model, caseIndex);
     return kept[caseIndex];
   },
   analyse(instance: Instance): Analysis {

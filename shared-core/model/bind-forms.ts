@@ -1,4 +1,5 @@
 import type { LinearForm } from "../mechanics/assembly.ts";
+import { coordinateForm } from "../mechanics/forms.ts";
 import type { Frame } from "./code.ts";
 import type { Findings } from "./findings.ts";
 import type { Plan, PlannedBind } from "./plan.ts";
@@ -40,7 +41,10 @@ export function bindForms(plan: Plan, frame: Frame, findings: Findings): BoundFo
   plan.coordinates.forEach((_, i) => {
     if (!solved.rows.has(i)) freeIndex.set(i, freeIndex.size);
   });
-  const forms = plan.coordinates.map((_, i) => formOf(solved.rows.get(i) ?? unitRow(i), freeIndex));
+  const forms = plan.coordinates.map((_, i) => {
+    const row = solved.rows.get(i);
+    return row === undefined ? coordinateForm(freeIndex.get(i) ?? 0) : formOf(row, freeIndex);
+  });
   return { free: freeIndex.size, forms };
 }
 

@@ -25,6 +25,8 @@ export interface Draft {
   /** Path of the model's file, to which other paths are relative. */
   readonly path: string;
   readonly statements: readonly Described[];
+  /** Those that hold their name: of two with one name the first counts. */
+  readonly counted: readonly Described[];
   readonly byName: ReadonlyMap<string, Described>;
   readonly coordinates: PlannedCoordinate[];
   readonly coordinateByName: Map<string, number>;

@@ -100,8 +100,8 @@ function planElement(
 ): PlannedStatement {
   const { node, description } = statement;
   const numbers = new Map<string, PlannedNumber>();
-  const ats = new Map<string, { value: PlannedNumber; at: PlannedNumber }>();
-  const words = new Map<string, string>();
+  let ats = NO_ATS;
+  let words = NO_WORDS;
   const positive = new Set<string>();
   const countGiven = details.get("count");
   const count = countGiven && planQuantity(countGiven, motion, name, draft);
@@ -124,15 +124,19 @@ function planElement(
     } else if (content.is === "at") {
       const at = planAt(given, motion, name, copies, draft);
       if (at === undefined) spoil(draft, name);
-      else ats.set(key, at);
+      else ats = new Map([...ats, [key, at]]);
     } else if (content.is === "word") {
       const word = wordOf(given, content.words, draft.findings);
       if (word === undefined) spoil(draft, name);
-      else words.set(key, word);
+      else words = new Map([...words, [key, word]]);
     }
   }
   return { name, node, description, motion, ends, numbers, ats, words, positive };
 }
+
+/** Shared by the many elements that have none. */
+const NO_ATS: PlannedStatement["ats"] = new Map();
+const NO_WORDS: PlannedStatement["words"] = new Map();
 
 /** Why N/m does not fit between things that turn. */
 function turningHint({ node }: Described, given: Given, motion: Motion): string | undefined {

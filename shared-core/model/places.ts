@@ -1,8 +1,10 @@
 import type { Motion } from "../mechanics/builder.ts";
-import type { NameNode, PathNode, StatementNode } from "../syntax/tree.ts";
+import type { Expression, NameNode, PathNode, StatementNode } from "../syntax/tree.ts";
+import { sameKind } from "../units/quantity.ts";
 import { DIRECTIONS } from "../vocabulary/coordinate-quantities.ts";
 import { type Given, givenDetails, hasRequired, sayUnknownName, singleValue, wordOf } from "./details.ts";
 import { addPlanned, type Draft, sayNotYet, spoil } from "./draft.ts";
+import { meaningOf } from "./expression.ts";
 import { Findings, orList, replaceFix } from "./findings.ts";
 import { aKeyword, type Described, nameSpan } from "./names.ts";
 import { planNumber } from "./number.ts";
@@ -92,12 +94,16 @@ function declareCoordinate(
     motion,
     ends: { name: { is: "coordinate", index, motion } },
     numbers,
-    ats: new Map(),
-    words: new Map(),
+    ats: NO_ATS,
+    words: NO_WORDS,
     positive,
   };
   addPlanned(draft, planned);
 }
+
+/** What moves has neither. */
+const NO_ATS: PlannedStatement["ats"] = new Map();
+const NO_WORDS: PlannedStatement["words"] = new Map();
 
 /**
  * Whether a `mass` is given as a moment of inertia, or an `inertia` as a mass: that is said here, and as it stays
@@ -114,12 +120,20 @@ function movesOtherwise(
   const given = details.get(keyword);
   const [item] = given?.items ?? [];
   if (other === undefined || given === undefined || item?.kind !== "value") return false;
+  if (isLiteralOf(item.expression, wantedOf(keyword as "mass" | "inertia"), draft)) return false;
   const quiet = { ...draft.numbers, findings: new Findings(), newDraw: () => 0 };
   if (planNumber(item, quiet, wantedOf(other as "mass" | "inertia"), name) === undefined) return false;
   spoil(draft, name);
   const hint = other === "inertia" ? "what turns is an `inertia`" : "what slides is a `mass`";
   if (planQuantity(given, motion, name, draft, { hint }) !== undefined) return false;
   return true;
+}
+
+/** Whether an expression is plainly what is wanted: a literal with a unit that can only be read as that unit. */
+function isLiteralOf(node: Expression, wanted: Wanted | undefined, { numbers }: Draft): boolean {
+  if (node.kind !== "number" || node.unit?.factors.length !== 1 || node.value === 0) return false;
+  const unit = meaningOf(node.unit, { ...numbers, findings: new Findings(), root: node });
+  return unit !== undefined && wanted?.kinds.length === 1 && sameKind(wanted.kinds[0], unit.kind);
 }
 
 /** The number of a detail whose content is a quantity; undefined where it has an error, which has been said. */

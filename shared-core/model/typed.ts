@@ -76,6 +76,16 @@ export const textOf = (c: { readonly tree: Tree }, span: Span): string =>
 
 /** What a measure wants; undefined where any dimension will do. */
 export function wantedOf(measure: Measure, motion: Motion = "sliding", hint?: string): Wanted | undefined {
+  if (hint !== undefined) return newWanted(measure, motion, hint);
+  const key = `${measure} ${motion}`;
+  if (!WANTED.has(key)) WANTED.set(key, newWanted(measure, motion));
+  return WANTED.get(key);
+}
+
+/** What measures want, once for all statements that ask: as many as there are measures and motions. */
+const WANTED = new Map<string, Wanted | undefined>();
+
+function newWanted(measure: Measure, motion: Motion, hint?: string): Wanted | undefined {
   const kind = dimensionOf(measure, motion);
   if (kind === undefined) return undefined;
   return { kinds: [kind], says: wordsOf(measure, motion), units: unitsOf(measure, motion), hint };

@@ -21,7 +21,7 @@ import { planJoin } from "./joins.ts";
 import { understandLets } from "./let-order.ts";
 import { type FileContext, LetTable } from "./lets.ts";
 import { planLimit } from "./limits.ts";
-import type { CaseInfo, Entity, FileReader, Model } from "./model.ts";
+import type { CaseInfo, Entity, FileReader, Instance, Model } from "./model.ts";
 import { collectNames, type Described, describeStatements, nameSpan } from "./names.ts";
 import { withoutConsequences } from "./one-slip.ts";
 import { PARSING } from "./parsing.ts";
@@ -86,9 +86,12 @@ function newDraft(
 ): Draft {
   const lets = new LetTable(new Set(main.names.values()));
   const byName = new Map<string, Described>();
-  for (const each of statements) {
-    if (each.name !== undefined && main.names.get(each.name)?.node === each.node) byName.set(each.name, each);
-  }
+  const counted = statements.filter((each) => {
+    if (each.name === undefined) return true;
+    const holds = main.names.get(each.name)?.node === each.node;
+    if (holds) byName.set(each.name, each);
+    return holds;
+  });
   return {
     main,
     findings: main.findings,
@@ -97,6 +100,7 @@ function newDraft(
     reader,
     path,
     statements,
+    counted,
     byName,
     coordinates: [],
     coordinateByName: new Map(),
@@ -118,13 +122,8 @@ function newDraft(
   };
 }
 
-/** Statements of a keyword that hold their name; of two with one name the first counts. */
-function statementsOf(draft: Draft, ...keywords: readonly string[]): Described[] {
-  return draft.statements.filter(
-    ({ node, name }) =>
-      keywords.includes(node.keyword.text) && (name === undefined || draft.byName.get(name)?.node === node),
-  );
-}
+const statementsOf = (draft: Draft, keyword: string): Described[] =>
+  draft.counted.filter(({ node }) => node.keyword.text === keyword);
 
 function planNumbers(draft: Draft, uses: Uses): void {
   for (const { context } of uses.all) understandLets(context, draft.lets);
@@ -179,10 +178,7 @@ function sayTooLarge(draft: Draft): void {
 }
 
 const familyOf = (draft: Draft, family: string): Described[] =>
-  draft.statements.filter(
-    ({ description, name, node }) =>
-      description.family === family && (name === undefined || draft.byName.get(name)?.node === node),
-  );
+  draft.counted.filter(({ description }) => description.family === family);
 
 function planAsked(draft: Draft): Asked {
   const asks = new Map<string, PlannedAsk>();
@@ -253,11 +249,25 @@ function planOf(draft: Draft, asked: Asked, lets: readonly (readonly PlannedLet[
  * there is none anyway, binds may be missing, so nothing is said about how they go together.
  */
 function withNumbersAsWritten(model: Model): Model {
-  const found = instantiate(model, 0).diagnostics;
+  const instance = instantiate(model, 0);
+  const found = instance.diagnostics;
   const diagnostics = model.buildable ? found : found.filter((each) => each.code !== "inconsistent-bind");
-  if (diagnostics.length === 0) return model;
+  if (diagnostics.length === 0) {
+    newest = instance;
+    return model;
+  }
   const buildable = model.buildable && !diagnostics.some((each) => each.severity === "error");
   return { ...model, buildable, diagnostics: inOrder([...model.diagnostics, ...diagnostics]) };
+}
+
+/** The numbers as written of the model that was understood last, for whom judges it next. */
+let newest: Instance | undefined;
+
+/** The model with its numbers as written, where they were put in just now: else undefined. Hands it out once. */
+export function instanceOf(model: Model): Instance | undefined {
+  const known = newest?.model === model && newest.diagnostics.length === 0 ? newest : undefined;
+  newest = undefined;
+  return known;
 }
 
 const inOrder = (diagnostics: readonly Diagnostic[]): Diagnostic[] =>

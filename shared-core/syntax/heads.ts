@@ -150,9 +150,9 @@ function tuple(c: Cursor, hint: string): TupleNode | undefined {
 
 /** `run-up`: one name in the writer's mind, three tokens here. */
 function hyphenatedName(c: Cursor): NameNode | undefined {
-  const tokens = c.ahead(3);
-  if (tokens.length < 3 || c.state.textOf(tokens[1]) !== "-") return undefined;
-  const [first, hyphen, rest] = tokens;
+  if (c.tokenAhead(1)?.length !== 1) return undefined;
+  const [first, hyphen, rest] = c.ahead(3);
+  if (rest === undefined || c.state.textOf(hyphen) !== "-") return undefined;
   const glued = first.offset + first.length === hyphen.offset && hyphen.offset + 1 === rest.offset;
   if (!glued || (rest.kind !== "name" && rest.kind !== "number")) return undefined;
   const whole = span(first.offset, rest.offset + rest.length);

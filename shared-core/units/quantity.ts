@@ -29,7 +29,10 @@ export const kindOf = (of: Dimension): Kind => ({ dimension: of, rate: false });
 const EXPONENT_ROUNDING = 1e-9;
 
 export function sameDimension(a: Dimension, b: Dimension): boolean {
-  return a.every((exponent, i) => Math.abs(exponent - b[i]) < EXPONENT_ROUNDING);
+  for (let i = 0; i < a.length; i++) {
+    if (!(Math.abs(a[i] - b[i]) < EXPONENT_ROUNDING)) return false;
+  }
+  return true;
 }
 
 export function sameKind(a: Kind, b: Kind): boolean {

@@ -1,4 +1,5 @@
 import type { Mode, ModeTable } from "../answers/answer.ts";
+import { stiffestShare } from "../judgement/shapes.ts";
 import { percent } from "../judgement/wording.ts";
 import { formatNumber } from "../units/show.ts";
 import { tableLines } from "./table.ts";
@@ -48,26 +49,25 @@ function dampingText(mode: Mode, units: UnitView): string {
 
 /** `slab 1, unit −0.4`: the undamped shape's largest coordinates, with signs, the largest 1. */
 export function movesMost(mode: Mode, coordinates: readonly string[]): string {
-  const sizes = coordinates.map((name, i) => ({
-    name,
-    size: Math.hypot(mode.shape.re[i], mode.shape.im[i]),
-    signed: mode.shape.re[i],
-  }));
-  const top = Math.max(0, ...sizes.map(({ size }) => size));
-  const worth = sizes
-    .filter(({ size }) => size > 0 && size >= WORTH_NAMING * top)
-    .sort((a, b) => b.size - a.size);
-  const named = worth.slice(0, NAMED).map(({ name, size, signed }) => {
-    const share = formatNumber(Number((size / top).toPrecision(2)));
-    return `${name} ${signed < 0 ? "−" : ""}${share}`;
+  const { re, im } = mode.shape;
+  const sizes = coordinates.map((_, i) => Math.hypot(re[i], im[i]));
+  let top = 0;
+  for (const size of sizes) top = Math.max(top, size);
+  const worth: number[] = [];
+  sizes.forEach((size, i) => {
+    if (size > 0 && size >= WORTH_NAMING * top) worth.push(i);
+  });
+  worth.sort((a, b) => sizes[b] - sizes[a]);
+  const named = worth.slice(0, NAMED).map((i) => {
+    const share = formatNumber(Number((sizes[i] / top).toPrecision(2)));
+    return `${coordinates[i]} ${re[i] < 0 ? "−" : ""}${share}`;
   });
   const more = worth.length - named.length;
   return more > 0 ? `${named.join(", ")}, ${more} more` : named.join(", ");
 }
 
 function strainsMost(mode: Mode): string {
-  const [most] = Object.entries(mode.energyShare)
-    .filter(([, share]) => Number.isFinite(share) && share > 0)
-    .sort(([, a], [, b]) => b - a);
-  return most === undefined ? "" : `${most[0]} ${formatNumber(Number((most[1] * 100).toPrecision(2)))} %`;
+  const name = stiffestShare(mode);
+  const share = name === undefined ? 0 : mode.energyShare[name];
+  return share > 0 ? `${name} ${formatNumber(Number((share * 100).toPrecision(2)))} %` : "";
 }

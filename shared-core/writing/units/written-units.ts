@@ -12,13 +12,18 @@ import type { ShownUnit } from "./unit-view.ts";
  */
 export function writtenUnits(model: Model): ReadonlyMap<string, ShownUnit> {
   const found = new Map<string, ShownUnit>();
-  const judged = (statement: StatementNode) => statement.keyword.text === "expect";
-  const { statements } = model.tree;
-  for (const unit of [...statements.filter(judged), ...statements].flatMap(unitsIn)) {
+  const seen = new Set<string>();
+  const take = (unit: UnitNode): void => {
+    if (seen.has(unit.text)) return;
+    seen.add(unit.text);
     const shown = meaningOf(unit);
     if (shown && !found.has(shown.si) && shown.si !== "1" && shown.si !== "Hz")
       found.set(shown.si, shown.unit);
-  }
+  };
+  const judged = (statement: StatementNode) => statement.keyword.text === "expect";
+  const { statements } = model.tree;
+  for (const statement of statements.filter(judged)) eachUnit(statement, take);
+  for (const statement of statements) eachUnit(statement, take);
   return found;
 }
 
@@ -28,13 +33,14 @@ function meaningOf(node: UnitNode): { readonly si: string; readonly unit: ShownU
   return { si: siUnit(meaning.kind), unit: { text: node.text, factor: meaning.factor } };
 }
 
-/** Units of all numbers below a node, in the order of the text. */
-function unitsIn(node: object): UnitNode[] {
-  if (isNumber(node)) return node.unit ? [node.unit] : [];
-  if (isUnit(node)) return [node];
-  return Object.values(node).flatMap((child) =>
-    typeof child === "object" && child !== null ? unitsIn(child) : [],
-  );
+/** Shows the units of all numbers below a node, in the order of the text. */
+function eachUnit(node: object, take: (unit: UnitNode) => void): void {
+  if (isUnit(node)) take(node);
+  else if (!isNumber(node)) {
+    for (const child of Object.values(node)) {
+      if (typeof child === "object" && child !== null) eachUnit(child, take);
+    }
+  } else if (node.unit) take(node.unit);
 }
 
 const isNumber = (node: object): node is NumberNode =>
