@@ -1,6 +1,7 @@
 /** The language server as an editor meets it: a client over its real standard input and output. */
 import { spawn } from "node:child_process";
 import { mkdirSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { createRequire } from "node:module";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { pathToFileURL } from "node:url";
@@ -9,6 +10,8 @@ import { benchModel, modelText } from "./model.mjs";
 
 const KEYSTROKES = 40;
 const QUESTIONS = 60;
+/** A server that says nothing for so long has failed its row, in ms. */
+const LONGEST_WAIT = 120_000;
 
 /** A text of about so many lines. */
 const longText = (lines) => modelText(benchModel("chain", Math.max(2, Math.floor(lines / 3))));
@@ -77,6 +80,7 @@ async function start(folder = root, settings = {}) {
   const { createMessageConnection, StreamMessageReader, StreamMessageWriter } = await import(
     "vscode-jsonrpc/node"
   );
+  const core = createRequire(import.meta.url)(join(root, "dist/server/core.cjs"));
   const child = spawn(process.execPath, [join(root, "dist/terminal/thrum.js"), "serve", "--stdio"], {
     stdio: ["pipe", "pipe", "inherit"],
   });
@@ -105,7 +109,7 @@ async function start(folder = root, settings = {}) {
       workspace: { configuration: true, didChangeWatchedFiles: { dynamicRegistration: true } },
       textDocument: { publishDiagnostics: { versionSupport: true }, hover: { contentFormat: ["markdown"] } },
     },
-    initializationOptions: { protocol: 1 },
+    initializationOptions: { protocol: core.PROTOCOL_VERSION },
   });
   await connection.sendNotification("initialized", {});
   return {
@@ -113,14 +117,19 @@ async function start(folder = root, settings = {}) {
     connection,
     /** Resolves with the time at which such a message came. */
     heard: (fits) =>
-      new Promise((resolve) => {
+      new Promise((resolve, reject) => {
         const wait = {
           fits,
           done: (at) => {
+            clearTimeout(late);
             waiting.delete(wait);
             resolve(at);
           },
         };
+        const late = setTimeout(() => {
+          child.kill();
+          reject(new Error("the server does not answer"));
+        }, LONGEST_WAIT);
         waiting.add(wait);
       }),
     open: (path, text) => openDocument(connection, pathToFileURL(join(folder, path)).href, text),
