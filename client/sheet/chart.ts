@@ -28,6 +28,8 @@ export class CoordinateChart {
   #pose: ArrayLike<number> | undefined;
   #part: Part;
   #shown = false;
+  /** Told by the page, or this until it has been laid out. */
+  #width = 640;
 
   constructor(page: Page, roving: Roving, pick: (name: string) => void) {
     this.#page = page;
@@ -35,7 +37,10 @@ export class CoordinateChart {
     this.#pick = pick;
     this.#part = page.kept.zoom?.[KEY] ?? WHOLE;
     this.#follow();
-    widthOf(roving.element, () => this.#draw());
+    widthOf(roving.element, (width) => {
+      this.#width = Math.max(240, width);
+      this.#draw();
+    });
   }
 
   show(names: readonly string[], description: string): void {
@@ -59,10 +64,6 @@ export class CoordinateChart {
   says(name: string): string {
     const value = this.#pose?.[this.#names.indexOf(name)];
     return value === undefined ? name : `${name}, ${formatNumber(value, 2)} of the largest`;
-  }
-
-  get #width(): number {
-    return Math.max(240, this.#roving.element.clientWidth || 640);
   }
 
   /** Left edge of a bar, in pixels; fractions stand between bars. */

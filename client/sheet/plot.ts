@@ -56,6 +56,8 @@ export class Plot {
   #laid: Laid | undefined;
   #inks = new Map<string, CurveInk>();
   #awaited = false;
+  /** Told, not asked for: a question would have the page laid out for each plot. 0: not laid out yet. */
+  #width = 0;
 
   constructor(page: Page, key: string) {
     this.#page = page;
@@ -72,7 +74,10 @@ export class Plot {
     this.element = html("div", { class: "plot" }, this.#legend, this.#stage, this.#readout);
     this.#stage.addEventListener("keydown", (event) => this.#press(event));
     this.#followPointer();
-    widthOf(this.#stage, () => this.#paint());
+    widthOf(this.#stage, (width) => {
+      this.#width = width;
+      this.#paint();
+    });
   }
 
   get part(): Part {
@@ -85,7 +90,6 @@ export class Plot {
     if (changed) this.#data = prepared(content.panels);
     this.#stage.setAttribute("aria-label", `${content.description} ${HELP}`);
     this.#fillLegend();
-    this.#inks.clear();
     this.#paint();
   }
 
@@ -112,7 +116,7 @@ export class Plot {
   }
 
   #paint(): void {
-    const width = this.#stage.clientWidth;
+    const width = this.#width;
     if (width === 0 || this.#data.length === 0) return;
     const { linearX, linearY, panels } = this.#content;
     const geometry = geometryOf(panels, width);

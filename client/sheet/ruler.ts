@@ -21,6 +21,8 @@ export class RulerView {
   readonly #says = html("p", { class: "readout" });
   readonly #choose: (motion: string) => void;
   #ruler: Ruler | null = null;
+  /** Told by the page, or this until it has been laid out. */
+  #width = 640;
 
   constructor(page: Page, chooseMotion: (id: string) => void) {
     this.#page = page;
@@ -31,7 +33,10 @@ export class RulerView {
       pick: (key) => this.#pick(key),
     });
     this.element = html("div", { class: "ruler" }, this.#roving.element, this.#says);
-    widthOf(this.element, () => this.#draw());
+    widthOf(this.element, (width) => {
+      this.#width = width;
+      this.#draw();
+    });
   }
 
   get picture(): SVGSVGElement | null {
@@ -46,7 +51,7 @@ export class RulerView {
   #draw(): void {
     const ruler = this.#ruler;
     if (ruler === null) return;
-    const width = Math.max(280, this.element.clientWidth || 640);
+    const width = Math.max(280, this.#width);
     const to = (at: number) => PAD + at * (width - 2 * PAD);
     const above = rowsFor(
       [
