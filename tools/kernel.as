@@ -648,6 +648,128 @@ function firstGuess(
 const PANEL: i32 = 24;
 
 /**
+ * Chases the bulge of one double-shift step, see chaseBulge in real-schur.ts. H and Z' (0: none) are n x n, rows
+ * and columns as there.
+ */
+export function chase(
+  h: usize, n: i32, l: i32, m: i32, i: i32, i1: i32, i2: i32, v1: f64, v2: f64, v3: f64, z: usize,
+): void {
+  for (let k = m; k < i; k++) {
+    const three = k + 2 <= i;
+    const before = at(h, k * n + k - 1);
+    if (k > m) {
+      v1 = load<f64>(before);
+      v2 = load<f64>(at(before, n));
+      v3 = three ? load<f64>(at(before, 2 * n)) : 0;
+    }
+    if (!three) v3 = 0;
+    const tail = v2 * v2 + v3 * v3;
+    let t1: f64 = 0;
+    let beta = v1;
+    if (tail > 0) {
+      const length = sqrt<f64>(v1 * v1 + tail);
+      beta = v1 >= 0 ? -length : length;
+      t1 = (beta - v1) / beta;
+      const scale = 1 / (v1 - beta);
+      v2 *= scale;
+      v3 *= scale;
+    } else {
+      v2 = 0;
+      v3 = 0;
+    }
+    if (k > m) {
+      store<f64>(before, beta);
+      store<f64>(at(before, n), 0);
+      if (three) store<f64>(at(before, 2 * n), 0);
+    } else if (m > l) {
+      store<f64>(before, load<f64>(before) * (1 - t1));
+    }
+    if (t1 == 0) continue;
+    const last = three ? min(k + 3, i) : i;
+    if (three) {
+      reflectRows3(at(h, k * n + k), n, i2 - k + 1, v2, v3, t1);
+      reflectColumns3(at(h, i1 * n + k), n, last - i1 + 1, v2, v3, t1);
+      if (z != 0) reflectRows3(at(z, k * n), n, n, v2, v3, t1);
+    } else {
+      reflectRows2(at(h, k * n + k), n, i2 - k + 1, v2, t1);
+      reflectColumns2(at(h, i1 * n + k), n, last - i1 + 1, v2, t1);
+      if (z != 0) reflectRows2(at(z, k * n), n, n, v2, t1);
+    }
+  }
+}
+
+function reflectRows3(p: usize, stride: i32, count: i32, v2: f64, v3: f64, t1: f64): void {
+  const w2 = f64x2.splat(v2);
+  const w3 = f64x2.splat(v3);
+  const s1 = f64x2.splat(t1);
+  const s2 = f64x2.splat(t1 * v2);
+  const s3 = f64x2.splat(t1 * v3);
+  let q = at(p, stride);
+  let r = at(q, stride);
+  let j = 0;
+  for (; j + 1 < count; j += 2) {
+    const a = v128.load(p);
+    const b = v128.load(q);
+    const c = v128.load(r);
+    const sum = f64x2.add(f64x2.add(a, f64x2.mul(w2, b)), f64x2.mul(w3, c));
+    v128.store(p, f64x2.sub(a, f64x2.mul(sum, s1)));
+    v128.store(q, f64x2.sub(b, f64x2.mul(sum, s2)));
+    v128.store(r, f64x2.sub(c, f64x2.mul(sum, s3)));
+    p += 16;
+    q += 16;
+    r += 16;
+  }
+  if (j == count) return;
+  const a = load<f64>(p);
+  const b = load<f64>(q);
+  const c = load<f64>(r);
+  const sum = a + v2 * b + v3 * c;
+  store<f64>(p, a - sum * t1);
+  store<f64>(q, b - sum * (t1 * v2));
+  store<f64>(r, c - sum * (t1 * v3));
+}
+
+function reflectRows2(p: usize, stride: i32, count: i32, v2: f64, t1: f64): void {
+  const t2 = t1 * v2;
+  for (let j = 0; j < count; j++) {
+    const a = load<f64>(at(p, j));
+    const b = load<f64>(at(p, j + stride));
+    const sum = a + v2 * b;
+    store<f64>(at(p, j), a - sum * t1);
+    store<f64>(at(p, j + stride), b - sum * t2);
+  }
+}
+
+function reflectColumns3(p: usize, stride: i32, count: i32, v2: f64, v3: f64, t1: f64): void {
+  const t2 = t1 * v2;
+  const t3 = t1 * v3;
+  const step = (<usize>stride) << 3;
+  for (let j = 0; j < count; j++) {
+    const a = load<f64>(p);
+    const b = load<f64>(p, 8);
+    const c = load<f64>(p, 16);
+    const sum = a + v2 * b + v3 * c;
+    store<f64>(p, a - sum * t1);
+    store<f64>(p, b - sum * t2, 8);
+    store<f64>(p, c - sum * t3, 16);
+    p += step;
+  }
+}
+
+function reflectColumns2(p: usize, stride: i32, count: i32, v2: f64, t1: f64): void {
+  const t2 = t1 * v2;
+  const step = (<usize>stride) << 3;
+  for (let j = 0; j < count; j++) {
+    const a = load<f64>(p);
+    const b = load<f64>(p, 8);
+    const sum = a + v2 * b;
+    store<f64>(p, a - sum * t1);
+    store<f64>(p, b - sum * t2, 8);
+    p += step;
+  }
+}
+
+/**
  * LU with partial pivoting of re (and im, unless 0), n×n with row distance `stride`, in place: multipliers below the
  * diagonal, U above and, inverted where complex, on it. `permutation` (32-bit) takes the row exchanges. Returns the
  * first column without a pivot above `floor`, or −1. See lu.ts and complex-lu.ts.

@@ -5,9 +5,9 @@
  * Method: Braman, Byers & Mathias, The multishift QR algorithm II, SIAM J. Matrix Anal. Appl. 23, 2002; as in
  * LAPACK's dlaqr2.
  */
-import { hessenberg } from "./hessenberg.ts";
+import type { Kernel } from "./kernel.ts";
 import { identity } from "./products.ts";
-import { doubleShiftQr, type SchurValues } from "./real-schur.ts";
+import type { SchurValues } from "./real-schur.ts";
 import { moveUp } from "./schur-swap.ts";
 
 export type Deflation = {
@@ -30,6 +30,7 @@ export function deflateEarly(
   bottom: number,
   size: number,
   spike: number,
+  kernel: Kernel,
 ): Deflation {
   const top = bottom - size + 1;
   const t = new Float64Array(size * size);
@@ -38,12 +39,12 @@ export function deflateEarly(
   }
   const vt = identity(size);
   const values: SchurValues = { re: new Float64Array(size), im: new Float64Array(size) };
-  const found = doubleShiftQr(t, size, 0, size - 1, true, values, vt);
+  const found = kernel.schur(t, size, true, values, vt);
   if (found < size) return { deflated: 0, shifts: tail(values, size - found, size) };
   const kept = keptRows(t, size, vt, spike);
   const shifts = valuesOf(t, size, 0, kept);
   if (kept === size) return { deflated: 0, shifts };
-  if (kept > 1 && spike !== 0) rebuild(t, size, kept, vt);
+  if (kept > 1 && spike !== 0) rebuild(t, size, kept, vt, kernel);
   if (spike !== 0) h[top * n + top - 1] = kept === 0 ? 0 : spike * vt[0];
   for (let r = 0; r < size; r++) {
     for (let c = Math.max(0, r - 1); c < size; c++) h[(top + r) * n + top + c] = t[r * size + c];
@@ -102,7 +103,7 @@ export function valuesOf(t: Float64Array, n: number, from: number, to: number): 
 }
 
 /** Returns the kept part to Hessenberg form with the spike gathered in its first entry. */
-function rebuild(t: Float64Array, size: number, kept: number, vt: Float64Array): void {
+function rebuild(t: Float64Array, size: number, kept: number, vt: Float64Array, kernel: Kernel): void {
   // Reflection that maps the first `kept` entries of V's first row to a multiple of e₁.
   const v = new Float64Array(kept);
   let square = 0;
@@ -127,10 +128,10 @@ function rebuild(t: Float64Array, size: number, kept: number, vt: Float64Array):
   vt[0] = beta;
   const block = new Float64Array(kept * kept);
   for (let r = 0; r < kept; r++) block.set(t.subarray(r * size, r * size + kept), r * kept);
-  const { h, transposedQ } = hessenberg(block, kept, true);
+  const { h, transposedQ } = kernel.hessenberg(block, kept, true);
   for (let r = 0; r < kept; r++) t.set(h.subarray(r * kept, (r + 1) * kept), r * size);
-  rotateRowsBy(transposedQ, kept, t, size, kept);
-  rotateRowsBy(transposedQ, kept, vt, size, 0);
+  rotateRowsBy(transposedQ, kept, t, size, kept, kernel);
+  rotateRowsBy(transposedQ, kept, vt, size, 0, kernel);
 }
 
 function reflectRows(a: Float64Array, size: number, kept: number, v: Float64Array, scale: number): void {
@@ -143,15 +144,25 @@ function reflectRows(a: Float64Array, size: number, kept: number, v: Float64Arra
 }
 
 /** Rows 0 … kept − 1 of `a`, columns from `from` on, ← Qᵀ times them. */
-function rotateRowsBy(qt: Float64Array, kept: number, a: Float64Array, size: number, from: number): void {
+function rotateRowsBy(
+  qt: Float64Array,
+  kept: number,
+  a: Float64Array,
+  size: number,
+  from: number,
+  kernel: Kernel,
+): void {
   const width = size - from;
+  if (width === 0) return;
   const out = new Float64Array(kept * width);
-  for (let r = 0; r < kept; r++) {
-    for (let k = 0; k < kept; k++) {
-      const f = qt[r * kept + k];
-      if (f === 0) continue;
-      for (let c = 0; c < width; c++) out[r * width + c] += f * a[k * size + from + c];
-    }
-  }
+  const rows = { data: a, at: from, stride: size };
+  kernel.product(
+    { data: qt, at: 0, stride: kept },
+    rows,
+    { data: out, at: 0, stride: width },
+    kept,
+    kept,
+    width,
+  );
   for (let r = 0; r < kept; r++) a.set(out.subarray(r * width, (r + 1) * width), r * size + from);
 }

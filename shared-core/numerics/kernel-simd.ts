@@ -6,6 +6,7 @@
  */
 import type { Kernel, Window } from "./kernel.ts";
 import { KERNEL_MODULE } from "./kernel-module.ts";
+import { type Bulge, doubleShiftQr } from "./real-schur.ts";
 
 type Exports = {
   memory: WebAssembly.Memory;
@@ -44,6 +45,19 @@ type Exports = {
     work: number,
     pack: number,
   ): void;
+  chase(
+    h: number,
+    n: number,
+    l: number,
+    m: number,
+    i: number,
+    i1: number,
+    i2: number,
+    v1: number,
+    v2: number,
+    v3: number,
+    z: number,
+  ): void;
   factor(
     re: number,
     im: number,
@@ -73,6 +87,8 @@ type Exports = {
   ): number;
 };
 
+/** Matrices below this order are quicker without the module; found by trial. */
+const SHORT_SCHUR = 24;
 const PAGE = 65536;
 /** The module keeps small constants below this address. */
 const BASE = 1024;
@@ -158,6 +174,22 @@ function kernelOf(compiled: WebAssembly.Module): Kernel {
         im?.set(memory.subarray(pi / 8, pi / 8 + n * n));
         permutation.set(rows);
         return singularAt;
+      });
+    },
+    schur: (h, n, full, values, zt) => {
+      if (n < SHORT_SCHUR) return doubleShiftQr(h, n, 0, n - 1, full, values, zt);
+      return run([n * n, zt ? n * n : 0], (wasm, memory, [ph, pz]) => {
+        // The iteration itself runs here, on the module's memory; only the long loops are the module's.
+        const own = memory.subarray(ph / 8, ph / 8 + n * n);
+        const ownZ = zt && memory.subarray(pz / 8, pz / 8 + n * n);
+        own.set(h);
+        if (zt) ownZ?.set(zt);
+        const chase = ({ l, m, i, i1, i2, v1, v2, v3 }: Bulge) =>
+          wasm.chase(ph, n, l, m, i, i1, i2, v1, v2, v3, zt ? pz : 0);
+        const found = doubleShiftQr(own, n, 0, n - 1, full, values, ownZ, n, chase);
+        h.set(own);
+        if (ownZ) zt?.set(ownZ);
+        return found;
       });
     },
     merge: (step) => {

@@ -9,6 +9,7 @@ import { eliminate } from "./eliminate.ts";
 import { type Hessenberg, hessenberg } from "./hessenberg.ts";
 import { simdKernel } from "./kernel-simd.ts";
 import { type MergeStep, plainMerge } from "./merge-step.ts";
+import { doubleShiftQr, type SchurValues } from "./real-schur.ts";
 import { type Tridiagonal, tridiagonalise } from "./tridiagonalise.ts";
 
 /** A rows×columns window of a row-major array: first entry `at`, row distance `stride`. */
@@ -24,6 +25,8 @@ export type Kernel = {
   backTransform(rows: Float64Array, count: number, t: Tridiagonal): void;
   /** See hessenberg.ts; the array given becomes H. */
   hessenberg(a: Float64Array, n: number, withQ: boolean): Hessenberg;
+  /** `doubleShiftQr` (real-schur.ts) over the whole matrix; `zt` is n×n. */
+  schur(h: Float64Array, n: number, full: boolean, values: SchurValues, zt?: Float64Array): number;
   /** See merge-step.ts. */
   merge(step: MergeStep): boolean;
   /** See eliminate.ts. */
@@ -96,6 +99,7 @@ export const plainKernel: Kernel = {
   tridiagonalise,
   backTransform: (rows, count, t) => backTransform(rows, count, t, plainProduct),
   hessenberg,
+  schur: (h, n, full, values, zt) => doubleShiftQr(h, n, 0, n - 1, full, values, zt),
   merge: (step) => plainMerge(step, plainProduct),
   factor: eliminate,
 };

@@ -8,15 +8,7 @@
 import { deflateEarly, valuesOf } from "./early-deflation.ts";
 import type { Kernel } from "./kernel.ts";
 import { identity, transpose } from "./products.ts";
-import {
-  doubleShiftQr,
-  reflectColumns2,
-  reflectColumns3,
-  reflectRows2,
-  reflectRows3,
-  type SchurValues,
-  smallSubdiagonal,
-} from "./real-schur.ts";
+import { reflect2, reflect3, type SchurValues, smallSubdiagonal } from "./real-schur.ts";
 
 /** Whole matrices up to this order go to the plain double shift, which is quicker there; found by trial. */
 const PLAIN = 120;
@@ -45,7 +37,7 @@ export function multishiftQr(
   kernel: Kernel,
   zt?: Float64Array,
 ): number {
-  if (n <= PLAIN) return doubleShiftQr(h, n, 0, n - 1, zt !== undefined, values, zt);
+  if (n <= PLAIN) return kernel.schur(h, n, zt !== undefined, values, zt);
   const problem: Problem = { h, n, zt, kernel, scratch: new Float64Array(n * n) };
   for (let r = 2; r < n; r++) h.fill(0, r * n, r * n + r - 1);
   let bottom = n - 1;
@@ -65,7 +57,7 @@ export function multishiftQr(
     const width = Math.min(size, stalled < EXCEPTIONAL - 1 ? window : 2 * window);
     const start = bottom - width + 1;
     const spike = start === top ? 0 : h[start * n + start - 1];
-    const early = deflateEarly(h, n, bottom, width, spike);
+    const early = deflateEarly(h, n, bottom, width, spike, kernel);
     if (early.transform) applyOutside(problem, early.transform, start, width, top, bottom);
     bottom -= early.deflated;
     stalled = early.deflated > 0 ? 0 : stalled + 1;
@@ -98,7 +90,7 @@ function finishBlock(problem: Problem, top: number, bottom: number): boolean {
     block.set(h.subarray((top + r) * n + top, (top + r) * n + bottom + 1), r * size);
   const vt = identity(size);
   const values: SchurValues = { re: new Float64Array(size), im: new Float64Array(size) };
-  const found = doubleShiftQr(block, size, 0, size - 1, true, values, vt);
+  const found = problem.kernel.schur(block, size, true, values, vt);
   if (found < size) return false;
   for (let r = 0; r < size; r++) h.set(block.subarray(r * size, (r + 1) * size), (top + r) * n + top);
   applyOutside(problem, vt, top, size, top, bottom);
@@ -164,7 +156,7 @@ function shiftPairs(problem: Problem, found: SchurValues, bottom: number, count:
       for (let c = Math.max(0, r - 1); c < count; c++) block[r * count + c] = h[(start + r) * n + start + c];
     }
     const values: SchurValues = { re: new Float64Array(count), im: new Float64Array(count) };
-    const got = doubleShiftQr(block, count, 0, count - 1, false, values);
+    const got = problem.kernel.schur(block, count, false, values);
     re = values.re.slice(count - got);
     im = values.im.slice(count - got);
   }
@@ -279,14 +271,17 @@ function advance(
     if (three) h[(k + 3) * n + k] = 0;
   }
   const row = (k + 1) * n;
+  const rows = end - k;
+  const columns = (three ? Math.min(k + 4, bottom) : bottom) - start + 1;
+  const u = (k + 1 - start) * width;
   if (three) {
-    reflectRows3(h, row, n, k + 1, end, v2, v3, t1);
-    reflectColumns3(h, n, k + 1, start, Math.min(k + 4, bottom), v2, v3, t1);
-    reflectRows3(ut, (k + 1 - start) * width, width, 0, width - 1, v2, v3, t1);
+    reflect3(h, row + k + 1, 1, n, rows, v2, v3, t1);
+    reflect3(h, start * n + k + 1, n, 1, columns, v2, v3, t1);
+    reflect3(ut, u, 1, width, width, v2, v3, t1);
   } else {
-    reflectRows2(h, row, n, k + 1, end, v2, t1);
-    reflectColumns2(h, n, k + 1, start, bottom, v2, t1);
-    reflectRows2(ut, (k + 1 - start) * width, width, 0, width - 1, v2, t1);
+    reflect2(h, row + k + 1, 1, n, rows, v2, t1);
+    reflect2(h, start * n + k + 1, n, 1, columns, v2, t1);
+    reflect2(ut, u, 1, width, width, v2, t1);
   }
 }
 

@@ -20,7 +20,8 @@ export type SchurValues = { re: Float64Array; im: Float64Array };
 /**
  * Works on rows and columns lo … hi (inclusive) of `h` (stride `n`), all of which is updated where `full` is
  * set; otherwise only the values are right. `zt` (Zᵀ, rows of `width`, when given) is multiplied from the left.
- * Returns the number of values found from hi upwards; hi − lo + 1 is success.
+ * Returns the number of values found from hi upwards; hi − lo + 1 is success. `chase` is `chaseBulge` on these
+ * arrays, or a quicker one.
  */
 export function doubleShiftQr(
   h: Float64Array,
@@ -31,6 +32,7 @@ export function doubleShiftQr(
   values: SchurValues,
   zt?: Float64Array,
   width = n,
+  chase: Chase = (bulge) => chaseBulge(h, n, bulge, zt, width),
 ): number {
   for (let j = lo; j + 2 <= hi; j++) {
     h[(j + 2) * n + j] = 0;
@@ -55,7 +57,14 @@ export function doubleShiftQr(
     }
     if (budget-- === 0) return hi - i;
     stalled++;
-    doubleStep(h, n, l, i, full ? 0 : l, full ? n - 1 : i, stalled, zt, width);
+    shifts(h, n, l, i, stalled, shiftRoom);
+    const m = findStart(h, n, l, i, bulge);
+    bulge.l = l;
+    bulge.m = m;
+    bulge.i = i;
+    bulge.i1 = full ? 0 : l;
+    bulge.i2 = full ? n - 1 : i;
+    chase(bulge);
   }
   return hi - lo + 1;
 }
@@ -122,24 +131,27 @@ function shifts(h: Float64Array, n: number, l: number, i: number, stalled: numbe
   out[0] = out[2] = nearer * s;
 }
 
-const shiftRoom = new Float64Array(4);
+/** One double-shift step: rows m … i of an active block that begins at l, its first vector, and what it changes. */
+export type Bulge = {
+  l: number;
+  m: number;
+  i: number;
+  /** Columns are changed from row i1 on, rows up to column i2. */
+  i1: number;
+  i2: number;
+  v1: number;
+  v2: number;
+  v3: number;
+};
 
-function doubleStep(
-  h: Float64Array,
-  n: number,
-  l: number,
-  i: number,
-  i1: number,
-  i2: number,
-  stalled: number,
-  zt: Float64Array | undefined,
-  width: number,
-): void {
-  shifts(h, n, l, i, stalled, shiftRoom);
+export type Chase = (bulge: Bulge) => void;
+
+const shiftRoom = new Float64Array(4);
+const bulge: Bulge = { l: 0, m: 0, i: 0, i1: 0, i2: 0, v1: 0, v2: 0, v3: 0 };
+
+/** Row at which a step may begin because two subdiagonals in a row are small; its first vector goes to `out`. */
+function findStart(h: Float64Array, n: number, l: number, i: number, out: Bulge): number {
   const [rt1r, rt1i, rt2r, rt2i] = shiftRoom;
-  let v1 = 0;
-  let v2 = 0;
-  let v3 = 0;
   let m = i - 2;
   for (; m >= l; m--) {
     const at = m * n + m;
@@ -148,17 +160,31 @@ function doubleStep(
     const below = h[at + n];
     const s = Math.abs(own - rt2r) + Math.abs(rt2i) + Math.abs(below);
     const ratio = below / s;
-    v1 = ratio * h[at + 1] + (own - rt1r) * ((own - rt2r) / s) - rt1i * (rt2i / s);
-    v2 = ratio * (own + next - rt1r - rt2r);
-    v3 = ratio * h[at + 2 * n + 1];
+    const v1 = ratio * h[at + 1] + (own - rt1r) * ((own - rt2r) / s) - rt1i * (rt2i / s);
+    const v2 = ratio * (own + next - rt1r - rt2r);
+    const v3 = ratio * h[at + 2 * n + 1];
     const size = Math.abs(v1) + Math.abs(v2) + Math.abs(v3);
-    v1 /= size;
-    v2 /= size;
-    v3 /= size;
+    out.v1 = v1 / size;
+    out.v2 = v2 / size;
+    out.v3 = v3 / size;
     if (m === l) break;
     const around = Math.abs(h[at - n - 1]) + Math.abs(own) + Math.abs(next);
-    if (Math.abs(h[at - 1]) * (Math.abs(v2) + Math.abs(v3)) <= Number.EPSILON * Math.abs(v1) * around) break;
+    const taken = Math.abs(h[at - 1]) * (Math.abs(out.v2) + Math.abs(out.v3));
+    if (taken <= Number.EPSILON * Math.abs(out.v1) * around) break;
   }
+  return m;
+}
+
+/** Chases the bulge of one step out of the block. */
+export function chaseBulge(
+  h: Float64Array,
+  n: number,
+  bulge: Bulge,
+  zt: Float64Array | undefined,
+  width: number,
+): void {
+  const { l, m, i, i1, i2 } = bulge;
+  let { v1, v2, v3 } = bulge;
   for (let k = m; k < i; k++) {
     const three = k + 2 <= i;
     if (k > m) {
@@ -190,101 +216,81 @@ function doubleStep(
       h[k * n + k - 1] *= 1 - t1;
     }
     if (t1 === 0) continue;
+    const row = k * n + k;
     if (three) {
-      reflectRows3(h, k * n, n, k, i2, v2, v3, t1);
-      reflectColumns3(h, n, k, i1, Math.min(k + 3, i), v2, v3, t1);
-      if (zt) reflectRows3(zt, k * width, width, 0, width - 1, v2, v3, t1);
+      reflect3(h, row, 1, n, i2 - k + 1, v2, v3, t1);
+      reflect3(h, i1 * n + k, n, 1, Math.min(k + 3, i) - i1 + 1, v2, v3, t1);
+      if (zt) reflect3(zt, k * width, 1, width, width, v2, v3, t1);
     } else {
-      reflectRows2(h, k * n, n, k, i2, v2, t1);
-      reflectColumns2(h, n, k, i1, i, v2, t1);
-      if (zt) reflectRows2(zt, k * width, width, 0, width - 1, v2, t1);
+      reflect2(h, row, 1, n, i2 - k + 1, v2, t1);
+      reflect2(h, i1 * n + k, n, 1, i - i1 + 1, v2, t1);
+      if (zt) reflect2(zt, k * width, 1, width, width, v2, t1);
     }
   }
 }
 
-export function reflectRows3(
-  h: Float64Array,
-  row: number,
-  stride: number,
-  from: number,
-  to: number,
+/**
+ * Applies I − t₁ v vᵀ, v = (1, v₂, v₃), to `count` triples: entries `apart` from each other, triples `step` from
+ * each other. Rows of a matrix of stride n from the left: step 1, apart n; columns from the right: step n, apart 1.
+ */
+export function reflect3(
+  a: Float64Array,
+  at: number,
+  step: number,
+  apart: number,
+  count: number,
   v2: number,
   v3: number,
   t1: number,
 ): void {
   const t2 = t1 * v2;
   const t3 = t1 * v3;
-  const end = row + to;
-  for (let p = row + from; p <= end; p++) {
-    const a = h[p];
-    const b = h[p + stride];
-    const c = h[p + 2 * stride];
-    const sum = a + v2 * b + v3 * c;
-    h[p] = a - sum * t1;
-    h[p + stride] = b - sum * t2;
-    h[p + 2 * stride] = c - sum * t3;
+  for (let k = 0, p = at; k < count; k++, p += step) {
+    const x = a[p];
+    const y = a[p + apart];
+    const z = a[p + 2 * apart];
+    const sum = x + v2 * y + v3 * z;
+    a[p] = x - sum * t1;
+    a[p + apart] = y - sum * t2;
+    a[p + 2 * apart] = z - sum * t3;
   }
 }
 
-export function reflectRows2(
-  h: Float64Array,
-  row: number,
-  stride: number,
-  from: number,
-  to: number,
+/** The same for pairs. */
+export function reflect2(
+  a: Float64Array,
+  at: number,
+  step: number,
+  apart: number,
+  count: number,
   v2: number,
   t1: number,
 ): void {
   const t2 = t1 * v2;
-  const end = row + to;
-  for (let p = row + from; p <= end; p++) {
-    const a = h[p];
-    const b = h[p + stride];
-    const sum = a + v2 * b;
-    h[p] = a - sum * t1;
-    h[p + stride] = b - sum * t2;
+  for (let k = 0, p = at; k < count; k++, p += step) {
+    const x = a[p];
+    const y = a[p + apart];
+    const sum = x + v2 * y;
+    a[p] = x - sum * t1;
+    a[p + apart] = y - sum * t2;
   }
 }
 
-export function reflectColumns3(
-  h: Float64Array,
-  n: number,
-  k: number,
-  from: number,
-  to: number,
-  v2: number,
-  v3: number,
-  t1: number,
+/** Turns pairs that lie as those of `reflect2`. */
+function rotate2(
+  a: Float64Array,
+  at: number,
+  step: number,
+  apart: number,
+  count: number,
+  cs: number,
+  sn: number,
 ): void {
-  const t2 = t1 * v2;
-  const t3 = t1 * v3;
-  for (let p = from * n + k; p <= to * n + k; p += n) {
-    const a = h[p];
-    const b = h[p + 1];
-    const c = h[p + 2];
-    const sum = a + v2 * b + v3 * c;
-    h[p] = a - sum * t1;
-    h[p + 1] = b - sum * t2;
-    h[p + 2] = c - sum * t3;
-  }
-}
-
-export function reflectColumns2(
-  h: Float64Array,
-  n: number,
-  k: number,
-  from: number,
-  to: number,
-  v2: number,
-  t1: number,
-): void {
-  const t2 = t1 * v2;
-  for (let p = from * n + k; p <= to * n + k; p += n) {
-    const a = h[p];
-    const b = h[p + 1];
-    const sum = a + v2 * b;
-    h[p] = a - sum * t1;
-    h[p + 1] = b - sum * t2;
+  for (let k = 0, p = at; k < count; k++, p += step) {
+    const x = a[p];
+    const y = a[p + apart];
+    a[p] = cs * x + sn * y;
+    a[p + apart] = cs * y - sn * x;
   }
 }
 
@@ -310,26 +316,10 @@ function standardise(
   values.im[i - 1] = root;
   values.im[i] = root === 0 ? 0 : -root;
   if (full) {
-    for (let j = i + 1; j < n; j++) {
-      const upper = h[(i - 1) * n + j];
-      const lower = h[i * n + j];
-      h[(i - 1) * n + j] = cs * upper + sn * lower;
-      h[i * n + j] = cs * lower - sn * upper;
-    }
-    for (let r = 0; r < i - 1; r++) {
-      const left = h[r * n + i - 1];
-      const right = h[r * n + i];
-      h[r * n + i - 1] = cs * left + sn * right;
-      h[r * n + i] = cs * right - sn * left;
-    }
+    rotate2(h, (i - 1) * n + i + 1, 1, n, n - 1 - i, cs, sn);
+    rotate2(h, i - 1, n, 1, i - 1, cs, sn);
   }
-  if (!zt) return;
-  for (let j = 0; j < width; j++) {
-    const upper = zt[(i - 1) * width + j];
-    const lower = zt[i * width + j];
-    zt[(i - 1) * width + j] = cs * upper + sn * lower;
-    zt[i * width + j] = cs * lower - sn * upper;
-  }
+  if (zt) rotate2(zt, (i - 1) * width, 1, width, width, cs, sn);
 }
 
 export type Block = { a: number; b: number; c: number; d: number; cs: number; sn: number };

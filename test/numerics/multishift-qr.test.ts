@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { deflateEarly } from "../../shared-core/numerics/early-deflation.ts";
 import { hessenberg } from "../../shared-core/numerics/hessenberg.ts";
-import { kernelFor, plainKernel } from "../../shared-core/numerics/kernel.ts";
+import { bestKernel, kernelFor, plainKernel } from "../../shared-core/numerics/kernel.ts";
 import { multishiftQr } from "../../shared-core/numerics/multishift-qr.ts";
 import { doubleShiftQr } from "../../shared-core/numerics/real-schur.ts";
 import { moveUp } from "../../shared-core/numerics/schur-swap.ts";
@@ -114,7 +114,30 @@ describe("swaps in a Schur form", () => {
   });
 });
 
-describe("early deflation", () => {
+describe.each([plainKernel, bestKernel()])("double shift on the kernel $name", (kernel) => {
+  it.each([1, 2, 3, 10, 24, 25, 40, 61, 100])("brings a random matrix of %i to Schur form", (n) => {
+    const a = randomMatrix(n, n, 7 * n);
+    const { h, transposedQ } = hessenberg(Float64Array.from(a), n, true);
+    const alone = Float64Array.from(h);
+    const [values, same] = [room(n), room(n)];
+    expect(kernel.schur(h, n, true, values, transposedQ)).toBe(n);
+    checkSchur(a, h, transposedQ, n);
+    expect(kernel.schur(alone, n, false, same)).toBe(n);
+    const sum = (v: Float64Array) => v.reduce((total, x) => total + x, 0);
+    // The trace, twice: values without vectors come by another sequence of roundings.
+    expect(Math.abs(sum(values.re) - sum(same.re))).toBeLessThan(100 * n * EPS * Math.sqrt(n));
+  });
+
+  it("keeps exact zeros that part a matrix", () => {
+    const n = 30;
+    const a = randomMatrix(n, n, 5).map((v, p) => (Math.floor(p / n) >= 12 && p % n < 12 ? 0 : v));
+    const { h, transposedQ } = hessenberg(Float64Array.from(a), n, true);
+    expect(kernel.schur(h, n, true, room(n), transposedQ)).toBe(n);
+    checkSchur(a, h, transposedQ, n);
+  });
+});
+
+describe.each([plainKernel, bestKernel()])("early deflation on the kernel $name", (kernel) => {
   it("splits off a value that no small subdiagonal shows, and keeps the similarity", () => {
     // A Hessenberg matrix with subdiagonals of 1e-3 along a window of 12: their product, not any one, is small.
     const n = 14;
@@ -124,7 +147,7 @@ describe("early deflation", () => {
       return j >= i ? next() + (i === j ? i : 0) : j === i - 1 ? 1e-3 : 0;
     });
     const before = Float64Array.from(h);
-    const result = deflateEarly(h, n, n - 1, 12, h[2 * n + 1]);
+    const result = deflateEarly(h, n, n - 1, 12, h[2 * n + 1], kernel);
     expect(result.deflated).toBeGreaterThan(0);
     expect(result.shifts.re.length).toBe(12 - result.deflated);
     const vt = result.transform;
