@@ -257,35 +257,39 @@ function coupledRoots(undamped: UndampedModes, system: ModalSystem): Outcome<Roo
   const n = elastic + moving + relaxing;
   const built = stateMatrix(undamped, system);
   if (!built.ok) return fail(built.reason);
-  const solved = generalEigen(built.value, n);
+  const solved = generalEigen(built.value, n, { layout: "rows" });
   if (!solved.ok) return fail(solved.reason);
   const { re, im, right } = solved.value;
   if (right === undefined) return fail("the eigenvalue routine gave no shapes");
+  const own = Array.from(im.keys()).filter((j) => im[j] >= 0);
+  const size = count + relaxing;
+  const shapes = { re: new Float64Array(own.length * size), im: new Float64Array(own.length * size) };
   const stretch = stretches(values, free + held);
-  const roots: Root[] = [];
-  for (let j = 0; j < n; j++) {
-    if (im[j] < 0) continue;
-    const shapeRe = new Float64Array(count + relaxing);
-    const shapeIm = new Float64Array(count + relaxing);
+  own.forEach((j, k) => {
+    const to = k * size;
     for (let r = 0; r < elastic; r++) {
-      shapeRe[free + held + r] = right.re[r * n + j] / stretch[r];
-      shapeIm[free + held + r] = right.im[r * n + j] / stretch[r];
+      shapes.re[to + free + held + r] = right.re[j * n + r] / stretch[r];
+      shapes.im[to + free + held + r] = right.im[j * n + r] / stretch[r];
     }
-    const size = re[j] * re[j] + im[j] * im[j];
-    for (let r = 0; r < held && size > 0; r++) {
-      const at = (elastic + r) * n + j;
-      shapeRe[free + r] = (right.re[at] * re[j] + right.im[at] * im[j]) / size;
-      shapeIm[free + r] = (right.im[at] * re[j] - right.re[at] * im[j]) / size;
+    const square = re[j] * re[j] + im[j] * im[j];
+    for (let r = 0; r < held && square > 0; r++) {
+      const at = j * n + elastic + r;
+      shapes.re[to + free + r] = (right.re[at] * re[j] + right.im[at] * im[j]) / square;
+      shapes.im[to + free + r] = (right.im[at] * re[j] - right.re[at] * im[j]) / square;
     }
-    for (let k = 0; k < relaxing; k++) {
-      shapeRe[count + k] = right.re[(elastic + moving + k) * n + j];
-      shapeIm[count + k] = right.im[(elastic + moving + k) * n + j];
+    for (let r = 0; r < relaxing; r++) {
+      shapes.re[to + count + r] = right.re[j * n + elastic + moving + r];
+      shapes.im[to + count + r] = right.im[j * n + elastic + moving + r];
     }
-    const shape: RootShape = { basis: "modal", re: shapeRe, im: shapeIm };
-    roots.push(improved({ re: re[j], im: im[j], shape }, undamped, system));
-  }
+  });
+  const roots = improved(
+    own.map((j) => [re[j], im[j]] as const),
+    shapes,
+    undamped,
+    system,
+  );
   for (let r = 0; r < held; r++) {
-    roots.push({ re: 0, im: 0, shape: unitShape(free + r, count + relaxing) });
+    roots.push({ re: 0, im: 0, shape: unitShape(free + r, size) });
   }
   return succeed(roots);
 }
@@ -341,27 +345,51 @@ function stateMatrix(undamped: UndampedModes, system: ModalSystem): Outcome<Floa
   return succeed(a);
 }
 
-/** One Newton step on psi^T (M root^2 + C root + K) psi = 0. */
-function improved(root: Root, undamped: UndampedModes, system: ModalSystem): Root {
-  const { re: x, im: y } = root.shape;
-  const { count, values } = undamped;
-  const { relaxing, damping, relaxingStiffness } = system;
-  const size = count + relaxing;
+/** One Newton step for each root on psi^T (M root^2 + C root + K) psi = 0; shapes one a row. */
+function improved(
+  found: readonly (readonly [number, number])[],
+  shapes: { readonly re: Float64Array; readonly im: Float64Array },
+  undamped: UndampedModes,
+  system: ModalSystem,
+): Root[] {
+  const size = system.count + system.relaxing;
+  // C psi of all shapes at once, where a product is quick.
+  const damped = {
+    re: multiply(shapes.re, system.damping, found.length, size, size),
+    im: multiply(shapes.im, system.damping, found.length, size, size),
+  };
+  return found.map(([re, im], k) => {
+    const row = (all: Float64Array) => all.subarray(k * size, (k + 1) * size);
+    const [x, y] = [row(shapes.re), row(shapes.im)];
+    const root: Root = { re, im, shape: { basis: "modal", re: x, im: y } };
+    const b = crossSum(x, y, row(damped.re), row(damped.im));
+    return newtonStep(root, ...inertiaAndSprings(x, y, b, undamped, system));
+  });
+}
+
+/** psi^T v without conjugation. */
+function crossSum(x: Float64Array, y: Float64Array, vRe: Float64Array, vIm: Float64Array): Pair {
+  let re = 0;
+  let im = 0;
+  for (let i = 0; i < x.length; i++) {
+    re += x[i] * vRe[i] - y[i] * vIm[i];
+    im += x[i] * vIm[i] + y[i] * vRe[i];
+  }
+  return [re, im];
+}
+
+/** psi^T (M, C, K) psi, that of C given. */
+function inertiaAndSprings(
+  x: Float64Array,
+  y: Float64Array,
+  b: Pair,
+  { values }: UndampedModes,
+  { count, relaxing, relaxingStiffness }: ModalSystem,
+): [Pair, Pair, Pair] {
   const a: Pair = [0, 0];
-  const b: Pair = [0, 0];
   const c: Pair = [0, 0];
   for (let r = 0; r < count; r++) addSquare(a, 1, x[r], y[r]);
   for (let r = 0; r < count; r++) addSquare(c, values[r], x[r], y[r]);
-  for (let i = 0; i < size; i++) {
-    let sumRe = 0;
-    let sumIm = 0;
-    for (let j = 0; j < size; j++) {
-      sumRe += damping[i * size + j] * x[j];
-      sumIm += damping[i * size + j] * y[j];
-    }
-    b[0] += x[i] * sumRe - y[i] * sumIm;
-    b[1] += x[i] * sumIm + y[i] * sumRe;
-  }
   for (let i = 0; i < relaxing; i++) {
     for (let j = 0; j < relaxing; j++) {
       const k = relaxingStiffness[i * relaxing + j];
@@ -369,5 +397,5 @@ function improved(root: Root, undamped: UndampedModes, system: ModalSystem): Roo
       c[1] += k * (x[count + i] * y[count + j] + y[count + i] * x[count + j]);
     }
   }
-  return newtonStep(root, a, b, c);
+  return [a, b, c];
 }

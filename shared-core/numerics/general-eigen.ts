@@ -10,12 +10,12 @@ import { balance } from "./balance.ts";
 import { type Kernel, kernelFor } from "./kernel.ts";
 import { multishiftQr } from "./multishift-qr.ts";
 import { fail, type Outcome, succeed } from "./outcome.ts";
-import { allFinite, maxAbs } from "./products.ts";
+import { allFinite, maxAbs, transpose } from "./products.ts";
 import type { SchurValues } from "./real-schur.ts";
 import { schurVectors } from "./schur-vectors.ts";
-import { unitScale } from "./symmetric-eigen.ts";
+import { unitScale, type VectorLayout } from "./symmetric-eigen.ts";
 
-/** n×n row-major, vector j in column j. */
+/** n×n row-major, vector j in column j, or in row j where rows were asked for. */
 export type ComplexMatrix = { re: Float64Array; im: Float64Array };
 
 export type GeneralEigen = {
@@ -33,6 +33,8 @@ export type GeneralEigenOptions = {
   right?: boolean;
   /** Default false. */
   left?: boolean;
+  /** Of the vectors; default columns. */
+  layout?: VectorLayout;
   kernel?: Kernel;
 };
 
@@ -43,7 +45,7 @@ export function generalEigen(
   options: GeneralEigenOptions = {},
 ): Outcome<GeneralEigen> {
   if (!allFinite(a)) return fail("the matrix holds a value that is not finite");
-  const { right = true, left = false, kernel = kernelFor(n) } = options;
+  const { right = true, left = false, layout = "columns", kernel = kernelFor(n) } = options;
   const scale = unitScale(maxAbs(a));
   const work = a.map((v) => v * scale);
   const stretch = balance(work, n);
@@ -58,7 +60,8 @@ export function generalEigen(
   if (found < n) return fail(`the QR iteration found ${found} of ${n} values within its cap`, result);
   if (right) {
     const x = schurVectors(h, n, values.re, values.im);
-    result.right = intoColumns(x, transposedQ, n, values.im, kernel, (i) => stretch[i], 1);
+    result.right = unitVectors(timesBasis(x, transposedQ, n, kernel), n, values.im, stretch, 1);
+    if (layout === "columns") result.right = columnsOf(result.right, n);
   }
   if (left) {
     // Left vectors of T are right vectors of its mirror image in the other diagonal, conjugated.
@@ -66,7 +69,9 @@ export function generalEigen(
     const reversed = (v: Float64Array) => Float64Array.from(v).reverse();
     const im = reversed(values.im).map((v) => -v);
     const y = unmirror(schurVectors(mirrored, n, reversed(values.re), im), n, values.im);
-    result.left = intoColumns(y, transposedQ, n, values.im, kernel, (i) => 1 / stretch[i], -1);
+    const shrink = stretch.map((s) => 1 / s);
+    result.left = unitVectors(timesBasis(y, transposedQ, n, kernel), n, values.im, shrink, -1);
+    if (layout === "columns") result.left = columnsOf(result.left, n);
   }
   return succeed(result);
 }
@@ -90,44 +95,54 @@ function unmirror(rows: Float64Array, n: number, im: Float64Array): Float64Array
   return out;
 }
 
-/**
- * Vectors of the Schur form (rows, pairs in two rows) to unit vectors of A in columns: times Z, times a row
- * factor. `sign` −1 conjugates.
- */
-function intoColumns(
-  x: Float64Array,
-  zt: Float64Array,
-  n: number,
-  im: Float64Array,
-  kernel: Kernel,
-  factor: (i: number) => number,
-  sign: 1 | -1,
-): ComplexMatrix {
+/** Vectors of the Schur form (rows, pairs in two rows) times Z. */
+function timesBasis(x: Float64Array, zt: Float64Array, n: number, kernel: Kernel): Float64Array {
   const rows = new Float64Array(n * n);
   const whole = (data: Float64Array) => ({ data, at: 0, stride: n });
   kernel.product(whole(x), whole(zt), whole(rows), n, n, n);
-  const stretch = Float64Array.from({ length: n }, (_, i) => factor(i));
-  const re = new Float64Array(n * n);
+  return rows;
+}
+
+/**
+ * Rows, a pair in two of them, entry i of each times `factor[i]`, to complex unit vectors, one a row. `rows` is
+ * overwritten and becomes the real parts. `sign` −1 conjugates.
+ */
+function unitVectors(
+  rows: Float64Array,
+  n: number,
+  im: Float64Array,
+  factor: Float64Array,
+  sign: 1 | -1,
+): ComplexMatrix {
   const imaginary = new Float64Array(n * n);
   for (let j = 0; j < n; j++) {
     const pair = im[j] !== 0;
+    const first = j * n;
+    const second = first + n;
     let most = 0;
-    for (let p = j * n; p < (pair ? j + 2 : j + 1) * n; p++) {
-      rows[p] *= stretch[p % n];
-      most = Math.max(most, Math.abs(rows[p]));
+    for (let i = 0; i < n; i++) {
+      rows[first + i] *= factor[i];
+      most = Math.max(most, Math.abs(rows[first + i]));
+      if (!pair) continue;
+      rows[second + i] *= factor[i];
+      most = Math.max(most, Math.abs(rows[second + i]));
     }
     let square = 0;
-    for (let p = j * n; p < (pair ? j + 2 : j + 1) * n; p++) square += (rows[p] / most) ** 2;
+    for (let p = first; p < (pair ? second + n : second); p++) square += (rows[p] / most) ** 2;
     const scale = 1 / (most * Math.sqrt(square));
     for (let i = 0; i < n; i++) {
-      re[i * n + j] = rows[j * n + i] * scale;
+      rows[first + i] *= scale;
       if (!pair) continue;
-      const part = sign * rows[(j + 1) * n + i] * scale;
-      re[i * n + j + 1] = re[i * n + j];
-      imaginary[i * n + j] = part;
-      imaginary[i * n + j + 1] = -part;
+      const part = sign * rows[second + i] * scale;
+      rows[second + i] = rows[first + i];
+      imaginary[first + i] = part;
+      imaginary[second + i] = -part;
     }
     if (pair) j++;
   }
-  return { re, im: imaginary };
+  return { re: rows, im: imaginary };
+}
+
+function columnsOf({ re, im }: ComplexMatrix, n: number): ComplexMatrix {
+  return { re: transpose(re, n, n), im: transpose(im, n, n) };
 }
