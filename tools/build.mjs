@@ -1,5 +1,6 @@
 /** Builds everything that ships into dist/. */
-import { readdirSync, renameSync, rmSync } from "node:fs";
+import { spawnSync } from "node:child_process";
+import { readdirSync, renameSync, rmSync, writeFileSync } from "node:fs";
 import { basename, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { ensureInstalled } from "./install.mjs";
@@ -16,16 +17,29 @@ const EXTENSION = {
 
 const REQUIRE = 'import{createRequire}from"node:module";const require=createRequire(import.meta.url);';
 
-/** What ships: one entry a program. Chunks that a program loads only when needed lie beside it. */
+/** Node starts a CommonJS program sooner, and can be handed its compiled form. */
+const TERMINAL = { outdir: "dist/terminal", platform: "node", target: "node20", format: "cjs" };
+
+/** Bundles that the terminal program loads only when it needs them, by the end of the path of their source. */
+const RARE = { units: "shared-core/units/mathjs.ts", patterns: "client/terminal/patterns.ts" };
+
+/** What ships: one entry a program. */
 const PROGRAMS = [
+  { ...TERMINAL, entryPoints: { thrum: "client/terminal/main.ts", load: "client/terminal/load.ts" } },
   {
-    entryPoints: { thrum: "client/terminal/main.ts" },
-    outdir: "dist/terminal",
-    platform: "node",
-    target: "node20",
-    format: "esm",
-    splitting: true,
-    chunkNames: "chunks/[name]-[hash]",
+    ...TERMINAL,
+    entryPoints: { program: "client/terminal/program.ts" },
+    outExtension: { ".js": ".cjs" },
+    supported: { "dynamic-import": false },
+    banner: { js: "(function(require,module,exports){" },
+    footer: { js: "})" },
+    plugins: [rareBeside()],
+  },
+  {
+    ...TERMINAL,
+    entryPoints: RARE,
+    outExtension: { ".js": ".cjs" },
+    define: { "import.meta.url": "__filename" },
   },
   {
     entryPoints: { core: "server/core.ts" },
@@ -74,6 +88,20 @@ const PROGRAMS = [
   },
 ];
 
+function rareBeside() {
+  return {
+    name: "rare beside",
+    setup({ onResolve }) {
+      for (const [name, source] of Object.entries(RARE)) {
+        const filter = new RegExp(`/${basename(source).replace(".", "\\.")}$`);
+        onResolve({ filter }, ({ kind }) =>
+          kind === "dynamic-import" ? { path: `./${name}.cjs`, external: true } : undefined,
+        );
+      }
+    },
+  };
+}
+
 /** The core stands once in the package: a server on Node takes it from the program that browsers run. */
 function coreBeside() {
   return {
@@ -119,6 +147,7 @@ export async function build(into = root) {
       const outdir = join(fresh, basename(program.outdir));
       await esbuild.build({ absWorkingDir: root, ...COMMON, ...program, outdir });
     }
+    finishTerminal(join(fresh, basename(TERMINAL.outdir)));
     for (const name of readdirSync(fresh)) {
       rmSync(join(into, "dist", name), { recursive: true, force: true });
       renameSync(join(fresh, name), join(into, "dist", name));
@@ -126,6 +155,15 @@ export async function build(into = root) {
   } finally {
     rmSync(fresh, { recursive: true, force: true });
   }
+}
+
+/** Says that its files are CommonJS, and compiles them: without that they run as well, only later. */
+function finishTerminal(folder) {
+  writeFileSync(join(folder, "package.json"), '{ "type": "commonjs" }\n');
+  const { status } = spawnSync(process.execPath, [join(root, "tools/compile.mjs"), folder], {
+    stdio: "inherit",
+  });
+  if (status !== 0) throw new Error("the terminal program could not be compiled");
 }
 
 if (process.argv[1] === fileURLToPath(import.meta.url)) {

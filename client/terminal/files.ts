@@ -49,13 +49,14 @@ async function expand(operand: string, host: Host): Promise<readonly string[]> {
   if (operand === STANDARD_INPUT) return [operand];
   const info = statOf(resolve(host.cwd, operand));
   if (info?.isDirectory()) return search("**/*.thrum", resolve(host.cwd, operand));
-  const { isDynamicPattern } = await import("tinyglobby");
-  if (info || !isDynamicPattern(operand)) return [resolve(host.cwd, operand)];
+  if (info) return [resolve(host.cwd, operand)];
+  const { isDynamicPattern } = await import("./patterns.ts");
+  if (!isDynamicPattern(operand)) return [resolve(host.cwd, operand)];
   return search(operand, host.cwd);
 }
 
 async function search(pattern: string, cwd: string): Promise<readonly string[]> {
-  const { glob } = await import("tinyglobby");
+  const { glob } = await import("./patterns.ts");
   const ignore = ["**/node_modules/**", "**/.git/**"];
   const found = await glob(pattern, {
     cwd,

@@ -21,27 +21,40 @@ export interface Screen {
 
 const PLAIN_WIDTH = 100;
 
+/** The world of this process. A stream is opened when it is first used: each costs a start of a few milliseconds. */
 export function processHost(): Host {
   return {
     cwd: process.cwd(),
     env: process.env,
-    stdin: process.stdin,
-    stdout: screen(process.stdout),
-    stderr: screen(process.stderr),
+    get stdin() {
+      return process.stdin;
+    },
+    stdout: screen(() => process.stdout),
+    stderr: screen(() => process.stderr),
   };
 }
 
+type Stream = Writable & { isTTY?: boolean; columns?: number };
+
 /** A stream that was closed at the other end (`| head`) ends the work quietly. */
-function screen(stream: Writable & { isTTY?: boolean; columns?: number }): Screen {
-  stream.on("error", (error: NodeJS.ErrnoException) => {
-    if (error.code === "EPIPE") process.exit(0);
-    throw error;
-  });
+function screen(open: () => Stream): Screen {
+  let opened: Stream | undefined;
+  const stream = (): Stream => {
+    if (opened !== undefined) return opened;
+    opened = open();
+    opened.on("error", (error: NodeJS.ErrnoException) => {
+      if (error.code === "EPIPE") process.exit(0);
+      throw error;
+    });
+    return opened;
+  };
   return {
-    write: (text) => void stream.write(text),
-    isTerminal: stream.isTTY === true,
+    write: (text) => void stream().write(text),
+    get isTerminal() {
+      return stream().isTTY === true;
+    },
     get width() {
-      return stream.columns ?? PLAIN_WIDTH;
+      return stream().columns ?? PLAIN_WIDTH;
     },
   };
 }

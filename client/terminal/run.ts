@@ -35,7 +35,7 @@ async function dispatch(args: readonly string[], host: Host): Promise<number> {
 /** The core is only loaded for the nearest word when somebody mistyped one. */
 async function told(error: UsageError): Promise<string> {
   if (!(error instanceof UnknownWord)) return error.message;
-  const { nearest } = await import("../../shared-core/index.ts");
+  const { nearest } = await import("./nearest.ts");
   const { word, known, otherwise, message } = error;
   const near = nearest(word, known) ?? known.find((each) => each.startsWith(word));
   return `${message}; ${near ? `the nearest is ${near}` : otherwise}`;
