@@ -28,6 +28,13 @@ export interface Mode {
   readonly participation: Readonly<Record<string, number>>;
   /** Share of the strain energy by element name. */
   readonly energyShare: Readonly<Record<string, number>>;
+  /** The largest of these shares, where it is known without writing all of them out; undefined: there is none. */
+  readonly largestShare?: ElementShare | undefined;
+}
+
+export interface ElementShare {
+  readonly name: string;
+  readonly share: number;
 }
 
 export interface ModeTable {

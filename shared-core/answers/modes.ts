@@ -4,7 +4,7 @@
  */
 import { formValue } from "../mechanics/forms.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
-import type { Mode, ModeTable } from "./answer.ts";
+import type { ElementShare, Mode, ModeTable } from "./answer.ts";
 import { type ModalBasis, namedValues } from "./modes-basis.ts";
 import { matchRoots } from "./modes-match.ts";
 import type { Root } from "./modes-roots.ts";
@@ -166,6 +166,17 @@ class ShapedMode implements Mode {
   get energyShare(): Record<string, number> {
     this.#shares ??= byElement(this.#basis, this.#basis.energyShares(this.#mode));
     return this.#shares;
+  }
+
+  get largestShare(): ElementShare | undefined {
+    const shares = this.#basis.energyShares(this.#mode);
+    const { elements } = this.#basis.assembly;
+    let most = -1;
+    for (let e = 0; shares !== undefined && e < shares.length; e++) {
+      const counts = elements[e].stiffness !== 0 && Number.isFinite(shares[e]);
+      if (counts && (most < 0 || shares[e] > (shares as Float64Array)[most])) most = e;
+    }
+    return shares === undefined || most < 0 ? undefined : { name: elements[most].name, share: shares[most] };
   }
 
   #largest(): { readonly shape: Shape; readonly largest: number } {

@@ -7,6 +7,7 @@ import type { FrequencyResponse } from "../answers/analysis.ts";
 import type { Mode } from "../answers/answer.ts";
 import { driveGroups, drivePhasor } from "../answers/drive-phasor.ts";
 import type { Assembly, QuantityRef } from "../mechanics/assembly.ts";
+import { type FlatForms, flatForms, formValues } from "../mechanics/flat-forms.ts";
 import { type FreeShape, freeCoordinates, freeShape, onShape, squareOnShape } from "./shapes.ts";
 
 /**
@@ -16,15 +17,39 @@ import { type FreeShape, freeCoordinates, freeShape, onShape, squareOnShape } fr
 export function frequencyByEnergy(assembly: Assembly, mode: Mode): number | undefined {
   const shape = freeShape(assembly, mode.shape);
   if (shape.im.some((value) => value !== 0)) return undefined;
-  let strain = 0;
-  for (const element of assembly.elements) strain += element.stiffness * squareOnShape(element.form, shape);
+  const { springs, inertias } = packed(assembly);
+  let strain = sumOfSquares(springs, shape.re);
   for (const { matrix, row, column, value } of assembly.extras ?? []) {
     if (matrix === "mass") return undefined;
     if (matrix === "stiffness") strain += value * onShape(row, shape)[0] * onShape(column, shape)[0];
   }
-  let inertia = 0;
-  for (const { form, value } of assembly.inertias) inertia += value * squareOnShape(form, shape);
+  const inertia = sumOfSquares(inertias, shape.re);
   return strain > 0 && inertia > 0 ? Math.sqrt(strain / inertia) / (2 * Math.PI) : undefined;
+}
+
+interface Packed {
+  readonly springs: FlatForms;
+  readonly inertias: FlatForms;
+}
+
+/** Every mode of an assembly is checked, so its forms are packed once. */
+const PACKED = new WeakMap<Assembly, Packed>();
+
+function packed(assembly: Assembly): Packed {
+  const known = PACKED.get(assembly);
+  if (known !== undefined) return known;
+  const springs = flatForms(assembly.elements.map(({ form, stiffness }) => ({ form, value: stiffness })));
+  const made = { springs, inertias: flatForms(assembly.inertias) };
+  PACKED.set(assembly, made);
+  return made;
+}
+
+function sumOfSquares(forms: FlatForms, shape: Float64Array): number {
+  const { count, value } = forms;
+  const sizes = formValues(forms, shape, 0, new Float64Array(count));
+  let sum = 0;
+  for (let e = 0; e < count; e++) sum += value[e] * (sizes[e] * sizes[e]);
+  return sum;
 }
 
 /** More coordinates would make the check dearer than the sweep. */

@@ -1,4 +1,4 @@
-import type { Mode, ModeTable } from "../answers/answer.ts";
+import type { ElementShare, Mode, ModeTable } from "../answers/answer.ts";
 import type { Assembly, LinearForm } from "../mechanics/assembly.ts";
 
 /** A complex number for each free coordinate. */
@@ -65,12 +65,16 @@ export const elasticModes = (table: ModeTable): readonly (Mode & { number: numbe
   );
 
 /** The element that holds most of a mode's strain energy. */
-export function stiffestShare(mode: Mode): string | undefined {
+export const stiffestShare = (mode: Mode): string | undefined => largestShare(mode)?.name;
+
+/** The same with its share. */
+export function largestShare(mode: Mode): ElementShare | undefined {
+  if ("largestShare" in mode) return mode.largestShare;
   const { energyShare } = mode;
   let most: string | undefined;
   for (const name of Object.keys(energyShare)) {
     const share = energyShare[name];
     if (Number.isFinite(share) && (most === undefined || share > energyShare[most])) most = name;
   }
-  return most;
+  return most === undefined ? undefined : { name: most, share: energyShare[most] };
 }

@@ -108,8 +108,12 @@ const RATE_KIND: KnownKind = {
   words: "a rate",
   kind: RATE,
   si: "Hz",
-  scales: ["Hz", "kHz", "MHz"].map(unitFromText),
-  inch: unitFromText("Hz"),
+  get scales() {
+    return unitsFrom("Hz kHz MHz");
+  },
+  get inch() {
+    return unitsFrom("Hz")[0];
+  },
   likely: ["Hz", "rpm", "rad/s", "cpm", "rev/s", "deg/s", "kHz"],
   say: "Hz",
 };
@@ -117,6 +121,8 @@ const RATE_KIND: KnownKind = {
 /** `=` in front of a unit in a row. */
 const isMarked = (unit: string): boolean => unit.startsWith("=");
 const unmarked = (unit: string): string => unit.replace(/^=/, "");
+
+const UNITS = new Map<string, readonly UnitMeaning[]>();
 
 export const KNOWN_KINDS: readonly KnownKind[] = [NUMBER_KIND, RATE_KIND, ...ROWS.map(fromRow)];
 
@@ -127,9 +133,22 @@ function fromRow([words, scales, inch, likely]: Row): KnownKind {
     words,
     kind: unitFromText(si).kind,
     si,
-    scales: units.map((unit) => unitFromText(unmarked(unit))),
-    inch: unitFromText(inch),
+    get scales() {
+      return unitsFrom(scales);
+    },
+    get inch() {
+      return unitsFrom(inch)[0];
+    },
     likely: offers.map(unmarked),
     say: unmarked(offers.find(isMarked) ?? si),
   };
+}
+
+/** Units in a cell of a row, read when they are first asked for: reading them all would delay every start. */
+function unitsFrom(cell: string): readonly UnitMeaning[] {
+  const known = UNITS.get(cell);
+  if (known !== undefined) return known;
+  const units = cell.split(" ").map((unit) => unitFromText(unmarked(unit)));
+  UNITS.set(cell, units);
+  return units;
 }

@@ -1,5 +1,5 @@
 import type { Mode, ModeTable } from "../answers/answer.ts";
-import { stiffestShare } from "../judgement/shapes.ts";
+import { largestShare } from "../judgement/shapes.ts";
 import { percent } from "../judgement/wording.ts";
 import { formatNumber } from "../units/show.ts";
 import { tableLines } from "./table.ts";
@@ -67,7 +67,7 @@ export function movesMost(mode: Mode, coordinates: readonly string[]): string {
 }
 
 function strainsMost(mode: Mode): string {
-  const name = stiffestShare(mode);
-  const share = name === undefined ? 0 : mode.energyShare[name];
-  return share > 0 ? `${name} ${formatNumber(Number((share * 100).toPrecision(2)))} %` : "";
+  const most = largestShare(mode);
+  if (most === undefined || !(most.share > 0)) return "";
+  return `${most.name} ${formatNumber(Number((most.share * 100).toPrecision(2)))} %`;
 }
