@@ -14,6 +14,8 @@ const target = join(root, "docs", "pictures");
 /** A picture for a page, in bytes at most. */
 const LARGEST = 200e3;
 const VIEW = { width: 1280, height: 800 };
+/** Text beside a drawing makes large files. */
+const LOWER = { width: 1280, height: 680 };
 
 const THEMES = {
   dark: "Default Dark Modern",
@@ -36,6 +38,15 @@ const SCENES = {
     await page.locator("[id='thrum.thrum.thrum.verdict']", { hasText: "holds" }).waitFor();
     await goTo(81, 1);
     await page.locator(".codelens-decoration", { hasText: "fails" }).first().waitFor();
+  },
+  async beside({ page, open, goTo, command }) {
+    await open("quay-generator.thrum");
+    await page.locator("[id='thrum.thrum.thrum.verdict']", { hasText: "holds" }).waitFor();
+    await goTo(44, 1);
+    await command("Thrum: Open sheet");
+    const sheet = page.frameLocator("iframe.webview.ready").frameLocator("#active-frame");
+    await sheet.locator(".ruler .mode").first().waitFor();
+    await command("View: Close Primary Side Bar");
   },
   async tests({ page, open, command }) {
     await open("transport-crate.thrum");
@@ -62,7 +73,7 @@ try {
       const picture = `${scene}-${theme}`;
       if (chosen.length > 0 && !chosen.includes(picture)) continue;
       writeSettings(workbench.userData, { "workbench.colorTheme": name, "editor.minimap.enabled": false });
-      const page = await browser.newPage({ viewport: VIEW });
+      const page = await browser.newPage({ viewport: scene === "beside" ? LOWER : VIEW });
       page.setDefaultTimeout(60_000);
       await page.goto(workbench.url);
       await page.locator(".explorer-folders-view .monaco-list-row").first().waitFor();

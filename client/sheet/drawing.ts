@@ -136,6 +136,6 @@ export class Drawing {
 }
 
 /** A narrow page shrinks the drawing so far; then it scrolls, for words must stay readable. */
-const LEAST_SIZE = 0.75;
+const LEAST_SIZE = 0.7;
 /** Keys that a chart knows beside the arrows. */
 const CHART_HELP = "Plus and minus zoom, Shift and arrow keys move, 0 shows all.";

@@ -1,6 +1,6 @@
 /** Places of one system: rows that pull each other straight, ports, heights. */
 import { type Column, columnsOf } from "./columns.ts";
-import type { GraphNode, SystemGraph } from "./graph.ts";
+import type { GraphLink, GraphNode, SystemGraph } from "./graph.ts";
 import {
   BLOCK_GAP,
   type Layout,
@@ -12,15 +12,18 @@ import {
 } from "./placed.ts";
 import type { Block, Cell } from "./rows.ts";
 import { spread, spreadInside } from "./spread.ts";
-import { LINE_HEIGHT, nameWidth, roomFor, type WordRoom } from "./words.ts";
+import { LINE_HEIGHT, nameWidth, type WordRoom } from "./words.ts";
 
 /** From the symbol to its words. */
 const WORDS_GAP = 6;
 const PORT_PAD = 16;
 const WIDEST_NODE = 520;
+const LEAST_NODE = 64;
 /** Rounds in which rows pull each other straight; with more the examples change by less than a pixel. */
 const SWEEPS = 40;
 const GAP = 16;
+
+export type RoomOf = (part: GraphNode | GraphLink) => WordRoom;
 
 interface Extent {
   readonly left: number;
@@ -36,10 +39,14 @@ export class BlockLayout {
   readonly #rooms = new Map<Cell, WordRoom>();
   readonly #ports = new Map<Cell, Map<Cell, number[]>>();
 
-  constructor(graph: SystemGraph, block: Block) {
+  /** @param roomOf what a statement's words take */
+  constructor(graph: SystemGraph, block: Block, roomOf: RoomOf) {
     this.#graph = graph;
     this.#rows = block.rows;
-    for (const cell of block.rows.flat()) this.#rooms.set(cell, this.#roomOf(cell));
+    for (const cell of block.rows.flat()) {
+      const { nodes, links } = graph;
+      this.#rooms.set(cell, roomOf(cell.is === "node" ? nodes[cell.index] : links[cell.index]));
+    }
     for (const cell of block.rows.flat())
       if (cell.is === "link") this.#extents.set(cell, this.#linkExtent(cell));
     for (const cell of block.rows.flat())
@@ -71,12 +78,6 @@ export class BlockLayout {
     return this.#rooms.get(cell) as WordRoom;
   }
 
-  #roomOf(cell: Cell): WordRoom {
-    const { name, statement } =
-      cell.is === "node" ? this.#graph.nodes[cell.index] : this.#graph.links[cell.index];
-    return roomFor(name, statement);
-  }
-
   #linkExtent(cell: Cell): Extent {
     const { keyword, ends } = this.#graph.links[cell.index];
     if (keyword === "pendulum") return { left: 8, right: 8 };
@@ -95,7 +96,7 @@ export class BlockLayout {
       const links = [...new Set(cell.joined)].filter((link) => link.row === row);
       return Math.max(Math.min(WIDEST_NODE, this.#spanOf(links)), this.#namedPorts(cell, links));
     });
-    const half = Math.max(64, own, ...sides) / 2;
+    const half = Math.max(LEAST_NODE, own, ...sides) / 2;
     return { left: half, right: half };
   }
 

@@ -1,5 +1,5 @@
 /** Where everything of a drawing stands, in pixels, y downwards; from names and joints only. */
-import { BlockLayout } from "./block-layout.ts";
+import { BlockLayout, type RoomOf } from "./block-layout.ts";
 import type { SystemGraph } from "./graph.ts";
 import { BLOCK_GAP, type Layout, type PlacedLink, type PlacedNode } from "./placed.ts";
 import { blocksOf } from "./rows.ts";
@@ -8,8 +8,8 @@ const MARGIN = 14;
 /** Blocks stand side by side up to this width. */
 const PAGE = 820;
 
-export function layoutSystem(graph: SystemGraph): Layout {
-  const blocks = blocksOf(graph).map((block) => new BlockLayout(graph, block).place());
+export function layoutSystem(graph: SystemGraph, roomOf: RoomOf): Layout {
+  const blocks = blocksOf(graph).map((block) => new BlockLayout(graph, block, roomOf).place());
   const nodes: PlacedNode[] = [];
   const links: PlacedLink[] = [];
   let [x, y, tallest, widest] = [MARGIN, MARGIN, 0, 0];

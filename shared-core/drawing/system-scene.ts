@@ -15,7 +15,7 @@ import { type ShowValue, type Words, wordsFor } from "./words.ts";
 export const MOST_DRAWN = 30;
 
 /**
- * Draws what a model consists of, whether or not it can be computed. Its places depend on names and joints only.
+ * Draws what a model consists of, whether or not it can be computed. Its places depend on names, joints and units, not on numbers.
  * @param assembly of the shown case; without it nothing in the drawing can be moved
  */
 export function systemScene(model: Model, assembly: Assembly | undefined, show: ShowValue): Scene {
@@ -26,8 +26,14 @@ export function systemScene(model: Model, assembly: Assembly | undefined, show: 
   if (Math.max(coordinates.length, moving) > MOST_DRAWN) {
     return { kind: "chart", width: 0, height: 0, description, coordinates, items: [] };
   }
-  const layout = layoutSystem(graph);
-  const painter = new Painter({ model, graph, layout, assembly, show });
+  const words = new Map<StatementNode, Words>();
+  const wordsOf = ({ name, statement }: GraphNode | GraphLink): Words => {
+    const known = words.get(statement) ?? wordsFor(name, statement, model.tree.text, show);
+    words.set(statement, known);
+    return known;
+  };
+  const layout = layoutSystem(graph, (part) => wordsOf(part).room);
+  const painter = new Painter({ graph, layout, assembly, wordsOf });
   return {
     kind: "system",
     width: Math.ceil(layout.width),
@@ -39,16 +45,14 @@ export function systemScene(model: Model, assembly: Assembly | undefined, show: 
 }
 
 interface PainterInput {
-  readonly model: Model;
   readonly graph: SystemGraph;
   readonly layout: Layout;
   readonly assembly: Assembly | undefined;
-  readonly show: ShowValue;
+  readonly wordsOf: (part: GraphNode | GraphLink) => Words;
 }
 
 class Painter {
   readonly #in: PainterInput;
-  readonly #words = new Map<StatementNode, Words>();
   readonly #boxes: ReadonlyMap<GraphNode, readonly PlacedNode[]>;
   readonly #sways: ReadonlyMap<PlacedNode, readonly Sway[]>;
 
@@ -65,7 +69,7 @@ class Painter {
     const met = this.#portsByBox();
     const nodes = layout.nodes.map((placed) => {
       const { node, x, y, width, height } = placed;
-      const words = this.#wordsOf(node);
+      const words = this.#in.wordsOf(node);
       const ports = met.get(placed) ?? [];
       return nodeItem({
         placed,
@@ -80,20 +84,12 @@ class Painter {
     });
     const links = layout.links.map((placed) => {
       const { link, ports } = placed;
-      const words = this.#wordsOf(link);
+      const words = this.#in.wordsOf(link);
       const anchors = ports.map((port) => this.#anchor(this.#boxAt(port), port.x, port.y));
       return linkItem({ placed, words, anchors, says: saying(link, words, this.#between(link)) });
     });
     const grounds = layout.links.filter(({ link }) => link.grounded).map(groundItem);
     return [...grounds, ...links, ...nodes];
-  }
-
-  #wordsOf({ name, statement }: GraphNode | GraphLink): Words {
-    const known = this.#words.get(statement);
-    if (known !== undefined) return known;
-    const words = wordsFor(name, statement, this.#in.model.tree.text, this.#in.show);
-    this.#words.set(statement, words);
-    return words;
   }
 
   #portsByBox(): Map<PlacedNode, { port: Port; link: GraphLink }[]> {
@@ -162,10 +158,10 @@ const DIRECTIONS: Readonly<Record<string, readonly [number, number, number]>> = 
 
 function saying(
   { keyword, name }: { keyword: string; name: string },
-  { values }: Words,
+  { whole }: Words,
   where: string,
 ): string {
-  return [`${keyword} ${name}`, ...values, ...(where === "" ? [] : [where])].join(", ");
+  return [`${keyword} ${name}`, ...whole, ...(where === "" ? [] : [where])].join(", ");
 }
 
 function describe({ title }: Model, { nodes, links }: SystemGraph): string {

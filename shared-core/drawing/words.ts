@@ -6,10 +6,14 @@ export type ShowValue = (statement: StatementNode, key: string) => string | unde
 
 export interface Words {
   readonly name: string;
+  /** Cut to their room. */
   readonly values: readonly string[];
+  /** The same whole, to be read out. */
+  readonly whole: readonly string[];
+  readonly room: WordRoom;
 }
 
-/** Room for text, in pixels. It depends on names and on which details there are, never on numbers. */
+/** Room for text, in pixels. It depends on names, units and on which details there are, never on numbers. */
 export interface WordRoom {
   readonly width: number;
   readonly lines: number;
@@ -19,14 +23,16 @@ export const LINE_HEIGHT = 14;
 /** Widths of an average letter of a sans-serif face, names at 12 px and values at 11, rounded up. */
 const NAME_LETTER = 7.2;
 const VALUE_LETTER = 6.4;
+/** So narrow it may be before a word leaves its room. */
+const NARROW_LETTER = 6;
 const WIDE: ReadonlySet<string> = new Set("mwMWOQGCD");
 const WIDE_LETTER = 11.5;
 const MOST_NAME_LETTERS = 24;
-/** A damping ratio at its frequency, or four digits, an exponent and a unit such as `lbf*in/rad`. */
-const VALUE_LETTERS = 18;
-/** A number for each direction with its unit. */
-const VECTOR_LETTERS = 24;
-const HAS_VECTORS: ReadonlySet<string> = new Set(["mount"]);
+/** Longer values are cut. */
+const MOST_VALUE_LETTERS = 26;
+/** Letters kept for a number, whatever it is: four digits and an exponent; less where several stand beside each other. */
+const NUMBER = "1.234e5";
+const NUMBER_OF_MANY = "12.3";
 
 /** Keys worth a line, the first two that are there. */
 const SHOWN_KEYS: Readonly<Record<string, readonly string[]>> = {
@@ -89,16 +95,15 @@ export function shownKeys(statement: StatementNode): readonly string[] {
   return keys.filter(isThere).slice(0, MOST_VALUES);
 }
 
-export function roomFor(name: string, statement: StatementNode): WordRoom {
-  const values = shownKeys(statement).length;
-  return {
-    width: Math.max(nameWidth(name), values > 0 ? lettersOf(statement) * VALUE_LETTER : 0),
-    lines: 1 + values,
-  };
+/** Letters kept for a value: those of its text with any number in the place of each number. */
+function lettersOf(value: string): number {
+  const numbers = value.match(ANY_NUMBER) ?? [];
+  const kept = value.replace(ANY_NUMBER, numbers.length > 1 ? NUMBER_OF_MANY : NUMBER);
+  return Math.min(MOST_VALUE_LETTERS, [...kept].length);
 }
 
-const lettersOf = ({ keyword }: StatementNode): number =>
-  HAS_VECTORS.has(keyword.text) ? VECTOR_LETTERS : VALUE_LETTERS;
+/** As it is written and as it is shown; not the digits of a name or a unit. */
+const ANY_NUMBER = /(?<![\w^])[-+−]?\d[\d.]*(?:e[-+]?\d+)?/g;
 
 /** Room that a bare name takes. */
 export function nameWidth(name: string): number {
@@ -107,14 +112,17 @@ export function nameWidth(name: string): number {
 }
 
 export function wordsFor(name: string, statement: StatementNode, text: string, show: ShowValue): Words {
+  const whole = shownKeys(statement).map(
+    (key) => prefixOf(statement, key, text) + (show(statement, key) ?? writtenValue(statement, key, text)),
+  );
+  const letters = whole.map(lettersOf);
+  const width = Math.max(nameWidth(name), ...letters.map((count) => count * VALUE_LETTER));
+  const most = Math.floor(width / NARROW_LETTER);
   return {
     name: shortened(name, MOST_NAME_LETTERS),
-    values: shownKeys(statement).map((key) =>
-      shortened(
-        prefixOf(statement, key, text) + (show(statement, key) ?? writtenValue(statement, key, text)),
-        lettersOf(statement),
-      ),
-    ),
+    values: whole.map((value) => shortened(value, most)),
+    whole,
+    room: { width, lines: 1 + whole.length },
   };
 }
 

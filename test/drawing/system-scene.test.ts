@@ -109,7 +109,9 @@ describe("a drawing", () => {
     for (const [name, text] of [...TEXTS].slice(0, 60)) {
       const [head, ...rest] = text.split("\n");
       // A number of another length, behind `=` only: names and joints stay.
-      const edited = [head, ...rest.map((line) => line.replace(/= (\d)/, "= 9.75$1"))].join("\n");
+      const edited = [head, ...rest.map((line) => line.replace(/= \d[\d.]*(?:e-?\d+)?/, "= 9.7531"))].join(
+        "\n",
+      );
       expect(edited, name).not.toBe(text);
       expect(placesIn(sceneOf(edited)), name).toEqual(placesIn(SCENES.get(name) as Scene));
     }
