@@ -29,21 +29,20 @@ export function recordSignal(samples: Samples, after: AfterRecord): Outcome<Sign
   // Room for a zero piece in front, count - 1 lines and the piece behind.
   const starts = new Float64Array(count + 1);
   const coefficients = new Float64Array(2 * (count + 1));
-  let used = 0;
-  const add = (start: number, value: number, slope: number) => {
-    starts[used] = start;
-    coefficients[2 * used] = value;
-    coefficients[2 * used + 1] = slope;
-    used++;
-  };
-  if (times[0] > 0) add(0, 0, 0);
+  // A piece of zeros stands in front already.
+  let used = times[0] > 0 ? 1 : 0;
   for (let i = 0; i + 1 < count; i++) {
     if (times[i + 1] <= 0) continue;
     const slope = (values[i + 1] - values[i]) / (times[i + 1] - times[i]);
     const cut = Math.max(0, -times[i]);
-    add(times[i] + cut, values[i] + slope * cut, slope);
+    starts[used] = times[i] + cut;
+    coefficients[2 * used] = values[i] + slope * cut;
+    coefficients[2 * used + 1] = slope;
+    used++;
   }
-  add(Math.max(0, times[count - 1]), after === "hold" ? values[count - 1] : 0, 0);
+  starts[used] = Math.max(0, times[count - 1]);
+  coefficients[2 * used] = after === "hold" ? values[count - 1] : 0;
+  used++;
   // Lines meet; only the value may jump where the record begins and where it ends.
   const jumps = new Uint8Array(used).fill(1);
   jumps[0] = 0;

@@ -52,14 +52,14 @@ export class Prober {
 export function extreme(trace: Trace, column: number, prober: Prober, sign: 1 | -1): Peak {
   const { count, times } = trace;
   const y = trace.values[column];
-  let best = 0;
-  let low = y[0];
-  let high = y[0];
+  let lowest = 0;
+  let highest = 0;
   for (let r = 1; r < count; r++) {
-    if (sign * y[r] > sign * y[best]) best = r;
-    if (y[r] < low) low = y[r];
-    if (y[r] > high) high = y[r];
+    if (y[r] < y[lowest]) lowest = r;
+    if (y[r] > y[highest]) highest = r;
   }
+  const best = sign > 0 ? highest : lowest;
+  const [low, high] = [y[lowest], y[highest]];
   let peak: Peak = { value: y[best], at: times[best] };
   const margin = PARABOLA_ERROR * (high - low);
   const candidates = turningRows(trace, y, sign, sign * y[best] - margin);
@@ -88,8 +88,11 @@ function turningRows(trace: Trace, y: Float64Array, sign: 1 | -1, floor: number)
   for (let r = 0; r < count; r++) {
     const here = sign * y[r];
     const left = r > 0 ? sign * y[r - 1] : here;
+    if (!(here >= left)) continue;
     const right = r + 1 < count ? sign * y[r + 1] : here;
-    if (!(here >= left && here >= right) || (here === left && here === right)) continue;
+    if (!(here >= right) || (here === left && here === right)) continue;
+    // The estimate is no higher than this.
+    if (3 * here - left - right < floor) continue;
     let estimate = here;
     if (0 < r && r + 1 < count) {
       const a = times[r] - times[r - 1];

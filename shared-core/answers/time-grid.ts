@@ -91,13 +91,13 @@ export function demandedGrid(motion: Motion, demands: Demands, stored: Float64Ar
   const degree = motion.signals.reduce((most, s) => Math.max(most, s.order), 0);
   const least = segments <= 500 ? LEAST_STEPS : degree > 4 ? 3 : 1;
   const same = 1e-12 * motion.duration;
-  const times: number[] = [0];
-  const of: number[] = [];
+  const grid = new GridRows(edges.length + stored.length);
   let next = 0;
   for (let i = 0; i < segments; i++) {
     const start = edges[i];
     const end = edges[i + 1];
-    const rates = demands.rates.filter(({ rate }) => rate * (end - start) > TURN);
+    const rates =
+      demands.rates.length === 0 ? NONE : demands.rates.filter(({ rate }) => rate * (end - start) > TURN);
     let from = start;
     while (from < end) {
       while (next < stored.length && stored[next] <= from + same) next++;
@@ -111,21 +111,52 @@ export function demandedGrid(motion: Motion, demands: Demands, stored: Float64Ar
         if (r.rate === rate && from < dead - same && dead < to) to = dead;
       }
       const steps = Math.max(1, Math.ceil(((to - from) * rate) / TURN - 1e-9));
-      if (times.length + steps > MOST_ROWS) {
+      if (grid.steps + 1 + steps > MOST_ROWS) {
         return fail(
           `it would have to be followed at more than ${MOST_ROWS} instants between 0 and ${motion.duration} s; ask for a shorter time`,
         );
       }
-      for (let k = 1; k < steps; k++) {
-        times.push(from + ((to - from) * k) / steps);
-        of.push(i);
-      }
-      times.push(to);
-      of.push(i);
+      for (let k = 1; k < steps; k++) grid.push(from + ((to - from) * k) / steps, i);
+      grid.push(to, i);
       from = to;
     }
   }
-  return succeed({ times: Float64Array.from(times), segments: Int32Array.from(of) });
+  return succeed(grid.done());
+}
+
+const NONE: readonly Demand[] = [];
+
+/** A grid while it grows, from t = 0. */
+class GridRows {
+  steps = 0;
+  #times: Float64Array;
+  #segments: Int32Array;
+
+  constructor(room: number) {
+    this.#times = new Float64Array(room + 1);
+    this.#segments = new Int32Array(room);
+  }
+
+  push(time: number, segment: number): void {
+    if (this.steps === this.#segments.length) this.#grow();
+    this.#segments[this.steps] = segment;
+    this.#times[++this.steps] = time;
+  }
+
+  done(): Grid {
+    return {
+      times: this.#times.slice(0, this.steps + 1),
+      segments: this.#segments.slice(0, this.steps),
+    };
+  }
+
+  #grow(): void {
+    const [times, segments] = [this.#times, this.#segments];
+    this.#times = new Float64Array(2 * segments.length + 1);
+    this.#segments = new Int32Array(2 * segments.length);
+    this.#times.set(times);
+    this.#segments.set(segments);
+  }
 }
 
 /** True where every root turns little within every segment, so that the edges alone show all there is to see. */

@@ -65,15 +65,23 @@ function mergedEdges(signals: readonly Signal[], duration: number, same: number)
   let used = 0;
   all[used++] = duration;
   for (const { starts, impulses } of signals) {
-    for (const start of starts) if (start < duration - same) all[used++] = start;
+    for (let i = 0; i < starts.length; i++) if (starts[i] < duration - same) all[used++] = starts[i];
     for (const { time } of impulses) if (time < duration - same) all[used++] = time;
   }
-  const sorted = all.subarray(0, used).sort();
+  // One record alone is in order but for the end put in front; sorting that many takes longer than looking.
+  all.copyWithin(0, 1, used);
+  all[used - 1] = duration;
+  const sorted = ascending(all.subarray(0, used));
   const edges = new Float64Array(used + 1);
   let count = 1;
-  for (const edge of sorted) if (edge - edges[count - 1] > same) edges[count++] = edge;
+  for (let i = 0; i < used; i++) if (sorted[i] - edges[count - 1] > same) edges[count++] = sorted[i];
   edges[count - 1] = duration;
   return edges.slice(0, Math.max(2, count));
+}
+
+function ascending(values: Float64Array): Float64Array {
+  for (let i = 1; i < values.length; i++) if (!(values[i - 1] <= values[i])) return values.sort();
+  return values;
 }
 
 function nearestEdge(edges: Float64Array, time: number): number {
