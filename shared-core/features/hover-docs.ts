@@ -168,17 +168,21 @@ export const WORDS: ReadonlyMap<string, Phrase> = new Map([
   ["not", "The condition does not hold."],
 ]);
 
-/** Headings of docs/language.md, by what a statement does. */
+/** Pages that belong to no statement, relative to docs/. */
 export const PAGES = {
-  file: "language.md#numbers-files-assumptions",
-  numbers: "language.md#numbers-files-assumptions",
-  moves: "language.md#what-can-move",
-  joins: "language.md#what-joins",
-  drives: "language.md#what-drives",
-  asks: "language.md#what-is-asked",
-  holds: "language.md#what-must-hold",
-  literals: "language.md#2-numbers",
+  numbers: "language.md#2-numbers",
+  /** What the reference holds; where a word may belong to several statements. */
+  reference: "reference/README.md",
+  kits: "reference/kit.md",
+  functions: "reference/functions.md",
+  units: "reference/units.md",
 } as const;
+
+/** The reference page of a statement, of each kind of ask its own. */
+export const statementPage = ({ keyword, variant }: StatementDescription): string =>
+  variant === undefined && keyword === "ask"
+    ? PAGES.reference
+    : `reference/${variant === undefined ? keyword : `${keyword}-${variant}`}.md`;
 
 /** The page of a message that can be accepted. */
 export const diagnosticPage = (code: string): string => `diagnostics/${code}.md`;

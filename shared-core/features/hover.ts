@@ -20,6 +20,7 @@ import {
   parameterSays,
   quantityDocs,
   statementDocs,
+  statementPage,
   WORDS,
 } from "./hover-docs.ts";
 import { notesOf, silencedBy } from "./hover-notes.ts";
@@ -98,7 +99,7 @@ function acceptReadout(view: View, place: TextPlace): Readout | undefined {
 function literalAt(place: TextPlace): Readout | undefined {
   const literal = numberAt(place);
   const blocks = literal && literalReadout(literal);
-  return blocks && { blocks, page: PAGES.literals, span: literal.span };
+  return blocks && { blocks, page: PAGES.numbers, span: literal.span };
 }
 
 function unitAt(place: TextPlace): Readout | undefined {
@@ -108,7 +109,7 @@ function unitAt(place: TextPlace): Readout | undefined {
   const literal = numberAt(place);
   return {
     blocks: [...blocks, ...((literal && literalReadout(literal)) ?? [])],
-    page: PAGES.literals,
+    page: PAGES.units,
     span: unit?.span,
   };
 }
@@ -124,7 +125,7 @@ function keywordReadout(view: View, place: TextPlace): Readout | undefined {
   const description = descriptionAt(place);
   if (description === undefined) return wordReadout(place);
   const docs = statementDocs(description);
-  const page = PAGES[description.family];
+  const page = statementPage(description);
   const answers = description.family === "asks" || description.family === "holds";
   const entity = answers && place.statement ? entityOf(view, place.statement) : undefined;
   if (entity === undefined) return { blocks: docs, page };
@@ -142,7 +143,7 @@ function choiceReadout(view: View, place: TextPlace): Readout | undefined {
       ...detailDocs(key),
       ...(place.statement ? notesOf(place.statement, view.model, view.report) : []),
     ],
-    page: PAGES.numbers,
+    page: statementPage(description),
   };
 }
 
@@ -152,7 +153,7 @@ function definitionReadout(view: View, place: TextPlace): Readout | undefined {
   if (innermost !== statement) return innerReadout(view, innermost, place.text);
   const entity = entityOf(view, statement);
   if (entity === undefined) return innerReadout(view, statement, place.text);
-  return { blocks: entityReadout(view, entity), page: PAGES[entity.description.family] };
+  return { blocks: entityReadout(view, entity), page: statementPage(entity.description) };
 }
 
 /** A statement without a place in the namespace: inside a kit, or the second of a name. */
@@ -165,7 +166,7 @@ function innerReadout(view: View, statement: StatementNode, name: string): Reado
       lines(description.says),
       ...notesOf(statement, view.model, view.report),
     ],
-    page: PAGES[description.family],
+    page: statementPage(description),
   };
 }
 
@@ -173,7 +174,7 @@ function innerReadout(view: View, statement: StatementNode, name: string): Reado
 function keyReadout(view: View, place: TextPlace): Readout | undefined {
   const description = descriptionAt(place);
   if (description === undefined) return undefined;
-  const page = PAGES[description.family];
+  const page = statementPage(description);
   if (description.keyword === "case") return entityNamed(view, place.text);
   const key = place.detail?.key.text ?? place.text;
   const detail = detailOf(description, key);
@@ -183,14 +184,14 @@ function keyReadout(view: View, place: TextPlace): Readout | undefined {
 function calleeReadout(view: View, place: TextPlace): Readout | undefined {
   const fn = functionOf(place.text);
   if (fn === undefined) return WORDS.has(place.text) ? wordReadout(place) : entityNamed(view, place.text);
-  return { blocks: functionDocs(fn), page: fn.group === "math" ? PAGES.literals : PAGES.holds };
+  return { blocks: functionDocs(fn), page: PAGES.functions };
 }
 
 function argumentReadout(place: TextPlace): Readout | undefined {
   const call = place.chain.findLast((node) => node.kind === "call") as CallNode | undefined;
   const fn = call && functionOf(call.callee.text);
   const says = fn && parameterSays(fn, place.text);
-  return says === undefined ? undefined : { blocks: [lines(says)], page: PAGES.holds };
+  return says === undefined ? undefined : { blocks: [lines(says)], page: PAGES.functions };
 }
 
 /** A name that refers to something: the thing itself, a direction of it, or a quantity behind its dot. */
@@ -216,7 +217,7 @@ function kitReadout(view: View, { statement, text }: TextPlace): Readout | undef
   if (parameters?.kind === "parameters" && parameters.items.some((each) => each.text === text)) {
     return {
       blocks: [lines(`\`${text}\`: a parameter of the kit, given where a part of it is placed`)],
-      page: PAGES.numbers,
+      page: PAGES.kits,
     };
   }
   const inner = statement.inner.find(({ slots }) => slots.name?.kind === "name" && slots.name.text === text);
@@ -234,7 +235,7 @@ function behindDot(
   if (names[0] === "ground" && names[index] === "reaction") {
     return {
       blocks: [lines(`\`${whole}\`: force on it, summed over what is joined to it`)],
-      page: PAGES.asks,
+      page: PAGES.reference,
       span,
     };
   }
@@ -244,12 +245,16 @@ function behindDot(
   if (quantity === undefined) {
     const direction = entity.description.components?.includes(names[index]);
     return direction
-      ? { blocks: [lines(`\`${whole}\`: direction ${names[index]}`)], page: PAGES.asks, span }
+      ? {
+          blocks: [lines(`\`${whole}\`: direction ${names[index]}`)],
+          page: statementPage(entity.description),
+          span,
+        }
       : undefined;
   }
   return {
     blocks: [...quantityDocs(whole, quantity, motionOf(view, entity)), ...peaksOf(view, whole)],
-    page: PAGES.asks,
+    page: statementPage(entity.description),
     span,
   };
 }
@@ -270,12 +275,12 @@ function peaksOf(view: View, quantity: string): readonly Block[] {
 
 function wordReadout({ text }: TextPlace): Readout | undefined {
   const says = WORDS.get(text);
-  return says === undefined ? undefined : { blocks: [lines(says)], page: PAGES.literals };
+  return says === undefined ? undefined : { blocks: [lines(says)], page: PAGES.numbers };
 }
 
 function entityNamed(view: View, name: string): Readout | undefined {
   const entity = view.model.entities.get(name);
-  return entity && { blocks: entityReadout(view, entity), page: PAGES[entity.description.family] };
+  return entity && { blocks: entityReadout(view, entity), page: statementPage(entity.description) };
 }
 
 function entityOf({ model }: View, statement: StatementNode): Entity | undefined {

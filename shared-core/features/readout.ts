@@ -41,7 +41,7 @@ export interface Hover {
   readonly span: Span;
   readonly markdown: string;
   readonly text: string;
-  /** The page that says more, relative to docs/: `language.md#what-joins`. */
+  /** The page that says more, relative to docs/: `reference/spring.md`. */
   readonly page?: string;
 }
 

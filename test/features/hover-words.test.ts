@@ -1,7 +1,7 @@
 import { existsSync, readFileSync } from "node:fs";
 import { fileURLToPath } from "node:url";
 import { describe, expect, it } from "vitest";
-import { formOf, PAGES, WORDS } from "../../shared-core/features/hover-docs.ts";
+import { formOf, PAGES, statementPage, WORDS } from "../../shared-core/features/hover-docs.ts";
 import { base64, base64Length } from "../../shared-core/features/readout-base64.ts";
 import { markdownOf, phraseMarkdown } from "../../shared-core/features/readout-markdown.ts";
 import { FUNCTIONS } from "../../shared-core/vocabulary/functions.ts";
@@ -188,9 +188,16 @@ describe("pages behind hovers", () => {
             .replace(/\s/g, "-")}`,
       ),
     );
-    for (const page of Object.values(PAGES)) expect(anchors).toContain(page);
+    for (const page of Object.values(PAGES)) {
+      if (page.includes("#")) expect(anchors).toContain(page);
+      else expect(existsSync(docs(page)), page).toBe(true);
+    }
+    for (const description of [...STATEMENTS, ...ASKS]) {
+      const page = statementPage(description);
+      expect(existsSync(docs(page)), page).toBe(true);
+    }
     expect(existsSync(docs("diagnostics/near-resonance.md"))).toBe(true);
-    expect(hoverAt(view, "spring ^feet")?.page).toBe("language.md#what-joins");
+    expect(hoverAt(view, "spring ^feet")?.page).toBe("reference/spring.md");
   });
 });
 
