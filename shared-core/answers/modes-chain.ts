@@ -40,7 +40,14 @@ export function chainRoots(
     k: stiffness.diagonal.map((x) => x / (rate * rate)),
     kOff: stiffness.off.map((x) => x / (rate * rate)),
   };
-  const solved = chainModes(quadratic);
+  const solved = chainModes(quadratic, {
+    values: undamped.values.map((value) => value / (rate * rate)),
+    vector: (j, out) => {
+      chain.forEach((i, t) => {
+        out[t] = undamped.vectors[j * count + i] / root[i];
+      });
+    },
+  });
   return solved === undefined ? undefined : collect(solved, undamped, chain, root, rate);
 }
 

@@ -5,6 +5,7 @@
  * two real roots. Where measures agree (one mass with a branch beside it: every shape is the same), a pair
  * that oscillates goes before real ones, then the roots whose size is nearest to the undamped frequency.
  */
+import { multiply } from "../numerics/products.ts";
 import { sparseTimesVector } from "../numerics/sparse.ts";
 import type { Root } from "./modes-roots.ts";
 import type { UndampedModes } from "./modes-undamped.ts";
@@ -92,6 +93,32 @@ class Measures {
     return (x * x + y * y) / norm;
   }
 
+  /** Of every mode (rows) in some roots (columns). */
+  table(some: readonly number[]): Float64Array {
+    const { vectors, count } = this.#undamped;
+    const width = some.length;
+    const out = new Float64Array(count * width);
+    if (!some.every((s) => this.#roots[s].shape.basis === "inertial")) {
+      for (let p = 0; p < out.length; p++) out[p] = this.of(Math.floor(p / width), some[p % width]);
+      return out;
+    }
+    const columns = new Float64Array(count * 2 * width);
+    some.forEach((s, k) => {
+      const { re, im } = this.#weights(s);
+      for (let i = 0; i < count; i++) {
+        columns[i * 2 * width + 2 * k] = re[i];
+        columns[i * 2 * width + 2 * k + 1] = im[i];
+      }
+    });
+    const parts = multiply(vectors, columns, count, count, 2 * width);
+    for (let p = 0; p < out.length; p++) {
+      const { norm } = this.#weights(some[p % width]);
+      const square = parts[2 * p] * parts[2 * p] + parts[2 * p + 1] * parts[2 * p + 1];
+      out[p] = norm > 0 ? square / norm : 0;
+    }
+    return out;
+  }
+
   /** The modal shape, or M times the shape, with psi^H M psi. */
   #weights(root: number): { re: Float64Array; im: Float64Array; norm: number } {
     const known = this.#weighted[root];
@@ -134,8 +161,9 @@ function clearPairs(
     if (measure > 0.5) clear.push({ r, s, measure });
     else others.push(s);
   });
+  const shares = measures.table(others);
   return clear
-    .filter(({ r, measure }) => others.every((t) => measures.of(r, t) < measure))
+    .filter(({ r, measure }) => others.every((_, k) => shares[r * others.length + k] < measure))
     .map(({ r, s, measure }) => candidate(r, [s], measure, squares[s], values[r]));
 }
 

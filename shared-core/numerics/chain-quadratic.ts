@@ -34,8 +34,14 @@ const POLISH_CAP = 6;
 /** Smallest pivot, relative to entries of size one: a zero pivot becomes this instead. */
 const PIVOT_FLOOR = 1e-290;
 
+/** Values of K, ascending, with a way to their vectors (unit 2-norm), where the caller has them already. */
+export type UndampedChain = {
+  values: Float64Array;
+  vector(j: number, out: Float64Array): void;
+};
+
 /** Undefined where the checks do not hold: repeated or defective values, or no convergence. */
-export function chainModes(q: ChainQuadratic): ChainModes | undefined {
+export function chainModes(q: ChainQuadratic, undamped?: UndampedChain): ChainModes | undefined {
   const n = q.k.length;
   const parts = connectedParts(q);
   const out: Pairs = {
@@ -53,7 +59,7 @@ export function chainModes(q: ChainQuadratic): ChainModes | undefined {
       kOff: q.kOff.subarray(first, Math.max(first, end - 1)),
     };
     const twist = new Twist(part);
-    const starts = firstGuesses(part, twist);
+    const starts = firstGuesses(part, (parts.length === 1 && undamped) || undampedChain(part, twist));
     if (!starts || !solveTogether(twist, starts, out, n, first, at)) return undefined;
     at += 2 * (end - first);
   }
@@ -72,17 +78,29 @@ function connectedParts(q: ChainQuadratic): [number, number][] {
   return parts;
 }
 
-/** First guesses of one part; a rigid-body motion is set aside exactly. */
-function firstGuesses(q: ChainQuadratic, twist: Twist): Starts | undefined {
+/** Values by QL, vectors one by one by the twisted factorisation. */
+function undampedChain(q: ChainQuadratic, twist: Twist): UndampedChain | undefined {
   const n = q.k.length;
   const values = Float64Array.from(q.k);
   if (!implicitQl(values, Float64Array.from(q.kOff), n)) return undefined;
   sortAscending(values, n);
+  const vector = (j: number, out: Float64Array) => {
+    twist.undampedVector(values[j]);
+    out.set(twist.vectorRe);
+  };
+  return { values, vector };
+}
+
+/** First guesses of one part; a rigid-body motion is set aside exactly. */
+function firstGuesses(q: ChainQuadratic, undamped: UndampedChain | undefined): Starts | undefined {
+  if (undamped === undefined) return undefined;
+  const n = q.k.length;
+  const { values } = undamped;
   const items = { re: [], im: [] };
   let zeroVectors: readonly Float64Array[] | undefined = [];
+  const v = new Float64Array(n);
   for (let j = 0; j < n; j++) {
-    twist.undampedVector(values[j]);
-    const v = twist.vectorRe;
+    undamped.vector(j, v);
     // A connected chain has at most one rigid-body motion, and rounding hides anything softer.
     if (j === 0 && Math.abs(values[0]) <= 8 * n * Number.EPSILON) {
       zeroVectors = rigidStarts([Float64Array.from(v)], (a) => bandForm(q.c, q.cOff, a), maxAbs(q.c), items);
