@@ -1,3 +1,4 @@
+import { childrenOf, nodesOf } from "../syntax/expression-nodes.ts";
 import { placeAt } from "../syntax/search.ts";
 import type { DetailNode, Expression, Item, Node, SlotValue, StatementNode, Tree } from "../syntax/tree.ts";
 import { contains, type Span } from "../text/span.ts";
@@ -51,41 +52,14 @@ export function rootsOf(item: Item): readonly Expression[] {
   }
 }
 
-/** The expressions directly below. */
-export function childrenOf(node: Expression): readonly Expression[] {
-  switch (node.kind) {
-    case "parenthesis":
-      return [node.inner];
-    case "unary":
-    case "as":
-      return [node.operand];
-    case "binary":
-      return [node.left, node.right];
-    case "tuple":
-      return node.items;
-    case "range":
-      return [...(node.name ? [node.name] : []), node.from, node.to];
-    case "call":
-      return [...node.positional, ...node.named.map(({ value }) => value)];
-    default:
-      return [];
-  }
-}
-
-/** Every expression below and the node itself. */
-export function* everyExpression(node: Expression): Iterable<Expression> {
-  yield node;
-  for (const child of childrenOf(node)) yield* everyExpression(child);
-}
-
 /** Every expression of a statement, of its details, rows and inner statements. */
 export function* expressionsOf(statement: StatementNode): Iterable<Expression> {
   for (const slot of Object.values(statement.slots)) {
-    for (const root of slotExpressions(slot)) yield* everyExpression(root);
+    for (const root of slotExpressions(slot)) yield* nodesOf(root);
   }
-  for (const item of statement.value ?? []) for (const root of rootsOf(item)) yield* everyExpression(root);
+  for (const item of statement.value ?? []) for (const root of rootsOf(item)) yield* nodesOf(root);
   for (const detail of statement.details) {
-    for (const item of detail.items) for (const root of rootsOf(item)) yield* everyExpression(root);
+    for (const item of detail.items) for (const root of rootsOf(item)) yield* nodesOf(root);
     for (const row of detail.table ?? []) yield* row.cells;
   }
   for (const inner of statement.inner) yield* expressionsOf(inner);

@@ -1,3 +1,4 @@
+import { childrenOf } from "../syntax/expression-nodes.ts";
 import type { DetailNode, Expression, Item, NumberNode, StatementNode, Tree } from "../syntax/tree.ts";
 import { type Span, span, type TextEdit } from "../text/span.ts";
 import { isFault } from "../units/fault.ts";
@@ -5,7 +6,7 @@ import { knownKind } from "../units/known-kinds.ts";
 import { isNumber } from "../units/quantity.ts";
 import { unitOf } from "../units/unit-of.ts";
 import { describe, detailOf } from "../vocabulary/registry.ts";
-import { childrenOf, type ExpressionPlace, expressionAt, slice } from "./navigate-nodes.ts";
+import { type ExpressionPlace, expressionAt, slice } from "./navigate-nodes.ts";
 import { type CodeAction, freeName, linesBefore, linesBehind, nameOf, refused } from "./refactor-edits.ts";
 import type { View } from "./view.ts";
 

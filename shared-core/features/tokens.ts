@@ -1,11 +1,12 @@
 import type { Model } from "../model/model.ts";
+import { nodesOf } from "../syntax/expression-nodes.ts";
 import { type NameNode, type Node, ROLE, type StatementNode, type Token, type Tree } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
 import type { Family } from "../vocabulary/description.ts";
 import { describe, detailOf } from "../vocabulary/registry.ts";
 import { baseOf } from "./navigate.ts";
 import { CONSTANTS, type Occurrence, occurrences } from "./navigate-names.ts";
-import { everyExpression, everyStatement, rootsOf } from "./navigate-nodes.ts";
+import { everyStatement, rootsOf } from "./navigate-nodes.ts";
 import type { View } from "./view.ts";
 
 /** What a word is coloured as, in the order in which the numbers of `encodeTokens` count them. */
@@ -221,7 +222,7 @@ function kindOf({ slots }: StatementNode): string | undefined {
   return slots.kind?.kind === "name" ? slots.kind.text : undefined;
 }
 
-function namesIn(root: Parameters<typeof everyExpression>[0]): NameNode[] {
-  return [...everyExpression(root)].flatMap((each) => (each.kind === "path" ? each.names : [])) as (NameNode &
+function namesIn(root: Parameters<typeof nodesOf>[0]): NameNode[] {
+  return [...nodesOf(root)].flatMap((each) => (each.kind === "path" ? each.names : [])) as (NameNode &
     Node)[];
 }

@@ -1,4 +1,5 @@
 import type { Fix } from "../diagnostics/diagnostic.ts";
+import { visit } from "../syntax/expression-nodes.ts";
 import type { Expression, NumberNode } from "../syntax/tree.ts";
 import { convertNumber } from "../units/convert.ts";
 import { describeQuantity } from "../units/describe.ts";
@@ -24,7 +25,6 @@ import {
   type Wanted,
   wantedKind,
 } from "./typed.ts";
-import { visit } from "./walk.ts";
 
 /**
  * Holds an expression to what is wanted at its place. What fits comes back, an angular rate as a plain 1/s

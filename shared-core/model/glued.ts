@@ -1,8 +1,8 @@
+import { visit } from "../syntax/expression-nodes.ts";
 import type { Expression, NumberNode, UnitNode } from "../syntax/tree.ts";
 import type { Span } from "../text/span.ts";
 import { editsFix, Findings } from "./findings.ts";
 import { type Checked, type ExpressionContext, textOf, type Wanted } from "./typed.ts";
-import { visit } from "./walk.ts";
 
 type Check = (node: Expression, c: ExpressionContext, wanted?: Wanted) => Checked;
 
@@ -162,6 +162,8 @@ function replace(node: Expression, what: Expression, by: Expression): Expression
       };
     case "tuple":
       return { ...node, items: node.items.map(inside) };
+    case "range":
+      return { ...node, from: inside(node.from), to: inside(node.to) };
     default:
       return node;
   }

@@ -1,7 +1,7 @@
+import { visit } from "../syntax/expression-nodes.ts";
 import type { Expression } from "../syntax/tree.ts";
 import type { FileContext, LetTable } from "./lets.ts";
 import type { Entity } from "./model.ts";
-import { visit } from "./walk.ts";
 
 /**
  * Understands the lets of a file, each behind those that it names, so that a chain of any length in any order

@@ -1,7 +1,7 @@
+import { childrenOf } from "../syntax/expression-nodes.ts";
 import type { Expression } from "../syntax/tree.ts";
 import type { Draft } from "./draft.ts";
 import { nameSpan } from "./names.ts";
-import { childrenOf } from "./walk.ts";
 
 /** A let that nothing uses, in a file that has a system: a file of numbers for others is used elsewhere. */
 export function sayUnusedNumbers(draft: Draft): void {

@@ -195,6 +195,20 @@ force h on block
 `);
   });
 
+  it("are found inside the range of an argument, and get blanks there too", () => {
+    const text = `let s = 2
+mass block = 420 kg
+spring k between block and ground = 12 N/m
+force f on block
+    amplitude = 1 N
+    frequency = 3 Hz
+expect c = clear_of_modes(5 Hz*s to 400 Hz) >= 1 %
+`;
+    expect(codesOf(text)).toEqual(["glued-name"]);
+    expect(fixed(text, "Write `5 Hz * s`")).toBe(text.replace("Hz*s", "Hz * s"));
+    expect(codesOf(text.replace("Hz*s", "Hz * s"))).toEqual([]);
+  });
+
   it("are none where only the unit can be meant", () => {
     expect(
       codesOf("let m = 420 kg\nlet k = 20 N/m\nmass b = m\nspring s between b and ground = k + 3 N/m"),

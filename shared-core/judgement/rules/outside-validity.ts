@@ -1,6 +1,6 @@
+import { nodesOf } from "../../syntax/expression-nodes.ts";
 import type { CallNode, Expression, Item, StatementNode } from "../../syntax/tree.ts";
 import { functionOf } from "../../vocabulary/functions.ts";
-import { nodesOf } from "../expression-nodes.ts";
 import type { Finding, Rule, RuleContext } from "../rule.ts";
 
 /** A helper function given numbers outside the range in which its formula holds. */
