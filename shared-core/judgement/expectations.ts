@@ -1,4 +1,5 @@
 /** Judging the expectations of one case: value, limit, margin, tolerance, what matters and what would cure it. */
+import { CODES } from "../diagnostics/codes.ts";
 import type { Expectation, HistoryAsk, Instance } from "../model/model.ts";
 import type { Kind, Quantity } from "../units/dimension.ts";
 import { NUMBER } from "../units/quantity.ts";
@@ -46,7 +47,10 @@ export function* judgeExpectations(
       expectation,
       cures: fails ? yield* curesOf(trial, expectation, influence) : [],
       remarks: found,
-      explained: sides.ok || found.length > 0 || isExplained(trial, expectation, sides.reason),
+      explained:
+        sides.ok ||
+        found.some(({ code }) => CODES[code] === "error") ||
+        isExplained(trial, expectation, sides.reason),
     });
   }
   return judged;

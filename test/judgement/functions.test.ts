@@ -176,6 +176,35 @@ ask history after
       7,
     );
   });
+  test("period_of rounding is none: two equal masses that a third drives alike do not part", () => {
+    const twins = (second: string): string => `
+mass left = 1.3 kg
+mass middle = 2.7 kg
+mass right = ${second}
+spring a between left and ground = 4.1 kN/m
+spring b between right and ground = 4.1 kN/m
+spring d between left and middle = 1.7 kN/m
+spring g between right and middle = 1.7 kN/m
+spring f between middle and ground = 0.7 kN/m
+force push on middle
+    amplitude = 1 N
+    frequency = 3 Hz
+ask history run
+    of = left.displacement
+    by = push
+    lasting = 4 s
+`;
+    const apart = ["left.displacement - right.displacement", "a.force - b.force", "d.rate - g.rate"];
+    for (const quantity of apart) {
+      const judged = (second: string) =>
+        verdictOf(`${twins(second)}expect held = period_of(run, ${quantity}) <= 10 s`);
+      expect(judged("1.3 kg")).toMatchObject({ holds: null, value: null });
+      expect(judged("1.3 kg").reason).toContain("stays where it is");
+      // A part in a million is no rounding.
+      expect(judged("1.3000013 kg").holds).toBe(true);
+    }
+    expect(valueIn(twins("1.3 kg"), "period_of(run, left.displacement)")).toBeGreaterThan(0.1);
+  });
   test("settling_time is the last instant outside the band", () => {
     let last = 0;
     for (let t = 0; t < 4; t += 1e-5) if (Math.abs(decay(t)) > 0.02 * 0.03) last = t;

@@ -16,6 +16,35 @@ const imbalance = (speed: string): string => `force imbalance on pump
     unbalance = 4e-3 kg*m
     speed = ${speed}`;
 
+describe("an expectation of a peak that no damping bounds", () => {
+  const undamped = `
+mass pump = 180 kg
+spring feet between pump and ground = 640 N/mm
+force shake on pump
+    amplitude = 1 N
+ask sweep run
+    of = pump.velocity
+    by = shake
+    from = 2 Hz
+    to = 40 Hz
+expect held = peak(run, pump.velocity) <= 3 mm/s
+`;
+
+  test("is not judged, and an error names it and why, beside the warning of the sweep", () => {
+    const report = judged(undamped);
+    expect(report.cases[0].verdicts[0]).toMatchObject({ name: "held", holds: null, value: null });
+    expect(codesOf(report)).toEqual(["not-damped", "expectation-fails"]);
+    const [said] = saidOf(report, "expectation-fails");
+    expect(said).toMatchObject({ severity: "error" });
+    expect(said.message).toMatch(/^`held` cannot be judged: .*mode 1 at 9.4902 Hz has no damping$/);
+  });
+
+  test("is said to fail once more when the warning is accepted", () => {
+    const report = judged(undamped.replace("ask sweep", "> accept not-damped: it is short\nask sweep"));
+    expect(codesOf(report)).toEqual(["expectation-fails"]);
+  });
+});
+
 describe("an expectation", () => {
   test("gives value, limit, unit, margin and what matters most", () => {
     const verdict = verdictOf(pump("expect held = natural_frequency(1) <= 12 Hz"));

@@ -14,6 +14,7 @@ import { inUnit, time } from "../wording.ts";
 import { inTime } from "./answer-values.ts";
 import { historyOf, numberOf, seriesOf } from "./arguments.ts";
 import { inSeriesUnit, seconds } from "./quantities.ts";
+import { swings } from "./swing.ts";
 
 /** Last time the history leaves the band around its final equilibrium; 0 when it never does. */
 export function settlingTime(trial: Trial, args: AnswerArguments, call: CallNode): Found<Quantity> {
@@ -48,6 +49,8 @@ export function periodOf(trial: Trial, args: AnswerArguments): Found<Quantity> {
   const read = readHistory(trial, args);
   if (!read.ok) return read;
   const { ask, quantity, response } = read.value;
+  const swinging = swings(response, trial.instance.assembly, quantity, ask.lasting);
+  if (!swinging.ok) return swinging;
   const level = swingLevel(response, quantity);
   if (!level.ok) return level;
   const crossings = response.crossings(quantity, level.value, "up");

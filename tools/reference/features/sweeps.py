@@ -221,7 +221,7 @@ ask sweep between_modes
     ("value(through, a.displacement, at: 5 Hz)", abs(u.steady(5, {"a": 1})["a"]), "m"), ("least_at(through, a.displacement)", math.sqrt(2500) / TAU, "Hz", 1e-9),
     ("least(through, a.displacement)", 0, "m", None, 1e-12),
     ("peak(between_modes, a.displacement)", max(abs(u.steady(f, {"a": 1})["a"]) for f in (7.4, 8.4)), "m", 1e-9),
-], modes=[("answers.through.peaks.[a.displacement].value", None), ("modes.[0].dampingRatio", 0)], codes=[])
+], modes=[("answers.through.peaks.[a.displacement].value", None), ("modes.[0].dampingRatio", 0)])
 
 t = System("rotor hub", "ring").mass("rotor", 0.6).mass("hub", 0.2).spring("rotor", "hub", 900).spring("hub", "ring", 2500, 0.08).damper("rotor", "hub", 0.4)
 y = t.steady(8, supports={"ring": 0.01 * np.exp(0.3j)})
