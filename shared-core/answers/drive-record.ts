@@ -51,9 +51,9 @@ export function recordSignal(samples: Samples, after: AfterRecord): Outcome<Sign
   return succeed(
     packedSignal(
       {
-        starts: starts.slice(0, used),
+        starts: starts.subarray(0, used),
         order: 2,
-        coefficients: coefficients.slice(0, 2 * used),
+        coefficients: coefficients.subarray(0, 2 * used),
         omega: 0,
         sineRe: new Float64Array(used),
         sineIm: new Float64Array(used),

@@ -6,7 +6,7 @@ import type { TimeResponse } from "./analysis.ts";
 import type { HistoryAnswer, Peak } from "./answer.ts";
 import type { ModalBasis } from "./modes-basis.ts";
 import { switchedResponse } from "./switched-response.ts";
-import { extreme, Prober } from "./time-extremes.ts";
+import { extreme, Prober, rangeOf } from "./time-extremes.ts";
 import { type Demands, demandedGrid, surveyDemands } from "./time-grid.ts";
 import { linearMotion } from "./time-linear.ts";
 import { timeResponseOf } from "./time-response.ts";
@@ -149,9 +149,15 @@ class Stored {
 
   answer(): HistoryAnswer {
     const { of } = this.#ask;
-    const values = (i: number) => this.#values[i].slice(0, this.#reached);
+    const whole = this.#reached === this.#timeS.length;
+    const values = (i: number) => (whole ? this.#values[i] : this.#values[i].slice(0, this.#reached));
     const series = new Map(of.map(({ text, unit }, i) => [text, { unit, values: values(i) }]));
-    return { kind: "history", timeS: this.#timeS.slice(0, this.#reached), series, peaks: this.#peaks };
+    return {
+      kind: "history",
+      timeS: whole ? this.#timeS : this.#timeS.slice(0, this.#reached),
+      series,
+      peaks: this.#peaks,
+    };
   }
 
   /** Follows a stretch to the instants before `until`. What was reached before a failure stands. */
@@ -160,9 +166,7 @@ class Stored {
     const start = this.#reached;
     let end = start;
     while (end < this.#timeS.length && this.#timeS[end] < until) end++;
-    const local = this.#timeS
-      .slice(start, end)
-      .map((time) => Math.min(motion.duration, Math.max(0, time - from)));
+    const local = localTimes(this.#timeS.subarray(start, end), from, motion.duration);
     const grid = demandedGrid(motion, demands, local);
     if (!grid.ok) return fail(grid.reason);
     let reached = local.length;
@@ -180,8 +184,9 @@ class Stored {
       batch.forEach((quantity, q) => {
         gather(trace.values[q], rows, this.#values[first + q], start);
         const prober = new Prober(motion, new QuantityReader(motion.modal, quantity));
-        this.#peak(of[first + q].text, from, extreme(trace, q, prober, 1));
-        this.#peak(of[first + q].text, from, extreme(trace, q, prober, -1));
+        const range = rangeOf(trace, q);
+        this.#peak(of[first + q].text, from, extreme(trace, q, prober, 1, range));
+        this.#peak(of[first + q].text, from, extreme(trace, q, prober, -1, range));
       });
     }
     this.#reached = start + reached;
@@ -194,6 +199,12 @@ class Stored {
       this.#peaks.set(text, { value: Math.abs(value), at: from + at });
     }
   }
+}
+
+/** Times of a stretch that begins at `from`, none outside it. */
+function localTimes(times: Float64Array, from: number, duration: number): Float64Array {
+  const inside = from === 0 && times[0] >= 0 && times[times.length - 1] <= duration;
+  return inside ? times : times.map((time) => Math.min(duration, Math.max(0, time - from)));
 }
 
 function storedTimes(ask: HistoryAsk, demands: readonly Demands[]): Outcome<Float64Array> {

@@ -234,10 +234,17 @@ function diagonalOf(a: SparseMatrix): Float64Array | undefined {
 function chainOrder(a: SparseMatrix): Int32Array | undefined {
   const n = a.rows;
   if (n < 3 || a.value.length > 3 * n) return undefined;
+  if (isTridiagonal(a)) return Int32Array.from(indices(n));
   const pattern = patternOf([a], n);
-  if (bandwidthOf(pattern) <= 1) return Int32Array.from({ length: n }, (_, i) => i);
   const order = reverseCuthillMcKee(pattern);
   return bandwidthOf(pattern, order) <= 1 ? order : undefined;
+}
+
+function isTridiagonal({ rows, rowStart, column }: SparseMatrix): boolean {
+  for (let i = 0; i < rows; i++) {
+    for (let p = rowStart[i]; p < rowStart[i + 1]; p++) if (Math.abs(column[p] - i) > 1) return false;
+  }
+  return true;
 }
 
 function solveChain(stiffness: SparseMatrix, diagonal: Float64Array, order: Int32Array): Outcome<Rows> {
@@ -260,9 +267,13 @@ function solveChain(stiffness: SparseMatrix, diagonal: Float64Array, order: Int3
   if (!solved.ok) return fail(solved.reason);
   const { values, vectors: rows } = solved.value;
   const row = new Float64Array(n);
+  const inOrder = order.every((i, t) => i === t);
   for (let at = 0; at < n * n; at += n) {
-    for (let t = 0; t < n; t++) row[order[t]] = rows[at + t] * root[order[t]];
-    rows.set(row, at);
+    if (inOrder) for (let t = 0; t < n; t++) rows[at + t] *= root[t];
+    else {
+      for (let t = 0; t < n; t++) row[order[t]] = rows[at + t] * root[order[t]];
+      rows.set(row, at);
+    }
   }
   return succeed({ values, rows, chain: order });
 }

@@ -48,16 +48,33 @@ export class Prober {
   }
 }
 
-/** The largest (sign 1) or smallest (sign -1) value over the trace, exact between rows. */
-export function extreme(trace: Trace, column: number, prober: Prober, sign: 1 | -1): Peak {
-  const { count, times } = trace;
-  const y = trace.values[column];
+/** Rows of the smallest and the largest value, the first of equal ones. */
+export interface Range {
+  readonly lowest: number;
+  readonly highest: number;
+}
+
+export function rangeOf({ count, values }: Trace, column: number): Range {
+  const y = values[column];
   let lowest = 0;
   let highest = 0;
   for (let r = 1; r < count; r++) {
     if (y[r] < y[lowest]) lowest = r;
     if (y[r] > y[highest]) highest = r;
   }
+  return { lowest, highest };
+}
+
+/** The largest (sign 1) or smallest (sign -1) value over the trace, exact between rows. */
+export function extreme(
+  trace: Trace,
+  column: number,
+  prober: Prober,
+  sign: 1 | -1,
+  { lowest, highest }: Range = rangeOf(trace, column),
+): Peak {
+  const { count, times } = trace;
+  const y = trace.values[column];
   const best = sign > 0 ? highest : lowest;
   const [low, high] = [y[lowest], y[highest]];
   let peak: Peak = { value: y[best], at: times[best] };

@@ -145,8 +145,8 @@ class GridRows {
 
   done(): Grid {
     return {
-      times: this.#times.slice(0, this.steps + 1),
-      segments: this.#segments.slice(0, this.steps),
+      times: this.#times.subarray(0, this.steps + 1),
+      segments: this.#segments.subarray(0, this.steps),
     };
   }
 

@@ -76,7 +76,7 @@ function mergedEdges(signals: readonly Signal[], duration: number, same: number)
   let count = 1;
   for (let i = 0; i < used; i++) if (sorted[i] - edges[count - 1] > same) edges[count++] = sorted[i];
   edges[count - 1] = duration;
-  return edges.slice(0, Math.max(2, count));
+  return edges.subarray(0, Math.max(2, count));
 }
 
 function ascending(values: Float64Array): Float64Array {

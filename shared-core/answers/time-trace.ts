@@ -1,5 +1,4 @@
 /** Quantities along a motion: their values, slopes and curvatures, for whole chunks of rows and for single ones. */
-import { kernelFor } from "../numerics/kernel.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { multiply } from "../numerics/products.ts";
 import { type ModalOutput, type ModalSystem, modalDerivative } from "./time-modal.ts";
@@ -103,16 +102,7 @@ export class OutputTable {
     const { count } = this;
     const width = this.#width;
     if (count === 1) return dots(chunk.rows, this.#factors, chunk.count, width);
-    const out = new Float64Array(chunk.count * count);
-    kernelFor(Math.min(width, 4 * count)).product(
-      { data: chunk.rows, at: 0, stride: width },
-      { data: this.#factors, at: 0, stride: count },
-      { data: out, at: 0, stride: count },
-      chunk.count,
-      width,
-      count,
-    );
-    return out;
+    return multiply(chunk.rows, this.#factors, chunk.count, width, count);
   }
 
   /** Values of the quantities at the rows of a chunk: count rows of quantities, into `out`. */
