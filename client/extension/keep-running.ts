@@ -16,6 +16,8 @@ export interface Supervisor {
 /** Pauses before the starts that follow ends within `WINDOW`, in ms; after them the user is asked. */
 const PAUSES = [0, 250, 500, 1000, 2000];
 const WINDOW = 180_000;
+/** A start that failed may be followed by one that does not, for so long, in ms. */
+const GRACE = 5000;
 
 /**
  * Sets what happens when the connection is lost: a new start without a word; after several within three minutes
@@ -23,12 +25,29 @@ const WINDOW = 180_000;
  */
 export function keepRunning(client: BaseLanguageClient, output: vscode.LogOutputChannel): Supervisor {
   const ends: number[] = [];
+  // What the client has to say of a start that failed goes to the log; people are told once, below.
+  const log = client.error.bind(client);
+  client.error = (message, data) => log(message, data, false);
+  client.clientOptions.initializationFailedHandler = (error) => {
+    output.error(`The server ended while it started: ${String(error?.message ?? error)}`);
+    return false;
+  };
   const supervisor: Supervisor = {
-    start: () => client.start(),
+    async start() {
+      try {
+        await client.start();
+      } catch (error) {
+        output.error(error as Error);
+        await new Promise((resolve) => setTimeout(resolve, GRACE));
+        const gaveUp = ends.length > PAUSES.length;
+        if (client.state === State.Stopped && !gaveUp)
+          void offerRestart(supervisor, output, vscode.l10n.t("The Thrum server could not be started."));
+      }
+    },
     async restart() {
       ends.length = 0;
       if (client.state === State.Running) await client.stop().catch((error) => output.error(error));
-      await client.start();
+      await supervisor.start();
     },
   };
   const handler: ErrorHandler = {
@@ -42,7 +61,8 @@ export function keepRunning(client: BaseLanguageClient, output: vscode.LogOutput
       while (ends[0] < now - WINDOW) ends.shift();
       output.warn(`The server ended by itself, ${ends.length} of ${PAUSES.length} within three minutes`);
       if (ends.length > PAUSES.length) {
-        void offerRestart(supervisor, output, ends.length);
+        const told = vscode.l10n.t("The Thrum server ended {0} times within three minutes.", ends.length);
+        void offerRestart(supervisor, output, told);
         return { action: CloseAction.DoNotRestart, handled: true };
       }
       await new Promise((resolve) => setTimeout(resolve, PAUSES[ends.length - 1]));
@@ -56,10 +76,9 @@ export function keepRunning(client: BaseLanguageClient, output: vscode.LogOutput
 async function offerRestart(
   supervisor: Supervisor,
   output: vscode.LogOutputChannel,
-  times: number,
+  message: string,
 ): Promise<void> {
   const [restart, show] = [vscode.l10n.t("Restart"), vscode.l10n.t("Show log")];
-  const message = vscode.l10n.t("The Thrum server ended {0} times within three minutes.", times);
   const chosen = await vscode.window.showErrorMessage(message, restart, show);
   if (chosen === show) output.show();
   if (chosen === restart) await supervisor.restart();

@@ -178,8 +178,8 @@ function report(
     if (!covers(request, target)) continue;
     run.appendOutput(`${lineOf(expectation, verdict)}\r\n`, undefined, target);
     if (verdict.holds === true) run.passed(target);
-    else if (verdict.holds === false) run.failed(target, messageOf(target, expectation, verdict));
-    else run.errored(target, messageOf(target, expectation, verdict));
+    else if (verdict.holds === false) run.failed(target, messageOf(target, verdict));
+    else run.errored(target, messageOf(target, verdict));
   }
 }
 
@@ -192,20 +192,14 @@ function lineOf({ name, comparison, verdicts }: ExpectationSummary, verdict: Cas
   return `${word}  ${where}: ${value === null ? verdict.message : `${value} ${comparison}`}`;
 }
 
-function messageOf(
-  item: vscode.TestItem,
-  expectation: ExpectationSummary,
-  verdict: CaseVerdict,
-): vscode.TestMessage {
+function messageOf(item: vscode.TestItem, verdict: CaseVerdict): vscode.TestMessage {
   const parts = [verdict.message];
   if (verdict.mattersMost) parts.push(vscode.l10n.t("matters most: {0}", verdict.mattersMost));
   const text = parts.join("\n");
   const message =
     verdict.value !== null && verdict.limit !== null
-      ? vscode.TestMessage.diff(text, `${signOf(expectation)} ${verdict.limit}`.trim(), verdict.value)
+      ? vscode.TestMessage.diff(text, verdict.limit, verdict.value)
       : new vscode.TestMessage(text);
   if (item.uri && item.range) message.location = new vscode.Location(item.uri, item.range);
   return message;
 }
-
-const signOf = ({ comparison }: ExpectationSummary): string => /[<>]=?/.exec(comparison)?.[0] ?? "";

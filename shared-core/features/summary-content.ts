@@ -7,6 +7,7 @@ export interface CaseVerdict {
   readonly holds: boolean | null;
   /** `3.95 Hz`; null when it could not be computed. */
   readonly value: string | null;
+  /** `≤ 5.6 Hz`. */
   readonly limit: string | null;
   readonly unit: string;
   /** One sentence: what would have to change, or why it could not be computed. */

@@ -3,10 +3,10 @@
  * opens files of its own.
  */
 import { execFileSync } from "node:child_process";
-import { readdirSync, readFileSync } from "node:fs";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { newModel } from "../../shared-core/index.ts";
 import { Editor } from "./editor.ts";
+import { eventually } from "./eventually.ts";
 import { CASES, SOUND, UNIT, UNIT_FREQUENCY } from "./models.ts";
 
 let editor: Editor;
@@ -35,20 +35,6 @@ beforeAll(async () => {
 }, 240_000);
 
 afterAll(() => editor?.close());
-
-/** Asks again until it fits; the last answer is compared, so that a failure shows it. */
-async function eventually<T>(
-  ask: () => Promise<T>,
-  fits: (value: T) => boolean,
-  within = 30_000,
-): Promise<T> {
-  const end = Date.now() + within;
-  for (;;) {
-    const value = await ask();
-    if (fits(value) || Date.now() > end) return value;
-    await new Promise((resolve) => setTimeout(resolve, 100));
-  }
-}
 
 describe("an open model", () => {
   it("shows a mistake and forgets it when it is cured", async () => {
@@ -238,7 +224,7 @@ describe("the test explorer", () => {
 describe("the server", () => {
   it("is back within 3 s when it was killed, with what was written", async () => {
     await editor.openFile("killed.thrum");
-    const [before, ...others] = serverProcesses();
+    const [before, ...others] = editor.servers();
     expect(others).toEqual([]);
     process.kill(before, "SIGKILL");
     const start = Date.now();
@@ -246,7 +232,7 @@ describe("the server", () => {
     await editor.page.keyboard.type("x");
     await editor.page.locator(".squiggly-error").first().waitFor();
     const took = Date.now() - start;
-    expect(serverProcesses()).not.toContain(before);
+    expect(editor.servers()).not.toContain(before);
     expect(took).toBeLessThan(3000);
     await editor.page.keyboard.press("Backspace");
     await editor.saved("killed.thrum");
@@ -258,18 +244,3 @@ describe("the whole tour", () => {
     expect(await editor.notifications()).toEqual([]);
   });
 });
-
-/** Language servers of this workbench. */
-function serverProcesses(): number[] {
-  return readdirSync("/proc")
-    .filter((name) => /^\d+$/.test(name))
-    .map(Number)
-    .filter((pid) => {
-      try {
-        const words = readFileSync(`/proc/${pid}/cmdline`, "utf8");
-        return words.includes(editor.workbench.extensions) && words.includes("dist/server/main.js");
-      } catch {
-        return false;
-      }
-    });
-}

@@ -1,5 +1,5 @@
 /** A workbench with the packed extension, and what a person does in it. */
-import { cpSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { cpSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import type { Browser, Locator, Page } from "playwright-core";
@@ -141,6 +141,21 @@ export class Editor {
   async lines(): Promise<string[]> {
     const lines = await this.page.locator(".editor-instance .view-lines .view-line").allInnerTexts();
     return lines.map((line) => line.replaceAll("\u00a0", " "));
+  }
+
+  /** Language servers of this workbench. */
+  servers(): number[] {
+    return readdirSync("/proc")
+      .filter((name) => /^\d+$/.test(name))
+      .map(Number)
+      .filter((pid) => {
+        try {
+          const words = readFileSync(`/proc/${pid}/cmdline`, "utf8");
+          return words.includes(this.workbench.extensions) && words.includes("dist/server/main.js");
+        } catch {
+          return false;
+        }
+      });
   }
 
   /** Every notification that was ever shown. */
