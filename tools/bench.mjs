@@ -14,9 +14,8 @@ import { build } from "./build.mjs";
 import { root } from "./root.mjs";
 
 const RUNS = 7;
-/** Rows of less than a millisecond are repeated for so long, at most so often: seven of them would be noise. */
-const SHORT_MS = 250;
-const MOST_RUNS = 101;
+/** What takes less is repeated inside each process, which gives the mean: waking it would be most of the time. */
+const LEAST_SECONDS = 5e-3;
 /** Each side's runs before those that count. */
 const WARM_MS = 1000;
 /** Debian's own, where it is: another Python on the path may carry another SciPy. */
@@ -38,7 +37,7 @@ if (spawnSync(PYTHON, ["-c", "import scipy"]).status !== 0) {
   process.exit(2);
 }
 console.log(
-  `${cpus()[0].model}, ${cpus().length} cores, Node ${process.version}; medians of ${RUNS} interleaved runs or more\n`,
+  `${cpus()[0].model}, ${cpus().length} cores, Node ${process.version}; medians of ${RUNS} interleaved runs\n`,
 );
 console.log("| work | n | ours | peer | ratio | aim | difference | memory ours / peer |");
 console.log("|---|---|---|---|---|---|---|---|");
@@ -91,14 +90,14 @@ async function sideBySide(row) {
   try {
     await ours.say({ do: "load", row: row.row, ...extra.ours });
     for (const peer of peers) await peer.say({ do: "load", row: row.row, ...model, ...extra.peer });
-    for (const t of talkers) await warm(t);
+    const repeats = [];
+    for (const t of talkers) repeats.push(Math.ceil(LEAST_SECONDS / (await warm(t))));
     const times = talkers.map(() => []);
     let last = [];
-    const start = performance.now();
-    for (let i = 0; i < RUNS || (i < MOST_RUNS && performance.now() - start < SHORT_MS); i++) {
+    for (let i = 0; i < RUNS; i++) {
       last = [];
       for (const [j, t] of talkers.entries()) {
-        const answer = await t.say({ do: "run" });
+        const answer = await t.say({ do: "run", repeat: repeats[j] });
         times[j].push(answer.seconds);
         last.push(answer);
       }
@@ -116,11 +115,16 @@ async function sideBySide(row) {
   }
 }
 
-/** Runs that do not count, for both sides alike: by the clock alone, so that a just-in-time compiler has had its say. */
+/**
+ * Runs that do not count, for both sides alike: by the clock alone, so that a just-in-time compiler has had its
+ * say. Gives the seconds of the last.
+ */
 async function warm(t) {
   const start = performance.now();
-  do await t.say({ do: "run" });
+  let last = 0;
+  do last = (await t.say({ do: "run", repeat: 1 })).seconds;
   while (performance.now() - start < WARM_MS);
+  return last;
 }
 
 /** What a sweep or a history needs beside the matrices. */
@@ -183,7 +187,7 @@ async function aloneRow(row) {
     const times = [];
     let memory = 0;
     for (let i = 0; i < RUNS; i++) {
-      const answer = await ours.say({ do: "run" });
+      const answer = await ours.say({ do: "run", repeat: 1 });
       times.push(answer.seconds);
       memory = answer.maxRssMb;
     }

@@ -13,7 +13,7 @@ import {
 
 type Command =
   | { readonly do: "load"; readonly row: string; readonly text: string; readonly csv?: string }
-  | { readonly do: "run" };
+  | { readonly do: "run"; readonly repeat: number };
 
 let row = "";
 let text = "";
@@ -81,13 +81,16 @@ const ROWS: Readonly<Record<string, (i: Instance) => number[]>> = {
   "history-all": history,
 };
 
-function run(): { seconds: number; values: number[] } {
+/** Mean seconds of a run, and what the last one gave. */
+function run(repeat: number): { seconds: number; values: number[] } {
   const start = process.hrtime.bigint();
   let values: number[] = [];
-  if (row === "text") values = [understand("bench.thrum", text, reader).diagnostics.length];
-  else if (row === "check") values = [judge(understand("bench.thrum", text, reader)).diagnostics.length];
-  else if (instance) values = ROWS[row](instance);
-  return { seconds: Number(process.hrtime.bigint() - start) / 1e9, values };
+  for (let k = 0; k < repeat; k++) {
+    if (row === "text") values = [understand("bench.thrum", text, reader).diagnostics.length];
+    else if (row === "check") values = [judge(understand("bench.thrum", text, reader)).diagnostics.length];
+    else if (instance) values = ROWS[row](instance);
+  }
+  return { seconds: Number(process.hrtime.bigint() - start) / 1e9 / repeat, values };
 }
 
 for await (const line of createInterface({ input: process.stdin })) {
@@ -102,7 +105,7 @@ for await (const line of createInterface({ input: process.stdin })) {
     instance = instantiate(model, 0);
     process.stdout.write('{"loaded":true}\n');
   } else {
-    const { seconds, values } = run();
+    const { seconds, values } = run(command.repeat);
     const maxRssMb = process.resourceUsage().maxRSS / 1024;
     process.stdout.write(`${JSON.stringify({ seconds, values, maxRssMb })}\n`);
   }

@@ -1,8 +1,9 @@
 #!/usr/bin/env python3
 """What a careful engineer would write instead: NumPy and SciPy on the same model, timed inside the process.
 
-Reads one JSON command a line on standard input, {"do": "load", ...model...} or {"do": "run"}, and answers each
-with one JSON line: {"seconds": ..., "values": [...], "maxRssMb": ...}. Started by tools/bench.mjs.
+Reads one JSON command a line on standard input, {"do": "load", ...model...} or {"do": "run", "repeat": ...}, and
+answers each with one JSON line: {"seconds": ..., "values": [...], "maxRssMb": ...}, the seconds those of one run
+in the mean. Started by tools/bench.mjs.
 """
 
 import json
@@ -169,8 +170,9 @@ def main():
             print(json.dumps({"loaded": True}), flush=True)
             continue
         start = time.perf_counter()
-        values = ROWS[model["row"]](model, *mats)
-        seconds = time.perf_counter() - start
+        for _ in range(command["repeat"]):
+            values = ROWS[model["row"]](model, *mats)
+        seconds = (time.perf_counter() - start) / command["repeat"]
         rss = resource.getrusage(resource.RUSAGE_SELF).ru_maxrss / 1024
         print(json.dumps({"seconds": seconds, "values": np.ravel(values).tolist(), "maxRssMb": rss}), flush=True)
 
