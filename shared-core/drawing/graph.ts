@@ -18,7 +18,11 @@ export interface GraphLink {
   readonly ends: readonly LinkEnd[];
   /** It has an end at ground. */
   readonly grounded: boolean;
+  /** It is twisted, not stretched. */
+  readonly turning: boolean;
 }
+
+type Joined = Omit<GraphLink, "turning">;
 
 export interface LinkEnd {
   /** Index of the node. */
@@ -51,7 +55,10 @@ export function systemGraph(statements: readonly StatementNode[]): SystemGraph {
   const builder = new GraphBuilder();
   for (const statement of statements) builder.addNode(statement);
   for (const statement of statements) builder.addPoint(statement);
-  const links = statements.flatMap((statement) => builder.link(statement) ?? []);
+  const links = withTurning(
+    builder.nodes,
+    statements.flatMap((statement) => builder.link(statement) ?? []),
+  );
   const used = new Set(
     links.filter(({ keyword }) => keyword !== "point").flatMap(({ ends }) => ends.map(({ at }) => at)),
   );
@@ -59,6 +66,22 @@ export function systemGraph(statements: readonly StatementNode[]): SystemGraph {
   const seen = links.filter(({ keyword, name }) => keyword !== "point" || !used.has(name));
   return { nodes: builder.nodes, links: seen };
 }
+
+/** What stands on an inertia or on a rotation of a body turns, and so do junctions and what is joined to them. */
+function withTurning(nodes: readonly GraphNode[], links: readonly Joined[]): GraphLink[] {
+  const turning = new Set(nodes.flatMap(({ keyword }, i) => (keyword === "inertia" ? [i] : [])));
+  const turns = ({ ends }: Joined): boolean =>
+    ends.some(({ node, at, isPoint }) => turning.has(node) || (!isPoint && ROTATIONS.has(at)));
+  // Each round reaches one junction further.
+  for (let round = 0, size = -1; round < nodes.length && size !== turning.size; round++) {
+    size = turning.size;
+    for (const { node } of links.filter(turns).flatMap(({ ends }) => ends))
+      if (nodes[node].keyword === "junction") turning.add(node);
+  }
+  return links.map((link) => ({ ...link, turning: turns(link) }));
+}
+
+const ROTATIONS: ReadonlySet<string> = new Set(["rx", "ry", "rz"]);
 
 /** `genset.z` of a slot; empty where it could not be read. */
 export function slotText(slot: SlotValue | undefined): string {
@@ -87,7 +110,7 @@ class GraphBuilder {
     this.nodes[body].points.push(name);
   }
 
-  link(statement: StatementNode): GraphLink | undefined {
+  link(statement: StatementNode): Joined | undefined {
     const keyword = statement.keyword.text;
     if (keyword === "bind") return this.#bind(statement);
     if (keyword === "point") return this.#link(statement, [slotText(statement.slots.name)]);
@@ -100,7 +123,7 @@ class GraphBuilder {
   }
 
   /** Links that stand on nothing known cannot be drawn. */
-  #link(statement: StatementNode, places: readonly string[]): GraphLink | undefined {
+  #link(statement: StatementNode, places: readonly string[]): Joined | undefined {
     const name = slotText(statement.slots.name);
     const ends = places.flatMap((place) => this.#end(place) ?? []);
     if (name === "" || ends.length === 0) return undefined;
@@ -118,7 +141,7 @@ class GraphBuilder {
     return node === undefined ? undefined : { node, at: direction, isPoint: false };
   }
 
-  #bind(statement: StatementNode): GraphLink | undefined {
+  #bind(statement: StatementNode): Joined | undefined {
     const name = slotText(statement.slots.coordinate);
     const item = statement.value?.[0];
     const others = item?.kind === "value" ? pathsIn(item.expression) : [];
@@ -128,7 +151,7 @@ class GraphBuilder {
     return { name, keyword: "bind", statement, ends: different, grounded: different.length === 1 };
   }
 
-  #pivot(statement: StatementNode): GraphLink | undefined {
+  #pivot(statement: StatementNode): Joined | undefined {
     const name = slotText(statement.slots.name);
     const own = this.#byName.get(name);
     if (own === undefined || this.nodes[own].statement !== statement) return undefined;

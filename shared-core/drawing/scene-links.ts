@@ -3,7 +3,7 @@
 import { hatched, placedPath, round } from "./path.ts";
 import { type PlacedLink, type Port, SYMBOL, SYMBOL_HALF } from "./placed.ts";
 import type { SceneAnchor, SceneItem, SceneLabel, ScenePart } from "./scene.ts";
-import { DRIVES, OTHER, SYMBOLS, type SymbolPart } from "./symbols.ts";
+import { DRIVES, OTHER, SYMBOLS, type SymbolPart, TURNING_SYMBOLS } from "./symbols.ts";
 import { LINE_HEIGHT, type Words } from "./words.ts";
 
 export interface LinkFrame {
@@ -56,7 +56,8 @@ function partsOf(frame: LinkFrame): ScenePart[] {
   const { link, ports } = frame.placed;
   const drive = DRIVES[link.keyword];
   if (drive !== undefined) return driveParts(frame, drive);
-  const symbol = SYMBOLS[link.keyword] ?? OTHER;
+  const turning = link.turning ? TURNING_SYMBOLS[link.keyword] : undefined;
+  const symbol = turning ?? SYMBOLS[link.keyword] ?? OTHER;
   if (ports.length > 2 || (ports.length === 2 && ports.every(({ side }) => side === "below"))) {
     return manyParts(frame, symbol);
   }

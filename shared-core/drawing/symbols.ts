@@ -81,6 +81,20 @@ export const SYMBOLS: Readonly<Record<string, readonly SymbolPart[]>> = {
   pendulum: [both("M0,-23V23")],
 };
 
+/** The same where they turn: a shaft with the lines of its twist, a disc in a bowl of oil. */
+export const TURNING_SYMBOLS: Readonly<Record<string, readonly SymbolPart[]>> = {
+  spring: [
+    both("M0,-23V-17M0,17V23"),
+    both("M-5,-17H5V17H-5Z", "body"),
+    both("M-5,-5L5,-13M-5,3L5,-5M-5,11L5,3", "thin"),
+  ],
+  damper: [
+    lower("M0,23V13M-11,-7V1A11,12 0 0 0 11,1V-7"),
+    upper("M0,-23V0M-7,0H7"),
+    upper("M-7,-3V3M7,-3V3"),
+  ],
+};
+
 export const OTHER: readonly SymbolPart[] = [both("M0,-23V-12M0,12V23"), both("M-10,-12H10V12H-10Z", "body")];
 
 /** What drives stands on its node at (0, 23); a motion under its support, at (0, -23). */

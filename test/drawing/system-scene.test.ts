@@ -136,6 +136,25 @@ describe("kinds of statements", () => {
     for (const { keyword } of seen) if (keyword !== "group") expect(drawn, keyword).toContain(keyword);
   });
 
+  it("look otherwise where they turn, through junctions too", () => {
+    const scene = sceneOf(`thrum 1
+inertia rotor = 3 kg*m^2
+mass drum = 8 kg
+junction knee
+junction far
+spring shaft between rotor and knee = 5 N*m/rad
+damper oil between knee and far = 2 N*m*s/rad
+spring stub between far and ground = 5 N*m/rad
+spring feet between drum and ground = 5 N/mm
+`);
+    const bodies = (name: string) =>
+      scene.items.find((item) => item.name === name)?.parts.filter(({ style }) => style === "body").length;
+    // A shaft is a bar, a spring a line.
+    expect(["shaft", "stub", "feet"].map(bodies)).toEqual([1, 1, 0]);
+    const paths = (name: string) => scene.items.find((item) => item.name === name)?.parts.length;
+    expect(paths("oil")).toBe(5);
+  });
+
   it("name what they join", () => {
     const says = new Map(sceneOf(EVERY_KIND).items.map((item) => [item.name, item.says]));
     expect(says.get("feet")).toBe("spring feet, 4 × 26.5 N/mm, between unit and ground");
