@@ -3,13 +3,14 @@ import type { GroupState } from "./frequency-quantity.ts";
 
 /** One group's phasors of all coordinates at neighbouring points of an axis. */
 export interface StateBlock {
-  /** Row distance: points there is room for. */
+  /** Points there is room for, and the distance of the rows. */
   readonly lanes: number;
+  readonly stride: number;
   /** rad/s, of the group's own frequency, one a lane. */
   readonly omega: Float64Array;
   /** Coordinate i stands in row `row[i]`. */
   readonly row: Int32Array;
-  /** Rows of lanes. */
+  /** Lane l of a row at row * stride + l. */
   readonly re: Float64Array;
   readonly im: Float64Array;
   /** 0 where this way gave nothing and the point has to be solved by itself. */
@@ -22,21 +23,10 @@ export interface StateBlock {
  */
 export type BlockSolver = (axisHz: Float64Array, from: number) => StateBlock;
 
-export function stateBlock(coordinates: number, lanes: number, row?: Int32Array): StateBlock {
-  return {
-    lanes,
-    omega: new Float64Array(lanes),
-    row: row ?? Int32Array.from({ length: coordinates }, (_, i) => i),
-    re: new Float64Array(coordinates * lanes),
-    im: new Float64Array(coordinates * lanes),
-    good: new Uint8Array(lanes),
-  };
-}
-
 /** Puts the motions of one lane into a state whose frequency and supports are already those of the lane. */
-export function takeLane({ lanes, row, re, im }: StateBlock, lane: number, { xRe, xIm }: GroupState): void {
+export function takeLane({ stride, row, re, im }: StateBlock, lane: number, { xRe, xIm }: GroupState): void {
   for (let i = 0; i < row.length; i++) {
-    const at = row[i] * lanes + lane;
+    const at = row[i] * stride + lane;
     xRe[i] = re[at];
     xIm[i] = im[at];
   }

@@ -11,6 +11,7 @@ import { type StateInput, stateSpace } from "../mechanics/state-space.ts";
 import { complexLuWorkspace, factorComplexLu, solveComplexLu } from "../numerics/complex-lu.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { multiply, transpose } from "../numerics/products.ts";
+import type { StateBlock } from "./frequency-block.ts";
 import type { ModalBasis } from "./modes-basis.ts";
 import type { Root } from "./modes-roots.ts";
 import { modalStates } from "./time-basis.ts";
@@ -19,22 +20,15 @@ import { type ModalSystem, modalSystem } from "./time-modal.ts";
 export interface Transfer {
   /** All free coordinates at s = i omega for input phasors `uRe`, `uIm`; false where a root stands at s itself. */
   at(omega: number, uRe: Float64Array, uIm: Float64Array, xRe: Float64Array, xIm: Float64Array): boolean;
-  /** The same for `lanes` frequencies as one product, where every root stands singly. */
+  /** The same for many frequencies as one product, where every root stands singly. */
   readonly many?: TransferBlock;
 }
 
 export interface TransferBlock {
-  readonly lanes: number;
-  readonly free: number;
-  /** Input j of a lane at lane * inputs + j; coordinate i of a lane at i * lanes + lane; `good` 0 where a root stands. */
-  solve(
-    omega: Float64Array,
-    uRe: Float64Array,
-    uIm: Float64Array,
-    xRe: Float64Array,
-    xIm: Float64Array,
-    good: Uint8Array,
-  ): void;
+  /** Frequencies are put into it, motions taken from it; `good` is 0 where a root stands at s itself. */
+  readonly block: StateBlock;
+  /** Solves for input j of a lane at lane * inputs + j. */
+  solve(uRe: Float64Array, uIm: Float64Array): void;
 }
 
 /** Inputs are the drives `by` in their order: forces, or displacements of supports. */
@@ -175,18 +169,22 @@ function blockOf(parts: Parts): TransferBlock {
   }
   const shares = new Float64Array(2 * count * width);
   const both = new Float64Array(free * width);
-  return {
+  const block: StateBlock = {
     lanes,
-    free,
-    solve(omega, uRe, uIm, xRe, xIm, good) {
-      good.fill(1);
-      for (let k = 0; k < count; k++) shareLanes(parts, k, omega, uRe, uIm, shares, good);
+    stride: width,
+    omega: new Float64Array(lanes),
+    row: Int32Array.from({ length: free }, (_, i) => i),
+    re: both,
+    im: both.subarray(lanes),
+    good: new Uint8Array(lanes),
+  };
+  return {
+    block,
+    solve(uRe, uIm) {
+      block.good.fill(1);
+      for (let k = 0; k < count; k++) shareLanes(parts, k, block, uRe, uIm, shares);
       multiply(shapes, shares, free, 2 * count, width, both);
-      for (let i = 0; i < free; i++) {
-        xRe.set(both.subarray(i * width, i * width + lanes), i * lanes);
-        xIm.set(both.subarray(i * width + lanes, (i + 1) * width), i * lanes);
-      }
-      addDirect(direct, free, inputs, lanes, uRe, uIm, xRe, xIm);
+      addDirect(direct, inputs, block, uRe, uIm);
     },
   };
 }
@@ -195,17 +193,15 @@ function blockOf(parts: Parts): TransferBlock {
 function shareLanes(
   { modal, feeds }: Parts,
   k: number,
-  omega: Float64Array,
+  { lanes, omega, good }: StateBlock,
   uRe: Float64Array,
   uIm: Float64Array,
   shares: Float64Array,
-  good: Uint8Array,
 ): void {
   const { inputs, count } = modal;
   const [f0, f1, f2] = feeds;
   const single = modal.weight[k] === 1;
   const [rootRe, rootIm] = [modal.lambdaRe[k], modal.lambdaIm[k]];
-  const lanes = omega.length;
   const first = 2 * lanes * k;
   const second = first + 2 * lanes * count;
   for (let lane = 0; lane < lanes; lane++) {
@@ -247,21 +243,18 @@ function shareLanes(
 /** What inputs move at once: places without inertia, and supports. */
 function addDirect(
   direct: Float64Array,
-  free: number,
   inputs: number,
-  lanes: number,
+  { lanes, stride, row, re, im }: StateBlock,
   uRe: Float64Array,
   uIm: Float64Array,
-  xRe: Float64Array,
-  xIm: Float64Array,
 ): void {
-  for (let i = 0; i < free; i++) {
+  for (let i = 0; i < row.length; i++) {
     for (let j = 0; j < inputs; j++) {
       const factor = direct[i * inputs + j];
       if (factor === 0) continue;
       for (let lane = 0; lane < lanes; lane++) {
-        xRe[i * lanes + lane] += factor * uRe[lane * inputs + j];
-        xIm[i * lanes + lane] += factor * uIm[lane * inputs + j];
+        re[i * stride + lane] += factor * uRe[lane * inputs + j];
+        im[i * stride + lane] += factor * uIm[lane * inputs + j];
       }
     }
   }

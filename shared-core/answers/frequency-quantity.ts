@@ -131,7 +131,7 @@ export function plainMotions(quantities: readonly SteadyQuantity[]): PlainWriter
 }
 
 function writeLanes(
-  { lanes, omega, row, re: xRe, im: xIm }: StateBlock,
+  { stride, omega, row, re: xRe, im: xIm }: StateBlock,
   coordinate: number,
   factor: number,
   derivative: number,
@@ -140,7 +140,7 @@ function writeLanes(
   im: Float64Array,
   to: number,
 ): void {
-  const at = row[coordinate] * lanes;
+  const at = row[coordinate] * stride;
   for (let lane = 0; lane < count; lane++) {
     const a = xRe[at + lane] * factor;
     const b = xIm[at + lane] * factor;

@@ -3,7 +3,7 @@ import type { Assembly, DriveInfo } from "../mechanics/assembly.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { LANES } from "../numerics/tridiagonal-many.ts";
 import { type DriveGroup, driveGroups, drivePhasor } from "./drive-phasor.ts";
-import { type BlockSolver, type StateBlock, stateBlock } from "./frequency-block.ts";
+import type { BlockSolver, StateBlock } from "./frequency-block.ts";
 import type { Transfer } from "./frequency-modal.ts";
 import type { GroupState } from "./frequency-quantity.ts";
 import type { SteadySystem } from "./frequency-system.ts";
@@ -94,7 +94,15 @@ function laneSolution(
   const { lanes, free } = system;
   if (lanes === undefined) return undefined;
   const { row, solve } = lanes;
-  const block = stateBlock(free, LANES, row);
+  const block: StateBlock = {
+    lanes: LANES,
+    stride: LANES,
+    omega: new Float64Array(LANES),
+    row,
+    re: new Float64Array(free * LANES),
+    im: new Float64Array(free * LANES),
+    good: new Uint8Array(LANES),
+  };
   const loaded = new Uint8Array(LANES).fill(1);
   const forces = group.drives.every((index) => assembly.drives[index].on.kind === "form");
   return (axisHz, from) => {
@@ -124,7 +132,7 @@ function loadForces(
   assembly: Assembly,
   group: DriveGroup,
   frequency: number,
-  { row, re, im, lanes }: StateBlock,
+  { row, re, im, stride }: StateBlock,
   lane: number,
 ): void {
   for (const index of group.drives) {
@@ -133,7 +141,7 @@ function loadForces(
     const [a, b] = drivePhasor(assembly.drives[index], frequency);
     const { coordinates, factors } = on.form;
     for (let k = 0; k < coordinates.length; k++) {
-      const at = row[coordinates[k]] * lanes + lane;
+      const at = row[coordinates[k]] * stride + lane;
       re[at] += factors[k] * a;
       im[at] += factors[k] * b;
     }
@@ -148,24 +156,20 @@ function superposedBlocks(
   transfer: Transfer,
 ): BlockSolver | undefined {
   if (groups.length !== 1 || transfer.many === undefined) return undefined;
-  const { lanes, free, solve } = transfer.many;
-  const block = stateBlock(free, lanes);
-  const uRe = new Float64Array(by.length);
-  const uIm = new Float64Array(by.length);
-  const allRe = new Float64Array(by.length * lanes);
-  const allIm = new Float64Array(by.length * lanes);
+  const { block, solve } = transfer.many;
+  const { lanes } = block;
+  const uRe = new Float64Array(by.length * lanes);
+  const uIm = new Float64Array(by.length * lanes);
   return (axisHz, from) => {
     for (let lane = 0; lane < lanes; lane++) {
       const hz = axisHz[Math.min(from + lane, axisHz.length - 1)];
       block.omega[lane] = 2 * Math.PI * hz * groups[0].ratio;
-      inputPhasors(assembly, by, groups[0], hz, uRe, uIm);
-      allRe.set(uRe, lane * by.length);
-      allIm.set(uIm, lane * by.length);
+      inputPhasors(assembly, by, groups[0], hz, uRe, uIm, lane * by.length);
     }
-    solve(block.omega, allRe, allIm, block.re, block.im, block.good);
+    solve(uRe, uIm);
     // A motion given as a speed has no displacement at 0 Hz.
-    for (let at = 0; at < allRe.length; at++) {
-      if (!Number.isFinite(allRe[at] + allIm[at])) block.good[Math.floor(at / by.length)] = 0;
+    for (let at = 0; at < uRe.length; at++) {
+      if (!Number.isFinite(uRe[at] + uIm[at])) block.good[Math.floor(at / by.length)] = 0;
     }
     return block;
   };
@@ -216,7 +220,7 @@ function agrees(
   });
 }
 
-/** Phasors of the drives of one group, as forces or as displacements of supports; the others are zero. */
+/** Phasors of the drives of one group, as forces or as displacements of supports, from `at` on; the others are zero. */
 function inputPhasors(
   assembly: Assembly,
   by: readonly number[],
@@ -224,19 +228,19 @@ function inputPhasors(
   axisHz: number,
   uRe: Float64Array,
   uIm: Float64Array,
+  at = 0,
 ): void {
   const frequency = axisHz * group.ratio;
   const omega = 2 * Math.PI * frequency;
   for (let j = 0; j < by.length; j++) {
-    uRe[j] = 0;
-    uIm[j] = 0;
-    if (!group.drives.includes(by[j])) continue;
-    const drive = assembly.drives[by[j]];
-    const [re, im] = displacementPhasor(drive, frequency, omega);
-    uRe[j] = re;
-    uIm[j] = im;
+    const acts = group.drives.includes(by[j]);
+    const [re, im] = acts ? displacementPhasor(assembly.drives[by[j]], frequency, omega) : NOTHING;
+    uRe[at + j] = re;
+    uIm[at + j] = im;
   }
 }
+
+const NOTHING = [0, 0] as const;
 
 /** A force's own phasor; a motion's integrated to a displacement, one division by i omega each. */
 function displacementPhasor(drive: DriveInfo, frequency: number, omega: number): readonly [number, number] {
