@@ -10,6 +10,7 @@ import { ThreadEngine } from "./engine-thread.ts";
 import type { Disk } from "./host.ts";
 import { errorText } from "./numbers.ts";
 import { tidyWhenIdle } from "./tidy.ts";
+import { warmUp } from "./warm.ts";
 
 function start(): void {
   const overIpc = process.argv.includes("--node-ipc");
@@ -28,9 +29,18 @@ function start(): void {
     disk,
     version,
     docs: existsSync(fileURLToPath(docs)) ? docs.href : undefined,
-    startEngine: () => new ThreadEngine(new URL("./thread.js", import.meta.url)),
+    startEngine,
   });
 }
+
+/** With the first model that is open: a server that nobody needs stays small. */
+function startEngine(): ThreadEngine {
+  if (!warm) warmUp({ numbers: false });
+  warm = true;
+  return new ThreadEngine(new URL("./thread.js", import.meta.url));
+}
+
+let warm = false;
 
 const IGNORED = ["**/node_modules/**", "**/.git/**"];
 
