@@ -8,7 +8,7 @@ const DEPTH: i32 = 256;
 /** Rows of A that stay in the second-level cache beside a panel. */
 const HEIGHT: i32 = 64;
 /** Reflections taken together by backTransform. */
-const BLOCK: i32 = 48;
+const BLOCK: i32 = 32;
 
 // @ts-ignore: decorator
 @inline

@@ -1,7 +1,7 @@
 /**
  * All eigenvalues, and right and left eigenvectors if wanted, of a general real matrix.
  *
- * Method: balancing, Householder reduction to Hessenberg form, implicit QR (double shift, multishift above order 64) to the real Schur form
+ * Method: balancing, Householder reduction to Hessenberg form, implicit QR (double shift, multishift where large) to the real Schur form
  * and back substitution (Golub & Van Loan, Matrix Computations, 4th ed., ch. 7). Values are exact for a matrix
  * within about n·ε‖A‖ of A; a value of a defective matrix of index k is therefore uncertain by about
  * (n·ε‖A‖)^(1/k), and its vectors come out (nearly) parallel, each with a small residual.

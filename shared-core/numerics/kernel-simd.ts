@@ -245,9 +245,9 @@ function compile(bytes: Uint8Array<ArrayBuffer>): WebAssembly.Module | undefined
   }
 }
 
-/** Scratch of backTransform in numbers; the module's own formula with its block of 48. */
+/** Scratch of backTransform in numbers; the module's own formula with its block of 32. */
 function roomFor(count: number, n: number): number {
-  const block = 48;
+  const block = 32;
   return 3 * block * n + 2 * block * block + count * block;
 }
 

@@ -10,8 +10,8 @@ import type { Kernel } from "./kernel.ts";
 import { identity, transpose } from "./products.ts";
 import { reflect2, reflect3, type SchurValues, smallSubdiagonal } from "./real-schur.ts";
 
-/** Whole matrices up to this order go to the plain double shift, which is quicker there; found by trial. */
-const PLAIN = 120;
+/** Whole matrices up to this order go to the double shift of the kernel, which is quicker there; found by trial. */
+const DOUBLE_SHIFT: Readonly<Record<Kernel["name"], number>> = { plain: 120, simd: 1000 };
 /** Active blocks of a larger matrix up to this order do as well. */
 const SMALL = 64;
 /** A sweep is skipped when early deflation took at least this share of its window; LAPACK's 14 %. */
@@ -29,15 +29,19 @@ type Problem = {
   scratch: Float64Array;
 };
 
-/** As `doubleShiftQr` over the whole matrix: fills `values`, returns how many were found. */
+/**
+ * As `doubleShiftQr` over the whole matrix: fills `values`, returns how many were found. Matrices up to the order
+ * `doubleShift` are left to that.
+ */
 export function multishiftQr(
   h: Float64Array,
   n: number,
   values: SchurValues,
   kernel: Kernel,
   zt?: Float64Array,
+  doubleShift = DOUBLE_SHIFT[kernel.name],
 ): number {
-  if (n <= PLAIN) return kernel.schur(h, n, zt !== undefined, values, zt);
+  if (n <= doubleShift) return kernel.schur(h, n, zt !== undefined, values, zt);
   const problem: Problem = { h, n, zt, kernel, scratch: new Float64Array(n * n) };
   for (let r = 2; r < n; r++) h.fill(0, r * n, r * n + r - 1);
   let bottom = n - 1;

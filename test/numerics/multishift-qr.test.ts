@@ -16,6 +16,9 @@ import {
   transposed,
 } from "./helpers.ts";
 
+/** Below all orders here: otherwise the double shift would be what is tested. */
+const MANY = 100;
+
 const room = (n: number) => ({ re: new Float64Array(n), im: new Float64Array(n) });
 
 /** T = Zᵀ A Z, quasi-triangular with standard blocks, Z orthogonal; all relative to ‖A‖_F. */
@@ -58,7 +61,7 @@ describe("multishift QR", () => {
     const a = Float64Array.from({ length: n * n }, (_v, p) => entry(Math.floor(p / n), p % n, next));
     const { h, transposedQ } = hessenberg(Float64Array.from(a), n, true);
     const values = room(n);
-    expect(multishiftQr(h, n, values, kernelFor(n), transposedQ)).toBe(n);
+    expect(multishiftQr(h, n, values, kernelFor(n), transposedQ, MANY)).toBe(n);
     checkSchur(a, h, transposedQ, n);
     const trace = values.re.reduce((sum, v) => sum + v, 0);
     let diagonal = 0;
@@ -77,10 +80,12 @@ describe("multishift QR", () => {
         .sort((p, q) => (Math.abs(p[0] - q[0]) > 1e-9 ? p[0] - q[0] : p[1] - q[1]));
     const [full, alone, plain] = [room(n), room(n), room(n)];
     const first = hessenberg(Float64Array.from(a), n, true);
-    multishiftQr(first.h, n, full, kernelFor(n), first.transposedQ);
-    expect(multishiftQr(hessenberg(Float64Array.from(a), n, false).h, n, alone, kernelFor(n))).toBe(n);
+    multishiftQr(first.h, n, full, kernelFor(n), first.transposedQ, MANY);
+    expect(
+      multishiftQr(hessenberg(Float64Array.from(a), n, false).h, n, alone, kernelFor(n), undefined, MANY),
+    ).toBe(n);
     const third = hessenberg(Float64Array.from(a), n, true);
-    expect(multishiftQr(third.h, n, plain, plainKernel, third.transposedQ)).toBe(n);
+    expect(multishiftQr(third.h, n, plain, plainKernel, third.transposedQ, MANY)).toBe(n);
     for (const other of [alone, plain]) {
       sorted(full).forEach(([r, i], j) => {
         const [s, k] = sorted(other)[j];
@@ -115,6 +120,14 @@ describe("swaps in a Schur form", () => {
 });
 
 describe.each([plainKernel, bestKernel()])("double shift on the kernel $name", (kernel) => {
+  it.each(cases)("brings a large matrix to Schur form: %s", (_, n, entry) => {
+    const next = seeded(n);
+    const a = Float64Array.from({ length: n * n }, (_v, p) => entry(Math.floor(p / n), p % n, next));
+    const { h, transposedQ } = hessenberg(Float64Array.from(a), n, true);
+    expect(kernel.schur(h, n, true, room(n), transposedQ)).toBe(n);
+    checkSchur(a, h, transposedQ, n);
+  });
+
   it.each([1, 2, 3, 10, 24, 25, 40, 61, 100])("brings a random matrix of %i to Schur form", (n) => {
     const a = randomMatrix(n, n, 7 * n);
     const { h, transposedQ } = hessenberg(Float64Array.from(a), n, true);
