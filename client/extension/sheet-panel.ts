@@ -31,6 +31,9 @@ type WithoutVersion<T> = T extends unknown ? Omit<T, "protocol"> : never;
 
 /** A moving cursor is looked up once it rests so long, in ms. */
 const CURSOR_REST = 60;
+/** The page follows edits when none has come for so long, or the first has waited for so long, in ms. */
+const TYPING_REST = 120;
+const LONGEST_WAIT = 2500;
 
 /** One sheet. It asks for one content at a time, the newest, and for none while nobody sees it. */
 export class SheetPanel implements vscode.Disposable {
@@ -47,6 +50,9 @@ export class SheetPanel implements vscode.Disposable {
   #posted = "";
   #ask: string | undefined;
   #revisions: readonly SheetRevision[] = [];
+  #lastEdit = 0;
+  #waitsSince: number | undefined;
+  #soon: ReturnType<typeof setTimeout> | undefined;
   #cursor: ReturnType<typeof setTimeout> | undefined;
 
   constructor(panel: vscode.WebviewPanel, uri: vscode.Uri, pinned: boolean, environment: SheetEnvironment) {
@@ -63,6 +69,7 @@ export class SheetPanel implements vscode.Disposable {
     panel.onDidChangeViewState(() => this.#seen());
     panel.onDidDispose(() => {
       clearTimeout(this.#cursor);
+      clearTimeout(this.#soon);
       this.#point(undefined);
       environment.closed(this);
     });
@@ -111,13 +118,14 @@ export class SheetPanel implements vscode.Disposable {
   }
 
   edited(): void {
-    this.refresh();
+    this.#lastEdit = Date.now();
+    this.#refreshSoon();
   }
 
   hear({ state }: StateParams): void {
     this.#computing = state !== "ready";
     // Also where the content came in time: which answers it had cannot be told from here.
-    if (!this.#computing) this.refresh();
+    if (!this.#computing) this.#refreshSoon();
   }
 
   cursorAt(document: vscode.TextDocument, place: vscode.Position): void {
@@ -129,7 +137,19 @@ export class SheetPanel implements vscode.Disposable {
     }, CURSOR_REST);
   }
 
+  /** A page painted at every key would take the time that the keys need: it follows when typing rests. */
+  #refreshSoon(): void {
+    const now = Date.now();
+    this.#waitsSince ??= now;
+    const rest = Math.min(this.#lastEdit + TYPING_REST, this.#waitsSince + LONGEST_WAIT) - now;
+    clearTimeout(this.#soon);
+    if (rest <= 0) this.refresh();
+    else this.#soon = setTimeout(() => this.refresh(), rest);
+  }
+
   refresh(): void {
+    clearTimeout(this.#soon);
+    this.#waitsSince = undefined;
     this.#wanted = true;
     if (!this.#running && this.#ready && this.#panel.visible) void this.#work();
   }
