@@ -36,8 +36,9 @@ export function registerCompletion(serving: Serving): void {
         explicit: context?.triggerKind === CompletionTriggerKind.Invoked && !typedLast(session, offset),
         files,
       });
-      const items = found.map((each) => toItem(each, view.lines, serving));
-      return { isIncomplete: false, items };
+      const likely = mostLikely(found, view.model.tree.text, offset);
+      const items = likely.map((each) => toItem(each, view.lines, serving));
+      return { isIncomplete: likely.length < found.length, items };
     }),
   );
   connection.onSignatureHelp(
@@ -59,6 +60,32 @@ export function registerCompletion(serving: Serving): void {
       return { signatures: [signature], activeSignature: 0, activeParameter: active };
     }),
   );
+}
+
+/** Longer lists nobody reads, and a client takes longer to show them than this takes to answer the next letter. */
+const MOST_ITEMS = 400;
+
+/** Of a list that is too long, what fits the letters in front of the cursor: first what begins with them. */
+function mostLikely(found: readonly Completion[], text: string, offset: number): readonly Completion[] {
+  if (found.length <= MOST_ITEMS) return found;
+  const begins = ({ label, insertSpan }: Completion): boolean =>
+    label.toLowerCase().startsWith(text.slice(insertSpan.start, offset).toLowerCase());
+  const key = (each: Completion): string => `${begins(each) ? 0 : 1} ${each.sort} ${each.label}`;
+  return found
+    .filter(({ label, insertSpan }) => fits(label, text.slice(insertSpan.start, offset)))
+    .sort((a, b) => (key(a) < key(b) ? -1 : 1))
+    .slice(0, MOST_ITEMS);
+}
+
+/** Whether the letters stand in the label in their order, as clients ask it. */
+function fits(label: string, letters: string): boolean {
+  const lower = label.toLowerCase();
+  let at = 0;
+  for (const letter of letters.toLowerCase()) {
+    at = lower.indexOf(letter, at) + 1;
+    if (at === 0) return false;
+  }
+  return true;
 }
 
 /** Clients say "invoked" for typing too; an edit that ended right here a moment ago was typing. */

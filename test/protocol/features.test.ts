@@ -277,6 +277,32 @@ describe("half-typed text", () => {
     expect(list.items.every(({ preselect }) => !preselect)).toBe(true);
   });
 
+  it("is completed from what fits so far where there is more than anybody reads, and asked again", async () => {
+    const masses = Array.from({ length: 1200 }, (_, i) => `mass m${i} = 4 kg`).join("\n");
+    const labels = async (typed: string) => {
+      const own = opened(`thrum 1\n${masses}\nspring k between ${typed}`);
+      const list = await own.ask<CompletionList>("textDocument/completion", own.position(own.text.length), {
+        context: { triggerKind: 1 },
+      });
+      return { more: list.isIncomplete, labels: list.items.map(({ label }) => label) };
+    };
+    const many = await labels("m");
+    expect([many.more, many.labels.length]).toEqual([true, 400]);
+    const few = await labels("m117");
+    expect(few.more).toBe(true);
+    const all = Array.from({ length: 1200 }, (_, i) => `m${i}`);
+    expect(few.labels.toSorted()).toEqual(all.filter((name) => /1.*1.*7/.test(name)).toSorted());
+    const small = opened("thrum 1\nmass drum = 4 kg\nspring k between dr");
+    const list = await small.ask<CompletionList>(
+      "textDocument/completion",
+      small.position(small.text.length),
+      {
+        context: { triggerKind: 1 },
+      },
+    );
+    expect(list.isIncomplete).toBe(false);
+  });
+
   it("gets signature help inside an open call", async () => {
     const own = opened("thrum 1\nlet 𐐀k = shaft(80 GPa, 40 mm, ");
     const help = await own.ask<SignatureHelp>("textDocument/signatureHelp", own.position(own.text.length));
