@@ -30,6 +30,8 @@ export interface Mode {
   readonly energyShare: Readonly<Record<string, number>>;
   /** The largest of these shares, where it is known without writing all of them out; undefined: there is none. */
   readonly largestShare?: ElementShare | undefined;
+  /** The share of one element, likewise; 0 where it has none. */
+  shareOf?(element: string): number;
 }
 
 export interface ElementShare {

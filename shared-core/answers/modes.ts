@@ -168,6 +168,12 @@ class ShapedMode implements Mode {
     return this.#shares;
   }
 
+  shareOf(element: string): number {
+    if (this.#shares !== undefined) return this.#shares[element] ?? 0;
+    const index = this.#basis.assembly.elements.findIndex(({ name }) => name === element);
+    return this.#basis.energyShares(this.#mode)?.[index] ?? 0;
+  }
+
   get largestShare(): ElementShare | undefined {
     const shares = this.#basis.energyShares(this.#mode);
     const { elements } = this.#basis.assembly;

@@ -35,7 +35,8 @@ export function motionShare(assembly: Assembly, mode: Mode, owner: string): numb
 
 /** Share of a mode's strain energy in the elements of a statement. */
 export function strainShare(mode: Mode, names: readonly string[]): number {
-  return names.reduce((sum, name) => sum + (mode.energyShare[name] ?? 0), 0);
+  const share = (name: string): number => mode.shareOf?.(name) ?? mode.energyShare[name] ?? 0;
+  return names.reduce((sum, name) => sum + share(name), 0);
 }
 
 /**
