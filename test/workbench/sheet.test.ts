@@ -1,6 +1,6 @@
 /** The response sheet in a real workbench, as a person uses it. One workbench serves all tests, in order. */
 import { execFileSync } from "node:child_process";
-import { readFileSync, writeFileSync } from "node:fs";
+import { existsSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import type { FrameLocator } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
@@ -158,6 +158,29 @@ describe("a number", () => {
     await sheet().locator(".ledger td.number", { hasText: "in/s" }).first().waitFor();
     await sheet().getByLabel("units", { exact: true }).selectOption("as-written");
     await sheet().locator(".ledger td.number", { hasText: "mm/s" }).first().waitFor();
+  });
+});
+
+describe("an answer", () => {
+  it("is saved beside the model, as numbers and as a picture", async () => {
+    const card = sheet().locator(".card", { hasText: "isolation.force" });
+    await card.locator("details.take > summary").click();
+    const dialog = editor.page.locator(".quick-input-widget input[type=text]");
+    for (const [word, file, start] of [
+      ["save CSV", "half_run.csv", /^frequency/],
+      ["save SVG", "half_run.svg", /^<svg /],
+    ] as const) {
+      await card.getByRole("button", { name: word }).click();
+      await dialog.waitFor();
+      expect(await dialog.inputValue()).toMatch(new RegExp(`/${file.replace(".", "\\.")}$`));
+      await editor.page.keyboard.press("Enter");
+      const saved = await eventually(
+        async () => (existsSync(join(editor.folder, file)) ? editor.text(file) : ""),
+        (found) => found !== "",
+      );
+      expect(saved).toMatch(start);
+      expect(saved.split("\n").length).toBeGreaterThan(20);
+    }
   });
 });
 
