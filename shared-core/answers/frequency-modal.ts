@@ -5,31 +5,16 @@
  * For models with viscous and modal damping; loss factors are no first-order terms. Checked against the
  * factorisation at some frequencies before it is used; searches run on it, single values do not.
  */
-import type { Assembly } from "../mechanics/assembly.ts";
+import type { Assembly, LinearForm } from "../mechanics/assembly.ts";
 import { formValue } from "../mechanics/forms.ts";
 import { type StateInput, stateSpace } from "../mechanics/state-space.ts";
-import { complexLuWorkspace, factorComplexLu, solveComplexLu } from "../numerics/complex-lu.ts";
 import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { multiply, transpose } from "../numerics/products.ts";
-import type { StateBlock } from "./frequency-block.ts";
+import { blockOf, type Transfer, type TransferParts, transferOf } from "./frequency-transfer.ts";
 import type { ModalBasis } from "./modes-basis.ts";
 import type { Root } from "./modes-roots.ts";
 import { modalStates } from "./time-basis.ts";
-import { type ModalSystem, modalSystem } from "./time-modal.ts";
-
-export interface Transfer {
-  /** All free coordinates at s = i omega for input phasors `uRe`, `uIm`; false where a root stands at s itself. */
-  at(omega: number, uRe: Float64Array, uIm: Float64Array, xRe: Float64Array, xIm: Float64Array): boolean;
-  /** The same for many frequencies as one product, where every root stands singly. */
-  readonly many?: TransferBlock;
-}
-
-export interface TransferBlock {
-  /** Frequencies are put into it, motions taken from it; `good` is 0 where a root stands at s itself. */
-  readonly block: StateBlock;
-  /** Solves for input j of a lane at lane * inputs + j. */
-  solve(uRe: Float64Array, uIm: Float64Array): void;
-}
+import { modalSystem } from "./time-modal.ts";
 
 /** Inputs are the drives `by` in their order: forces, or displacements of supports. */
 export function modalTransfer(
@@ -87,22 +72,10 @@ export function symmetricTransfer(
   });
   if (forms.length < by.length || roots.some(({ norm }) => norm === undefined)) return undefined;
   const { re, im } = shapeRows(basis, roots);
-  const feed = {
-    re: new Float64Array(roots.length * by.length),
-    im: new Float64Array(roots.length * by.length),
-  };
-  roots.forEach(({ norm = [0, 0] }, k) => {
-    const square = norm[0] * norm[0] + norm[1] * norm[1];
-    forms.forEach((form, j) => {
-      const a = formValue(form, re.subarray(k * n, (k + 1) * n));
-      const b = formValue(form, im.subarray(k * n, (k + 1) * n));
-      feed.re[k * by.length + j] = (a * norm[0] + b * norm[1]) / square;
-      feed.im[k * by.length + j] = (b * norm[0] - a * norm[1]) / square;
-    });
-  });
+  const feed = feedsOf(forms, roots, re, im);
   const nothing = { re: new Float64Array(feed.re.length), im: new Float64Array(feed.re.length) };
   const rest = new Float64Array(0);
-  const parts: Parts = {
+  const parts: TransferParts = {
     modal: {
       count: roots.length,
       rest: 0,
@@ -122,6 +95,27 @@ export function symmetricTransfer(
   return { at: transferOf(parts), many: blockOf(parts) };
 }
 
+/** psi^T f over the norm, for each root and force. */
+function feedsOf(
+  forms: readonly LinearForm[],
+  roots: readonly Root[],
+  re: Float64Array,
+  im: Float64Array,
+): { re: Float64Array; im: Float64Array } {
+  const [n, inputs] = [re.length / roots.length, forms.length];
+  const feed = { re: new Float64Array(roots.length * inputs), im: new Float64Array(roots.length * inputs) };
+  roots.forEach(({ norm = [0, 0] }, k) => {
+    const square = norm[0] * norm[0] + norm[1] * norm[1];
+    forms.forEach((form, j) => {
+      const a = formValue(form, re.subarray(k * n, (k + 1) * n));
+      const b = formValue(form, im.subarray(k * n, (k + 1) * n));
+      feed.re[k * inputs + j] = (a * norm[0] + b * norm[1]) / square;
+      feed.im[k * inputs + j] = (b * norm[0] - a * norm[1]) / square;
+    });
+  });
+  return feed;
+}
+
 /** Shapes of roots over the coordinates, one a row. */
 function shapeRows({ undamped }: ModalBasis, roots: readonly Root[]): { re: Float64Array; im: Float64Array } {
   const { count: n, vectors } = undamped;
@@ -133,259 +127,4 @@ function shapeRows({ undamped }: ModalBasis, roots: readonly Root[]): { re: Floa
     return roots[0]?.shape.basis === "inertial" ? given : multiply(given, vectors, roots.length, n, n);
   };
   return { re: rows("re"), im: rows("im") };
-}
-
-interface Parts {
-  /** What of a modal system the sum needs. */
-  readonly modal: Pick<
-    ModalSystem,
-    "count" | "rest" | "inputs" | "block" | "lambdaRe" | "lambdaIm" | "weight"
-  >;
-  readonly free: number;
-  readonly shapeRe: Float64Array;
-  readonly shapeIm: Float64Array;
-  readonly shapeRest: Float64Array;
-  readonly direct: Float64Array;
-  /** For the inputs, their first and their second derivatives. */
-  readonly feeds: readonly {
-    readonly re: Float64Array;
-    readonly im: Float64Array;
-    readonly rest: Float64Array;
-  }[];
-}
-
-/** Frequencies in one product; chosen by trial. */
-const BLOCK_LANES = 128;
-
-/** x = [Re V, Im V] [a; b] with the shares of all roots at all lanes: one real product. */
-function blockOf(parts: Parts): TransferBlock {
-  const { modal, free, shapeRe, shapeIm, direct } = parts;
-  const { count, inputs } = modal;
-  const [lanes, width] = [BLOCK_LANES, 2 * BLOCK_LANES];
-  const shapes = new Float64Array(free * 2 * count);
-  for (let i = 0; i < free; i++) {
-    shapes.set(shapeRe.subarray(i * count, (i + 1) * count), 2 * i * count);
-    shapes.set(shapeIm.subarray(i * count, (i + 1) * count), (2 * i + 1) * count);
-  }
-  const shares = new Float64Array(2 * count * width);
-  const both = new Float64Array(free * width);
-  const block: StateBlock = {
-    lanes,
-    stride: width,
-    omega: new Float64Array(lanes),
-    row: Int32Array.from({ length: free }, (_, i) => i),
-    re: both,
-    im: both.subarray(lanes),
-    good: new Uint8Array(lanes),
-  };
-  return {
-    block,
-    solve(uRe, uIm) {
-      block.good.fill(1);
-      for (let k = 0; k < count; k++) shareLanes(parts, k, block, uRe, uIm, shares);
-      multiply(shapes, shares, free, 2 * count, width, both);
-      addDirect(direct, inputs, block, uRe, uIm);
-    },
-  };
-}
-
-/** The shares of root k (see `rootShare`) in all lanes: rows k and count + k of `shares`, real parts first. */
-function shareLanes(
-  { modal, feeds }: Parts,
-  k: number,
-  { lanes, omega, good }: StateBlock,
-  uRe: Float64Array,
-  uIm: Float64Array,
-  shares: Float64Array,
-): void {
-  const { inputs, count } = modal;
-  const [f0, f1, f2] = feeds;
-  const single = modal.weight[k] === 1;
-  const [rootRe, rootIm] = [modal.lambdaRe[k], modal.lambdaIm[k]];
-  const first = 2 * lanes * k;
-  const second = first + 2 * lanes * count;
-  for (let lane = 0; lane < lanes; lane++) {
-    const w = omega[lane];
-    let re = 0;
-    let im = 0;
-    let otherRe = 0;
-    let otherIm = 0;
-    for (let j = 0; j < inputs; j++) {
-      const at = k * inputs + j;
-      const a = uRe[lane * inputs + j];
-      const b = uIm[lane * inputs + j];
-      const evenRe = f0.re[at] - w * w * f2.re[at];
-      const evenIm = f0.im[at] - w * w * f2.im[at];
-      const oddRe = w * f1.re[at];
-      const oddIm = w * f1.im[at];
-      re += (evenRe - oddIm) * a - (evenIm + oddRe) * b;
-      im += (evenRe - oddIm) * b + (evenIm + oddRe) * a;
-      otherRe += (evenRe + oddIm) * a - (oddRe - evenIm) * b;
-      otherIm += (evenRe + oddIm) * b + (oddRe - evenIm) * a;
-    }
-    const di = w - rootIm;
-    const square = rootRe * rootRe + di * di;
-    if (square === 0) good[lane] = 0;
-    const inverse = 1 / square;
-    const etaRe = (im * di - re * rootRe) * inverse;
-    const etaIm = (-im * rootRe - re * di) * inverse;
-    const oi = w + rootIm;
-    const otherInverse = single ? 0 : 1 / (rootRe * rootRe + oi * oi);
-    const nextRe = (otherIm * oi - otherRe * rootRe) * otherInverse;
-    const nextIm = (-otherIm * rootRe - otherRe * oi) * otherInverse;
-    shares[first + lane] = etaRe + nextRe;
-    shares[first + lanes + lane] = etaIm + nextIm;
-    shares[second + lane] = single ? 0 : nextIm - etaIm;
-    shares[second + lanes + lane] = single ? 0 : etaRe - nextRe;
-  }
-}
-
-/** What inputs move at once: places without inertia, and supports. */
-function addDirect(
-  direct: Float64Array,
-  inputs: number,
-  { lanes, stride, row, re, im }: StateBlock,
-  uRe: Float64Array,
-  uIm: Float64Array,
-): void {
-  for (let i = 0; i < row.length; i++) {
-    for (let j = 0; j < inputs; j++) {
-      const factor = direct[i * inputs + j];
-      if (factor === 0) continue;
-      for (let lane = 0; lane < lanes; lane++) {
-        re[i * stride + lane] += factor * uRe[lane * inputs + j];
-        im[i * stride + lane] += factor * uIm[lane * inputs + j];
-      }
-    }
-  }
-}
-
-function transferOf(parts: Parts): Transfer["at"] {
-  const { modal, free, shapeRe, shapeIm, direct } = parts;
-  const { count, rest, inputs } = modal;
-  const aRe = new Float64Array(count);
-  const aIm = new Float64Array(count);
-  const bRe = new Float64Array(count);
-  const bIm = new Float64Array(count);
-  const restRe = new Float64Array(rest);
-  const restIm = new Float64Array(rest);
-  const solveRest = blockSolver(modal);
-  return (omega, uRe, uIm, xRe, xIm) => {
-    for (let k = 0; k < count; k++) {
-      if (!rootShare(parts, k, omega, uRe, uIm)) return false;
-      aRe[k] = share[0];
-      aIm[k] = share[1];
-      bRe[k] = share[2];
-      bIm[k] = share[3];
-    }
-    restRe.fill(0);
-    restIm.fill(0);
-    for (let j = 0; j < inputs && rest > 0; j++) {
-      for (let k = 0; k < rest; k++) {
-        const [f0, f1, f2] = parts.feeds;
-        const re = f0.rest[k * inputs + j] - omega * omega * f2.rest[k * inputs + j];
-        const im = omega * f1.rest[k * inputs + j];
-        restRe[k] += re * uRe[j] - im * uIm[j];
-        restIm[k] += re * uIm[j] + im * uRe[j];
-      }
-    }
-    if (rest > 0 && !solveRest(omega, restRe, restIm)) return false;
-    for (let i = 0; i < free; i++) {
-      let re = 0;
-      let im = 0;
-      const at = i * count;
-      for (let k = 0; k < count; k++) {
-        const p = shapeRe[at + k];
-        const q = shapeIm[at + k];
-        re += p * aRe[k] + q * bRe[k];
-        im += p * aIm[k] + q * bIm[k];
-      }
-      for (let k = 0; k < rest; k++) {
-        re += parts.shapeRest[i * rest + k] * restRe[k];
-        im += parts.shapeRest[i * rest + k] * restIm[k];
-      }
-      for (let j = 0; j < inputs; j++) {
-        re += direct[i * inputs + j] * uRe[j];
-        im += direct[i * inputs + j] * uIm[j];
-      }
-      xRe[i] = re;
-      xIm[i] = im;
-    }
-    return true;
-  };
-}
-
-/** eta + eta' and i (eta - eta') of a root and its conjugate (or eta and i eta of a real one), into `share`. */
-function rootShare(
-  { modal, feeds }: Parts,
-  k: number,
-  omega: number,
-  uRe: Float64Array,
-  uIm: Float64Array,
-): boolean {
-  const { inputs } = modal;
-  let re = 0;
-  let im = 0;
-  let otherRe = 0;
-  let otherIm = 0;
-  const [f0, f1, f2] = feeds;
-  for (let j = 0; j < inputs; j++) {
-    const at = k * inputs + j;
-    // w b with b = b0 + i omega b1 - omega^2 b2, and conj(w) b for the conjugate root.
-    const evenRe = f0.re[at] - omega * omega * f2.re[at];
-    const evenIm = f0.im[at] - omega * omega * f2.im[at];
-    const oddRe = omega * f1.re[at];
-    const oddIm = omega * f1.im[at];
-    const gRe = evenRe - oddIm;
-    const gIm = evenIm + oddRe;
-    const hRe = evenRe + oddIm;
-    const hIm = oddRe - evenIm;
-    re += gRe * uRe[j] - gIm * uIm[j];
-    im += gRe * uIm[j] + gIm * uRe[j];
-    otherRe += hRe * uRe[j] - hIm * uIm[j];
-    otherIm += hRe * uIm[j] + hIm * uRe[j];
-  }
-  const dr = -modal.lambdaRe[k];
-  const di = omega - modal.lambdaIm[k];
-  const square = dr * dr + di * di;
-  if (square === 0) return false;
-  const etaRe = (re * dr + im * di) / square;
-  const etaIm = (im * dr - re * di) / square;
-  if (modal.weight[k] === 1) {
-    share[0] = etaRe;
-    share[1] = etaIm;
-    share[2] = 0;
-    share[3] = 0;
-    return true;
-  }
-  const oi = omega + modal.lambdaIm[k];
-  const otherSquare = dr * dr + oi * oi;
-  const nextRe = (otherRe * dr + otherIm * oi) / otherSquare;
-  const nextIm = (otherIm * dr - otherRe * oi) / otherSquare;
-  share[0] = etaRe + nextRe;
-  share[1] = etaIm + nextIm;
-  share[2] = nextIm - etaIm;
-  share[3] = etaRe - nextRe;
-  return true;
-}
-
-const share = new Float64Array(4);
-
-/** x <- (i omega - A_c)^-1 x for the block. */
-function blockSolver(modal: Parts["modal"]): (omega: number, re: Float64Array, im: Float64Array) => boolean {
-  const { rest, block } = modal;
-  const minus = block.map((v) => -v);
-  const turn = new Float64Array(rest * rest);
-  const workspace = complexLuWorkspace(rest);
-  const bRe = new Float64Array(rest);
-  const bIm = new Float64Array(rest);
-  return (omega, re, im) => {
-    for (let i = 0; i < rest; i++) turn[i * rest + i] = omega;
-    const lu = factorComplexLu(minus, turn, rest, workspace);
-    if (!lu.ok) return false;
-    bRe.set(re);
-    bIm.set(im);
-    solveComplexLu(lu.value, bRe, bIm, 1, re, im);
-    return true;
-  };
 }

@@ -4,9 +4,9 @@ import { fail, type Outcome, succeed } from "../numerics/outcome.ts";
 import { LANES } from "../numerics/tridiagonal-many.ts";
 import { type DriveGroup, driveGroups, drivePhasor } from "./drive-phasor.ts";
 import type { BlockSolver, StateBlock } from "./frequency-block.ts";
-import type { Transfer } from "./frequency-modal.ts";
 import type { GroupState } from "./frequency-quantity.ts";
 import type { SteadySystem } from "./frequency-system.ts";
+import type { Transfer } from "./frequency-transfer.ts";
 
 export interface SteadySolution {
   readonly groups: readonly DriveGroup[];
@@ -48,20 +48,15 @@ export function steadySolution(
     }),
   );
   const solved = succeed(states as readonly GroupState[]);
-  const at = (axisHz: number) => {
+  const each = (solve: (group: DriveGroup, state: GroupState) => string | undefined) => {
     for (let g = 0; g < states.length; g++) {
-      const trouble = solveGroup(assembly, system, groups.value[g], axisHz, states[g]);
+      const trouble = solve(groups.value[g], states[g]);
       if (trouble !== undefined) return fail<readonly GroupState[]>(trouble);
     }
     return solved;
   };
-  const still = (axisHz: number) => {
-    for (let g = 0; g < states.length; g++) {
-      const trouble = loadGroup(assembly, groups.value[g], axisHz, states[g]);
-      if (trouble !== undefined) return fail<readonly GroupState[]>(trouble);
-    }
-    return solved;
-  };
+  const at = (axisHz: number) => each((group, state) => solveGroup(assembly, system, group, axisHz, state));
+  const still = (axisHz: number) => each((group, state) => loadGroup(assembly, group, axisHz, state));
   const laneBlocks = (): BlockSolver | undefined =>
     states.length === 1 ? laneSolution(assembly, system, groups.value[0], states[0]) : undefined;
   let chosen: Pick<SteadySolution, "quick" | "blocks"> | undefined;

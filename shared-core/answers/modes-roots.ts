@@ -145,12 +145,8 @@ function dampingByForms(undamped: UndampedModes, size: number): Float64Array {
 
 function dampingByProduct(undamped: UndampedModes, size: number): Float64Array {
   const basis = basisRows(undamped, size);
-  const terms = undamped.reduction.damping.map(({ form, value }: SquareTerm) => ({
-    row: form,
-    column: form,
-    value,
-  }));
-  const damping = sparseToDense(sumTerms(terms, size));
+  const asTerm = ({ form, value }: SquareTerm) => ({ row: form, column: form, value });
+  const damping = sparseToDense(sumTerms(undamped.reduction.damping.map(asTerm), size));
   const half = multiply(basis, damping, size, size, size);
   const columns = new Float64Array(size * size);
   for (let i = 0; i < size; i++) for (let j = 0; j < size; j++) columns[j * size + i] = basis[i * size + j];

@@ -257,7 +257,7 @@ function largestAt(re: Float64Array, im: Float64Array): number {
   let at = 0;
   let most = 0;
   for (let i = 0; i < re.length; i++) {
-    const entry = Math.hypot(re[i], im[i]);
+    const entry = im[i] === 0 ? Math.abs(re[i]) : Math.hypot(re[i], im[i]);
     if (entry > most * (1 + SAME_SIZE)) {
       most = entry;
       at = i;

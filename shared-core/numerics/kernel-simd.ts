@@ -6,7 +6,7 @@
  */
 import type { Kernel, Window } from "./kernel.ts";
 import { KERNEL_MODULE } from "./kernel-module.ts";
-import { type Bulge, doubleShiftQr } from "./real-schur.ts";
+import { type Bulge, doubleShiftQr, type SchurValues } from "./real-schur.ts";
 
 type Exports = {
   memory: WebAssembly.Memory;
@@ -178,19 +178,9 @@ function kernelOf(compiled: WebAssembly.Module): Kernel {
     },
     schur: (h, n, full, values, zt) => {
       if (n < SHORT_SCHUR) return doubleShiftQr(h, n, 0, n - 1, full, values, zt);
-      return run([n * n, zt ? n * n : 0], (wasm, memory, [ph, pz]) => {
-        // The iteration itself runs here, on the module's memory; only the long loops are the module's.
-        const own = memory.subarray(ph / 8, ph / 8 + n * n);
-        const ownZ = zt && memory.subarray(pz / 8, pz / 8 + n * n);
-        own.set(h);
-        if (zt) ownZ?.set(zt);
-        const chase = ({ l, m, i, i1, i2, v1, v2, v3 }: Bulge) =>
-          wasm.chase(ph, n, l, m, i, i1, i2, v1, v2, v3, zt ? pz : 0);
-        const found = doubleShiftQr(own, n, 0, n - 1, full, values, ownZ, n, chase);
-        h.set(own);
-        if (ownZ) zt?.set(ownZ);
-        return found;
-      });
+      return run([n * n, zt ? n * n : 0], (wasm, memory, [ph, pz]) =>
+        schurOn(wasm, memory, [ph, pz], h, n, full, values, zt),
+      );
     },
     merge: (step) => {
       const { k, size, poles, weights, column, packed, result, values } = step;
@@ -234,6 +224,29 @@ function kernelOf(compiled: WebAssembly.Module): Kernel {
       });
     },
   };
+}
+
+/** The iteration itself runs here, on the module's memory; only the long loops are the module's. */
+function schurOn(
+  wasm: Exports,
+  memory: Float64Array,
+  [ph, pz]: readonly [number, number],
+  h: Float64Array,
+  n: number,
+  full: boolean,
+  values: SchurValues,
+  zt: Float64Array | undefined,
+): number {
+  const own = memory.subarray(ph / 8, ph / 8 + n * n);
+  const ownZ = zt && memory.subarray(pz / 8, pz / 8 + n * n);
+  own.set(h);
+  if (zt) ownZ?.set(zt);
+  const chase = ({ l, m, i, i1, i2, v1, v2, v3 }: Bulge) =>
+    wasm.chase(ph, n, l, m, i, i1, i2, v1, v2, v3, zt ? pz : 0);
+  const found = doubleShiftQr(own, n, 0, n - 1, full, values, ownZ, n, chase);
+  h.set(own);
+  if (ownZ) zt?.set(ownZ);
+  return found;
 }
 
 /** Compiling is the only test for SIMD that does not compile twice. */

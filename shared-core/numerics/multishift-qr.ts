@@ -278,15 +278,13 @@ function advance(
   const rows = end - k;
   const columns = (three ? Math.min(k + 4, bottom) : bottom) - start + 1;
   const u = (k + 1 - start) * width;
-  if (three) {
-    reflect3(h, row + k + 1, 1, n, rows, v2, v3, t1);
-    reflect3(h, start * n + k + 1, n, 1, columns, v2, v3, t1);
-    reflect3(ut, u, 1, width, width, v2, v3, t1);
-  } else {
-    reflect2(h, row + k + 1, 1, n, rows, v2, t1);
-    reflect2(h, start * n + k + 1, n, 1, columns, v2, t1);
-    reflect2(ut, u, 1, width, width, v2, t1);
-  }
+  const reflect = (a: Float64Array, at: number, step: number, apart: number, count: number) => {
+    if (three) reflect3(a, at, step, apart, count, v2, v3, t1);
+    else reflect2(a, at, step, apart, count, v2, t1);
+  };
+  reflect(h, row + k + 1, 1, n, rows);
+  reflect(h, start * n + k + 1, n, 1, columns);
+  reflect(ut, u, 1, width, width);
 }
 
 /** Room for the three entries a reflection is made from. */
