@@ -22,39 +22,61 @@ export interface Screen {
 const PLAIN_WIDTH = 100;
 
 /** The world of this process. A stream is opened when it is first used: each costs a start of a few milliseconds. */
-export function processHost(): Host {
+export interface ProcessHost extends Host {
+  /** Resolves when all that was written has left the process, or never will. */
+  flush(): Promise<void>;
+}
+
+export function processHost(): ProcessHost {
+  const [stdout, stderr] = [lazy(() => process.stdout), lazy(() => process.stderr)];
   return {
     cwd: process.cwd(),
     env: process.env,
     get stdin() {
       return process.stdin;
     },
-    stdout: screen(() => process.stdout),
-    stderr: screen(() => process.stderr),
+    stdout: screen(stdout),
+    stderr: screen(stderr),
+    async flush() {
+      for (const { opened } of [stdout, stderr]) {
+        if (opened) await new Promise((done) => opened.write("", done));
+      }
+    },
   };
 }
 
 type Stream = Writable & { isTTY?: boolean; columns?: number };
 
+interface LazyStream {
+  opened: Stream | undefined;
+  open(): Stream;
+}
+
 /** A stream that was closed at the other end (`| head`) ends the work quietly. */
-function screen(open: () => Stream): Screen {
-  let opened: Stream | undefined;
-  const stream = (): Stream => {
-    if (opened !== undefined) return opened;
-    opened = open();
-    opened.on("error", (error: NodeJS.ErrnoException) => {
-      if (error.code === "EPIPE") process.exit(0);
-      throw error;
-    });
-    return opened;
+function lazy(open: () => Stream): LazyStream {
+  const stream: LazyStream = {
+    opened: undefined,
+    open() {
+      if (stream.opened) return stream.opened;
+      stream.opened = open();
+      stream.opened.on("error", (error: NodeJS.ErrnoException) => {
+        if (error.code === "EPIPE") process.exit(0);
+        throw error;
+      });
+      return stream.opened;
+    },
   };
+  return stream;
+}
+
+function screen(stream: LazyStream): Screen {
   return {
-    write: (text) => void stream().write(text),
+    write: (text) => void stream.open().write(text),
     get isTerminal() {
-      return stream().isTTY === true;
+      return stream.open().isTTY === true;
     },
     get width() {
-      return stream().columns ?? PLAIN_WIDTH;
+      return stream.open().columns ?? PLAIN_WIDTH;
     },
   };
 }

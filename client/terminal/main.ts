@@ -8,7 +8,11 @@ async function start(args: readonly string[]): Promise<void> {
   const { runCommand, processHost } = loadProgram(__dirname).program;
   // The server is a program of its own beside this one.
   const serve = () => import(pathToFileURL(join(__dirname, "../server/main.js")).href);
-  process.exitCode = await runCommand(args, Object.assign(processHost(), { serve }));
+  const host = Object.assign(processHost(), { serve });
+  const status = await runCommand(args, host);
+  await host.flush();
+  // Nothing is left to wait for: taking everything down piece by piece would take longer than a short command.
+  process.exit(status);
 }
 
 const args = process.argv.slice(2);

@@ -50,7 +50,7 @@ function dampingText(mode: Mode, units: UnitView): string {
 /** `slab 1, unit −0.4`: the undamped shape's largest coordinates, with signs, the largest 1. */
 export function movesMost(mode: Mode, coordinates: readonly string[]): string {
   const { re, im } = mode.shape;
-  const sizes = coordinates.map((_, i) => Math.hypot(re[i], im[i]));
+  const sizes = coordinates.map((_, i) => (im[i] === 0 ? Math.abs(re[i]) : Math.hypot(re[i], im[i])));
   let top = 0;
   for (const size of sizes) top = Math.max(top, size);
   const worth: number[] = [];
