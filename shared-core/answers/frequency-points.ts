@@ -102,6 +102,7 @@ export class SteadyPoints {
 
   #isAtPole(hz: number): boolean {
     const poles = this.#undamped;
+    if (poles.length === 0) return false;
     let lo = 0;
     let hi = poles.length;
     while (lo < hi) {

@@ -78,7 +78,7 @@ export function withPoles(
   poles: readonly Pole[],
   { first, growth, closest }: PoleSpacing,
 ): Float64Array {
-  const out = Array.from(base);
+  const out: number[] = [];
   const from = base[0];
   const to = base[base.length - 1];
   poles.forEach(({ atHz, halfWidthHz }, i) => {
@@ -96,12 +96,18 @@ export function withPoles(
       }
     }
   });
-  const sorted = Float64Array.from(out).sort();
-  let count = 0;
-  for (let i = 0; i < sorted.length; i++) {
-    if (i === 0 || sorted[i] !== sorted[count - 1]) sorted[count++] = sorted[i];
+  return merged(base, Float64Array.from(out).sort());
+}
+
+/** Two ascending lists as one, each value once. */
+function merged(a: Float64Array, b: Float64Array): Float64Array {
+  const out = new Float64Array(a.length + b.length);
+  let [i, j, count] = [0, 0, 0];
+  while (i < a.length || j < b.length) {
+    const next = j >= b.length || (i < a.length && a[i] <= b[j]) ? a[i++] : b[j++];
+    if (count === 0 || next !== out[count - 1]) out[count++] = next;
   }
-  return sorted.slice(0, count);
+  return out.slice(0, count);
 }
 
 function evenSamples(from: number, to: number, perDecade: number): Float64Array {

@@ -91,7 +91,7 @@ function shareLanes(
   shares: Float64Array,
 ): void {
   const { inputs, count } = modal;
-  const [f0, f1, f2] = feeds;
+  const [{ re: f0Re, im: f0Im }, { re: f1Re, im: f1Im }, { re: f2Re, im: f2Im }] = feeds;
   const single = modal.weight[k] === 1;
   const [rootRe, rootIm] = [modal.lambdaRe[k], modal.lambdaIm[k]];
   const first = 2 * lanes * k;
@@ -106,10 +106,10 @@ function shareLanes(
       const at = k * inputs + j;
       const a = uRe[lane * inputs + j];
       const b = uIm[lane * inputs + j];
-      const evenRe = f0.re[at] - w * w * f2.re[at];
-      const evenIm = f0.im[at] - w * w * f2.im[at];
-      const oddRe = w * f1.re[at];
-      const oddIm = w * f1.im[at];
+      const evenRe = f0Re[at] - w * w * f2Re[at];
+      const evenIm = f0Im[at] - w * w * f2Im[at];
+      const oddRe = w * f1Re[at];
+      const oddIm = w * f1Im[at];
       re += (evenRe - oddIm) * a - (evenIm + oddRe) * b;
       im += (evenRe - oddIm) * b + (evenIm + oddRe) * a;
       otherRe += (evenRe + oddIm) * a - (oddRe - evenIm) * b;

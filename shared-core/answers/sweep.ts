@@ -171,13 +171,14 @@ function basePoints({ fromHz, toHz, points, spacing }: SweepAsk): Outcome<Float6
   if (fromHz === toHz) return succeed(Float64Array.of(fromHz));
   const count = Math.min(MOST_POINTS, Math.max(2, Math.ceil(points)));
   const last = count - 1;
-  const at =
-    spacing === "log"
-      ? (i: number) => fromHz * (toHz / fromHz) ** (i / last)
-      : (i: number) => fromHz + ((toHz - fromHz) * i) / last;
-  return succeed(
-    Float64Array.from({ length: count }, (_, i) => (i === 0 ? fromHz : i === last ? toHz : at(i))),
-  );
+  const out = new Float64Array(count);
+  for (let i = 1; i < last; i++) {
+    out[i] =
+      spacing === "log" ? fromHz * (toHz / fromHz) ** (i / last) : fromHz + ((toHz - fromHz) * i) / last;
+  }
+  out[0] = fromHz;
+  out[last] = toHz;
+  return succeed(out);
 }
 
 /** Modal damping over the free coordinates; loss factors stay with their springs. */
