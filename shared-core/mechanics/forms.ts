@@ -40,8 +40,30 @@ export function combineForms(forms: readonly LinearForm[], factors: readonly num
   return { coordinates, factors: coordinateFactors, supports, supportFactors };
 }
 
-/** `a - b`: the travel between two ends. */
-export const subtractForms = (a: LinearForm, b: LinearForm): LinearForm => combineForms([a, b], [1, -1]);
+/** `a - b`: the travel between two ends. Most ends are one free coordinate or ground, which need no sorting. */
+export function subtractForms(a: LinearForm, b: LinearForm): LinearForm {
+  if (!isSimple(a) || !isSimple(b)) return combineForms([a, b], [1, -1]);
+  const [i, j] = [a.coordinates[0], b.coordinates[0]];
+  if (j === undefined) return a;
+  if (i === undefined) return pairForm([j], [-b.factors[0]]);
+  if (i === j) {
+    const factor = a.factors[0] - b.factors[0];
+    return factor === 0 ? groundForm : pairForm([i], [factor]);
+  }
+  return i < j
+    ? pairForm([i, j], [a.factors[0], -b.factors[0]])
+    : pairForm([j, i], [-b.factors[0], a.factors[0]]);
+}
+
+const isSimple = ({ coordinates, factors, supports }: LinearForm): boolean =>
+  supports.length === 0 && (coordinates.length === 0 || (coordinates.length === 1 && factors[0] !== 0));
+
+const pairForm = (coordinates: readonly number[], factors: readonly number[]): LinearForm => ({
+  coordinates,
+  factors,
+  supports: NONE,
+  supportFactors: NONE,
+});
 
 /** Value of the form's free part at `q` (one entry a free coordinate); supports count as still. */
 export function formValue(form: LinearForm, q: ArrayLike<number>): number {

@@ -61,11 +61,15 @@ function gluedFactors(literal: NumberNode, c: ExpressionContext): readonly UnitF
   return later.filter(({ name }) => c.scope.holdsNumber(name));
 }
 
+const isGlued = ({ unit }: NumberNode, c: ExpressionContext): boolean =>
+  unit?.factors.some(({ name }, i) => i > 0 && c.scope.holdsNumber(name)) === true;
+
 function gluedLiterals(node: Expression, c: ExpressionContext): readonly NumberNode[] {
-  if (node.kind === "path" || (node.kind === "number" && (node.unit?.factors.length ?? 0) < 2)) return [];
+  if (node.kind === "path") return [];
+  if (node.kind === "number") return isGlued(node, c) ? [node] : [];
   const literals: NumberNode[] = [];
   visit(node, (each) => {
-    if (each.kind === "number" && gluedFactors(each, c).length > 0) literals.push(each);
+    if (each.kind === "number" && isGlued(each, c)) literals.push(each);
   });
   return literals;
 }

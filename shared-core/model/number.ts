@@ -25,6 +25,7 @@ export function planNumber(
   copies = 1,
 ): PlannedNumber | undefined {
   const expression = planExpression(node.expression, c, wanted);
+  if (node.tolerance === undefined && node.within === undefined) return expression;
   const tolerance = node.tolerance && planTolerance(node, c, expression, owner, copies);
   const within = node.within && planWithin(node, c, expression);
   if (expression === undefined) return undefined;
