@@ -13,9 +13,11 @@ export class Drawing {
   readonly player: Player;
   readonly #page: Page;
   readonly #roving: Roving;
+  readonly #wide: HTMLElement;
   readonly #says = html("p", { class: "readout" });
   #scene: Scene | undefined;
   #shown = "";
+  #isPlaced = false;
   #picture: ScenePicture | undefined;
   readonly #chart: CoordinateChart;
   #still: Float64Array | undefined;
@@ -38,13 +40,8 @@ export class Drawing {
       coordinates: () => this.#scene?.coordinates.length ?? 0,
       ask,
     });
-    this.element = html(
-      "div",
-      { class: "drawing" },
-      html("div", { class: "wide" }, this.#roving.element),
-      this.#says,
-      this.player.element,
-    );
+    this.#wide = html("div", { class: "wide" }, this.#roving.element);
+    this.element = html("div", { class: "drawing" }, this.#wide, this.#says, this.player.element);
   }
 
   /** The picture as it is, for a copy of it. */
@@ -59,6 +56,7 @@ export class Drawing {
       this.#scene = scene;
       if (scene.kind === "chart") this.#drawChart(scene);
       else this.#drawSystem(scene);
+      this.#toMiddle();
       this.highlight([...this.#lit]);
     }
     if (scene.kind === "chart") this.#showFirst(scene, motions);
@@ -91,6 +89,15 @@ export class Drawing {
     });
     this.#named = named;
     this.#roving.update(picture.element, items, scene.description);
+  }
+
+  /** What is wider than the page begins in its middle, where the ground is; afterwards it stays where it was left. */
+  #toMiddle(): void {
+    if (this.#isPlaced) return;
+    this.#isPlaced = true;
+    requestAnimationFrame(() => {
+      this.#wide.scrollLeft = (this.#wide.scrollWidth - this.#wide.clientWidth) / 2;
+    });
   }
 
   #drawChart({ coordinates, description }: Scene): void {

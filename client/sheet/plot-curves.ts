@@ -1,4 +1,5 @@
 import { DASHES, type Scale } from "../../shared-core/index.ts";
+import { type Column, columnsOf, isCalm, wayThrough } from "./plot-columns.ts";
 import type { Drawn, Geometry, PanelBox } from "./plot-layout.ts";
 import { firstFrom } from "./pyramid.ts";
 
@@ -48,18 +49,23 @@ export function paintCurves(
 
 export const dashOf = (style: number): string => DASHES[style % DASHES.length];
 
-/** A line, or a band of columns: dashes across a band would say nothing and take long. */
+/** A line; through columns where it has more samples than the page has pixels; a band where it would cover them all. */
 function trace(context: CanvasRenderingContext2D, drawn: Drawn, place: CurvePlace): void {
   const { x } = drawn.curve;
   const first = Math.max(0, firstFrom(x, place.x.from) - 1);
   const last = Math.min(x.length, firstFrom(x, place.x.to) + 1);
+  const { from, to, kind } = place.x;
   const columns = Math.ceil((place.geometry.right - place.geometry.left) * COLUMNS);
-  if (last - first > DENSE * columns) fillColumns(context, drawn, place, [first, last, columns]);
-  else {
+  if (last - first <= DENSE * columns) {
     context.beginPath();
     traceSamples(context, drawn, place, [first, last]);
     context.stroke();
+    return;
   }
+  const span = { first, last, columns, from, to, isLog: kind === "log" };
+  const found = columnsOf(drawn, span, (value) => upright(place.y, place.box, value));
+  if (isCalm(found)) strokeColumns(context, found, place, columns);
+  else fillColumns(context, found, place, columns);
 }
 
 function traceSamples(
@@ -84,40 +90,47 @@ function traceSamples(
   }
 }
 
-/**
- * Of each column the lowest and the highest value: no peak is lost, however narrow. Rectangles one by one are filled
- * far faster than a path of them.
- */
+function strokeColumns(
+  context: CanvasRenderingContext2D,
+  found: readonly Column[],
+  { geometry: { left, right } }: CurvePlace,
+  columns: number,
+): void {
+  const wide = (right - left) / columns;
+  context.beginPath();
+  let next = -1;
+  for (const column of found) {
+    const across = left + (column.at + 0.5) * wide;
+    for (const height of wayThrough(column)) {
+      // A column without a value is a gap.
+      if (column.at === next || next < 0) context.lineTo(across, height);
+      else context.moveTo(across, height);
+      next = column.at;
+    }
+    next = column.at + 1;
+  }
+  context.stroke();
+}
+
+/** Rectangles one by one are filled far faster than a path of them; dashes across a band would say nothing. */
 function fillColumns(
   context: CanvasRenderingContext2D,
-  { curve, heights }: Drawn,
-  { geometry: { left, right }, box, x, y }: CurvePlace,
-  [first, last, columns]: readonly [number, number, number],
+  found: readonly Column[],
+  { geometry: { left, right } }: CurvePlace,
+  columns: number,
 ): void {
-  const pair = new Float64Array(2);
-  const ratio = x.kind === "log" ? Math.log(x.to / x.from) : 0;
-  let from = first;
-  // Where the column before was left, so that neighbours touch.
   const wide = (right - left) / columns;
   // On whole pixels of the screen, or thin seams would show between columns.
   const { a: dense } = context.getTransform();
   const edge = (column: number) => Math.round((left + column * wide) * dense) / dense;
-  let before = Number.NaN;
-  for (let column = 0; column < columns && from < last; column++) {
-    const share = (column + 1) / columns;
-    const end = x.kind === "log" ? x.from * Math.exp(ratio * share) : x.from + share * (x.to - x.from);
-    const to = column === columns - 1 ? last : Math.min(last, firstFrom(curve.x, end));
-    if (to <= from) continue;
-    heights.extremes(from, to, pair);
-    if (pair[0] <= pair[1]) {
-      let [bottom, top] = [upright(y, box, pair[0]), upright(y, box, pair[1])];
-      if (before > bottom) bottom = before;
-      if (before < top) top = before;
-      const [start, stop] = [edge(column), edge(column + 1)];
-      context.fillRect(start, top - THIN / 2, stop - start, bottom - top + THIN);
-    }
-    before = upright(y, box, curve.y[to - 1]);
-    from = to;
+  let before: number | undefined;
+  for (const { at, highest, lowest, leaves } of found) {
+    // Neighbours touch.
+    const top = Math.min(before ?? highest, highest);
+    const bottom = Math.max(before ?? lowest, lowest);
+    const [start, stop] = [edge(at), edge(at + 1)];
+    context.fillRect(start, top - THIN / 2, stop - start, bottom - top + THIN);
+    before = Number.isNaN(leaves) ? undefined : leaves;
   }
 }
 

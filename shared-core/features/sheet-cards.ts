@@ -41,7 +41,7 @@ export function cardsOf(input: CardInput): SheetCard[] {
 
 function cardOf(input: CardInput, ask: Ask): SheetCard {
   if (ask.kind === "modes") return modesCard(input, ask.name, ask.count, ask.upToHz);
-  const title = `${ask.kind === "later" ? ask.askKind : ask.kind} ${ask.name}`;
+  const title = `${ask.kind === "later" ? ask.askKind.replaceAll("_", " ") : ask.kind} ${ask.name}`;
   const base = { kind: "reason", name: ask.name, title } as const;
   if (ask.kind === "later") {
     const reason = `${ask.askKind} is read, and this version does not compute it yet`;

@@ -92,7 +92,7 @@ describe("cards", () => {
       ["history", "blow"],
       ["reason", "shock"],
     ]);
-    expect(content.cards[3]).toMatchObject({ title: "shock_spectrum shock" });
+    expect(content.cards[3]).toMatchObject({ title: "shock spectrum shock" });
     expect(content.cards.every(({ description }) => description.length > 10)).toBe(true);
   });
 
