@@ -5,6 +5,9 @@ import type { SheetRevision } from "../../shared-core/index.ts";
 /** So many are offered, the newest first. */
 const MOST = 40;
 
+/** Only names of commits are handed on to a command line. */
+const COMMIT = /^[0-9a-f]{7,64}$/;
+
 /** What is used of the interface that the extension `vscode.git` offers as version 1. */
 interface GitApi {
   getRepository(uri: vscode.Uri): GitRepository | null;
@@ -42,6 +45,7 @@ export async function revisionsOf(uri: vscode.Uri): Promise<readonly SheetRevisi
 export async function textAt(uri: vscode.Uri, revision: string): Promise<string> {
   const repository = await repositoryOf(uri);
   if (repository === undefined) throw new Error(vscode.l10n.t("it is not under version control"));
+  if (!COMMIT.test(revision)) throw new Error(vscode.l10n.t("there is no such revision"));
   return repository.show(revision, uri.fsPath);
 }
 
