@@ -7,19 +7,11 @@ import { join } from "node:path";
 import type { Browser } from "playwright-core";
 import { EVERY_KIND } from "../test/drawing/models.ts";
 import { root } from "../test/house/files.ts";
-import { example, SheetHost } from "../test/sheet/harness/host.ts";
+import { EXAMPLES, example, SheetHost } from "../test/sheet/harness/host.ts";
 import { openSheet } from "../test/sheet/harness/page.ts";
 import { THEME_KINDS, type ThemeKind } from "../test/sheet/harness/themes.ts";
 import { openBrowser } from "./workbench/browser.mjs";
 
-const EXAMPLES = [
-  "gate-actuator",
-  "instrument-bench",
-  "pump-line",
-  "quay-generator",
-  "transport-crate",
-  "ventilation-fan",
-];
 /** A picture in a document may be so large, in bytes. */
 const MOST = 200_000;
 /** The first page of a sheet: head, drawing, ruler and what follows. */

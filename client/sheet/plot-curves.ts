@@ -123,9 +123,11 @@ function fillColumns(
   // On whole pixels of the screen, or thin seams would show between columns.
   const { a: dense } = context.getTransform();
   const edge = (column: number) => Math.round((left + column * wide) * dense) / dense;
-  let before: number | undefined;
+  let [before, next]: [number | undefined, number] = [undefined, 0];
   for (const { at, highest, lowest, leaves } of found) {
-    // Neighbours touch.
+    // Neighbours touch; behind a column without a value there is none.
+    if (at !== next) before = undefined;
+    next = at + 1;
     const top = Math.min(before ?? highest, highest);
     const bottom = Math.max(before ?? lowest, lowest);
     const [start, stop] = [edge(at), edge(at + 1)];

@@ -3,19 +3,10 @@ import type { Browser } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { SHEET_VERSION } from "../../shared-core/index.ts";
 import { openBrowser } from "../../tools/workbench/browser.mjs";
-import { example, type Revision, SheetHost } from "./harness/host.ts";
+import { EXAMPLES, example, type Revision, SheetHost } from "./harness/host.ts";
 import { type Harness, type HarnessOptions, openSheet } from "./harness/page.ts";
 import { THEME_KINDS } from "./harness/themes.ts";
 import { violations } from "./harness/violations.ts";
-
-const EXAMPLES = [
-  "gate-actuator",
-  "instrument-bench",
-  "pump-line",
-  "quay-generator",
-  "transport-crate",
-  "ventilation-fan",
-];
 
 let browser: Browser;
 beforeAll(async () => {

@@ -6,19 +6,11 @@ import { gzipSync } from "node:zlib";
 import type { Page } from "playwright-core";
 import type { SheetContent, ToSheet } from "../../shared-core/index.ts";
 import { packContent, unpackContent } from "../../shared-core/index.ts";
-import { example, SheetHost } from "../../test/sheet/harness/host.ts";
+import { EXAMPLES, example, SheetHost } from "../../test/sheet/harness/host.ts";
 import { openSheet, sheetProgram } from "../../test/sheet/harness/page.ts";
 import { openBrowser } from "../workbench/browser.mjs";
 import { benchModel, modelText } from "./model.mjs";
 
-const EXAMPLES = [
-  "gate-actuator",
-  "instrument-bench",
-  "pump-line",
-  "quay-generator",
-  "transport-crate",
-  "ventilation-fan",
-];
 const EDITS = 20;
 const FRAMES = 120;
 const LONG = 100_000;

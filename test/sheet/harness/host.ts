@@ -1,5 +1,5 @@
 /** The other side of a sheet without an editor: holds a text, computes what the page asks for, keeps what it says. */
-import { readFileSync } from "node:fs";
+import { readdirSync, readFileSync } from "node:fs";
 import { join } from "node:path";
 import {
   type FromSheet,
@@ -33,6 +33,12 @@ export interface Revision {
   readonly label: string;
   readonly text: string;
 }
+
+/** Names of the examples, without their ending. */
+export const EXAMPLES: readonly string[] = readdirSync(join(root, "examples"))
+  .filter((file) => file.endsWith(".thrum"))
+  .map((file) => file.replace(/\.thrum$/, ""))
+  .sort();
 
 export const example = (name: string): string =>
   readFileSync(join(root, "examples", `${name}.thrum`), "utf8");
