@@ -4,10 +4,17 @@ import { SERVER_ROWS } from "./server.mjs";
 
 const row = (name, rowName, shape, n, aim) => ({ name, row: rowName, shape, n, aim });
 
-/** A text of about so many lines, of every kind of statement that computes. */
+/** Most coordinates of a long text: more would be too large to compute, and an error. */
+const MOST_MASSES = 1990;
+
+/** A text of about so many lines, of every kind of statement that computes: further springs beside the first. */
 function longText(lines) {
-  const masses = Math.floor(lines / 3);
-  return modelText(benchModel("chain", masses));
+  const masses = Math.min(Math.floor(lines / 3), MOST_MASSES);
+  const model = benchModel("chain", masses);
+  for (let i = 1; model.springs.length < lines - 2 * masses; i = (i % (masses - 1)) + 1) {
+    model.springs.push([i, i - 1, 1e4 + i]);
+  }
+  return modelText(model);
 }
 
 export const ROWS = [
