@@ -61,10 +61,11 @@ export const NUMERIC = {
     kinds: readonly InlayKind[],
     cursor: number | undefined,
   ): readonly InlayHint[] {
-    const early = kinds.filter((kind) => kind !== "margin");
+    const isLate = (kind: InlayKind) => kind === "margin" || kind === "found";
+    const [early, late] = [kinds.filter((kind) => !isLate(kind)), kinds.filter(isLate)];
     const hints = [
       ...inlayHints(now, range, { kinds: new Set(early), cursor }),
-      ...(kinds.includes("margin") ? inlayHints(whole, range, { kinds: new Set(["margin"]), cursor }) : []),
+      ...(late.length > 0 ? inlayHints(whole, range, { kinds: new Set(late), cursor }) : []),
     ];
     return hints.sort((a, b) => a.offset - b.offset);
   },

@@ -5,12 +5,14 @@ import { ofThisText, type Serving, sessionOf } from "../serving.ts";
 import type { Settings } from "../settings.ts";
 
 export function registerInlayHints(serving: Serving): void {
-  const { connection, schedule, settingsOf, guard } = serving;
+  const { connection, schedule, settingsOf, guard, client } = serving;
+  // A client that asks for lenses again when numbers come shows them all the time.
+  const hasLenses = client.capabilities.workspace?.codeLens?.refreshSupport === true;
   connection.languages.inlayHint.on(
     guard("textDocument/inlayHint", null, async ({ textDocument, range }): Promise<InlayHint[] | null> => {
       const session = sessionOf(serving, textDocument);
       if (session === undefined) return null;
-      const kinds = kindsOf(settingsOf(session));
+      const kinds = kindsOf(settingsOf(session), hasLenses);
       if (kinds.length === 0) return [];
       const { lines } = schedule.current(session);
       const cursor = session.cursor();
@@ -27,10 +29,13 @@ export function registerInlayHints(serving: Serving): void {
   );
 }
 
-function kindsOf({ inlayHints: { frequencies, values, margins } }: Settings): InlayKind[] {
+/** A lens above an expectation says its margin: then the hint behind it says the value alone. */
+function kindsOf({ inlayHints, codeLens }: Settings, hasLenses: boolean): InlayKind[] {
+  const { frequencies, values, margins } = inlayHints;
+  const behind = hasLenses && codeLens.expectations ? "found" : "margin";
   return [
     ...(frequencies ? (["frequency"] as const) : []),
     ...(values ? (["value"] as const) : []),
-    ...(margins ? (["margin"] as const) : []),
+    ...(margins ? ([behind] as const) : []),
   ];
 }

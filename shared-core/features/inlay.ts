@@ -23,8 +23,10 @@ export type InlayKind =
   | "frequency"
   /** Value behind an expression. */
   | "value"
-  /** Margin behind an expectation. */
-  | "margin";
+  /** Value and margin behind an expectation. */
+  | "margin"
+  /** Its value alone, where something else says the margin. */
+  | "found";
 
 export interface InlayHint {
   readonly kind: InlayKind;
@@ -58,7 +60,8 @@ export function inlayHints(view: View, range: Span, options: InlayOptions = {}):
   const hints = statements.flatMap((statement) => [
     ...(instance === undefined ? [] : valueHints(view, instance, statement)),
     ...(numbers !== undefined && kinds.has("frequency") ? frequencyHints(numbers, statement) : []),
-    ...(numbers !== undefined && kinds.has("margin") ? marginHints(view, numbers, statement) : []),
+    ...(numbers !== undefined && kinds.has("margin") ? verdictHints(view, numbers, statement, "margin") : []),
+    ...(numbers !== undefined && kinds.has("found") ? verdictHints(view, numbers, statement, "found") : []),
   ]);
   return hints.filter(
     ({ offset }) => range.start <= offset && offset <= range.end && !pushes(view, offset, cursor),
@@ -149,12 +152,17 @@ function valueLabel({ units }: View, instance: Instance, expression: Expression)
   return value.ok ? showQuantity(value.value, units, instance, expression) : undefined;
 }
 
-function marginHints(view: View, numbers: Numbers, statement: StatementNode): readonly InlayHint[] {
+function verdictHints(
+  view: View,
+  numbers: Numbers,
+  statement: StatementNode,
+  kind: "margin" | "found",
+): readonly InlayHint[] {
   if (statement.keyword.text !== "expect") return [];
   const worst = worstOf(verdictsOf(numbers, view.model, statement));
   if (worst === undefined) return [];
   return [
-    hint("margin", statement.headSpan.end, marginLabel(numbers, worst), {
+    hint(kind, statement.headSpan.end, verdictLabel(numbers, worst, kind), {
       says: `${worst.verdict.name}: ${verdictPhrase(worst)}`,
       stale: numbers.stale,
     }),
@@ -162,12 +170,14 @@ function marginHints(view: View, numbers: Numbers, statement: StatementNode): re
 }
 
 /** `3.95 Hz, 29 % left`; with the case, where that is nearest to failing. */
-function marginLabel(numbers: Numbers, worst: CaseVerdict): string {
+function verdictLabel(numbers: Numbers, worst: CaseVerdict, kind: "margin" | "found"): string {
   const { verdict, report, asWritten } = worst;
-  if (verdict.value === null) return `open${asWritten ? "" : ` in ${report.name}`}`;
+  const where = asWritten ? "" : ` in ${report.name}`;
+  if (verdict.value === null) return `open${where}`;
+  if (kind === "found") return `${valueText(numbers, worst)}${where}`;
   const margin = marginText(verdict);
   const said = margin === "" ? (verdict.holds ? "holds" : "fails") : margin;
-  return `${valueText(numbers, worst)}, ${said}${asWritten ? "" : ` in ${report.name}`}`;
+  return `${valueText(numbers, worst)}, ${said}${where}`;
 }
 
 function hint(

@@ -112,6 +112,11 @@ describe("margins behind expectations", () => {
     ]);
     const light = `${TEXT}case light\n    load = -4 kg\n`;
     expect(shown(viewOf(light), only("margin"))[1]).toMatch(/⟨8\.27 Hz, 65 % beyond in light⟩$/);
+    // Where a lens says the margin.
+    expect(shown(viewOf(TEXT), only("found"))[1]).toMatch(
+      new RegExp(`⟨${Number(f.toPrecision(4))} Hz⟩$`.replace(".", "\\.")),
+    );
+    expect(shown(viewOf(light), only("found"))[1]).toMatch(/⟨8\.27 Hz in light⟩$/);
   });
 
   it("say what is open", () => {

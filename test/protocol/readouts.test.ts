@@ -103,16 +103,24 @@ describe("hints, lenses and the summary", () => {
     );
   });
 
-  it("say the margin of an expectation", async () => {
+  it("say the margin of an expectation once: in its lens, or in its hint where there is none", async () => {
     const id = "p01-sdof-basics";
     const document = await opened(id, "", "expect soft = natural_frequency(1) <= 5 Hz\n");
     // 1 - f/5 Hz, two digits.
     const left = 100 * (1 - expected(id, "undamped natural frequency") / 5);
     const said = `${Number(left.toPrecision(2))} % left`;
-    const hints = await document.ask<InlayHint[]>("textDocument/inlayHint", undefined, { range: ALL });
-    expect(hints.map(({ label }) => label)).toContain(
-      `${shown(expected(id, "undamped natural frequency"))} Hz, ${said}`,
-    );
+    const hints = async () => {
+      const found = await document.ask<InlayHint[]>("textDocument/inlayHint", undefined, { range: ALL });
+      return found.map(({ label }) => label);
+    };
+    const value = `${shown(expected(id, "undamped natural frequency"))} Hz`;
+    expect(await hints()).toContain(value);
+    client.settings = { codeLens: { expectations: false } };
+    client.notify("workspace/didChangeConfiguration", { settings: null });
+    await expect.poll(hints).toContain(`${value}, ${said}`);
+    client.settings = {};
+    client.notify("workspace/didChangeConfiguration", { settings: null });
+    await expect.poll(hints).not.toContain(`${value}, ${said}`);
     const lenses = await document.ask<CodeLens[]>("textDocument/codeLens");
     const last = lenses[lenses.length - 1];
     const resolved = await client.request<CodeLens>("codeLens/resolve", last);
