@@ -63,6 +63,9 @@ export class Session implements Place {
   #fromAnswers: readonly Diagnostic[] = [];
   #judged: readonly Diagnostic[] = [];
   #judgedTree: Model["tree"] | undefined;
+  #compared:
+    | { readonly tree: Model["tree"]; readonly judged: Model["tree"]; readonly same: boolean }
+    | undefined;
   #changes: Change[] = [];
   readonly #waiting: (() => void)[] = [];
   readonly #waitingForModes: (() => void)[] = [];
@@ -175,10 +178,20 @@ export class Session implements Place {
     for (const done of this.#waiting.splice(0)) done();
   }
 
+  /** Whether the text means what the newest numbers are of; looked at once for each pair of texts. */
+  #meansAsJudged(): boolean {
+    const [tree, judged] = [this.understood?.model.tree, this.#judgedTree];
+    if (tree === undefined || judged === undefined) return false;
+    if (this.#compared?.tree !== tree || this.#compared.judged !== judged) {
+      this.#compared = { tree, judged, same: sameMeaning(tree, judged) };
+    }
+    return this.#compared.same;
+  }
+
   #carried(list: readonly Diagnostic[]): readonly Diagnostic[] {
+    if (list.length === 0) return list;
     // Numbers of a text that means the same are not of an earlier one.
-    const { understood } = this;
-    const same = understood && this.#judgedTree && sameMeaning(understood.model.tree, this.#judgedTree);
+    const same = this.#meansAsJudged();
     return list.flatMap((each) => {
       const span = moved(each.span, this.#changes);
       if (span === undefined) return [];
