@@ -1,5 +1,5 @@
-import { nodesOf } from "../../syntax/expression-nodes.ts";
-import type { CallNode, Expression, Item, StatementNode } from "../../syntax/tree.ts";
+import { visit } from "../../syntax/expression-nodes.ts";
+import type { CallNode, Expression, Item } from "../../syntax/tree.ts";
 import { functionOf } from "../../vocabulary/functions.ts";
 import type { Finding, Rule, RuleContext } from "../rule.ts";
 
@@ -7,12 +7,17 @@ import type { Finding, Rule, RuleContext } from "../rule.ts";
 export const outsideValidity: Rule = {
   code: "outside-validity",
   cost: "text",
-  check: (context) =>
-    context.model.tree.statements.flatMap((statement) =>
-      expressionsOf(statement).flatMap((expression) =>
-        [...nodesOf(expression)].flatMap((node) => (node.kind === "call" ? finding(context, node) : [])),
-      ),
-    ),
+  check(context) {
+    const found: Finding[] = [];
+    const look = (node: Expression): void => {
+      if (node.kind === "call") found.push(...finding(context, node));
+    };
+    for (const statement of context.model.tree.statements) {
+      for (const item of statement.value ?? []) lookInto(item, look);
+      for (const { items } of statement.details) for (const item of items) lookInto(item, look);
+    }
+    return found;
+  },
 };
 
 function finding(context: RuleContext, call: CallNode): readonly Finding[] {
@@ -50,20 +55,10 @@ function argumentsOf(
   return numbers;
 }
 
-function expressionsOf(statement: StatementNode): readonly Expression[] {
-  const items = [...(statement.value ?? []), ...statement.details.flatMap((detail) => detail.items)];
-  return items.flatMap(expressionsOfItem);
-}
-
-function expressionsOfItem(item: Item): readonly Expression[] {
-  switch (item.kind) {
-    case "value":
-      return [item.expression];
-    case "range":
-      return [item.from, item.to];
-    case "at":
-      return [item.value.expression, item.at];
-    case "text":
-      return [];
+function lookInto(item: Item, look: (node: Expression) => void): void {
+  if (item.kind === "value") visit(item.expression, look);
+  else if (item.kind !== "text") {
+    visit(item.kind === "range" ? item.from : item.value.expression, look);
+    visit(item.kind === "range" ? item.to : item.at, look);
   }
 }
