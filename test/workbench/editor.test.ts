@@ -4,7 +4,6 @@
  */
 import { execFileSync } from "node:child_process";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { newModel } from "../../shared-core/index.ts";
 import { Editor } from "./editor.ts";
 import { eventually } from "./eventually.ts";
 import { CASES, SOUND, UNIT, UNIT_FREQUENCY } from "./models.ts";
@@ -144,8 +143,8 @@ describe("writing", () => {
     ).toBe(wanted);
   });
 
-  it("leaves Enter alone: a model typed line by line is that model", async () => {
-    const text = newModel("machine");
+  it("leaves Enter alone: an example typed line by line is that example", async () => {
+    const text = editor.text("transport-crate.thrum");
     await editor.openFile("typed.thrum");
     let indent = 0;
     const lines = text.replace(/\n$/, "").split("\n");
