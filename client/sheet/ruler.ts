@@ -112,7 +112,7 @@ export class RulerView {
   #apart(key: string): string[] {
     const named = new Map([
       ...(this.#ruler?.modes ?? []).map(({ id, number }) => [id, `mode ${number}`] as const),
-      ...(this.#ruler?.drives ?? []).map(({ id, name }) => [id, name] as const),
+      ...(this.#ruler?.drives ?? []).map(({ id, name, label, asked }) => [id, asked ? label : name] as const),
       ...(this.#ruler?.limits ?? []).map(({ id, name }) => [id, name] as const),
     ]);
     return (this.#ruler?.separations ?? [])
@@ -246,13 +246,13 @@ class Parts {
     return { key: id, element, says, x };
   }
 
-  drive({ id, from, to, label, says }: Ruler["drives"][number]): Item {
+  drive({ id, from, to, label, says, asked }: Ruler["drives"][number]): Item {
     const [left, right] = [this.#to(from), this.#to(to)];
     const middle = (left + right) / 2;
     const y = this.#wordsAt(id);
     const element = svg(
       "g",
-      { class: "drive" },
+      { class: asked ? "drive asked" : "drive" },
       svg("rect", {
         class: "hit",
         x: left - 8,
@@ -263,7 +263,7 @@ class Parts {
       ...(right - left > 2
         ? [svg("rect", { class: "range", x: left, y: this.#axis - 14, width: right - left, height: 14 })]
         : []),
-      svg("path", { d: `M${middle},${y + 3}V${this.#axis}m-3.5,-7l3.5,7l3.5,-7` }),
+      svg("path", { d: `M${middle},${y + 3}V${this.#axis}${asked ? "" : "m-3.5,-7l3.5,7l3.5,-7"}` }),
       svg("text", { x: this.#above.xOf.get(id) ?? middle, y, "text-anchor": "middle" }, label),
     );
     return { key: id, element, says, x: middle };

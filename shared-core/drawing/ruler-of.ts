@@ -5,6 +5,7 @@ import type { CaseReport, Verdict } from "../judgement/report.ts";
 import { elasticModes } from "../judgement/shapes.ts";
 import { formatNumber } from "../units/show.ts";
 import type { Ruler, RulerDrive, RulerLimit, RulerMode } from "./ruler.ts";
+import { type AskedOrder, askedOrders } from "./ruler-orders.ts";
 
 /** Modes shown whether or not anything comes near them. */
 const ALWAYS = 6;
@@ -20,7 +21,7 @@ const SHORTEST = 4;
  * @param earlier the same case at an earlier revision, whose modes are shown beside
  */
 export function rulerOf(report: CaseReport, earlier?: CaseReport): Ruler | null {
-  const drives = steadyDrives(report);
+  const drives = withOrders(steadyDrives(report), askedOrders(report));
   const limits = frequencyLimits(report.verdicts);
   const modes = shownModes(report, [...drives.map(({ toHz }) => toHz), ...limits.map(({ hz }) => hz)]);
   const before = earlier === undefined ? [] : shownModes(earlier, []).slice(0, modes.length);
@@ -62,10 +63,12 @@ interface ShownMode {
 }
 
 interface ShownDrive {
+  readonly id: string;
+  readonly asked: boolean;
+  readonly label: string;
   readonly name: string;
   readonly fromHz: number;
   readonly toHz: number;
-  readonly order: number;
 }
 
 interface ShownLimit extends Omit<RulerLimit, "at"> {
@@ -100,9 +103,34 @@ function steadyDrives({ instance }: CaseReport): ShownDrive[] {
       drive.bandHz ?? (drive.writtenHz === undefined ? undefined : [drive.writtenHz, drive.writtenHz]);
     if (band === undefined || !isSteady(drive) || !(Math.min(...band) > 0)) return [];
     const order = drive.shape.kind === "sine" ? drive.shape.order : 1;
-    return [{ name: drive.name, fromHz: Math.min(...band), toHz: Math.max(...band), order }];
+    const { name } = drive;
+    const label = order === 1 ? name : `${name} (${formatNumber(order)}×)`;
+    const [fromHz, toHz] = [Math.min(...band), Math.max(...band)];
+    return [{ id: `drive:${name}`, asked: false, label, name, fromHz, toHz }];
   });
 }
+
+/** An order at which a drive runs is that drive. */
+function withOrders(drives: readonly ShownDrive[], orders: readonly AskedOrder[]): ShownDrive[] {
+  const same = (a: number, b: number) => Math.abs(a - b) <= SAME * Math.max(a, b);
+  const others = orders.filter(
+    ({ fromHz, toHz }) => !drives.some((drive) => same(drive.fromHz, fromHz) && same(drive.toHz, toHz)),
+  );
+  return [
+    ...drives,
+    ...others.map(({ name, order, fromHz, toHz, label }) => ({
+      id: `order:${name}:${formatNumber(order)}`,
+      asked: true,
+      label,
+      name,
+      fromHz,
+      toHz,
+    })),
+  ];
+}
+
+/** Relative difference below which two written rates are the same. */
+const SAME = 1e-9;
 
 /** Expectations that compare a frequency of a mode with a number. */
 function frequencyLimits(verdicts: readonly Verdict[]): ShownLimit[] {
@@ -137,7 +165,8 @@ function rulerMode(
     bandLow: at(hz * (1 - band)),
     bandHigh: at(hz * (1 + band)),
     danger: drives.some(
-      ({ name, fromHz, toHz }) => excitedBy.has(name) && separationFrom([fromHz, toHz], hz) <= band,
+      ({ name, asked, fromHz, toHz }) =>
+        !asked && excitedBy.has(name) && separationFrom([fromHz, toHz], hz) <= band,
     ),
   };
 }
@@ -164,10 +193,10 @@ function drop(
   };
 }
 
-function rulerDrive({ name, fromHz, toHz, order }: ShownDrive, at: (hz: number) => number): RulerDrive {
+function rulerDrive({ fromHz, toHz, label, ...named }: ShownDrive, at: (hz: number) => number): RulerDrive {
   const rate = fromHz === toHz ? hertz(fromHz) : `${hertz(fromHz)} to ${hertz(toHz)}`;
-  const label = order === 1 ? name : `${name} (${formatNumber(order)}×)`;
-  return { id: `drive:${name}`, name, from: at(fromHz), to: at(toHz), label, says: `${label}, ${rate}` };
+  const why = named.asked ? `, to be kept clear of by ${named.name}` : "";
+  return { ...named, from: at(fromHz), to: at(toHz), label, says: `${label}, ${rate}${why}` };
 }
 
 function separations(
@@ -184,7 +213,9 @@ function separations(
       text: apart(what, low, high, name, mode.hz),
     });
     return [
-      ...drives.map((drive) => pair(`drive:${drive.name}`, drive.name, drive.fromHz, drive.toHz)),
+      ...drives.map(({ id, asked, name: drive, label, fromHz, toHz }) =>
+        pair(id, asked ? label : drive, fromHz, toHz),
+      ),
       ...limits.map(({ id, name: limit, hz }) => pair(id, limit, hz, hz)),
       ...modes.slice(i + 1).map(({ number, hz }) => pair(`mode:${number}`, `mode ${number}`, hz, hz)),
     ];
@@ -230,9 +261,12 @@ function describe(
 ): string {
   const parts = [
     ...modes.map(({ number, hz }) => `mode ${number} at ${hertz(hz)}`),
-    ...drives.map(({ name, fromHz, toHz }) =>
-      fromHz === toHz ? `${name} at ${hertz(fromHz)}` : `${name} from ${hertz(fromHz)} to ${hertz(toHz)}`,
-    ),
+    ...drives.map(({ asked, label, name: drive, fromHz, toHz }) => {
+      const name = asked ? label : drive;
+      return fromHz === toHz
+        ? `${name} at ${hertz(fromHz)}`
+        : `${name} from ${hertz(fromHz)} to ${hertz(toHz)}`;
+    }),
     ...limits.map(({ name, label }) => `limit ${name} ${label}`),
   ];
   return `${parts.join(", ")}.`;

@@ -38,8 +38,10 @@ export interface RulerMode {
 
 /** A steady drive that stands on the axis: a line, or a bar where its rate is a range. */
 export interface RulerDrive {
-  /** `drive:imbalance`. */
+  /** `drive:imbalance`; `order:vanes_clear:6`. */
   readonly id: string;
+  /** An order that an expectation keeps modes clear of; no drive of the model runs there. */
+  readonly asked: boolean;
   /** Name of the statement. */
   readonly name: string;
   readonly from: number;

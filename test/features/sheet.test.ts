@@ -82,6 +82,23 @@ describe("the ruler", () => {
     expect(texts).toContain("shake is 5.13 % below mode 1, ratio 0.949");
     expect(texts).toContain("low is 26.5 % above mode 1, ratio 1.26");
   });
+
+  it("shows the orders that an expectation keeps clear of, but for those at which a drive runs", () => {
+    const expectation = "expect clear = clear_of_modes(2 Hz, orders: (1, 1.5, 3)) >= 5 %\n";
+    const asked = sheetContent(viewOf(ONE + expectation, { judged: true })).ruler;
+    if (asked === null) throw new Error("no ruler");
+    const at = (share: number) => asked.fromHz * (asked.toHz / asked.fromHz) ** share;
+    // 1.5 times 2 Hz is the rate of `shake`.
+    expect(
+      asked.drives.map(({ name, asked: is, label, from }) => [name, is, label, Number(at(from).toFixed(9))]),
+    ).toEqual([
+      ["shake", false, "shake", 3],
+      ["clear", true, "2 Hz", 2],
+      ["clear", true, "3 × 2 Hz", 6],
+    ]);
+    expect(asked.modes[0].danger).toBe(true);
+    expect(asked.separations.map(({ text }) => text)).toContain("3 × 2 Hz is 89.7 % above mode 1, ratio 1.9");
+  });
 });
 
 describe("cards", () => {

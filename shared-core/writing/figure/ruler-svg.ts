@@ -111,7 +111,7 @@ function drivePart(
       ? ""
       : `<path d="M${x(drive.from)},${axis - 6}H${x(drive.to)}" stroke="${theme.curves[1]}" stroke-width="5" stroke-opacity="0.5"/>`;
   return [
-    `<g><title>${escapeText(drive.says)}</title>${bar}<path d="M${at},${axis}V${top}" fill="none" stroke="${theme.curves[1]}" stroke-width="2"/>`,
+    `<g><title>${escapeText(drive.says)}</title>${bar}<path d="M${at},${axis}V${top}" fill="none" ${drive.asked ? `stroke="${theme.quiet}" stroke-dasharray="1 3"` : `stroke="${theme.curves[1]}" stroke-width="2"`}/>`,
     `<text x="${middle}" y="${top - 4}" text-anchor="middle">${escapeText(text)}</text></g>`,
   ];
 }
