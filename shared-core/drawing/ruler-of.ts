@@ -3,6 +3,7 @@ import { isSteady } from "../answers/drive-phasor.ts";
 import { excitesMode, separationFrom } from "../judgement/drives.ts";
 import type { CaseReport, Verdict } from "../judgement/report.ts";
 import { elasticModes } from "../judgement/shapes.ts";
+import type { CallNode, Expression } from "../syntax/tree.ts";
 import { formatNumber } from "../units/show.ts";
 import type { Ruler, RulerDrive, RulerLimit, RulerMode } from "./ruler.ts";
 import { type AskedOrder, askedOrders } from "./ruler-orders.ts";
@@ -132,27 +133,31 @@ function withOrders(drives: readonly ShownDrive[], orders: readonly AskedOrder[]
 /** Relative difference below which two written rates are the same. */
 const SAME = 1e-9;
 
-/** Expectations that compare a frequency of a mode with a number. */
+/** Expectations that compare a frequency of a mode with a number, on either side. */
 function frequencyLimits(verdicts: readonly Verdict[]): ShownLimit[] {
-  return verdicts.flatMap(({ name, limit, holds, expectation: { left, operator } }) => {
-    if (left.kind !== "call" || limit === null || !(limit > 0)) return [];
-    const { callee, positional } = left;
-    if (callee.text !== "natural_frequency" && callee.text !== "damped_frequency") return [];
-    const [which] = positional;
-    const side = operator.startsWith("<") ? "below" : "above";
+  return verdicts.flatMap(({ name, value, limit, holds, expectation: { left, right, operator } }) => {
+    const [call, hz, less] = isFrequency(left) ? [left, limit, "<"] : [right, value, ">"];
+    if (!isFrequency(call) || hz === null || !(hz > 0)) return [];
+    const [which] = call.positional;
+    const side = operator.startsWith(less) ? "below" : "above";
     return [
       {
         id: `limit:${name}`,
         name,
-        hz: limit,
+        hz,
         side,
         mode: which?.kind === "number" ? which.value : null,
         holds,
-        label: `${side === "below" ? "≤" : "≥"} ${hertz(limit)}`,
+        label: `${side === "below" ? "≤" : "≥"} ${hertz(hz)}`,
       },
     ];
   });
 }
+
+const FREQUENCIES: ReadonlySet<string> = new Set(["natural_frequency", "damped_frequency"]);
+
+const isFrequency = (expression: Expression): expression is CallNode =>
+  expression.kind === "call" && FREQUENCIES.has(expression.callee.text);
 
 function rulerMode(
   { number, hz, damping, excitedBy }: ShownMode,

@@ -83,6 +83,16 @@ describe("the ruler", () => {
     expect(texts).toContain("low is 26.5 % above mode 1, ratio 1.26");
   });
 
+  it("stands limits on it whichever side they are written on", () => {
+    const reversed = viewOf(`${ONE}expect turned = 3.5 Hz >= natural_frequency(1)\n`, { judged: true });
+    expect(sheetContent(reversed).ruler?.limits.at(-1)).toMatchObject({
+      name: "turned",
+      side: "below",
+      label: "≤ 3.5 Hz",
+      holds: true,
+    });
+  });
+
   it("shows the orders that an expectation keeps clear of, but for those at which a drive runs", () => {
     const expectation = "expect clear = clear_of_modes(2 Hz, orders: (1, 1.5, 3)) >= 5 %\n";
     const asked = sheetContent(viewOf(ONE + expectation, { judged: true })).ruler;
