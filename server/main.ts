@@ -35,7 +35,7 @@ function start(): void {
 
 /** With the first model that is open: a server that nobody needs stays small. */
 function startEngine(): ThreadEngine {
-  if (!warm) warmUp({ numbers: false });
+  if (!warm) warmUp();
   warm = true;
   return new ThreadEngine(new URL("./thread.js", import.meta.url));
 }

@@ -2,10 +2,8 @@
 import { parentPort } from "node:worker_threads";
 import { runThread } from "./engine-thread.ts";
 import { tidyWhenIdle } from "./tidy.ts";
-import { warmUp } from "./warm.ts";
 
 if (parentPort) {
   tidyWhenIdle();
   runThread(parentPort);
-  warmUp({ numbers: true });
 }

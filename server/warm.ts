@@ -1,13 +1,5 @@
 import { performance } from "node:perf_hooks";
-import {
-  type FileReader,
-  judge,
-  judgeInSteps,
-  NEW_MODELS,
-  newModel,
-  type Steps,
-  understand,
-} from "../shared-core/index.ts";
+import { type FileReader, judge, NEW_MODELS, newModel, understand } from "../shared-core/index.ts";
 
 /** Work after which the engine has compiled what a text of a thousand lines runs through, in ms; found by trial. */
 const ENOUGH = 300;
@@ -20,16 +12,16 @@ const BUSY = 0.1;
 
 /**
  * Runs through small models while nothing else is to be done, so that keystrokes are answered by compiled code: the
- * first ones take five times as long without. Unless `numbers` are wanted texts are understood only.
+ * first ones take five times as long without.
  */
-export function warmUp({ numbers }: { readonly numbers: boolean }): void {
-  const work = models(numbers);
+export function warmUp(): void {
+  const work = models();
   let spent = 0;
   let before = performance.eventLoopUtilization();
   const timer = setInterval(() => {
     const { utilization } = performance.eventLoopUtilization(before);
     const start = performance.now();
-    while (utilization < BUSY && performance.now() - start < SLICE) work.next(false);
+    while (utilization < BUSY && performance.now() - start < SLICE) work.next();
     spent += performance.now() - start;
     if (spent > ENOUGH) clearInterval(timer);
     before = performance.eventLoopUtilization();
@@ -37,13 +29,12 @@ export function warmUp({ numbers }: { readonly numbers: boolean }): void {
 }
 
 /** Without end. */
-function* models(numbers: boolean): Steps<void> {
+function* models(): Generator<void> {
   for (;;) {
     for (const { kind } of NEW_MODELS) {
       const model = understand("warm-up.thrum", newModel(kind), NO_FILES);
       yield;
-      if (numbers) yield* judgeInSteps(model);
-      else judge(model, { upTo: "text" });
+      judge(model, { upTo: "text" });
       yield;
     }
   }
