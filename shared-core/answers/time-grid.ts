@@ -217,6 +217,8 @@ class FreeParts {
         re -= br * pr - bi * pi;
         im -= br * pi + bi * pr;
       }
+      // The exact length only where it may be the largest yet.
+      if (Math.SQRT2 * Math.max(Math.abs(re), Math.abs(im)) < this.sizes[k]) continue;
       this.sizes[k] = Math.max(this.sizes[k], Math.hypot(re, im));
     }
   }
