@@ -2,13 +2,11 @@
  * Draws docs/pictures/*.png: the editor on an example in four themes, with what it shows. Needs a build.
  * Usage: node tools/pictures.mjs [NAME…]
  */
-import { cpSync, mkdirSync, mkdtempSync, rmSync, statSync, writeFileSync } from "node:fs";
-import { tmpdir } from "node:os";
+import { mkdirSync, statSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
-import { packExtension } from "./package.mjs";
 import { root } from "./root.mjs";
-import { openBrowser } from "./workbench/browser.mjs";
-import { launchWorkbench, writeSettings } from "./workbench/launch.mjs";
+import { withHarbour } from "./workbench/harbour.mjs";
+import { writeSettings } from "./workbench/launch.mjs";
 
 const target = join(root, "docs", "pictures");
 /** A picture for a page, in bytes at most. */
@@ -60,14 +58,8 @@ const SCENES = {
 };
 
 const chosen = process.argv.slice(2);
-const home = mkdtempSync(join(tmpdir(), "thrum-pictures-"));
-const folder = join(home, "harbour");
-cpSync(join(root, "examples"), folder, { recursive: true });
 mkdirSync(target, { recursive: true });
-const vsix = process.env.THRUM_VSIX ?? (await packExtension({ builds: false }));
-const workbench = await launchWorkbench({ folder, vsix: [vsix] });
-const browser = await openBrowser();
-try {
+await withHarbour(async ({ workbench, browser }) => {
   for (const [theme, name] of Object.entries(THEMES)) {
     for (const [scene, prepare] of Object.entries(SCENES)) {
       const picture = `${scene}-${theme}`;
@@ -84,11 +76,7 @@ try {
       await page.close();
     }
   }
-} finally {
-  await browser.close();
-  workbench.stop();
-  rmSync(home, { recursive: true, force: true, maxRetries: 5 });
-}
+});
 
 function handsOn(page) {
   const pick = async (text, row) => {

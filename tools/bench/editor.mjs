@@ -3,45 +3,33 @@
  * from a keystroke to its squiggle. Medians of several runs, in ms. Needs a build.
  * Usage: node tools/bench/editor.mjs
  */
-import { cpSync, mkdtempSync, rmSync, statSync } from "node:fs";
-import { tmpdir } from "node:os";
-import { join } from "node:path";
-import { packExtension } from "../package.mjs";
-import { root } from "../root.mjs";
-import { openBrowser } from "../workbench/browser.mjs";
-import { launchWorkbench } from "../workbench/launch.mjs";
+import { statSync } from "node:fs";
+import { withHarbour } from "../workbench/harbour.mjs";
 
 const RUNS = 5;
 const MODEL = "transport-crate.thrum";
 
-const home = mkdtempSync(join(tmpdir(), "thrum-bench-"));
-const folder = join(home, "harbour");
-cpSync(join(root, "examples"), folder, { recursive: true });
-const vsix = await packExtension({ builds: false, to: join(home, "thrum.vsix") });
-const workbench = await launchWorkbench({ folder, vsix: [vsix], settings: { "files.autoSave": "off" } });
-const browser = await openBrowser();
-try {
-  const activations = [];
-  const openings = [];
-  let squiggles = [];
-  for (let i = 0; i < RUNS; i++) {
-    const page = await browser.newPage({ viewport: { width: 1280, height: 800 } });
-    page.setDefaultTimeout(60_000);
-    await page.goto(workbench.url);
-    openings.push(await openModel(page));
-    activations.push(await activation(page));
-    if (i === RUNS - 1) squiggles = await mistakes(page);
-    await page.close();
-  }
-  console.log(`package ${(statSync(vsix).size / 1e3).toFixed(0)} kB (aim 1000)`);
-  console.log(`activation ${median(activations)} ms (aim 100)`);
-  console.log(`open to verdict ${median(openings)} ms (aim 1000)`);
-  console.log(`keystroke to squiggle ${median(squiggles)} ms (aim 150)`);
-} finally {
-  await browser.close();
-  workbench.stop();
-  rmSync(home, { recursive: true, force: true, maxRetries: 5 });
-}
+await withHarbour(
+  async ({ workbench, browser, vsix }) => {
+    const activations = [];
+    const openings = [];
+    let squiggles = [];
+    for (let i = 0; i < RUNS; i++) {
+      const page = await browser.newPage({ viewport: { width: 1280, height: 800 } });
+      page.setDefaultTimeout(60_000);
+      await page.goto(workbench.url);
+      openings.push(await openModel(page));
+      activations.push(await activation(page));
+      if (i === RUNS - 1) squiggles = await mistakes(page);
+      await page.close();
+    }
+    console.log(`package ${(statSync(vsix).size / 1e3).toFixed(0)} kB (aim 1000)`);
+    console.log(`activation ${median(activations)} ms (aim 100)`);
+    console.log(`open to verdict ${median(openings)} ms (aim 1000)`);
+    console.log(`keystroke to squiggle ${median(squiggles)} ms (aim 150)`);
+  },
+  { "files.autoSave": "off" },
+);
 
 /** From the double click on a model to its verdict, with the extension not active before. */
 async function openModel(page) {

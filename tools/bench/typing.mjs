@@ -3,13 +3,7 @@
  * largest example, a number that is typed again and again, so that every edit is computed and drawn. Medians and 95 %
  * quantiles in ms, and their ratio (aim 1.2). Needs a build. Usage: node tools/bench/typing.mjs
  */
-import { cpSync, mkdtempSync, rmSync } from "node:fs";
-import { tmpdir } from "node:os";
-import { join } from "node:path";
-import { packExtension } from "../package.mjs";
-import { root } from "../root.mjs";
-import { openBrowser } from "../workbench/browser.mjs";
-import { launchWorkbench } from "../workbench/launch.mjs";
+import { withHarbour } from "../workbench/harbour.mjs";
 
 const MODEL = "ventilation-fan.thrum";
 /** Letters typed in each state, in rounds that take turns, and the pause between two, in ms: a fast typist. */
@@ -17,35 +11,27 @@ const LETTERS = 60;
 const ROUNDS = 3;
 const PAUSE = 90;
 
-const home = mkdtempSync(join(tmpdir(), "thrum-typing-"));
-const folder = join(home, "harbour");
-cpSync(join(root, "examples"), folder, { recursive: true });
-const vsix = await packExtension({ builds: false, to: join(home, "thrum.vsix") });
-const workbench = await launchWorkbench({ folder, vsix: [vsix], settings: { "files.autoSave": "off" } });
-const browser = await openBrowser();
-try {
-  const page = await browser.newPage({ viewport: { width: 1360, height: 860 } });
-  page.setDefaultTimeout(60_000);
-  await page.goto(workbench.url);
-  await page.locator(".explorer-folders-view .monaco-list-row", { hasText: MODEL }).dblclick();
-  await page.locator("[id='thrum.thrum.thrum.verdict']", { hasText: "holds" }).waitFor();
-  const times = { closed: [], open: [] };
-  for (let round = 0; round < ROUNDS; round++) {
-    times.closed.push(...(await typed(page)));
-    await openSheet(page);
-    times.open.push(...(await typed(page)));
-    await closeSheet(page);
-  }
-  for (const [state, list] of Object.entries(times))
-    console.log(`sheet ${state}: median ${quantile(list, 0.5)} ms, 95 % ${quantile(list, 0.95)} ms`);
-  console.log(
-    `ratio of the 95 % quantiles ${(quantile(times.open, 0.95) / quantile(times.closed, 0.95)).toFixed(2)} (aim 1.2)`,
-  );
-} finally {
-  await browser.close();
-  workbench.stop();
-  rmSync(home, { recursive: true, force: true, maxRetries: 5 });
-}
+await withHarbour(
+  async ({ workbench, browser }) => {
+    const page = await browser.newPage({ viewport: { width: 1360, height: 860 } });
+    page.setDefaultTimeout(60_000);
+    await page.goto(workbench.url);
+    await page.locator(".explorer-folders-view .monaco-list-row", { hasText: MODEL }).dblclick();
+    await page.locator("[id='thrum.thrum.thrum.verdict']", { hasText: "holds" }).waitFor();
+    const times = { closed: [], open: [] };
+    for (let round = 0; round < ROUNDS; round++) {
+      times.closed.push(...(await typed(page)));
+      await openSheet(page);
+      times.open.push(...(await typed(page)));
+      await closeSheet(page);
+    }
+    for (const [state, list] of Object.entries(times))
+      console.log(`sheet ${state}: median ${quantile(list, 0.5)} ms, 95 % ${quantile(list, 0.95)} ms`);
+    const ratio = quantile(times.open, 0.95) / quantile(times.closed, 0.95);
+    console.log(`ratio of the 95 % quantiles ${ratio.toFixed(2)} (aim 1.2)`);
+  },
+  { "files.autoSave": "off" },
+);
 
 /** Types digits behind the mass of the rotor and takes them back; each time until the line shows another text. */
 async function typed(page) {
