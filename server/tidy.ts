@@ -1,4 +1,4 @@
-import { performance } from "node:perf_hooks";
+import { type EventLoopUtilization, performance } from "node:perf_hooks";
 import { getHeapStatistics, setFlagsFromString } from "node:v8";
 import { runInNewContext } from "node:vm";
 
@@ -11,6 +11,11 @@ const WORTH = 6 * 2 ** 20;
 /** The same while there is work, so that a long run does not pile up. */
 const WORTH_BUSY = 40 * 2 ** 20;
 
+/** Between two keystrokes lies less than this, in ms: who types is not to wait for it. */
+const CALM = 600;
+/** How often it waits for calm before it is done all the same. */
+const MOST_POSTPONED = 5;
+
 /**
  * Gives memory back while nothing is done. The engine itself waits for its next need of memory, which in an editor
  * may come hours later: judging 500 models leaves garbage behind that is twice as large as all that is kept.
@@ -20,19 +25,29 @@ export function tidyWhenIdle(): void {
   if (collect === undefined) return;
   let before = performance.eventLoopUtilization();
   let kept = 0;
-  setInterval(() => {
-    const now = performance.eventLoopUtilization();
-    const { utilization } = performance.eventLoopUtilization(now, before);
-    before = now;
-    const worth = utilization > IDLE ? WORTH_BUSY : WORTH;
-    if (getHeapStatistics().used_heap_size < kept + worth) return;
+  let postponed = 0;
+  const tidy = (): void => {
     // The second time gives the emptied pages back.
     collect();
     collect();
     kept = getHeapStatistics().used_heap_size;
+    postponed = 0;
     before = performance.eventLoopUtilization();
+  };
+  setInterval(() => {
+    const now = performance.eventLoopUtilization();
+    const { utilization } = performance.eventLoopUtilization(now, before);
+    before = now;
+    const idle = utilization <= IDLE;
+    if (getHeapStatistics().used_heap_size < kept + (idle ? WORTH : WORTH_BUSY)) return;
+    if (idle || ++postponed > MOST_POSTPONED) tidy();
+    else setTimeout(() => isCalm(now) && tidy(), CALM).unref();
   }, EVERY).unref();
 }
+
+/** Nobody types just now. */
+const isCalm = (since: EventLoopUtilization): boolean =>
+  performance.eventLoopUtilization(since).utilization <= IDLE;
 
 /** The engine's own collector; undefined where it is not given out. */
 function collector(): (() => void) | undefined {
