@@ -1,6 +1,7 @@
 import type { CurvePanel, Scale } from "../../shared-core/index.ts";
 import { svg } from "./dom.ts";
-import { type Geometry, type PanelBox, ticksOn } from "./plot-layout.ts";
+import { type Geometry, type PanelBox, ticksOn, valueAt } from "./plot-layout.ts";
+import { nearestTo } from "./pyramid.ts";
 
 const PIXELS_PER_X_TICK = 76;
 const PIXELS_PER_Y_TICK = 30;
@@ -42,28 +43,74 @@ export function axes({ panel, box, geometry, x, y, last }: AxesOf): SVGElement[]
   ];
 }
 
-/** Named points; a name that would cover another one is left away, its point stays. */
-export function marks({ panel, box, geometry, x, y }: AxesOf): SVGElement[] {
+/** Named points, each name where it covers fewest curves; one that would cover another name is left away. */
+export function marks(of: AxesOf): SVGElement[] {
+  const { panel, box, geometry, x, y } = of;
   const { left, right } = geometry;
-  const taken: { from: number; to: number; y: number }[] = [];
-  return panel.marks.flatMap((mark) => {
-    const [across, share] = [x.place(mark.x), y.place(mark.y)];
-    if (!(across >= 0 && across <= 1 && share >= -0.01 && share <= 1.01)) return [];
-    const [px, py] = [left + across * (right - left), box.top + (1 - share) * box.height];
-    const dot = svg("circle", { class: "peak", cx: px, cy: py, r: 2.5 });
-    const half = (LETTER * [...mark.label].length) / 2;
-    const middle = Math.max(left + half, Math.min(right - half, px));
-    const place = { from: middle - half - 4, to: middle + half + 4, y: Math.max(box.top + 9, py - 8) };
-    if (
-      taken.some(
-        (other) => other.from < place.to && place.from < other.to && Math.abs(other.y - place.y) < 13,
-      )
-    )
-      return [dot];
-    taken.push(place);
-    return [dot, svg("text", { class: "name", x: middle, y: place.y, "text-anchor": "middle" }, mark.label)];
-  });
+  const taken: Place[] = [];
+  // The highest first: nothing stands above it.
+  return [...panel.marks]
+    .sort((a, b) => b.y - a.y)
+    .flatMap((mark) => {
+      const [across, share] = [x.place(mark.x), y.place(mark.y)];
+      if (!(across >= 0 && across <= 1 && share >= -0.01 && share <= 1.01)) return [];
+      const [px, py] = [left + across * (right - left), box.top + (1 - share) * box.height];
+      const dot = svg("circle", { class: "peak", cx: px, cy: py, r: 2.5 });
+      const half = (LETTER * [...mark.label].length) / 2;
+      const free = placesAround(px, py, half, of).filter(
+        (place) => !taken.some((other) => touch(place, other)),
+      );
+      if (free.length === 0) return [dot];
+      const covered = free.map((place) => coveredBy(place, of));
+      const place = free[covered.indexOf(Math.min(...covered))];
+      taken.push(place);
+      const middle = (place.from + place.to) / 2;
+      return [
+        dot,
+        svg("text", { class: "name", x: middle, y: place.y, "text-anchor": "middle" }, mark.label),
+      ];
+    });
 }
+
+/** Where a name may stand: from, to and the line it stands on, in pixels. */
+interface Place {
+  readonly from: number;
+  readonly to: number;
+  readonly y: number;
+}
+
+/** From a line of words up to the top of its letters. */
+const TALL = 10;
+
+const touch = (a: Place, b: Place): boolean => a.from < b.to && b.from < a.to && Math.abs(a.y - b.y) < 13;
+
+/** Above its point if it can be; the first of equals is taken. */
+function placesAround(px: number, py: number, half: number, { box, geometry }: AxesOf): Place[] {
+  const { left, right } = geometry;
+  const at = (middle: number, y: number): Place => {
+    const inside = Math.max(left + half, Math.min(right - half, middle));
+    const line = Math.max(box.top + TALL - 1, Math.min(box.top + box.height - 3, y));
+    return { from: inside - half - 4, to: inside + half + 4, y: line };
+  };
+  const beside = half + 9;
+  return [at(px, py - 8), at(px, py - 20), at(px - beside, py - 4), at(px + beside, py - 4), at(px, py + 17)];
+}
+
+/** How many of the columns under a name a curve runs through. */
+function coveredBy({ from, to, y: line }: Place, { panel, box, geometry, x, y }: AxesOf): number {
+  const { left, right } = geometry;
+  let count = 0;
+  for (let i = 0; i <= PROBES; i++) {
+    const value = valueAt(x, (from + (i / PROBES) * (to - from) - left) / (right - left));
+    for (const curve of panel.curves) {
+      const height = box.top + (1 - y.place(curve.y[nearestTo(curve.x, value)])) * box.height;
+      if (height > line - TALL - 1 && height < line + 3) count++;
+    }
+  }
+  return count;
+}
+
+const PROBES = 12;
 
 export const withUnit = ({ label, unit }: { readonly label: string; readonly unit: string }): string =>
   unit === "" ? label : `${label} in ${unit}`;
