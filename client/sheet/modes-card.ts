@@ -20,6 +20,9 @@ export class ModesCardView {
   readonly #host: ModesHost;
   readonly #list = html("ol", { class: "modes" });
   readonly #table = new TableBehind();
+  /** Small drawings, kept while the system stands as it is: a moved number gives each another pose only. */
+  #pictures = new Map<string, ScenePicture>();
+  #layout = "";
 
   constructor(host: ModesHost) {
     this.#host = host;
@@ -29,6 +32,9 @@ export class ModesCardView {
   }
 
   update(card: ModesCard, scene: Scene): void {
+    const layout = layoutKey(scene);
+    if (layout !== this.#layout) this.#pictures = new Map();
+    this.#layout = layout;
     const held = document.activeElement?.getAttribute("data-mode");
     this.#list.replaceChildren(...card.modes.map((mode) => this.#mode(mode, scene)));
     if (held) {
@@ -40,8 +46,15 @@ export class ModesCardView {
 
   recolour(): void {}
 
+  #shapePicture({ id, shape }: ModesCard["modes"][number], scene: Scene): SVGSVGElement {
+    const picture = this.#pictures.get(id) ?? newPicture(scene);
+    this.#pictures.set(id, picture);
+    picture.pose(shape);
+    return picture.element;
+  }
+
   #mode(mode: ModesCard["modes"][number], scene: Scene): HTMLLIElement {
-    const shape = canMove(scene) ? shapePicture(scene, mode.shape) : shapeBars(mode.shape);
+    const shape = canMove(scene) ? this.#shapePicture(mode, scene) : shapeBars(mode.shape);
     const show = wordButton(mode.label, () => this.#host.choose(mode.id), { "data-mode": mode.id });
     const energy = mode.energy.map(({ name, share, text }) =>
       html(
@@ -63,10 +76,13 @@ export class ModesCardView {
   }
 }
 
+/** Everything that is drawn and what moves it, without words and values. */
+const layoutKey = ({ width, height, items }: Scene): string =>
+  JSON.stringify([width, height, ...items.map(({ parts, family }) => [parts, family])]);
+
 /** The shape over the system at rest. */
-function shapePicture(scene: Scene, shape: Float64Array): SVGSVGElement {
+function newPicture(scene: Scene): ScenePicture {
   const picture = new ScenePicture(scene, { labels: false, reach: REACH });
-  picture.pose(shape);
   const rest = new ScenePicture(scene, { labels: false });
   for (const group of rest.groups) group.classList.add("ghost");
   picture.element.prepend(...rest.groups);
@@ -79,7 +95,7 @@ function shapePicture(scene: Scene, shape: Float64Array): SVGSVGElement {
   picture.element.removeAttribute("width");
   picture.element.removeAttribute("height");
   picture.element.setAttribute("aria-hidden", "true");
-  return picture.element;
+  return picture;
 }
 
 function shapeBars(shape: Float64Array): SVGSVGElement {
