@@ -6,7 +6,7 @@ import type { Ask } from "../model/model.ts";
 import { formatNumber } from "../units/show.ts";
 import { shownSeries } from "../writing/answer-series.ts";
 import { historyFigure, modesFigure, sweepFigure } from "../writing/figure/answer-figures.ts";
-import type { CurvePanel } from "../writing/figure/figure.ts";
+import type { CurvePanel, Figure } from "../writing/figure/figure.ts";
 import { inUnit, largest, type UnitView } from "../writing/units/unit-view.ts";
 import { type Numbers, partPercent, sharePercent, showHz } from "./readout-numbers.ts";
 import type { ModesCard, PlotCard, SheetCard } from "./sheet.ts";
@@ -120,8 +120,7 @@ function plotCard(
   const units = sharedUnits(input.numbers.units, [answer, ...under.map((each) => each.answer)]);
   const panels = panelsOf(name, answer, units);
   const ghosts = under.map(({ role, answer: of }) => ({ role, panels: panelsOf(name, of, units) }));
-  const { description } =
-    answer.kind === "sweep" ? sweepFigure(name, answer, units) : historyFigure(name, answer, units);
+  const { description } = figureOf(name, answer, units);
   const merged = panels.map((panel) => withGhosts(panel, ghosts));
   const values = merged.filter(({ y }) => y.label !== "phase");
   const wrapped = merged.find(({ y }) => y.label === "phase");
@@ -142,10 +141,11 @@ function plotCard(
 
 /** Bars of a figure belong to modes; a plot has curves only. */
 function panelsOf(name: string, answer: SweepAnswer | HistoryAnswer, units: UnitView): CurvePanel[] {
-  const { panels } =
-    answer.kind === "sweep" ? sweepFigure(name, answer, units) : historyFigure(name, answer, units);
-  return panels.filter((panel) => panel.kind === "curves");
+  return figureOf(name, answer, units).panels.filter((panel) => panel.kind === "curves");
 }
+
+const figureOf = (name: string, answer: SweepAnswer | HistoryAnswer, units: UnitView): Figure =>
+  answer.kind === "sweep" ? sweepFigure(name, answer, units) : historyFigure(name, answer, units);
 
 /** One unit for all curves of a kind, moved and written, so that they stand on one axis. */
 function sharedUnits(units: UnitView, answers: readonly (SweepAnswer | HistoryAnswer)[]): UnitView {

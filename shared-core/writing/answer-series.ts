@@ -19,9 +19,19 @@ export interface ShownSeries {
  * Curves of an answer in the units people see: magnitudes of a sweep, values of a history. A peak found between
  * two samples is put in as a sample, so that every picture shows it at its full height.
  */
-export function shownSeries(answer: SweepAnswer | HistoryAnswer, units: UnitView): ShownSeries[] {
-  return answer.kind === "sweep" ? sweepSeries(answer, units) : historySeries(answer, units);
+export function shownSeries(answer: SweepAnswer | HistoryAnswer, units: UnitView): readonly ShownSeries[] {
+  const known = KNOWN.get(answer);
+  if (known?.units === units) return known.series;
+  const series = answer.kind === "sweep" ? sweepSeries(answer, units) : historySeries(answer, units);
+  KNOWN.set(answer, { units, series });
+  return series;
 }
+
+/** A picture, its words and its peaks ask for the same rows one after the other. */
+const KNOWN = new WeakMap<
+  SweepAnswer | HistoryAnswer,
+  { readonly units: UnitView; readonly series: readonly ShownSeries[] }
+>();
 
 function sweepSeries(answer: SweepAnswer, units: UnitView): ShownSeries[] {
   return [...answer.series].map(([quantity, { unit: si, re, im }]) => {
@@ -43,18 +53,18 @@ function sweepSeries(answer: SweepAnswer, units: UnitView): ShownSeries[] {
   });
 }
 
+/** All rows share one axis: the peaks of each are samples of all, on the line between the others' neighbours. */
 function historySeries(answer: HistoryAnswer, units: UnitView): ShownSeries[] {
+  const peaks = [...answer.peaks.values()].map(({ at }) => at);
+  const times = withTimes(answer.timeS, peaks);
   return [...answer.series].map(([quantity, { unit: si, values }]) => {
     const peak = answer.peaks.get(quantity);
     const unit = units.unitFor(si, Math.abs(peak?.value ?? largest(values)));
-    const place = peak === undefined ? -1 : placeFor(answer.timeS, peak.at);
     return {
       quantity,
       unit,
-      x: withSample(answer.timeS, place, peak?.at ?? 0),
-      values: withSample(values, place, signedPeak(values, place, peak?.value ?? 0)).map(
-        (v) => v / unit.factor,
-      ),
+      x: times,
+      values: valuesAt(times, answer.timeS, values, peak).map((value) => value / unit.factor),
       peak: peak ? { at: peak.at, value: peak.value / unit.factor } : { reason: "no peak was found" },
     };
   });
@@ -76,7 +86,29 @@ function withSample(list: Float64Array, place: number, value: number): Float64Ar
   return out;
 }
 
-/** Peaks of a history may be given as sizes; the sample takes the sign of its neighbour. */
-function signedPeak(values: Float64Array, place: number, peak: number): number {
-  return place >= 0 && values[place] < 0 ? -Math.abs(peak) : peak;
+/** The same row where no peak stands between its samples. */
+function withTimes(timeS: Float64Array, peaks: readonly number[]): Float64Array {
+  const [from, to] = [timeS[0], timeS[timeS.length - 1]];
+  const more = new Set(peaks.filter((at) => at > from && at < to && placeFor(timeS, at) >= 0));
+  return more.size === 0 ? timeS : Float64Array.from([...timeS, ...more]).sort();
 }
+
+/** A row at more times than it has samples: its peak at its own, a straight line at the others'. */
+function valuesAt(
+  times: Float64Array,
+  timeS: Float64Array,
+  values: Float64Array,
+  peak: { readonly at: number; readonly value: number } | undefined,
+): Float64Array {
+  if (times === timeS) return values;
+  let next = 0;
+  return times.map((at) => {
+    if (timeS[next] === at) return values[next++];
+    if (at === peak?.at) return signedPeak(values[next], peak.value);
+    const share = (at - timeS[next - 1]) / (timeS[next] - timeS[next - 1]);
+    return values[next - 1] + share * (values[next] - values[next - 1]);
+  });
+}
+
+/** Peaks of a history may be given as sizes; the sample takes the sign of its neighbour. */
+const signedPeak = (neighbour: number, peak: number): number => (neighbour < 0 ? -Math.abs(peak) : peak);
