@@ -172,7 +172,11 @@ describe("an answer", () => {
     ] as const) {
       await card.getByRole("button", { name: word }).click();
       await dialog.waitFor();
-      expect(await dialog.inputValue()).toMatch(new RegExp(`/${file.replace(".", "\\.")}$`));
+      const offered = await eventually(
+        () => dialog.inputValue(),
+        (path) => path.endsWith(`/${file}`),
+      );
+      expect(offered).toBe(join(editor.folder, file));
       await editor.page.keyboard.press("Enter");
       const saved = await eventually(
         async () => (existsSync(join(editor.folder, file)) ? editor.text(file) : ""),
