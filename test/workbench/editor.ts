@@ -93,7 +93,11 @@ export class Editor {
     const end = Date.now() + PATIENCE;
     for (;;) {
       await page.keyboard.press("F1");
-      await input.waitFor();
+      // A page that has just got the focus may swallow the key.
+      if (!(await input.waitFor({ timeout: 5000 }).then(yes, no))) {
+        if (Date.now() > end) throw new Error(`No list opens to pick "${text}" from`);
+        continue;
+      }
       await input.fill(text);
       if (!listed) break;
       // A list that is open does not learn of commands that come with an extension.
